@@ -1,0 +1,144 @@
+package involute
+
+import "math"
+
+// A Contact is how two gears touch at one center distance. Lengths ρ run along
+// the transverse line of action from each gear's base tangent point; contact
+// goes from A (second gear's tip, first gear's root) to E (first gear's tip).
+type Contact struct {
+	WorkingAngle       float64 // α_wt, radians
+	Pitch1, Pitch2     float64 // d_w, mm
+	RhoA1, RhoA2       float64 // mm
+	RhoE1, RhoE2       float64 // mm
+	TransverseRatio    float64 // ε_α on the involutes that are there; 0 where none meet
+	RatioByTips        float64 // ε_α as the tip circles alone would give it
+	Start1, Start2     float64 // start of active profile diameters, mm
+	End1, End2         float64 // end of active profile diameters, mm
+	SlidingA1          Sliding // specific sliding of the first gear at A
+	SlidingA2          Sliding
+	SlidingE1          Sliding
+	SlidingE2          Sliding
+	PastForm1          float64 // how far the second's tip would start before the first's involute, along the line, mm; ≤ 0 is none
+	PastForm2          float64
+	limitedA, limitedE bool
+}
+
+// A Sliding is a specific sliding ζ; Unbounded where the contact is on the base circle.
+type Sliding struct {
+	Value     float64
+	Unbounded bool
+}
+
+// LimitedByRoots reports whether a form diameter, not a tip, ends the contact.
+func (c Contact) LimitedByRoots() bool { return c.limitedA || c.limitedE }
+
+// slideSlack: nearer than this share of the path to the base point, sliding counts as unbounded.
+const slideSlack = 1e-9
+
+// sliding returns ζ = 1 − other/(ratio own) with ratio = z_other/z_own for a
+// point at distances own and other along the line of action.
+func sliding(own, other, ratio float64) Sliding {
+	if math.Abs(own) <= slideSlack*math.Abs(other) {
+		return Sliding{Unbounded: true}
+	}
+	return Sliding{Value: 1 - other/(ratio*own)}
+}
+
+// rollLength returns ρ = √(d² − d_b²)/2 with the sign of z.
+func (g *Gear) rollLength(d float64) float64 { return g.db / 2 * tanOfCos(g.db, d) }
+
+func (g *Gear) diameterAt(rho float64) float64 {
+	return math.Copysign(2*math.Hypot(g.db/2, rho), g.z)
+}
+
+// Contact returns how teeth t1 and t2 touch at center distance a. The active
+// profiles end where the tips (less their chamfers) or the form diameters end
+// them (ISO 21771:2007, 6.6 and 7; specific sliding by the ratio of the rolling speeds).
+func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
+	alpha, err := m.WorkingPressureAngle(a)
+	if err != nil {
+		return Contact{}, err
+	}
+	c := Contact{WorkingAngle: alpha}
+	c.Pitch1, c.Pitch2 = m.PitchDiameters(a)
+	line := a * math.Sin(alpha)
+	tip1, tip2 := m.First.rollLength(m.First.daFa), m.Second.rollLength(m.Second.daFa)
+	form1, form2 := m.First.rollLength(t1.formOrBase()), m.Second.rollLength(t2.formOrBase())
+	pitch := m.First.TransverseBasePitch()
+
+	c.RatioByTips = (m.First.rollLength(m.First.da) + m.Second.rollLength(m.Second.da) - line) / pitch
+	c.PastForm1, c.PastForm2 = form1-(line-tip2), tip1-(line-form2)
+	c.limitedA, c.limitedE = c.PastForm1 > 0, c.PastForm2 > 0
+	c.RhoA1, c.RhoE1 = max(line-tip2, form1), min(tip1, line-form2)
+	c.RhoA2, c.RhoE2 = line-c.RhoA1, line-c.RhoE1
+	c.TransverseRatio = max(0, (c.RhoE1-c.RhoA1)/pitch)
+
+	c.Start1, c.End1 = m.First.diameterAt(c.RhoA1), m.First.diameterAt(c.RhoE1)
+	c.Start2, c.End2 = m.Second.diameterAt(c.RhoE2), m.Second.diameterAt(c.RhoA2)
+	u := m.Ratio()
+	c.SlidingA1, c.SlidingA2 = sliding(c.RhoA1, c.RhoA2, u), sliding(c.RhoA2, c.RhoA1, 1/u)
+	c.SlidingE1, c.SlidingE2 = sliding(c.RhoE1, c.RhoE2, u), sliding(c.RhoE2, c.RhoE1, 1/u)
+	return c, nil
+}
+
+// formOrBase returns the form diameter, or the base diameter of a ring, whose
+// root no rack generates.
+func (t Tooth) formOrBase() float64 {
+	if t.z < 0 {
+		return t.RootDiameter()
+	}
+	return t.form
+}
+
+// filletSteps samples the passage of a tip corner through a space.
+const filletSteps = 400
+
+// FilletClearance returns the least gap between the corner of the mate's tip
+// and this tooth's fillet while the mate passes at center distance a with its
+// flank in contact, mm, measured across (along the circle); negative where the
+// tip cuts into the fillet. t is of the first gear where first is true.
+// External pairs only.
+func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, error) {
+	own, mate := t1, t2
+	if !first {
+		own, mate = t2, t1
+	}
+	play, err := m.Backlash(a, t1.sn, t2.sn)
+	if err != nil {
+		return 0, err
+	}
+	// Half the play as an angle of the mate brings its flank into contact.
+	lead := play.Base / math.Abs(mate.db)
+	corner := mate.HalfAngleAt(mate.daFa) + lead
+	f := own.rackTip(0, 1)
+	gap := func(theta float64) float64 {
+		// The own gear's space and the mate's tooth share the line of centers at theta = 0.
+		p := Vec{a, 0}.Add(Polar(mate.daFa/2, math.Pi-theta*own.z/mate.z+corner)).Rotate(-theta)
+		return own.filletGap(f, p)
+	}
+	least := math.Inf(1)
+	span := math.Acos(min(1, max(-1, (a*a+mate.daFa*mate.daFa/4-own.daFa*own.daFa/4)/(a*mate.daFa)))) * math.Abs(mate.z/own.z)
+	for i := range filletSteps + 1 {
+		theta := span * (2*float64(i)/filletSteps - 1)
+		least = min(least, gap(theta))
+	}
+	return least, nil
+}
+
+// filletGap returns how far the point p (the space's center line is +x) lies
+// from the fillet of its own side, along the circle through p; +Inf where p is
+// outside the fillet's radii.
+func (t Tooth) filletGap(f Fillet, p Vec) float64 {
+	r := p.Norm()
+	switch {
+	case r >= f.radius(t.tau):
+		return math.Inf(1)
+	case r <= f.radius(0):
+		return r - t.RootDiameter()/2
+	}
+	psi, err := FindRoot(func(psi float64) float64 { return f.radius(psi) - r }, 0, t.tau)
+	if err != nil {
+		return math.Inf(1)
+	}
+	return r * (f.spaceAngle(psi) - math.Abs(p.Angle()))
+}

@@ -1,0 +1,166 @@
+package involute
+
+import "math"
+
+// A Spec is what a drawing says of a gear, without its tooth thickness.
+type Spec struct {
+	Teeth       int     // z; negative for an internal gear
+	Module      float64 // m_n, normal, mm
+	Helix       float64 // β at the reference cylinder, radians; right hand positive
+	Shift       float64 // x, profile shift coefficient (× m_n); positive thickens the tooth
+	Rack        Rack
+	TipDiameter float64 // d_a, mm, with the sign of z; 0 for d + 2 m_n (h_aP* + x)
+	TipChamfer  float64 // radial height of a 45° chamfer of the tip corner, mm
+}
+
+// A Gear is a possible Spec with the dimensions that do not depend on the
+// tooth thickness. It does not change.
+type Gear struct {
+	spec     Spec
+	z        float64
+	alphaT   float64
+	betaB    float64 // ≥ 0
+	invT     float64
+	d, db    float64
+	da, daFa float64
+}
+
+// NewGear works a Spec out, or says by an *Impossible why it cannot be.
+func NewGear(s Spec) (*Gear, error) {
+	alpha, beta := s.Rack.PressureAngle, math.Abs(s.Helix)
+	switch {
+	case !finite(s.Module, s.Helix, s.Shift, s.TipDiameter, s.TipChamfer):
+		return nil, impossible(NotFinite, s.Module, 0)
+	case s.Teeth == 0:
+		return nil, impossible(BadTeeth, 0, 1)
+	case s.Module <= 0:
+		return nil, impossible(BadModule, s.Module, 0)
+	case beta > 80*Degree:
+		return nil, impossible(BadHelix, beta, 80*Degree)
+	}
+	if err := s.Rack.validate(); err != nil {
+		return nil, err
+	}
+	g := &Gear{spec: s, z: float64(s.Teeth)}
+	g.alphaT = math.Atan(math.Tan(alpha) / math.Cos(beta))
+	g.betaB = math.Asin(math.Sin(beta) * math.Cos(alpha))
+	g.invT = Inv(g.alphaT)
+	g.d = g.z * s.Module / math.Cos(beta)
+	g.db = g.d * math.Cos(g.alphaT)
+	g.da = s.TipDiameter
+	if g.da == 0 {
+		g.da = g.d + 2*s.Module*(s.Rack.Addendum+s.Shift)
+	}
+	g.daFa = g.da - 2*s.TipChamfer
+	return g, g.check()
+}
+
+func (g *Gear) check() error {
+	external := g.z > 0
+	root := g.RootDiameterAt(g.NominalThickness())
+	switch {
+	case external && root <= 0:
+		return impossible(RootNotPositive, root, 0)
+	case g.da <= root:
+		return impossible(TipBelowRoot, math.Abs(g.da), math.Abs(root))
+	case math.Abs(g.da) <= math.Abs(g.db):
+		return impossible(TipBelowBase, math.Abs(g.da), math.Abs(g.db))
+	case g.spec.TipChamfer < 0:
+		return impossible(ChamferTooLarge, g.spec.TipChamfer, 0)
+	case math.Abs(g.daFa) <= math.Abs(g.db):
+		return impossible(ChamferTooLarge, g.spec.TipChamfer, (g.da-g.db)/2)
+	}
+	return nil
+}
+
+// Spec returns what the gear was made from.
+func (g *Gear) Spec() Spec { return g.spec }
+
+// Teeth returns z, negative for an internal gear.
+func (g *Gear) Teeth() int { return g.spec.Teeth }
+
+// Module returns the normal module m_n, mm.
+func (g *Gear) Module() float64 { return g.spec.Module }
+
+// Helical reports whether β differs from 0.
+func (g *Gear) Helical() bool { return g.spec.Helix != 0 }
+
+// TransverseModule returns m_t = m_n / cos β, mm (ISO 21771:2007, 4.2.2).
+func (g *Gear) TransverseModule() float64 { return g.spec.Module / math.Cos(g.spec.Helix) }
+
+// PressureAngle returns the normal pressure angle α_n, radians.
+func (g *Gear) PressureAngle() float64 { return g.spec.Rack.PressureAngle }
+
+// TransversePressureAngle returns α_t, tan α_t = tan α_n / cos β, radians (ISO 21771:2007, 4.2.4).
+func (g *Gear) TransversePressureAngle() float64 { return g.alphaT }
+
+// BaseHelix returns β_b ≥ 0, sin β_b = sin β cos α_n, radians (ISO 21771:2007, 4.3.3).
+func (g *Gear) BaseHelix() float64 { return g.betaB }
+
+// HelixAt returns the helix angle ≥ 0 on the cylinder of diameter d: tan β_y = tan β · d_y/d, radians.
+func (g *Gear) HelixAt(d float64) float64 {
+	return math.Atan(math.Tan(math.Abs(g.spec.Helix)) * d / g.d)
+}
+
+// ReferenceDiameter returns d = z m_n / cos β, mm (ISO 21771:2007, 4.2.1).
+func (g *Gear) ReferenceDiameter() float64 { return g.d }
+
+// BaseDiameter returns d_b = d cos α_t, mm (ISO 21771:2007, 4.3.1).
+func (g *Gear) BaseDiameter() float64 { return g.db }
+
+// TipDiameter returns d_a = d + 2 m_n (h_aP* + x), or the one given, mm (ISO 21771:2007, 4.5.1).
+func (g *Gear) TipDiameter() float64 { return g.da }
+
+// TipFormDiameter returns d_Fa, where the usable flank ends at the tip: d_a less the chamfer on both sides, mm.
+func (g *Gear) TipFormDiameter() float64 { return g.daFa }
+
+// TransversePitch returns p_t = π m_t, mm.
+func (g *Gear) TransversePitch() float64 { return math.Pi * g.TransverseModule() }
+
+// NormalPitch returns p_n = π m_n, mm.
+func (g *Gear) NormalPitch() float64 { return math.Pi * g.spec.Module }
+
+// TransverseBasePitch returns p_bt = p_t cos α_t, mm (ISO 21771:2007, 4.3.5).
+func (g *Gear) TransverseBasePitch() float64 { return g.TransversePitch() * math.Cos(g.alphaT) }
+
+// NormalBasePitch returns p_bn = p_n cos α_n, mm.
+func (g *Gear) NormalBasePitch() float64 { return g.NormalPitch() * math.Cos(g.PressureAngle()) }
+
+// AxialPitch returns p_x = π m_n / sin |β|, mm; +Inf never: it is false for a spur gear.
+func (g *Gear) AxialPitch() (px float64, ok bool) {
+	if !g.Helical() {
+		return 0, false
+	}
+	return g.NormalPitch() / math.Sin(math.Abs(g.spec.Helix)), true
+}
+
+// Lead returns p_z = |z| p_x, mm, false for a spur gear (ISO 21771:2007, 4.2.6).
+func (g *Gear) Lead() (pz float64, ok bool) {
+	px, ok := g.AxialPitch()
+	return px * math.Abs(g.z), ok
+}
+
+// NominalThickness returns s_n = m_n (π/2 + 2 x tan α_n) at the reference cylinder, mm (ISO 21771:2007, 4.6.1).
+func (g *Gear) NominalThickness() float64 {
+	return g.spec.Module * (math.Pi/2 + 2*g.spec.Shift*math.Tan(g.PressureAngle()))
+}
+
+// GeneratingShift returns x_E, the shift of the rack that cuts a tooth of
+// normal thickness sn by being fed deeper: (s_n/m_n − π/2)/(2 tan α_n)
+// (ISO 21771:2007, 4.6.4).
+func (g *Gear) GeneratingShift(sn float64) float64 {
+	return (sn/g.spec.Module - math.Pi/2) / (2 * math.Tan(g.PressureAngle()))
+}
+
+// RootDiameterAt returns d_f = d − 2 m_n (h_fP* − x_E) that the rack leaves
+// with a tooth of normal thickness sn, mm (ISO 21771:2007, 4.5.3).
+func (g *Gear) RootDiameterAt(sn float64) float64 {
+	return g.d - 2*g.spec.Module*(g.spec.Rack.Dedendum-g.GeneratingShift(sn))
+}
+
+// VirtualTeeth returns z_v = z / cos³ β, by which form cutters and chordal
+// dimensions of a helical gear are chosen. It is one of three virtual tooth
+// numbers and not the one of ISO 6336.
+func (g *Gear) VirtualTeeth() float64 {
+	return g.z / math.Pow(math.Cos(g.spec.Helix), 3)
+}

@@ -1,0 +1,108 @@
+package involute
+
+import "math"
+
+// rackTip returns the generating rack's tip for this tooth as a Fillet curve
+// of one whole side, from the bottom to the end of the tool's tip.
+func (t Tooth) rackTip(space, side float64) Fillet {
+	m, rack := t.spec.Module, t.spec.Rack
+	f := Fillet{
+		R:       t.d / 2,
+		H:       (rack.Dedendum - rack.TipRadius - t.GeneratingShift(t.sn)) * m,
+		Rho:     rack.TipRadius * m,
+		E:       rack.halfLand() * m,
+		CosBeta: math.Cos(t.spec.Helix),
+		Space:   space,
+		Side:    side,
+	}
+	end := math.Pi/2 - t.PressureAngle()
+	if side > 0 {
+		f.T1 = end
+	} else {
+		f.T0 = -end
+	}
+	return f
+}
+
+// radius returns the distance of the fillet's point ψ from the gear's center:
+// √(A² + Y²). It grows with ψ.
+func (f Fillet) radius(psi float64) float64 {
+	a, y, _ := f.motion(psi)
+	return math.Hypot(a[0], y[0])
+}
+
+// spaceAngle returns the polar angle between the space's center line and the
+// fillet's point ψ, positive into the tooth.
+func (f Fillet) spaceAngle(psi float64) float64 {
+	a, y, phi := f.motion(psi)
+	return math.Atan2(a[0], y[0]) - phi[0]
+}
+
+// generate finds where the fillet ends and the involute begins.
+//
+// The tool's straight flank ends at a depth h below the pitch line, and cuts
+// its last point a lever r sin α_t − h/sin α_t along the line of action from
+// the base circle. Where the lever is positive, fillet and involute meet
+// there, tangentially. Where it is negative the tool has cut past the base
+// circle and back through the involute: the two curves cross higher up
+// (ISO 21771:2007, 5.6 and 5.7).
+func (t Tooth) generate() (Tooth, error) {
+	f := t.rackTip(0, 1)
+	rb, end := t.db/2, f.T1
+	h := f.H + f.Rho*math.Sin(t.PressureAngle())
+	lever := f.R*math.Sin(t.alphaT) - h/math.Sin(t.alphaT)
+	t.tau, t.form = end, 2*math.Hypot(rb, lever)
+	if lever < 0 {
+		t.cut = true
+		if err := t.crossing(f, end); err != nil {
+			return t, err
+		}
+	}
+	if w := t.neck(f); w <= 0 {
+		return t, impossible(CutOff, w, 0)
+	}
+	if t.form >= t.daFa {
+		return t, impossible(NoInvolute, t.form, t.daFa)
+	}
+	return t, nil
+}
+
+// crossing finds the point where an undercutting fillet leaves the involute:
+// between the base circle, where the fillet lies inside the tooth, and the end
+// of the tool's tip, where it has come back out into the space.
+func (t *Tooth) crossing(f Fillet, end float64) error {
+	rb := t.db / 2
+	low := 0.0
+	if f.radius(0) < rb {
+		var err error
+		low, err = FindRoot(func(psi float64) float64 { return f.radius(psi) - rb }, 0, end)
+		if err != nil {
+			return impossible(NoInvolute, 2*f.radius(end), t.daFa)
+		}
+	}
+	atBase := math.Pi/t.z - t.halfBaseAngle() // half the space at the base circle
+	psi, err := FindRoot(func(psi float64) float64 {
+		return f.spaceAngle(psi) - atBase - invOfCos(t.db, 2*f.radius(psi))
+	}, low, end)
+	if err != nil {
+		// The undercut is smaller than rounding: the curves meet on the base circle.
+		psi = low
+	}
+	t.tau, t.form = psi, max(2*f.radius(psi), t.db)
+	return nil
+}
+
+// neckSteps samples the fillet for the narrowest place of the tooth. The
+// width is smooth in ψ, so the least of 64 samples is within a few thousandths
+// of the depth of the undercut; it only decides whether a tooth holds at all.
+const neckSteps = 64
+
+// neck returns the least width of the tooth along its fillet, mm.
+func (t Tooth) neck(f Fillet) float64 {
+	least := math.Inf(1)
+	for i := range neckSteps + 1 {
+		psi := t.tau * float64(i) / neckSteps
+		least = min(least, 2*f.radius(psi)*(math.Pi/t.z-f.spaceAngle(psi)))
+	}
+	return least
+}
