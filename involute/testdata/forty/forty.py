@@ -550,6 +550,7 @@ def land_on_single_gears():
     for value, known in ((g.pin(3.5)[0], "38.961148"), (M, "42.294947"), (opposed, "42.461148"),
                          (free, "42.244636"), (offset, "2.249")):
         land(value, known, "m_n 2, z 17, beta 25, ball 3.5")
+    land(mp.pi * g.m / mp.sin(g.beta) / 2, "7.4336", "half axial pitch")
     for z, known in ((10, "9.4512"), (8, "7.6136"), (14, "13.1650")):  # form diameter, undercut
         land(plain(1, z).form_diameters()[0], known, f"m 1, z {z}, d_Ff")
     g = plain(1, 20)  # span over every k
@@ -610,7 +611,11 @@ def land_on_pairs():
         land(row[name], known, "m 3, z 12/24, " + name)
     row = mesh_row(plain(3, 12, 0.6), plain(3, 24, 0.36), 56.88, 20.0)
     land(row["j_wt"], "0.3799", "m 3, z 12/24 at 56.88")
-    row = mesh_row(plain(1, 10), plain(1, 30), 20.0, 10.0)
+    pinion, wheel = plain(1, 10), plain(1, 30)
+    beyond = 20 * mp.sin(pinion.alpha_t) - mp.sqrt(wheel.d_a**2 - wheel.d_b**2) / 2
+    land(beyond, "-0.7306", "z 10/30, wheel tip beyond the base tangent point")
+    land(mp.sqrt(pinion.full.form_radius() ** 2 - (pinion.d_b / 2) ** 2), "0.5057", "z 10, start of the involute")
+    row = mesh_row(pinion, wheel, 20.0, 10.0)
     land(row["eps_alpha_tips"], "1.5115", "z 10/30 by tips")
     land(row["eps_alpha"], "1.0927", "z 10/30")
     for (m, z, x, beta, t, a, alpha), known in (
@@ -752,7 +757,8 @@ def choose_meshes():
         pair(2.54, (24, 60), (0, 0), (0.03, 0.05), 123.25, 20.0, 30.0, 25.4),
         pair(3, (12, 60), (0.09809, 0), (0.04, 0.04), 125.0, 20.0, 30.0, 30.0),
         pair(25.4 / 16, (18, 45), (0.25, 0.278), (0.03, 0.03), 50.8, b=12.7),
-        pair(50, (20, 100), (0.3, -0.3), (0.5, 0.5), 3001.0, b=500.0), pair(0.1, (17, 200), (0, 0), (0.002, 0.002), None, b=1.0),
+        pair(50, (20, 100), (0.3, -0.3), (0.5, 0.5), 3001.0, b=500.0),
+        pair(0.1, (17, 200), (0, 0), (0.002, 0.002), None, b=1.0),
         pair(6, (14, 17), (0, 0), (0.05, 0.05), None, b=50.0, rack=stub), pair(2, (17, 1000), (0.2, 0.1), (0, 0.05), None),
         pair(2, (50, 20), (0.1, 0.4), (0.04, 0.02), None, 25.0, 12.0, 30.0, (1, 1.25, 0.3)))
     dice = Dice(1328)

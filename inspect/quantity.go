@@ -1,0 +1,151 @@
+package inspect
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+)
+
+// maxText bounds what is read as one quantity; nothing sensible is longer.
+const maxText = 80
+
+// ParseNumber reads a plain decimal number. It refuses what is not finite.
+func ParseNumber(text string) (float64, error) {
+	s := strings.TrimSpace(strings.ReplaceAll(text, "−", "-"))
+	if len(s) > maxText || s == "" || strings.ContainsAny(s, "xXpP_") {
+		return 0, fmt.Errorf("%q is not a number", clip(text))
+	}
+	v, err := strconv.ParseFloat(s, 64)
+	if err != nil || math.IsNaN(v) || math.IsInf(v, 0) {
+		if strings.Count(s, ",") == 1 {
+			return 0, fmt.Errorf("%q is not a number; write a decimal point, not a comma", clip(text))
+		}
+		return 0, fmt.Errorf("%q is not a number", clip(text))
+	}
+	return v, nil
+}
+
+func clip(s string) string {
+	if len(s) > maxText {
+		return strings.ToValidUTF8(s[:maxText], "") + "…"
+	}
+	return s
+}
+
+// ParseLength reads a length such as 19.05mm, 0.75in, 3/16in, 1-1/2 in or,
+// without a unit, a number in the unit bare. It returns mm.
+func ParseLength(text string, bare Unit) (float64, error) {
+	number, unit := splitUnit(text, bare)
+	v, err := parseFraction(number)
+	if err != nil {
+		return 0, fmt.Errorf("%q is not a length; write it like 19.05mm, 0.75in or 3/16in", clip(text))
+	}
+	return v * unit.MM(), nil
+}
+
+// splitUnit takes the unit off the end of a length.
+func splitUnit(text string, bare Unit) (string, Unit) {
+	s := strings.TrimSpace(text)
+	for _, u := range []struct {
+		name string
+		unit Unit
+	}{{"mm", Millimeter}, {"in", Inch}, {"\"", Inch}, {"″", Inch}} {
+		if rest, ok := strings.CutSuffix(s, u.name); ok {
+			return strings.TrimSpace(rest), u.unit
+		}
+	}
+	return s, bare
+}
+
+// parseFraction reads 0.75, 3/16 or 1-1/2.
+func parseFraction(s string) (float64, error) {
+	num, den, isFraction := strings.Cut(s, "/")
+	if !isFraction {
+		return ParseNumber(s)
+	}
+	whole := 0.0
+	if w, n, mixed := cutMixed(num); mixed {
+		v, err := ParseNumber(w)
+		if err != nil || v < 0 || v != math.Trunc(v) {
+			return 0, errors.New("bad whole part")
+		}
+		whole, num = v, n
+	}
+	a, err1 := ParseNumber(num)
+	b, err2 := ParseNumber(den)
+	if err1 != nil || err2 != nil || b <= 0 || a != math.Trunc(a) || b != math.Trunc(b) {
+		return 0, errors.New("bad fraction")
+	}
+	return whole + a/b, nil
+}
+
+// cutMixed splits the whole part off a mixed number: 1-1 or 1 1 before the slash.
+func cutMixed(num string) (whole, rest string, ok bool) {
+	num = strings.TrimSpace(num)
+	i := strings.LastIndexAny(num, "- ")
+	if i <= 0 {
+		return "", "", false
+	}
+	return strings.TrimSpace(num[:i]), num[i+1:], true
+}
+
+// ParseLimits reads a range of lengths such as 0.04..0.08, 0.002in..0.005in or
+// 2.2345..2.2371in, where a unit at the end covers both ends; one value stands for
+// a range without width. It returns mm.
+func ParseLimits(text string, bare Unit) (Limits, error) {
+	low, high, isRange := strings.Cut(text, "..")
+	if !isRange {
+		v, err := ParseLength(text, bare)
+		return Limits{v, v}, err
+	}
+	_, bare = splitUnit(high, bare)
+	a, err := ParseLength(low, bare)
+	if err != nil {
+		return Limits{}, err
+	}
+	b, err := ParseLength(high, bare)
+	if err != nil {
+		return Limits{}, err
+	}
+	if a > b {
+		return Limits{}, fmt.Errorf("%q runs backwards; write the smaller value first", clip(text))
+	}
+	return Limits{a, b}, nil
+}
+
+// ParseAngle reads an angle in degrees: 20, 14.5°, 12°30', 12°30'15", 20deg. It returns degrees.
+func ParseAngle(text string) (float64, error) {
+	fail := fmt.Errorf("%q is not an angle; write it like 20, 14.5° or 12°30'", clip(text))
+	s := strings.TrimSpace(text)
+	if rest, ok := strings.CutSuffix(s, "deg"); ok {
+		s = strings.TrimSpace(rest)
+	}
+	deg, rest, _ := strings.Cut(s, "°")
+	d, err := ParseNumber(deg)
+	if err != nil {
+		return 0, fail
+	}
+	rest = strings.NewReplacer("′", "'", "″", "\"").Replace(strings.TrimSpace(rest))
+	total := 0.0
+	for _, part := range []struct {
+		mark string
+		size float64
+	}{{"'", 60}, {"\"", 3600}} {
+		v, tail, ok := strings.Cut(rest, part.mark)
+		if !ok {
+			continue
+		}
+		n, err := ParseNumber(v)
+		if err != nil || n < 0 || n >= 60 {
+			return 0, fail
+		}
+		total += n / part.size
+		rest = strings.TrimSpace(tail)
+	}
+	if rest != "" || (total != 0 && d != math.Trunc(d)) {
+		return 0, fail
+	}
+	return d + math.Copysign(total, d), nil
+}

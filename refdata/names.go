@@ -1,0 +1,65 @@
+package refdata
+
+import (
+	"fmt"
+	"strings"
+	"unicode"
+)
+
+// plain returns a name as it is compared: lower case letters, digits and
+// decimal points only, with ½ as .5, so that "ISO 53-A" and "iso53a" are one.
+func plain(name string) string {
+	return strings.Map(func(r rune) rune {
+		if unicode.IsLetter(r) || unicode.IsDigit(r) || r == '.' {
+			return unicode.ToLower(r)
+		}
+		return -1
+	}, strings.ReplaceAll(name, "½", ".5"))
+}
+
+// unknown returns the error for a name that is not known: what it is a name
+// of, the nearest known one, and which table lists all.
+func unknown(kind, name string, known []string, table string) error {
+	list := fmt.Sprintf("the command \"tables %s\" lists all", table)
+	if table == "tables" {
+		list = "the command \"tables\" lists all"
+	}
+	if strings.TrimSpace(name) == "" {
+		return fmt.Errorf("the name of the %s is blank; %s", kind, list)
+	}
+	return fmt.Errorf("no %s is called %q; the nearest is %q; %s", kind, name, nearest(name, known), list)
+}
+
+// nearest returns the known name with the fewest letters to insert, delete or
+// change, the first of equals. Known must not be empty.
+func nearest(name string, known []string) string {
+	best, least := "", -1
+	for _, k := range known {
+		if d := edits(plain(name), plain(k)); least < 0 || d < least {
+			best, least = k, d
+		}
+	}
+	return best
+}
+
+// edits returns the Levenshtein distance of a and b.
+func edits(a, b string) int {
+	from, to := []rune(a), []rune(b)
+	row := make([]int, len(to)+1)
+	for j := range row {
+		row[j] = j
+	}
+	for i, r := range from {
+		diagonal := row[0]
+		row[0] = i + 1
+		for j, s := range to {
+			change := diagonal
+			if r != s {
+				change++
+			}
+			diagonal = row[j+1]
+			row[j+1] = min(change, row[j]+1, diagonal+1)
+		}
+	}
+	return row[len(to)]
+}
