@@ -33,7 +33,7 @@ var tanSeries = [...]float64{
 // (k = 17) times α^37 stays under 1e-16 of the sum.
 const seriesLimit = 0.4
 
-// Inv returns the involute function inv α = tan α − α (ISO 21771:2007, 3.4.4),
+// Inv returns the involute function inv α = tan α − α (ISO 21771:2007, clause 4),
 // α in radians, 0 ≤ α < π/2, to a relative 1e-14.
 func Inv(alpha float64) float64 {
 	if math.Abs(alpha) > seriesLimit {

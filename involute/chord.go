@@ -11,7 +11,7 @@ type Chord struct{ Thickness, Height float64 }
 //
 //	ψ = s_n/(z_v m_n),  s_c = z_v m_n sin ψ,  h_c = (tip − d)/2 + z_v m_n (1 − cos ψ)/2
 //
-// (ISO 21771:2007, 8.1; Machinery's Handbook, chordal dimensions.)
+// (ISO/TR 10064-2:1996, chordal tooth thickness; Machinery's Handbook, chordal dimensions.)
 func (t Tooth) Chord(tip float64) Chord {
 	dv := t.VirtualTeeth() * t.spec.Module
 	s, c := math.Sincos(t.sn / dv)
@@ -30,7 +30,7 @@ func (g *Gear) ThicknessFromChord(chord float64) (float64, error) {
 
 // ConstantChord returns the chord between the points where the basic rack
 // touches the tooth, s_cc = s_n cos² α_n, and its height below the tip
-// diameter tip: (tip − d)/2 − s_n sin α_n cos α_n/2 (ISO 21771:2007, 8.1).
+// diameter tip: (tip − d)/2 − s_n sin α_n cos α_n/2 (ISO/TR 10064-2:1996, chordal tooth thickness; DIN 3960:1987, constant chord).
 // It does not depend on the number of teeth.
 func (t Tooth) ConstantChord(tip float64) Chord {
 	s, c := math.Sincos(t.PressureAngle())

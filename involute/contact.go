@@ -53,7 +53,7 @@ func (g *Gear) diameterAt(rho float64) float64 {
 
 // Contact returns how teeth t1 and t2 touch at center distance a. The active
 // profiles end where the tips (less their chamfers) or the form diameters end
-// them (ISO 21771:2007, 6.6 and 7; specific sliding by the ratio of the rolling speeds).
+// them (ISO 21771:2007, clause 5; specific sliding by the ratio of the rolling speeds).
 func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
 	alpha, err := m.WorkingPressureAngle(a)
 	if err != nil {
@@ -90,14 +90,16 @@ func (t Tooth) formOrBase() float64 {
 	return t.form
 }
 
-// filletSteps samples the passage of a tip corner through a space.
+// filletSteps samples the passage of a tip corner through a fillet. The gap's
+// ends are exact; between them the least of 400 samples is within (step)²/8 of
+// its second derivative, a few 1e-6 of the module at most.
 const filletSteps = 400
 
 // FilletClearance returns the least gap between the corner of the mate's tip
 // and this tooth's fillet while the mate passes at center distance a with its
 // flank in contact, mm, measured across (along the circle); negative where the
-// tip cuts into the fillet. t is of the first gear where first is true.
-// External pairs only.
+// tip cuts into the fillet, +Inf where it does not come down to the fillet at
+// all. t is of the first gear where first is true. External pairs only.
 func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, error) {
 	own, mate := t1, t2
 	if !first {
@@ -107,38 +109,38 @@ func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, err
 	if err != nil {
 		return 0, err
 	}
-	// Half the play as an angle of the mate brings its flank into contact.
-	lead := play.Base / math.Abs(mate.db)
-	corner := mate.HalfAngleAt(mate.daFa) + lead
 	f := own.rackTip(0, 1)
-	gap := func(theta float64) float64 {
-		// The own gear's space and the mate's tooth share the line of centers at theta = 0.
-		p := Vec{a, 0}.Add(Polar(mate.daFa/2, math.Pi-theta*own.z/mate.z+corner)).Rotate(-theta)
-		return own.filletGap(f, p)
+	// The corner is below the fillet's upper end while it stands within reach of the line of centers.
+	tip, top := mate.daFa/2, f.radius(own.tau)
+	c := (a*a + tip*tip - top*top) / (2 * a * tip)
+	if c >= 1 {
+		return math.Inf(1), nil
 	}
+	reach := math.Acos(c)
+	// Half the play as an angle of the mate brings its flank into contact.
+	corner := mate.HalfAngleAt(mate.daFa) + play.Base/math.Abs(mate.db)
 	least := math.Inf(1)
-	span := math.Acos(min(1, max(-1, (a*a+mate.daFa*mate.daFa/4-own.daFa*own.daFa/4)/(a*mate.daFa)))) * math.Abs(mate.z/own.z)
 	for i := range filletSteps + 1 {
-		theta := span * (2*float64(i)/filletSteps - 1)
-		least = min(least, gap(theta))
+		// The own gear's space and the mate's tooth share the line of centers at turn 0.
+		stands := reach * (2*float64(i)/filletSteps - 1)
+		turn := (corner - stands) * mate.z / own.z
+		p := Vec{a, 0}.Add(Polar(tip, math.Pi+stands)).Rotate(-turn)
+		least = min(least, own.filletGap(f, p))
 	}
 	return least, nil
 }
 
-// filletGap returns how far the point p (the space's center line is +x) lies
-// from the fillet of its own side, along the circle through p; +Inf where p is
-// outside the fillet's radii.
+// filletGap returns how far the point p (the space's center line is +x; p is
+// no farther out than the fillet) lies from the fillet of its own side, along
+// the circle through p; below the root circle, how far below, negative.
 func (t Tooth) filletGap(f Fillet, p Vec) float64 {
 	r := p.Norm()
-	switch {
-	case r >= f.radius(t.tau):
-		return math.Inf(1)
-	case r <= f.radius(0):
+	if r <= f.radius(0) {
 		return r - t.RootDiameter()/2
 	}
 	psi, err := FindRoot(func(psi float64) float64 { return f.radius(psi) - r }, 0, t.tau)
 	if err != nil {
-		return math.Inf(1)
+		psi = t.tau // the end itself, but for rounding
 	}
 	return r * (f.spaceAngle(psi) - math.Abs(p.Angle()))
 }

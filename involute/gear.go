@@ -59,6 +59,8 @@ func (g *Gear) check() error {
 	external := g.z > 0
 	root := g.RootDiameterAt(g.NominalThickness())
 	switch {
+	case !finite(g.d, g.db, g.da, root):
+		return impossible(NotFinite, g.spec.Module, 0)
 	case external && root <= 0:
 		return impossible(RootNotPositive, root, 0)
 	case g.da <= root:
@@ -85,16 +87,16 @@ func (g *Gear) Module() float64 { return g.spec.Module }
 // Helical reports whether β differs from 0.
 func (g *Gear) Helical() bool { return g.spec.Helix != 0 }
 
-// TransverseModule returns m_t = m_n / cos β, mm (ISO 21771:2007, 4.2.2).
+// TransverseModule returns m_t = m_n / cos β, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TransverseModule() float64 { return g.spec.Module / math.Cos(g.spec.Helix) }
 
 // PressureAngle returns the normal pressure angle α_n, radians.
 func (g *Gear) PressureAngle() float64 { return g.spec.Rack.PressureAngle }
 
-// TransversePressureAngle returns α_t, tan α_t = tan α_n / cos β, radians (ISO 21771:2007, 4.2.4).
+// TransversePressureAngle returns α_t, tan α_t = tan α_n / cos β, radians (ISO 21771:2007, clause 4).
 func (g *Gear) TransversePressureAngle() float64 { return g.alphaT }
 
-// BaseHelix returns β_b ≥ 0, sin β_b = sin β cos α_n, radians (ISO 21771:2007, 4.3.3).
+// BaseHelix returns β_b ≥ 0, sin β_b = sin β cos α_n, radians (ISO 21771:2007, clause 4).
 func (g *Gear) BaseHelix() float64 { return g.betaB }
 
 // HelixAt returns the helix angle ≥ 0 on the cylinder of diameter d: tan β_y = tan β · d_y/d, radians.
@@ -102,13 +104,13 @@ func (g *Gear) HelixAt(d float64) float64 {
 	return math.Atan(math.Tan(math.Abs(g.spec.Helix)) * d / g.d)
 }
 
-// ReferenceDiameter returns d = z m_n / cos β, mm (ISO 21771:2007, 4.2.1).
+// ReferenceDiameter returns d = z m_n / cos β, mm (ISO 21771:2007, clause 4).
 func (g *Gear) ReferenceDiameter() float64 { return g.d }
 
-// BaseDiameter returns d_b = d cos α_t, mm (ISO 21771:2007, 4.3.1).
+// BaseDiameter returns d_b = d cos α_t, mm (ISO 21771:2007, clause 4).
 func (g *Gear) BaseDiameter() float64 { return g.db }
 
-// TipDiameter returns d_a = d + 2 m_n (h_aP* + x), or the one given, mm (ISO 21771:2007, 4.5.1).
+// TipDiameter returns d_a = d + 2 m_n (h_aP* + x), or the one given, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TipDiameter() float64 { return g.da }
 
 // TipFormDiameter returns d_Fa, where the usable flank ends at the tip: d_a less the chamfer on both sides, mm.
@@ -120,7 +122,7 @@ func (g *Gear) TransversePitch() float64 { return math.Pi * g.TransverseModule()
 // NormalPitch returns p_n = π m_n, mm.
 func (g *Gear) NormalPitch() float64 { return math.Pi * g.spec.Module }
 
-// TransverseBasePitch returns p_bt = p_t cos α_t, mm (ISO 21771:2007, 4.3.5).
+// TransverseBasePitch returns p_bt = p_t cos α_t, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TransverseBasePitch() float64 { return g.TransversePitch() * math.Cos(g.alphaT) }
 
 // NormalBasePitch returns p_bn = p_n cos α_n, mm.
@@ -134,26 +136,26 @@ func (g *Gear) AxialPitch() (px float64, ok bool) {
 	return g.NormalPitch() / math.Sin(math.Abs(g.spec.Helix)), true
 }
 
-// Lead returns p_z = |z| p_x, mm, false for a spur gear (ISO 21771:2007, 4.2.6).
+// Lead returns p_z = |z| p_x, mm, false for a spur gear (ISO 21771:2007, clause 4).
 func (g *Gear) Lead() (pz float64, ok bool) {
 	px, ok := g.AxialPitch()
 	return px * math.Abs(g.z), ok
 }
 
-// NominalThickness returns s_n = m_n (π/2 + 2 x tan α_n) at the reference cylinder, mm (ISO 21771:2007, 4.6.1).
+// NominalThickness returns s_n = m_n (π/2 + 2 x tan α_n) at the reference cylinder, mm (ISO 21771:2007, clause 4).
 func (g *Gear) NominalThickness() float64 {
 	return g.spec.Module * (math.Pi/2 + 2*g.spec.Shift*math.Tan(g.PressureAngle()))
 }
 
 // GeneratingShift returns x_E, the shift of the rack that cuts a tooth of
 // normal thickness sn by being fed deeper: (s_n/m_n − π/2)/(2 tan α_n)
-// (ISO 21771:2007, 4.6.4).
+// (ISO 21771:2007, clause 4).
 func (g *Gear) GeneratingShift(sn float64) float64 {
 	return (sn/g.spec.Module - math.Pi/2) / (2 * math.Tan(g.PressureAngle()))
 }
 
 // RootDiameterAt returns d_f = d − 2 m_n (h_fP* − x_E) that the rack leaves
-// with a tooth of normal thickness sn, mm (ISO 21771:2007, 4.5.3).
+// with a tooth of normal thickness sn, mm (ISO 21771:2007, clause 4).
 func (g *Gear) RootDiameterAt(sn float64) float64 {
 	return g.d - 2*g.spec.Module*(g.spec.Rack.Dedendum-g.GeneratingShift(sn))
 }

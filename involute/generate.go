@@ -45,7 +45,7 @@ func (f Fillet) spaceAngle(psi float64) float64 {
 // the base circle. Where the lever is positive, fillet and involute meet
 // there, tangentially. Where it is negative the tool has cut past the base
 // circle and back through the involute: the two curves cross higher up
-// (ISO 21771:2007, 5.6 and 5.7).
+// (ISO 21771:2007, undercut and form diameter).
 func (t Tooth) generate() (Tooth, error) {
 	f := t.rackTip(0, 1)
 	rb, end := t.db/2, f.T1
@@ -105,4 +105,21 @@ func (t Tooth) neck(f Fillet) float64 {
 		least = min(least, 2*f.radius(psi)*(math.Pi/t.z-f.spaceAngle(psi)))
 	}
 	return least
+}
+
+// A FilletEnd is the point where fillet and flank meet, in the letters of Fillet.
+type FilletEnd struct {
+	Psi        float64 // ψ, radians
+	H, Rho, E  float64 // h, ρ, e of the tool's tip, mm
+	A, Y       float64 // the point, mm
+	SpaceAngle float64 // from the space's center line, radians
+	Residual   float64 // what is left of the equation of an undercut tooth: the two curves' difference in angle, radians
+}
+
+// FilletEnd returns where the fillet ends.
+func (t Tooth) FilletEnd() FilletEnd {
+	f := t.rackTip(0, 1)
+	a, y, _ := f.motion(t.tau)
+	angle := f.spaceAngle(t.tau)
+	return FilletEnd{t.tau, f.H, f.Rho, f.E, a[0], y[0], angle, angle - (math.Pi/t.z - t.HalfAngleAt(t.form))}
 }

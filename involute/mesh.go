@@ -39,14 +39,14 @@ func (m Mesh) sumBase() float64 { return m.First.db + m.Second.db }
 // circles touch and the working pressure angle is 0; it must be farther.
 func (m Mesh) LeastCenter() float64 { return m.sumBase() / 2 }
 
-// ReferenceCenter returns a_d = (d_1 + d_2)/2, mm (ISO 21771:2007, 6.2).
+// ReferenceCenter returns a_d = (d_1 + d_2)/2, mm (ISO 21771:2007, clause 5).
 func (m Mesh) ReferenceCenter() float64 { return (m.First.d + m.Second.d) / 2 }
 
 // Ratio returns u = z_2/z_1.
 func (m Mesh) Ratio() float64 { return m.Second.z / m.First.z }
 
 // WorkingPressureAngle returns α_wt at center distance a: cos α_wt =
-// (d_b1 + d_b2)/(2 a), radians (ISO 21771:2007, 6.3).
+// (d_b1 + d_b2)/(2 a), radians (ISO 21771:2007, clause 5).
 func (m Mesh) WorkingPressureAngle(a float64) (float64, error) {
 	c := m.sumBase() / (2 * a)
 	if !(c > 0 && c < 1) {
@@ -71,7 +71,7 @@ func (m Mesh) tightInv(s1, s2 float64) float64 {
 
 // TightCenter returns the center distance without backlash for normal tooth
 // thicknesses s1 and s2, mm. With nominal teeth the condition is
-// inv α_wt = inv α_t + 2 tan α_n (x_1 + x_2)/(z_1 + z_2) (ISO 21771:2007, 6.4).
+// inv α_wt = inv α_t + 2 tan α_n (x_1 + x_2)/(z_1 + z_2) (ISO 21771:2007, clause 5).
 func (m Mesh) TightCenter(s1, s2 float64) (float64, error) {
 	inv := m.tightInv(s1, s2)
 	alpha, ok := InverseInv(inv)
@@ -82,7 +82,7 @@ func (m Mesh) TightCenter(s1, s2 float64) (float64, error) {
 }
 
 // A Play is the backlash of a mesh at one center distance and pair of
-// thicknesses, in its several words (ISO 21771:2007, 6.9). Negative where the
+// thicknesses, in its several words (ISO 21771:2007, clause 5). Negative where the
 // teeth would have to overlap.
 type Play struct {
 	Circumferential float64 // j_wt, transverse, on the working pitch circles, mm
@@ -139,7 +139,7 @@ func (m Mesh) ThinningPerBacklash(alphaWt float64) float64 {
 
 // TipClearances returns c = a − d_a/2 − d_f/2 of the first gear's tip to the
 // second's root and the reverse, for the roots that the teeth have, mm
-// (ISO 21771:2007, 6.5).
+// (ISO 21771:2007, clause 5).
 func (m Mesh) TipClearances(a float64, t1, t2 Tooth) (first, second float64) {
 	return a - m.First.da/2 - t2.RootDiameter()/2, a - m.Second.da/2 - t1.RootDiameter()/2
 }
@@ -148,7 +148,7 @@ func (m Mesh) TipClearances(a float64, t1, t2 Tooth) (first, second float64) {
 // clearance c (mm) to a mate's root diameter at center distance a: 2a − d_f − 2c.
 func TipForClearance(a, mateRoot, c float64) float64 { return 2*a - mateRoot - 2*c }
 
-// OverlapRatio returns ε_β = b sin |β|/(π m_n) for the common face width b, mm (ISO 21771:2007, 6.7).
+// OverlapRatio returns ε_β = b sin |β|/(π m_n) for the common face width b, mm (ISO 21771:2007, clause 5).
 func (m Mesh) OverlapRatio(b float64) float64 {
 	return b * math.Sin(math.Abs(m.First.spec.Helix)) / m.First.NormalPitch()
 }

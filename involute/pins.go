@@ -30,7 +30,7 @@ func (g *Gear) baseSpan() float64 { return g.db * math.Cos(g.betaB) }
 //
 //	inv α_Kt = s_t/d + inv α_t − π/z + D/(d_b cos β_b),  d_K = d_b/cos α_Kt
 //
-// (ISO 21771:2007, 8.4). It touches at tan α = tan α_Kt − D cos β_b/d_b. The
+// (ISO/TR 10064-2:1996, measurement over balls). It touches at tan α = tan α_Kt − D cos β_b/d_b. The
 // error is PinFallsThrough where the pin does not touch the involutes at all.
 func (t Tooth) Seat(pin float64) (PinSeat, error) {
 	s := PinSeat{Pin: pin}
@@ -107,7 +107,7 @@ type PinReading struct {
 //	OpposedPins   d_K + D
 //	FreePins      the least distance of the two skew pins; see freePins
 //
-// (ISO 21771:2007, 8.4; DIN 3960:1987, 4.3; three pins and one pin by geometry.)
+// (ISO/TR 10064-2:1996 and DIN 3960:1987, measurement over balls and rollers; three pins and one pin by geometry.)
 func (g *Gear) Reading(way PinWay, dK, pin, bore float64) (PinReading, error) {
 	if way == FreePins {
 		return g.freePins(dK, pin)
@@ -153,8 +153,14 @@ func (g *Gear) CenterFromReading(way PinWay, reading, pin, bore float64) (float6
 			}
 			return r.Value - reading
 		}
-		// The pins' axes are never farther apart than d_K, nor nearer than cos²(90°/z) of it.
-		dK, err := FindRoot(off, reading-pin, (reading-pin)*1.5)
+		// The pins' axes are never farther apart than d_K. How much nearer they
+		// come grows with the helix, and past some d_K there is no least: step up to it.
+		low := max(reading-pin, 0)
+		high := low
+		for step := low / 1024; off(high) < 0; step *= 2 {
+			high += step
+		}
+		dK, err := FindRoot(off, low, high)
 		if err != nil {
 			return 0, impossible(NoFreeReading, reading, 0)
 		}
@@ -238,10 +244,11 @@ func (g *Gear) PinSensitivity(way PinWay, seat PinSeat) (byThickness, byPin floa
 func (t Tooth) PinRootClearance(seat PinSeat) float64 {
 	f := t.rackTip(0, 1)
 	rK := seat.CenterDiameter / 2
+	twist := math.Tan(math.Abs(t.spec.Helix)) * 2 / t.d
 	least := rK - t.RootDiameter()/2
 	for i := range rootSteps + 1 {
 		psi := t.tau * float64(i) / rootSteps
-		least = min(least, t.distanceToHelix(rK, f.radius(psi), f.spaceAngle(psi)))
+		least = min(least, HelixDistance(rK, f.radius(psi), f.spaceAngle(psi), twist))
 	}
 	return least - seat.Pin/2
 }
@@ -250,18 +257,23 @@ func (t Tooth) PinRootClearance(seat PinSeat) float64 {
 // about (fillet length/400)²/(2 D), under a micrometer up to module 10.
 const rootSteps = 200
 
-// distanceToHelix returns the least distance between the point at radius rK on
-// the space's center line and the helix through the point at radius r and
-// angle theta from it. Along the helix θ = theta + ζ q, q = 2π/p_z:
-// distance² = rK² + r² − 2 rK r cos θ + ζ², least where ζ + rK r q sin θ = 0.
-func (t Tooth) distanceToHelix(rK, r, theta float64) float64 {
-	q := math.Tan(math.Abs(t.spec.Helix)) * 2 / t.d
-	if q == 0 {
-		return math.Sqrt(rK*rK + r*r - 2*rK*r*math.Cos(theta))
+// HelixDistance returns the least distance between a point at radius c in one
+// plane and the helix through the point of that plane at radius r and angle
+// theta from it, turning by q radians per mm of face. Along the helix the angle is
+// theta + ζ q and
+//
+//	distance² = c² + r² − 2 c r cos(theta + ζ q) + ζ²,
+//
+// least where ζ + c r q sin(theta + ζ q) = 0. A q of 0 is a straight line along
+// the axis. |theta| must be under π.
+func HelixDistance(c, r, theta, q float64) float64 {
+	theta = math.Remainder(theta, 2*math.Pi)
+	if q == 0 || theta == 0 {
+		return math.Sqrt(max(0, c*c+r*r-2*c*r*math.Cos(theta)))
 	}
-	zeta, err := FindRoot(func(z float64) float64 { return z + rK*r*q*math.Sin(theta+z*q) }, -theta/q, 0)
+	zeta, err := FindRoot(func(z float64) float64 { return z + c*r*q*math.Sin(theta+z*q) }, -theta/q, 0)
 	if err != nil {
 		zeta = 0
 	}
-	return math.Sqrt(rK*rK + r*r - 2*rK*r*math.Cos(theta+zeta*q) + zeta*zeta)
+	return math.Sqrt(max(0, c*c+r*r-2*c*r*math.Cos(theta+zeta*q)+zeta*zeta))
 }

@@ -4,7 +4,7 @@ import "math"
 
 // Span returns W_k, the base tangent length over k teeth, normal to the flanks:
 // W_k = (k − 1) p_bn + s_bn, with s_bn = d_b ψ_b cos β_b, mm
-// (ISO 21771:2007, 8.2). External gears, k ≥ 1.
+// (ISO/TR 10064-2:1996, span measurement). External gears, k ≥ 1.
 func (t Tooth) Span(k int) float64 {
 	return float64(k-1)*t.NormalBasePitch() + t.baseSpan()*t.halfBaseAngle()
 }

@@ -47,7 +47,7 @@ func (t Tooth) Thickness() float64 { return t.sn }
 func (t Tooth) Thinning() float64 { return t.NominalThickness() - t.sn }
 
 // halfBaseAngle returns ψ_b = s_t/d + inv α_t: half the angle of the tooth at
-// the base circle, radians (ISO 21771:2007, 4.6.2).
+// the base circle, radians (ISO 21771:2007, clause 4).
 func (t Tooth) halfBaseAngle() float64 {
 	return t.sn/math.Cos(t.spec.Helix)/t.d + t.invT
 }
@@ -58,10 +58,10 @@ func (t Tooth) HalfAngleAt(dy float64) float64 {
 }
 
 // ThicknessAt returns the transverse arc thickness s_yt = d_y ψ_y on the
-// cylinder of diameter dy (with the sign of z, |dy| ≥ |d_b|), mm (ISO 21771:2007, 4.6.2).
+// cylinder of diameter dy (with the sign of z, |dy| ≥ |d_b|), mm (ISO 21771:2007, clause 4).
 func (t Tooth) ThicknessAt(dy float64) float64 { return dy * t.HalfAngleAt(dy) }
 
-// NormalThicknessAt returns s_yn = s_yt cos β_y, mm (ISO 21771:2007, 4.6.3).
+// NormalThicknessAt returns s_yn = s_yt cos β_y, mm (ISO 21771:2007, clause 4).
 func (t Tooth) NormalThicknessAt(dy float64) float64 {
 	return t.ThicknessAt(dy) * math.Cos(t.HelixAt(dy))
 }
@@ -83,14 +83,14 @@ func (t Tooth) PointedDiameter() float64 {
 func (t Tooth) RootDiameter() float64 { return t.RootDiameterAt(t.sn) }
 
 // FormDiameter returns d_Ff, where the involute begins above the fillet, mm
-// (ISO 21771:2007, 5.7; where undercut, by intersecting trochoid and involute).
+// (ISO 21771:2007, undercut and form diameter; where undercut, by intersecting trochoid and involute).
 func (t Tooth) FormDiameter() float64 { return t.form }
 
 // Undercut reports whether the rack's tip has cut into the involute.
 func (t Tooth) Undercut() bool { return t.cut }
 
 // UndercutLimit returns the least shift without undercut for the rack,
-// x_min = h_fP* − ρ*(1 − sin α_n) − z sin² α_t / (2 cos β) (ISO 21771:2007, 5.6).
+// x_min = h_fP* − ρ*(1 − sin α_n) − z sin² α_t / (2 cos β) (ISO 21771:2007, undercut and form diameter).
 func (g *Gear) UndercutLimit() float64 {
 	s := math.Sin(g.alphaT)
 	return g.spec.Rack.tipDepth() - g.z*s*s/(2*math.Cos(g.spec.Helix))

@@ -1,0 +1,194 @@
+package export
+
+import (
+	"bufio"
+	"fmt"
+	"io"
+	"math"
+	"strconv"
+	"strings"
+	"unicode/utf16"
+
+	"flankwright/inspect"
+	"flankwright/involute"
+)
+
+// A DXFVersion is a release of the DXF format that we write.
+type DXFVersion int
+
+// The versions we write. R2000 (AC1015) holds a contour as one LWPOLYLINE; R12
+// (AC1009) is for old controls and holds it as POLYLINE, VERTEX and SEQEND.
+const (
+	R2000 DXFVersion = iota
+	R12
+)
+
+// String returns "r2000" or "r12".
+func (v DXFVersion) String() string {
+	if v == R12 {
+		return "r12"
+	}
+	return "r2000"
+}
+
+// ParseDXFVersion returns the version named r2000 or r12, in either case.
+func ParseDXFVersion(s string) (DXFVersion, error) {
+	switch strings.ToLower(s) {
+	case "r2000":
+		return R2000, nil
+	case "r12":
+		return R12, nil
+	}
+	return R2000, fmt.Errorf("DXF version %q is not known; r2000 or r12 would be right", s)
+}
+
+// WriteDXF writes the outline as an ASCII DXF file.
+//
+// Every contour is one closed polyline: counter-clockwise, the last vertex not
+// repeated, a bulge on every vertex, arcs over 90° split on their own circle.
+// Full circles are CIRCLE. Numbers have twelve decimals and no exponent, so that
+// mm come back within 1e-12 and inches within 2e-11 mm. Lines end in CR LF, as
+// DXF has always had them: DOS-based controls need it, and every importer has met it.
+// The title goes into a comment (group 999) at the top, cut at 200 bytes; the
+// file holds no date and no random number. An outline that fails Check, or a
+// version that is neither R2000 nor R12, is an error before anything is written.
+func WriteDXF(w io.Writer, o Outline, version DXFVersion) error {
+	if version != R2000 && version != R12 {
+		return fmt.Errorf("DXF version %d is not known", int(version))
+	}
+	f, err := o.fileForm()
+	if err != nil {
+		return err
+	}
+	d := &dxfWriter{w: bufio.NewWriter(w)}
+	if title := dxfText(f.Title); title != "" {
+		d.put(999, title)
+	}
+	if version == R12 {
+		d.r12(f)
+	} else {
+		d.r2000(f)
+	}
+	d.put(0, "EOF")
+	if d.err == nil {
+		d.err = d.w.Flush()
+	}
+	return d.err
+}
+
+// A dxfWriter writes group codes and values and remembers its first error.
+type dxfWriter struct {
+	w   *bufio.Writer
+	err error
+}
+
+// put writes pairs of a group code and a value: text, whole number or length.
+func (d *dxfWriter) put(pairs ...any) {
+	for i := 0; i+1 < len(pairs) && d.err == nil; i += 2 {
+		var value string
+		switch v := pairs[i+1].(type) {
+		case string:
+			value = v
+		case Layer:
+			value = string(v)
+		case int:
+			value = strconv.Itoa(v)
+		case float64:
+			value, d.err = plainNumber(v)
+		default:
+			d.err = fmt.Errorf("DXF: no way to write a %T", v)
+		}
+		if d.err == nil {
+			_, d.err = fmt.Fprintf(d.w, "%3d\r\n%s\r\n", pairs[i], value)
+		}
+	}
+}
+
+// point writes a point under the codes x, x+10 and x+20.
+func (d *dxfWriter) point(x int, p involute.Vec) {
+	d.put(x, p.X, x+10, p.Y, x+20, 0.0)
+}
+
+// begin opens a section.
+func (d *dxfWriter) begin(section string) { d.put(0, "SECTION", 2, section) }
+
+// end closes a section.
+func (d *dxfWriter) end() { d.put(0, "ENDSEC") }
+
+// header writes the variables that both versions share. Unit and extents are the
+// file's. R12 knows no $INSUNITS or $MEASUREMENT, yet importers look for them
+// there too and pass over what they don't know.
+func (d *dxfWriter) header(acadver string, f Outline) {
+	units, metric := 4, 1
+	if f.Unit == inspect.Inch {
+		units, metric = 1, 0
+	}
+	lo, hi := f.Bounds()
+	d.put(9, "$ACADVER", 1, acadver, 9, "$DWGCODEPAGE", 3, "ANSI_1252")
+	d.put(9, "$INSBASE")
+	d.point(10, involute.Vec{})
+	d.put(9, "$EXTMIN")
+	d.point(10, lo)
+	d.put(9, "$EXTMAX")
+	d.point(10, hi)
+	d.put(9, "$LUNITS", 70, 2, 9, "$INSUNITS", 70, units, 9, "$MEASUREMENT", 70, metric)
+}
+
+// A layerStyle is how a layer looks.
+type layerStyle struct {
+	name     Layer
+	color    int // DXF color index: 7 black or white, 5 blue, 8 gray
+	lineType string
+}
+
+// layerStyles returns the layers of our files. Layer 0 must be in every DXF.
+func layerStyles() [4]layerStyle {
+	return [4]layerStyle{
+		{"0", 7, "CONTINUOUS"},
+		{LayerCut, 7, "CONTINUOUS"},
+		{LayerBore, 5, "CONTINUOUS"},
+		{LayerReference, 8, "DASHED"},
+	}
+}
+
+// dashes returns the dash and the gap of line type DASHED in the file's unit.
+func dashes(u inspect.Unit) (dash, gap float64) { return 2 / u.MM(), 1 / u.MM() }
+
+// plainNumber formats x with twelve decimals, without exponent or negative zero.
+func plainNumber(x float64) (string, error) {
+	if math.IsNaN(x) || math.IsInf(x, 0) {
+		return "", fmt.Errorf("%g is not a finite number", x)
+	}
+	s := strconv.FormatFloat(x, 'f', 12, 64)
+	if strings.HasPrefix(s, "-") && strings.Trim(s, "-0.") == "" {
+		s = s[1:]
+	}
+	return s, nil
+}
+
+// maxDXFTitle bounds a title's bytes in a file; old readers take lines up to 255.
+const maxDXFTitle = 200
+
+// dxfText returns s for a one-line value: printable ASCII, all else as \U+XXXX
+// (UTF-16), control characters as spaces.
+func dxfText(s string) string {
+	var b strings.Builder
+	for _, r := range strings.TrimSpace(s) {
+		var piece string
+		switch {
+		case r < ' ' || r == 0x7f:
+			piece = " "
+		case r < 0x7f && r != '\\' && r != '^':
+			piece = string(r)
+		default:
+			for _, u := range utf16.Encode([]rune{r}) {
+				piece += fmt.Sprintf(`\U+%04X`, u)
+			}
+		}
+		if b.Len()+len(piece) > maxDXFTitle {
+			break
+		}
+		b.WriteString(piece)
+	}
+	return strings.TrimSpace(b.String())
+}

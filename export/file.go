@@ -1,0 +1,193 @@
+package export
+
+import (
+	"errors"
+	"fmt"
+	"io/fs"
+	"os"
+	"path/filepath"
+	"strings"
+)
+
+// An ExistError names files that are there already and were not to be
+// overwritten. It wraps fs.ErrExist.
+type ExistError struct{ Paths []string }
+
+// Error lists the files.
+func (e *ExistError) Error() string {
+	if len(e.Paths) == 1 {
+		return e.Paths[0] + " exists already"
+	}
+	return strings.Join(e.Paths, ", ") + " exist already"
+}
+
+// Unwrap returns fs.ErrExist.
+func (e *ExistError) Unwrap() error { return fs.ErrExist }
+
+// A File is a file to be written: its name within a folder, and what is in it.
+type File struct {
+	Name string
+	Data []byte
+}
+
+// WriteFileAtomic writes a file so that a reader sees it whole or not at all: into
+// a temporary file in the same folder, synced, then renamed. A file that exists is
+// an *ExistError unless force is set; whatever is no regular file is never
+// replaced. Nothing is left behind on failure.
+func WriteFileAtomic(path string, data []byte, force bool) error {
+	dir, name := filepath.Split(path)
+	if dir == "" {
+		dir = "."
+	}
+	w := folderWriter{dir: dir, force: force, rename: os.Rename}
+	return w.write([]File{{name, data}})
+}
+
+// WriteFolder writes files into a folder, all or none, and makes the folder where
+// it is missing. With force, files that exist are replaced; without, they are one
+// *ExistError and nothing is written. On failure the folder is as it was before.
+func WriteFolder(dir string, files []File, force bool) error {
+	first := firstMissing(dir)
+	if err := os.MkdirAll(dir, 0o755); err != nil {
+		return err
+	}
+	w := folderWriter{dir: dir, force: force, rename: os.Rename}
+	err := w.write(files)
+	if err != nil {
+		// Take away the folders made here, from the inside out; Remove spares
+		// one that somebody else has put something into.
+		for d := filepath.Clean(dir); first != "" && len(d) >= len(first); d = filepath.Dir(d) {
+			if os.Remove(d) != nil {
+				break
+			}
+		}
+	}
+	return err
+}
+
+// firstMissing returns the outermost folder of dir that does not exist, or "".
+func firstMissing(dir string) string {
+	missing := ""
+	for d := filepath.Clean(dir); ; d = filepath.Dir(d) {
+		if _, err := os.Lstat(d); !errors.Is(err, fs.ErrNotExist) || d == filepath.Dir(d) {
+			return missing
+		}
+		missing = d
+	}
+}
+
+// A folderWriter writes files into one folder, all or none.
+type folderWriter struct {
+	dir    string
+	force  bool
+	rename func(from, to string) error // os.Rename; another one in tests
+	undo   []func()                    // what to do on failure, last first
+	done   []func()                    // what to do after success
+}
+
+// write stages all files, then puts them in place.
+func (w *folderWriter) write(files []File) (err error) {
+	if err := w.check(files); err != nil {
+		return err
+	}
+	defer func() {
+		if err != nil {
+			for i := len(w.undo) - 1; i >= 0; i-- {
+				w.undo[i]()
+			}
+			return
+		}
+		for _, f := range w.done {
+			f()
+		}
+	}()
+	staged := make([]string, len(files))
+	for i, f := range files {
+		if staged[i], err = w.stage(f); err != nil {
+			return err
+		}
+	}
+	for i, f := range files {
+		if err := w.place(staged[i], filepath.Join(w.dir, f.Name), i == len(files)-1); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// check looks at all names, and at what stands there already.
+func (w *folderWriter) check(files []File) error {
+	seen := map[string]bool{}
+	exist := &ExistError{}
+	for _, f := range files {
+		if f.Name == "" || f.Name == "." || !filepath.IsLocal(f.Name) || strings.ContainsAny(f.Name, `/\`) {
+			return fmt.Errorf("%q is no file name", f.Name)
+		}
+		// Folders on Windows and macOS don't tell upper from lower case.
+		if key := strings.ToLower(f.Name); seen[key] {
+			return fmt.Errorf("two files want the name %q", f.Name)
+		} else {
+			seen[key] = true
+		}
+		path := filepath.Join(w.dir, f.Name)
+		info, err := os.Lstat(path)
+		switch {
+		case errors.Is(err, fs.ErrNotExist):
+		case err != nil:
+			return err
+		case !w.force:
+			exist.Paths = append(exist.Paths, path)
+		case !info.Mode().IsRegular():
+			return fmt.Errorf("%s is no regular file, and is not replaced", path)
+		}
+	}
+	if len(exist.Paths) > 0 {
+		return exist
+	}
+	return nil
+}
+
+// stage writes a file under a temporary name beside its place.
+func (w *folderWriter) stage(f File) (name string, err error) {
+	t, err := os.CreateTemp(w.dir, ".flankwright-*.tmp")
+	if err != nil {
+		return "", err
+	}
+	w.undo = append(w.undo, func() { os.Remove(t.Name()) })
+	_, err = t.Write(f.Data)
+	if err == nil {
+		err = t.Sync()
+	}
+	if e := t.Close(); err == nil {
+		err = e
+	}
+	if err == nil {
+		err = os.Chmod(t.Name(), 0o644) // CreateTemp makes it private
+	}
+	return t.Name(), err
+}
+
+// place renames a staged file to its name. What stood there comes back on failure.
+func (w *folderWriter) place(staged, path string, last bool) error {
+	undo := func() { os.Remove(path) }
+	old, err := os.ReadFile(path)
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+	case err != nil:
+		return err
+	case !w.force: // somebody wrote it since check looked
+		return &ExistError{Paths: []string{path}}
+	case !last: // after the last rename nothing can fail any more
+		aside, err := w.stage(File{Data: old})
+		if err != nil {
+			return err
+		}
+		undo = func() { w.rename(aside, path) }
+		w.done = append(w.done, func() { os.Remove(aside) })
+	}
+	if err := w.rename(staged, path); err != nil {
+		return err
+	}
+	w.undo = append(w.undo, undo)
+	return nil
+}

@@ -1,0 +1,245 @@
+package export
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"slices"
+
+	"flankwright/involute"
+)
+
+// A Section is a gear known by nothing but a closed contour: what was read back
+// from a file. It is measured with the geometry of lines and arcs alone.
+type Section struct {
+	pieces []placed
+	spaces []float64 // polar angles of the middles of the tooth spaces, ascending
+	least  float64   // smallest and largest radius, mm
+	most   float64
+	twist  float64 // turn per mm of face of a helical gear, radians
+}
+
+// A placed piece is a line or an arc with the polar angle of its middle.
+type placed struct {
+	involute.Curve
+	angle float64
+}
+
+// NewSection takes a contour apart: it finds the tooth spaces where the path
+// crosses the circle halfway between root and tip. lead is a helical gear's
+// lead in mm, 0 for a spur gear.
+func NewSection(p Path, lead float64) (Section, error) {
+	s := Section{least: math.Inf(1)}
+	if lead != 0 {
+		s.twist = 2 * math.Pi / math.Abs(lead)
+	}
+	for i := range p.Vertices {
+		c := p.Piece(i)
+		mid, _ := c.At(0.5)
+		s.pieces = append(s.pieces, placed{c, mid.Angle()})
+		for _, t := range []float64{0, 0.5} {
+			q, _ := c.At(t)
+			s.least, s.most = min(s.least, q.Norm()), max(s.most, q.Norm())
+		}
+	}
+	return s, s.findSpaces()
+}
+
+// findSpaces finds the middles of the tooth spaces between falling and rising flanks.
+func (s *Section) findSpaces() error {
+	half := (s.least + s.most) / 2
+	var falls, rises []float64
+	for _, c := range s.pieces {
+		a, _ := c.At(0)
+		b, _ := c.At(1)
+		if (a.Norm() < half) == (b.Norm() < half) {
+			continue
+		}
+		t, err := involute.FindRoot(func(t float64) float64 { q, _ := c.At(t); return q.Norm() - half }, 0, 1)
+		if err != nil {
+			return fmt.Errorf("contour: a flank does not cross the middle circle: %w", err)
+		}
+		q, _ := c.At(t)
+		if a.Norm() < half {
+			rises = append(rises, q.Angle())
+		} else {
+			falls = append(falls, q.Angle())
+		}
+	}
+	if len(falls) == 0 || len(falls) != len(rises) {
+		return fmt.Errorf("contour: %d flanks up and %d down, which makes no gear", len(rises), len(falls))
+	}
+	slices.Sort(rises)
+	for _, f := range falls {
+		i, _ := slices.BinarySearch(rises, f)
+		next := rises[i%len(rises)]
+		if i == len(rises) {
+			next += 2 * math.Pi
+		}
+		s.spaces = append(s.spaces, math.Remainder((f+next)/2, 2*math.Pi))
+	}
+	slices.Sort(s.spaces)
+	return nil
+}
+
+// Teeth returns the number of teeth counted on the contour.
+func (s Section) Teeth() int { return len(s.spaces) }
+
+// helicalPairs is how many pairs of spaces are measured on a helical gear, where
+// each takes a search in space; on a spur gear all are.
+const helicalPairs = 2
+
+// OverPins pushes a pin (a ball where the gear is helical) into tooth spaces
+// until it rests on both sides, and returns the least and greatest distance
+// over two pins in spaces nearest to opposite.
+func (s Section) OverPins(pin float64) (least, greatest float64, err error) {
+	z := len(s.spaces)
+	if z < 2 {
+		return 0, 0, errors.New("contour: fewer than two tooth spaces")
+	}
+	pairs := z
+	if s.twist != 0 {
+		pairs = min(z, helicalPairs)
+	}
+	centers := map[int]involute.Vec{}
+	at := func(k int) (involute.Vec, error) {
+		k %= z
+		if c, ok := centers[k]; ok {
+			return c, nil
+		}
+		c, err := s.rest(s.spaces[k], pin)
+		centers[k] = c
+		return c, err
+	}
+	least = math.Inf(1)
+	for k := range pairs {
+		a, err := at(k)
+		if err != nil {
+			return 0, 0, err
+		}
+		b, err := at(k + z/2)
+		if err != nil {
+			return 0, 0, err
+		}
+		m := a.Sub(b).Norm() + pin
+		least, greatest = min(least, m), max(greatest, m)
+	}
+	return least, greatest, nil
+}
+
+// rest returns the center of a pin that rests on both sides of the space about
+// the polar angle space: for each radius the angle at which both sides are
+// equally far, and the radius at which that is half the pin.
+func (s Section) rest(space, pin float64) (involute.Vec, error) {
+	left, right := s.sides(space)
+	width := math.Pi / float64(len(s.spaces))
+	// The middle of the space is where both sides are equally near; with a true
+	// contour that is its center line, and never a quarter of the width away.
+	balance := func(r float64) (involute.Vec, float64) {
+		off := func(turn float64) float64 {
+			c := involute.Polar(r, space+turn)
+			return s.distance(left, c) - s.distance(right, c)
+		}
+		turn, err := involute.FindRoot(off, -width/4, width/4)
+		if err != nil {
+			turn = 0
+		}
+		c := involute.Polar(r, space+turn)
+		return c, min(s.distance(left, c), s.distance(right, c))
+	}
+	r, err := involute.FindRoot(func(r float64) float64 {
+		_, d := balance(r)
+		return d - pin/2
+	}, s.least, s.most+pin)
+	if err != nil {
+		return involute.Vec{}, fmt.Errorf("contour: a pin of %g mm does not rest in the space at %.3f°", pin, space/involute.Degree)
+	}
+	c, _ := balance(r)
+	return c, nil
+}
+
+// sides returns the pieces of the two teeth beside a space, by side.
+func (s Section) sides(space float64) (left, right []placed) {
+	reach := 2 * math.Pi / float64(len(s.spaces))
+	for _, p := range s.pieces {
+		switch d := math.Remainder(p.angle-space, 2*math.Pi); {
+		case d >= 0 && d <= reach:
+			left = append(left, p)
+		case d < 0 && d >= -reach:
+			right = append(right, p)
+		}
+	}
+	return left, right
+}
+
+// sweptShare is the least share of a piece's distance in the plane that the
+// surface swept by it can come near: about the cosine of the helix angle, which
+// stays under 60° wherever teeth can be measured over balls.
+const sweptShare = 0.5
+
+// distance returns how far a point is from the nearest of the pieces, or, on a
+// helical gear, from the nearest of the surfaces that they sweep along the helix.
+func (s Section) distance(pieces []placed, c involute.Vec) float64 {
+	least, nearest := math.Inf(1), 0
+	for i, p := range pieces {
+		if d := pieceDistance(p.Curve, c); d < least {
+			least, nearest = d, i
+		}
+	}
+	if s.twist == 0 || len(pieces) == 0 {
+		return least
+	}
+	least = s.sweptDistance(pieces[nearest].Curve, c)
+	for i, p := range pieces {
+		if i != nearest && sweptShare*pieceDistance(p.Curve, c) < least {
+			least = min(least, s.sweptDistance(p.Curve, c))
+		}
+	}
+	return least
+}
+
+// pieceDistance returns the distance of a point from a line or an arc.
+func pieceDistance(p involute.Curve, c involute.Vec) float64 {
+	a, _ := p.At(0)
+	b, _ := p.At(1)
+	ends := min(c.Sub(a).Norm(), c.Sub(b).Norm())
+	switch p := p.(type) {
+	case involute.Line:
+		d := b.Sub(a)
+		t := c.Sub(a).Dot(d) / d.Dot(d)
+		if t > 0 && t < 1 {
+			return min(ends, math.Abs(d.Cross(c.Sub(a)))/d.Norm())
+		}
+	case involute.Arc:
+		from := c.Sub(p.Center)
+		turn := math.Remainder(from.Angle()-p.Start-p.Sweep/2, 2*math.Pi)
+		if math.Abs(turn) <= math.Abs(p.Sweep)/2 {
+			return min(ends, math.Abs(from.Norm()-p.Radius))
+		}
+	}
+	return ends
+}
+
+// sweptSteps samples a piece for the point nearest to a ball; golden section
+// then closes in on it. A piece turns by under 90°, over which the distance has
+// one minimum, or two at its ends.
+const sweptSteps = 12
+
+// sweptDistance returns the distance of the point c of the plane z = 0 from the
+// surface that a piece sweeps when it moves along the helix.
+func (s Section) sweptDistance(p involute.Curve, c involute.Vec) float64 {
+	at := func(t float64) float64 {
+		q, _ := p.At(t)
+		return involute.HelixDistance(c.Norm(), q.Norm(), q.Angle()-c.Angle(), s.twist)
+	}
+	best, bestT := math.Inf(1), 0.0
+	for i := range sweptSteps + 1 {
+		t := float64(i) / sweptSteps
+		if d := at(t); d < best {
+			best, bestT = d, t
+		}
+	}
+	lo, hi := max(0, bestT-1.0/sweptSteps), min(1, bestT+1.0/sweptSteps)
+	_, farthest := goldenMax(func(t float64) float64 { return -at(t) }, lo, hi)
+	return min(best, -farthest)
+}
