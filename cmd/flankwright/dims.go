@@ -1,0 +1,263 @@
+package main
+
+import (
+	"math"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/inspect"
+	"flankwright/involute"
+)
+
+func dimsCommand() *cli.Command {
+	flags := append(jobFlags(), commonFlags()...)
+	flags = append(flags, fileFlags("file to write instead of standard output")...)
+	flags = append(flags,
+		&cli.BoolFlag{Name: "index-list", Usage: "the angle of every tooth from the first, for the dividing head", Category: catOutput},
+		&cli.StringFlag{Name: "dial-radius", Usage: "radius at which a dial indicator reads the backlash (the pitch circle's)", Category: catOutput})
+	return &cli.Command{
+		Name: "dims", Usage: "all dimensions of the gears and meshes, with warnings",
+		UsageText: "flankwright dims [JOB] [flags]\nflankwright dims --dp 16 --teeth 18", Flags: flags,
+		Action: func(c *cli.Context) error {
+			j, gears, err := loadJob(c)
+			if err != nil {
+				return err
+			}
+			radius, err := dialRadius(c, j)
+			if err != nil {
+				return err
+			}
+			d := newDims(j, gears, radius)
+			d.indexList = c.Bool("index-list")
+			if c.Bool("explain") {
+				d.Explain = j.explainDims(gears)
+			}
+			return emit(c, d, func() []byte { return d.text(newPage(c.App.Writer), j.digits(c)) })
+		},
+	}
+}
+
+func dialRadius(c *cli.Context, j *job) (float64, error) {
+	v, ok := flagValue(c, "dial-radius")
+	if !ok {
+		return 0, nil
+	}
+	r, _, err := settings{vals: map[string]value{"r": v}, flagUnit: j.display}.positive("r")
+	return r, err
+}
+
+// dims is the result of the command, as JSON writes it.
+type dims struct {
+	Gears    ordered       `json:"gears"`
+	Meshes   []meshDims    `json:"meshes"`
+	Warnings []warning     `json:"warnings"`
+	Explain  []explanation `json:"explain,omitempty"`
+
+	job       *job
+	list      []*gear
+	gears     []gearDims
+	indexList bool
+}
+
+type gearDims struct {
+	Teeth           int      `json:"teeth"`
+	Module          float64  `json:"module_mm"`
+	DP              float64  `json:"dp"`
+	PressureAngle   float64  `json:"pressure_angle_deg"`
+	TransverseAngle float64  `json:"transverse_pressure_angle_deg"`
+	Helix           float64  `json:"helix_angle_deg"`
+	Hand            string   `json:"hand,omitempty"`
+	Lead            *float64 `json:"lead_mm,omitempty"`
+	Shift           float64  `json:"shift"`
+	ShiftLength     float64  `json:"shift_mm"`
+	Reference       float64  `json:"reference_diameter_mm"`
+	Base            float64  `json:"base_diameter_mm"`
+	Tip             float64  `json:"tip_diameter_mm"`
+	Root            float64  `json:"root_diameter_mm"`
+	Form            float64  `json:"form_diameter_mm"`
+	TipForm         float64  `json:"tip_form_diameter_mm"`
+	Thickness       float64  `json:"tooth_thickness_mm"`
+	TransverseThick float64  `json:"transverse_tooth_thickness_mm"`
+	TipThickness    float64  `json:"tip_thickness_mm"`
+	Undercut        bool     `json:"undercut"`
+	WholeDepth      float64  `json:"whole_depth_mm"`
+	Limits          span     `json:"thickness_limits_mm"`
+	RootLimits      span     `json:"root_diameter_limits_mm"`
+	CutDepth        span     `json:"depth_of_cut_mm"`
+	NormalPitch     float64  `json:"normal_pitch_mm"`
+	BasePitch       float64  `json:"normal_base_pitch_mm"`
+	TransverseBase  float64  `json:"transverse_base_pitch_mm"`
+	Index           float64  `json:"index_angle_deg"`
+	VirtualTeeth    float64  `json:"virtual_teeth"`
+	Bore            *span    `json:"bore_mm,omitempty"`
+	Rack            rackDims `json:"rack"`
+}
+
+type rackDims struct {
+	Name      string  `json:"name"`
+	Addendum  float64 `json:"addendum"`
+	Dedendum  float64 `json:"dedendum"`
+	TipRadius float64 `json:"tip_radius"`
+	Source    string  `json:"source"`
+}
+
+func newDims(j *job, gears []*gear, dial float64) *dims {
+	d := &dims{job: j, list: gears, Warnings: append([]warning{}, j.warnings...), Meshes: []meshDims{}}
+	for _, g := range gears {
+		one := newGearDims(g)
+		d.gears = append(d.gears, one)
+		d.Gears.add(g.name, one)
+	}
+	for _, m := range j.meshes {
+		if len(gears) == len(j.gears) || gears[0] == m.first || gears[0] == m.second {
+			d.Meshes = append(d.Meshes, newMeshDims(m, dial))
+		}
+	}
+	return d
+}
+
+func newGearDims(g *gear) gearDims {
+	gg, t := g.g, g.nominal
+	spec := gg.Spec()
+	thick := g.thickness.Limits
+	d := gearDims{
+		Teeth: gg.Teeth(), Module: gg.Module(), DP: 25.4 / gg.Module(),
+		PressureAngle:   gg.PressureAngle() / involute.Degree,
+		TransverseAngle: gg.TransversePressureAngle() / involute.Degree,
+		Helix:           math.Abs(spec.Helix) / involute.Degree,
+		Shift:           spec.Shift, ShiftLength: spec.Shift * gg.Module(),
+		Reference: gg.ReferenceDiameter(), Base: gg.BaseDiameter(), Tip: gg.TipDiameter(),
+		Root: t.RootDiameter(), Form: t.FormDiameter(), TipForm: gg.TipFormDiameter(),
+		Thickness: t.Thickness(), TransverseThick: t.ThicknessAt(gg.ReferenceDiameter()),
+		TipThickness: t.TipThickness(), Undercut: t.Undercut(),
+		WholeDepth:  (gg.TipDiameter() - t.RootDiameter()) / 2,
+		Limits:      toSpan(thick),
+		RootLimits:  span{gg.RootDiameterAt(thick.Min), gg.RootDiameterAt(thick.Max)},
+		NormalPitch: gg.NormalPitch(), BasePitch: gg.NormalBasePitch(), TransverseBase: gg.TransverseBasePitch(),
+		Index: 360 / float64(gg.Teeth()), VirtualTeeth: gg.VirtualTeeth(),
+		Rack: rackDims{g.rack, spec.Rack.Addendum, spec.Rack.Dedendum, spec.Rack.TipRadius, g.source},
+	}
+	d.CutDepth = span{(d.Tip - d.RootLimits.Max) / 2, (d.Tip - d.RootLimits.Min) / 2}
+	if lead, ok := gg.Lead(); ok {
+		d.Lead, d.Hand = &lead, handWord(spec.Helix)
+	}
+	if g.bore != nil {
+		b := toSpan(g.bore.limits)
+		d.Bore = &b
+	}
+	return d
+}
+
+func handWord(helix float64) string {
+	if helix < 0 {
+		return "left"
+	}
+	return "right"
+}
+
+type meshDims struct {
+	Gears          []string   `json:"gears"`
+	Center         float64    `json:"center_distance_mm"`
+	CenterLimits   span       `json:"center_distance_limits_mm"`
+	Tight          float64    `json:"tight_center_distance_mm"`
+	ReferenceCtr   float64    `json:"reference_center_distance_mm"`
+	Ratio          float64    `json:"ratio"`
+	WorkingAngle   float64    `json:"working_pressure_angle_deg"`
+	Contact        float64    `json:"transverse_contact_ratio"`
+	ContactByTips  float64    `json:"transverse_contact_ratio_by_tips"`
+	Overlap        float64    `json:"overlap_ratio"`
+	Circumferental span       `json:"circumferential_backlash_mm"`
+	Normal         span       `json:"normal_backlash_mm"`
+	AngleFirst     span       `json:"angular_backlash_first_deg"`
+	AngleSecond    span       `json:"angular_backlash_second_deg"`
+	CenterPlay     span       `json:"center_play_mm"`
+	Dial           dialDims   `json:"dial_backlash"`
+	Clearance      pairDims   `json:"tip_clearance_mm"`
+	Pitch          pairDims   `json:"working_pitch_diameter_mm"`
+	Start          pairDims   `json:"start_of_active_profile_mm"`
+	End            pairDims   `json:"end_of_active_profile_mm"`
+	SlidingRoot    pairSlides `json:"specific_sliding_at_root"`
+	SlidingTip     pairSlides `json:"specific_sliding_at_tip"`
+	Note           string     `json:"note"`
+
+	mesh *mesh
+}
+
+type pairDims struct {
+	First  float64 `json:"first"`
+	Second float64 `json:"second"`
+}
+
+// pairSlides holds null where sliding is unbounded, on the base circle.
+type pairSlides struct {
+	First  *float64 `json:"first"`
+	Second *float64 `json:"second"`
+}
+
+type dialDims struct {
+	Radius pairDims `json:"radius_mm"`
+	First  span     `json:"first_mm"`
+	Second span     `json:"second_mm"`
+}
+
+// geometricNote is said with every backlash until a budget can be made.
+const geometricNote = "backlash is geometric: before runout, pitch error and temperature"
+
+func newMeshDims(m *mesh, dial float64) meshDims {
+	d := meshDims{Gears: []string{m.first.name, m.second.name}, mesh: m, Note: geometricNote}
+	mm, a := m.plan.Mesh, m.plan.Nominal()
+	d.Center, d.CenterLimits = a, toSpan(m.plan.Center)
+	d.Tight, _ = mm.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness())
+	d.ReferenceCtr, d.Ratio = mm.ReferenceCenter(), mm.Ratio()
+	c, err := mm.Contact(a, m.first.nominal, m.second.nominal)
+	if err == nil {
+		d.WorkingAngle = c.WorkingAngle / involute.Degree
+		d.Contact, d.ContactByTips = c.TransverseRatio, c.RatioByTips
+		d.Pitch = pairDims{c.Pitch1, c.Pitch2}
+		d.Start, d.End = pairDims{c.Start1, c.Start2}, pairDims{c.End1, c.End2}
+		d.SlidingRoot = pairSlides{slide(c.SlidingA1), slide(c.SlidingE2)}
+		d.SlidingTip = pairSlides{slide(c.SlidingE1), slide(c.SlidingA2)}
+	}
+	d.Overlap = mm.OverlapRatio(m.face())
+	d.Clearance.First, d.Clearance.Second = mm.TipClearances(a, m.first.nominal, m.second.nominal)
+	least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
+	if err == nil {
+		d.backlash(least, most, dial)
+	}
+	return d
+}
+
+func (d *meshDims) backlash(least, most involute.Play, dial float64) {
+	d.Circumferental = span{least.Circumferential, most.Circumferential}
+	d.Normal = span{least.Normal, most.Normal}
+	d.AngleFirst = span{least.AngleFirst / involute.Degree, most.AngleFirst / involute.Degree}
+	d.AngleSecond = span{least.AngleSecond / involute.Degree, most.AngleSecond / involute.Degree}
+	d.CenterPlay = span{least.CenterPlay, most.CenterPlay}
+	r1, r2 := dial, dial
+	if dial == 0 {
+		r1, r2 = d.Pitch.First/2, d.Pitch.Second/2
+	}
+	d.Dial = dialDims{
+		Radius: pairDims{r1, r2},
+		First:  span{least.AngleFirst * r1, most.AngleFirst * r1},
+		Second: span{least.AngleSecond * r2, most.AngleSecond * r2},
+	}
+}
+
+func slide(s involute.Sliding) *float64 {
+	if s.Unbounded {
+		return nil
+	}
+	return &s.Value
+}
+
+// thicknessWords says where the thickness limits come from.
+func thicknessWords(by inspect.Decider) string {
+	switch by {
+	case inspect.ByThin:
+		return "thin"
+	case inspect.ByBacklash:
+		return "backlash"
+	}
+	return "nominal"
+}

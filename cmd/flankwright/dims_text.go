@@ -1,0 +1,263 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+
+	"flankwright/inspect"
+)
+
+// text prints the dimensions: first what the lathe and the mill need, then backlash, theory last.
+func (d *dims) text(p *page, digits int) []byte {
+	u := d.job.display
+	f := func(mm float64) string { return u.Format(mm, digits) }
+	if title, _, _ := d.job.top.word("title"); title != "" {
+		p.head(title)
+		p.blank()
+	}
+	p.grid(d.shopGrid(u, f, digits))
+	for _, m := range d.Meshes {
+		p.blank()
+		p.grid(m.shopGrid(u, f, digits))
+	}
+	p.blank()
+	p.grid(d.theoryGrid(u, f, digits))
+	for _, m := range d.Meshes {
+		p.blank()
+		p.grid(m.theoryGrid(u, f))
+	}
+	if len(d.Meshes) > 0 {
+		p.blank()
+		p.line("Backlash here is geometric: before runout, pitch error and temperature.")
+	}
+	d.job.moreDigits(p, d.list, digits)
+	if d.indexList {
+		d.printIndex(p)
+	}
+	p.explanations(d.Explain)
+	p.warnings(d.Warnings)
+	return []byte(p.b.String())
+}
+
+// moreDigits says where a narrow range took more decimals than asked.
+func (j *job) moreDigits(p *page, gears []*gear, digits int) {
+	for _, g := range gears {
+		if out := j.display.FormatLimits(g.thickness.Limits, digits); out.More {
+			p.line("Limits of %s are narrower than a %s of %d decimals; they are printed with %d.", g.name, j.display, digits, out.Decimals)
+		}
+	}
+}
+
+func (d *dims) names() []string {
+	var names []string
+	for _, g := range d.list {
+		names = append(names, g.name)
+	}
+	return names
+}
+
+// each makes a row's cells from a function of the gears.
+func (d *dims) each(cell func(i int, g gearDims) string) []string {
+	var cells []string
+	for i, g := range d.gears {
+		cells = append(cells, cell(i, g))
+	}
+	return cells
+}
+
+func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid {
+	g := grid{heads: d.names()}
+	unit := u.String()
+	length := func(label string, pick func(gearDims) float64) {
+		g.row(label, unit, d.each(func(_ int, x gearDims) string { return f(pick(x)) })...)
+	}
+	limits := func(label string, pick func(gearDims) span) {
+		var low, high []string
+		for _, x := range d.gears {
+			s := pick(x)
+			out := u.FormatLimits(inspect.Limits{Min: s.Min, Max: s.Max}, digits)
+			low, high = append(low, out.Low), append(high, out.High)
+		}
+		g.row(label+", least", unit, low...)
+		g.row("  most", unit, high...)
+	}
+	g.row("Teeth", "", d.each(func(_ int, x gearDims) string { return strconv.Itoa(x.Teeth) })...)
+	length("Outside (tip) diameter", func(x gearDims) float64 { return x.Tip })
+	length("Whole depth, nominal tooth", func(x gearDims) float64 { return x.WholeDepth })
+	limits("Depth of cut from the outside", func(x gearDims) span { return x.CutDepth })
+	length("Root diameter, nominal tooth", func(x gearDims) float64 { return x.Root })
+	limits("Root diameter, thinned tooth", func(x gearDims) span { return x.RootLimits })
+	d.boreRows(&g, u, digits)
+	limits("Tooth thickness, normal, at the pitch (reference) circle", func(x gearDims) span { return x.Limits })
+	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i].thickness.By) })...)
+	g.row("Angle of index", "deg", d.each(func(_ int, x gearDims) string { return fmt.Sprintf("%.6f", x.Index) })...)
+	g.row("", "", d.each(func(_ int, x gearDims) string { return angleDMS(2 * math.Pi / float64(x.Teeth)) })...)
+	return g
+}
+
+func (d *dims) boreRows(g *grid, u inspect.Unit, digits int) {
+	any := false
+	var low, high, class []string
+	for _, x := range d.list {
+		if x.bore == nil {
+			low, high, class = append(low, "-"), append(high, "-"), append(class, "")
+			continue
+		}
+		any = true
+		out := u.FormatLimits(x.bore.limits, digits)
+		low, high, class = append(low, out.Low), append(high, out.High), append(class, x.bore.class)
+	}
+	if any {
+		g.row("Bore, least", u.String(), low...)
+		g.row("  most", u.String(), high...)
+	}
+	for _, c := range class {
+		if c != "" {
+			g.row("  ISO 286 class", "", class...)
+			break
+		}
+	}
+	for _, x := range d.list {
+		if x.keyway != nil {
+			g.row("Keyway, width", u.String(), keywayCells(d.list, u, digits, func(k *keyway, _ float64) float64 { return k.width })...)
+			g.row("  across from the bore's wall", u.String(), keywayCells(d.list, u, digits, func(k *keyway, b float64) float64 { return b + k.depth })...)
+			break
+		}
+	}
+}
+
+func keywayCells(list []*gear, u inspect.Unit, digits int, pick func(*keyway, float64) float64) []string {
+	var cells []string
+	for _, x := range list {
+		if x.keyway == nil {
+			cells = append(cells, "-")
+			continue
+		}
+		cells = append(cells, u.Format(pick(x.keyway, x.bore.nominal), digits))
+	}
+	return cells
+}
+
+func (d *dims) theoryGrid(u inspect.Unit, f func(float64) string, digits int) grid {
+	g := grid{heads: d.names()}
+	unit := u.String()
+	length := func(label string, pick func(gearDims) float64) {
+		g.row(label, unit, d.each(func(_ int, x gearDims) string { return f(pick(x)) })...)
+	}
+	number := func(label, unit, format string, pick func(gearDims) float64) {
+		g.row(label, unit, d.each(func(_ int, x gearDims) string { return fmt.Sprintf(format, pick(x)) })...)
+	}
+	number("Diametral pitch, normal", "1/in", "%.4f", func(x gearDims) float64 { return x.DP })
+	number("Module, normal", "mm", "%.4f", func(x gearDims) float64 { return x.Module })
+	number("Pressure angle, normal", "deg", "%.4f", func(x gearDims) float64 { return x.PressureAngle })
+	if d.helical() {
+		number("  transverse", "deg", "%.4f", func(x gearDims) float64 { return x.TransverseAngle })
+		number("Helix angle", "deg", "%.4f", func(x gearDims) float64 { return x.Helix })
+		g.row("  hand", "", d.each(func(_ int, x gearDims) string { return x.Hand })...)
+		length("Lead", func(x gearDims) float64 {
+			if x.Lead == nil {
+				return 0
+			}
+			return *x.Lead
+		})
+		number("Virtual teeth z/cos³β (form cutter)", "", "%.2f", func(x gearDims) float64 { return x.VirtualTeeth })
+	}
+	number("Profile shift coefficient x", "", "%+.4f", func(x gearDims) float64 { return x.Shift })
+	length("  as a length", func(x gearDims) float64 { return x.ShiftLength })
+	length("Pitch (reference) diameter", func(x gearDims) float64 { return x.Reference })
+	length("Base diameter", func(x gearDims) float64 { return x.Base })
+	length("Form diameter (involute begins)", func(x gearDims) float64 { return x.Form })
+	g.row("  undercut", "", d.each(func(_ int, x gearDims) string { return yesNo(x.Undercut) })...)
+	length("Tooth thickness, nominal, normal", func(x gearDims) float64 { return x.Thickness })
+	length("Tip thickness, normal", func(x gearDims) float64 { return x.TipThickness })
+	length("Circular pitch, normal", func(x gearDims) float64 { return x.NormalPitch })
+	length("Base pitch, normal", func(x gearDims) float64 { return x.BasePitch })
+	g.row("Rack", "", d.each(func(_ int, x gearDims) string { return x.Rack.Name })...)
+	return g
+}
+
+func (d *dims) helical() bool {
+	for _, g := range d.list {
+		if g.g.Helical() {
+			return true
+		}
+	}
+	return false
+}
+
+func yesNo(b bool) string {
+	if b {
+		return "yes"
+	}
+	return "no"
+}
+
+// shopGrid holds what the pair's mounting needs, least and most.
+func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid {
+	g := grid{heads: []string{"least", "most"}}
+	unit := u.String()
+	g.section(m.Gears[0] + " and " + m.Gears[1])
+	center := u.FormatLimits(m.mesh.plan.Center, digits)
+	g.row("Center distance", unit, center.Low, center.High)
+	range_ := func(label, unit string, s span, format func(float64) string) {
+		g.row(label, unit, format(s.Min), format(s.Max))
+	}
+	minutes := func(deg float64) string { return fmt.Sprintf("%.2f", deg*60) }
+	range_("Backlash, circumferential, at the working pitch circle", unit, m.Circumferental, f)
+	range_("  normal to the flanks", unit, m.Normal, f)
+	range_("  as an angle of "+m.Gears[0], "arcmin", m.AngleFirst, minutes)
+	range_("  as an angle of "+m.Gears[1], "arcmin", m.AngleSecond, minutes)
+	range_("  as play of the center distance", unit, m.CenterPlay, f)
+	range_(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.First), m.Gears[0]), unit, m.Dial.First, f)
+	range_(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.Second), m.Gears[1]), unit, m.Dial.Second, f)
+	return g
+}
+
+// theoryGrid holds how the pair runs at the nominal center distance.
+func (m meshDims) theoryGrid(u inspect.Unit, f func(float64) string) grid {
+	g := grid{heads: m.Gears}
+	unit := u.String()
+	g.section("Running at center distance " + f(m.Center))
+	pair := func(label string, d pairDims) { g.row(label, unit, f(d.First), f(d.Second)) }
+	pair("Working pitch diameter", m.Pitch)
+	pair("Tip clearance, tip to the mate's root", m.Clearance)
+	pair("Start of active profile", m.Start)
+	pair("End of active profile", m.End)
+	slides := func(label string, s pairSlides) { g.row(label, "", slideText(s.First), slideText(s.Second)) }
+	slides("Specific sliding at the root end", m.SlidingRoot)
+	slides("  at the tip end", m.SlidingTip)
+	g.row("Ratio", "", "", fmt.Sprintf("%.5f", m.Ratio))
+	g.row("Working pressure angle, transverse", "deg", "", fmt.Sprintf("%.4f", m.WorkingAngle))
+	g.row("Contact ratio, transverse", "", "", fmt.Sprintf("%.4f", m.Contact))
+	if m.Overlap > 0 || m.mesh.first.g.Helical() {
+		g.row("Overlap ratio", "", "", overlapText(m))
+	}
+	g.row("Center distance without backlash, nominal teeth", unit, "", f(m.Tight))
+	return g
+}
+
+func overlapText(m meshDims) string {
+	if m.mesh.face() == 0 {
+		return "needs face_width"
+	}
+	return fmt.Sprintf("%.4f", m.Overlap)
+}
+
+func slideText(s *float64) string {
+	if s == nil {
+		return "unbounded"
+	}
+	return fmt.Sprintf("%.3f", *s)
+}
+
+func (d *dims) printIndex(p *page) {
+	for i, g := range d.gears {
+		p.blank()
+		p.head("Index list, " + d.list[i].name)
+		for k := range g.Teeth {
+			rad := 2 * math.Pi * float64(k) / float64(g.Teeth)
+			p.line("%5d  %12.6f  %s", k+1, 360*float64(k)/float64(g.Teeth), angleDMS(rad))
+		}
+	}
+}

@@ -1,0 +1,280 @@
+package main
+
+import (
+	"strings"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/inspect"
+)
+
+// Flag categories, as the help groups them.
+const (
+	catTooth  = "Tooth (× module means a plain number)"
+	catGear   = "Gear (with a job file: of the gear that --gear names)"
+	catMate   = "Mate, for a pair without a job file"
+	catMesh   = "Mesh"
+	catOutput = "Output"
+)
+
+func flagName(key string) string { return strings.ReplaceAll(key, "_", "-") }
+
+// mateKeys are the gear keys that --mate-… flags give the second gear of a pair.
+func mateKeys() []string {
+	return []string{"teeth", "shift", "thin", "tip_diameter", "face_width", "ring", "material"}
+}
+
+// jobFlags are the flags that describe a gear or a pair, one for each key that
+// is a single value. What is not supported yet is accepted here and refused by name.
+func jobFlags() []cli.Flag {
+	var flags []cli.Flag
+	for _, k := range keys() {
+		category := ""
+		switch {
+		case k.usage == "":
+			continue
+		case k.where&inTooth != 0:
+			category = catTooth
+		case k.where&inGear != 0:
+			category = catGear
+		case k.where&inMesh != 0:
+			category = catMesh
+		default:
+			category = "Head of the sheet"
+		}
+		flags = append(flags, keyFlag(flagName(k.name), k.usage, category, k))
+	}
+	for _, name := range mateKeys() {
+		k, _ := findKey(name)
+		flags = append(flags, keyFlag("mate-"+flagName(name), k.usage, catMate, k))
+	}
+	return flags
+}
+
+func keyFlag(name, usage, category string, k keySpec) cli.Flag {
+	if k.name == "ring" {
+		return &cli.BoolFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
+	}
+	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
+}
+
+// commonFlags mean the same in every command that computes.
+func commonFlags() []cli.Flag {
+	return []cli.Flag{
+		&cli.StringFlag{Name: "units", Usage: "show lengths in mm or in, and read bare lengths of flags so", Category: catOutput},
+		&cli.BoolFlag{Name: "json", Usage: "JSON instead of text, not rounded, lengths in mm", Category: catOutput},
+		&cli.IntFlag{Name: "digits", Usage: "decimals of lengths (3 in mm, 4 in inches)", Value: -1, DefaultText: "by unit", Category: catOutput},
+		&cli.BoolFlag{Name: "explain", Usage: "each result with its formula, the numbers put in and the source", Category: catOutput},
+		&cli.StringFlag{Name: "gear", Usage: "one gear of the job, by name", Category: catOutput},
+		&cli.StringFlag{Name: "example", Usage: "use an example job that the program carries", Category: catOutput},
+		&cli.StringFlag{Name: "shop", Usage: "what is on hand", Hidden: true},
+	}
+}
+
+// fileFlags are for commands that write files.
+func fileFlags(usage string) []cli.Flag {
+	return []cli.Flag{
+		&cli.StringFlag{Name: "output", Aliases: []string{"o"}, Usage: usage, Category: catOutput},
+		&cli.BoolFlag{Name: "force", Usage: "overwrite files that exist", Category: catOutput},
+	}
+}
+
+// flagValue returns what a flag says, as a value placed at the flag.
+func flagValue(c *cli.Context, name string) (value, bool) {
+	if !c.IsSet(name) {
+		return value{}, false
+	}
+	text := c.String(name)
+	if text == "" && c.Bool(name) {
+		text = "true"
+	}
+	return value{flagText(text), place{file: "--" + name}}, true
+}
+
+// flagged collects the flags of the keys of a scope; prefix is "" or "mate-".
+func flagged(c *cli.Context, where scope, prefix string) (map[string]value, error) {
+	vals := map[string]value{}
+	for _, k := range keys() {
+		if k.where&where == 0 {
+			continue
+		}
+		v, ok := flagValue(c, prefix+flagName(k.name))
+		if !ok {
+			continue
+		}
+		if k.name == "material" && prefix == "" {
+			continue // a word for the head of the sheet
+		}
+		if err := refuseLater(k, v, v.at); err != nil {
+			return nil, err
+		}
+		vals[k.name] = v
+	}
+	return vals, nil
+}
+
+// unitFlag reads --units.
+func unitFlag(c *cli.Context) (inspect.Unit, bool, error) {
+	switch c.String("units") {
+	case "":
+		return inspect.Millimeter, false, nil
+	case "mm":
+		return inspect.Millimeter, true, nil
+	case "in":
+		return inspect.Inch, true, nil
+	}
+	return 0, false, wrong("--units: %q is not a unit; write mm or in", c.String("units"))
+}
+
+// requestFromFlags builds a request from flags alone: a gear called gear, or
+// with --mate-teeth a pinion and a wheel.
+func requestFromFlags(c *cli.Context) (request, error) {
+	r := request{file: "flags"}
+	shared, err := flagged(c, inTooth, "")
+	if err != nil {
+		return r, err
+	}
+	unit, ok, err := unitFlag(c)
+	if err != nil {
+		return r, err
+	}
+	if !ok && (has(shared, "dp") || has(shared, "transverse_dp")) {
+		unit = inspect.Inch
+	}
+	r.jobUnit, r.display = unit, unit
+	if r.top, err = r.flagSettings(c, atTop, ""); err != nil {
+		return r, err
+	}
+	own, err := flagged(c, inGear, "")
+	if err != nil {
+		return r, err
+	}
+	mate, err := flagged(c, inGear, "mate-")
+	if err != nil {
+		return r, err
+	}
+	mesh, err := r.flagSettings(c, inMesh, "")
+	if err != nil {
+		return r, err
+	}
+	base := settings{vals: shared, jobUnit: unit, flagUnit: unit}
+	if len(mate) == 0 {
+		if len(mesh.vals) > 0 {
+			return r, wrong("--center, --backlash and --thin-share are about a pair: give --mate-teeth too")
+		}
+		r.gears = []gearRequest{{"gear", base.with(own), own}}
+		return r, nil
+	}
+	if !has(mate, "teeth") {
+		return r, wrong("a pair needs --mate-teeth")
+	}
+	if face, ok := own["face_width"]; ok && !has(mate, "face_width") {
+		mate["face_width"] = face // one face width given is meant for both
+	}
+	delete(mate, "hand")
+	r.gears = []gearRequest{
+		{"pinion", base.with(own), own},
+		{"wheel", base.with(mate), without(mate, "hand")},
+	}
+	r.gears[1].settings.vals = without(r.gears[1].settings.vals, "hand")
+	mesh.vals["gears"] = value{content: []value{{content: "pinion"}, {content: "wheel"}}}
+	r.meshes = []settings{mesh}
+	return r, nil
+}
+
+func has(vals map[string]value, key string) bool { _, ok := vals[key]; return ok }
+
+func (r request) flagSettings(c *cli.Context, where scope, prefix string) (settings, error) {
+	vals, err := flagged(c, where, prefix)
+	return settings{vals: vals, jobUnit: r.jobUnit, flagUnit: r.display}, err
+}
+
+// overrideByFlags lays flags over a job file. Flags of the tooth go to every
+// gear, or to the one that --gear names; flags of a gear need that name where
+// the job has several; flags of a mesh need a job with one mesh.
+func (r *request) overrideByFlags(c *cli.Context) error {
+	unit, ok, err := unitFlag(c)
+	if err != nil {
+		return err
+	}
+	if ok {
+		r.display = unit
+	}
+	r.setFlagUnit(r.display)
+	for _, k := range mateKeys() {
+		if c.IsSet("mate-" + flagName(k)) {
+			return wrong("--mate-%s: is for a pair without a job file; use --gear NAME --%s", flagName(k), flagName(k))
+		}
+	}
+	top, err := flagged(c, atTop, "")
+	if err != nil {
+		return err
+	}
+	r.top = r.top.with(top)
+	if err := r.overrideGears(c); err != nil {
+		return err
+	}
+	mesh, err := flagged(c, inMesh, "")
+	if err != nil || len(mesh) == 0 {
+		return err
+	}
+	if len(r.meshes) != 1 {
+		return wrong("--center, --backlash and --thin-share need a job with exactly one mesh; this one has %d", len(r.meshes))
+	}
+	r.meshes[0] = r.meshes[0].with(mesh)
+	return nil
+}
+
+func (r *request) setFlagUnit(u inspect.Unit) {
+	r.top.flagUnit = u
+	for i := range r.gears {
+		r.gears[i].settings.flagUnit = u
+	}
+	for i := range r.meshes {
+		r.meshes[i].flagUnit = u
+	}
+}
+
+func (r *request) overrideGears(c *cli.Context) error {
+	tooth, err := flagged(c, inTooth, "")
+	if err != nil {
+		return err
+	}
+	all, err := flagged(c, inGear, "")
+	if err != nil {
+		return err
+	}
+	name := c.String("gear")
+	if name != "" {
+		if _, ok := r.gearIndex(name); !ok {
+			return wrong("--gear: %s", noGear(name, r.gearNames()))
+		}
+	}
+	for i := range r.gears {
+		g := &r.gears[i]
+		if name != "" && g.name != name {
+			continue
+		}
+		over := tooth
+		if name != "" || len(r.gears) == 1 {
+			over = all
+		} else if key, ok := onlyGear(all, tooth); ok {
+			return wrong("--%s: is about one gear, and the job has %s; say which by --gear", flagName(key), quoted(r.gearNames()))
+		}
+		g.settings = overlay(g.settings, over)
+		for k, v := range over {
+			g.own[k] = v
+		}
+	}
+	return nil
+}
+
+// onlyGear returns a flag that is not shared by all gears, in the order of the keys.
+func onlyGear(all, tooth map[string]value) (string, bool) {
+	for _, k := range keys() {
+		if has(all, k.name) && !has(tooth, k.name) {
+			return k.name, true
+		}
+	}
+	return "", false
+}

@@ -1,0 +1,180 @@
+package main
+
+import "strings"
+
+// A scope is where in a job file a key may stand.
+type scope int
+
+const (
+	atTop scope = 1 << iota
+	inTooth
+	inGear
+	inMesh
+)
+
+// A keySpec is one key of the job file; the flag of the same name has - for _.
+type keySpec struct {
+	name  string
+	where scope
+	later bool   // not supported yet: refused, never ignored
+	usage string // what the flag's help says; blank where there is no flag
+}
+
+// keys lists every key there is, in the order of the house's table.
+func keys() []keySpec {
+	return []keySpec{
+		{"title", atTop, false, "job title for sheets"},
+		{"part", atTop, false, "part name or number"},
+		{"drawing", atTop, false, "drawing number"},
+		{"author", atTop, false, "who made the sheet"},
+		{"units", atTop, false, ""},
+		{"tooth", atTop, false, ""},
+		{"gear", atTop, false, ""},
+		{"mesh", atTop, false, ""},
+		{"load", atTop, true, ""},
+
+		{"module", inTooth | inGear, false, "normal module, mm"},
+		{"dp", inTooth | inGear, false, "normal diametral pitch, 1/in"},
+		{"transverse_dp", inTooth | inGear, false, "transverse diametral pitch, 1/in"},
+		{"pressure_angle", inTooth | inGear, false, "normal pressure angle, degrees (20)"},
+		{"helix_angle", inTooth | inGear, false, "helix angle at the reference cylinder, degrees (0)"},
+		{"hand", inTooth | inGear, false, "right or left (the mate has the other)"},
+		{"rack", inTooth | inGear, false, "basic rack by name, see tables (\"ISO 53 A\")"},
+		{"addendum", inTooth | inGear, false, "rack addendum, × module"},
+		{"dedendum", inTooth | inGear, false, "rack dedendum, × module"},
+		{"tip_radius", inTooth | inGear, false, "tip radius of the rack's tool, × module"},
+
+		{"teeth", inGear, false, "number of teeth"},
+		{"ring", inGear, true, "internal gear"},
+		{"shift", inGear, false, "profile shift coefficient; positive thickens the tooth (0)"},
+		{"tip", inGear, false, "full, or shortened to keep the rack's clearance (full)"},
+		{"tip_diameter", inGear, false, "outside (tip) diameter"},
+		{"tip_chamfer", inGear, false, "45° chamfer of the tip corners, radial height"},
+		{"tip_round", inGear, true, "rounding of the tip corners"},
+		{"relief", inGear, true, "tip relief"},
+		{"thin", inGear, false, "how much thinner than nominal, normal: 0.04..0.08"},
+		{"over_pins", inGear, true, "limits over pins from a drawing"},
+		{"span", inGear, true, "limits of a span from a drawing"},
+		{"thinning", inGear, false, "infeed: the cutter goes deeper (infeed)"},
+		{"root", inGear, false, "generated (generated)"},
+		{"face_width", inGear, false, "face width"},
+		{"bore", inGear, false, "bore, with an ISO 286 class if wanted: \"12 H7\""},
+		{"keyway", inGear, false, ""},
+		{"hub", inGear, true, "hub diameter"},
+		{"bolt_circle", inGear, true, "bolt circle"},
+		{"material", inGear, true, ""},
+		{"hardness", inGear, true, "hardness"},
+		{"accuracy", inGear, true, "accuracy class"},
+		{"runout", inGear, true, "measured runout"},
+		{"shaft", inGear, true, "shaft name"},
+
+		{"gears", inMesh, false, ""},
+		{"center", inMesh, false, "center distance, 50 or 50±0.02 (tight for nominal teeth)"},
+		{"backlash", inMesh, false, "backlash wanted, circumferential: 0.05..0.15"},
+		{"thin_share", inMesh, false, "equal, or the gear that takes it all (equal)"},
+		{"temperature", inMesh, true, "temperature range"},
+		{"housing", inMesh, true, "housing material"},
+	}
+}
+
+// inlineKeys are the keys of the tables that stand for one value.
+func inlineKeys() map[string][]string {
+	return map[string][]string{
+		"center": {"at", "tolerance", "class"},
+		"keyway": {"width", "depth"},
+		"root":   {"end_mill"},
+	}
+}
+
+// findKey returns the key of that name.
+func findKey(name string) (keySpec, bool) {
+	for _, k := range keys() {
+		if k.name == name {
+			return k, true
+		}
+	}
+	return keySpec{}, false
+}
+
+// keysIn returns the names of the keys that may stand in a scope.
+func keysIn(where scope) []string {
+	var names []string
+	for _, k := range keys() {
+		if k.where&where != 0 {
+			names = append(names, k.name)
+		}
+	}
+	return names
+}
+
+// scopeName says where a key belongs, for people.
+func scopeName(where scope) string {
+	switch {
+	case where&atTop != 0:
+		return "at the top of the file"
+	case where&inTooth != 0:
+		return "in [tooth] or [gear.NAME]"
+	case where&inGear != 0:
+		return "in [gear.NAME]"
+	}
+	return "in [[mesh]]"
+}
+
+// otherDrives are words for drives that the program does not do, with a reason each.
+func otherDrives() map[string]string {
+	const (
+		bevel  = "bevel gears are not done: their teeth taper toward a point, and no plane outline or span describes them"
+		worm   = "worm gears are not done: the worm wheel is cut by a copy of its worm, not by a rack"
+		cross  = "crossed-axis gears are not done: they touch in a point, and backlash and contact here are for parallel axes"
+		spline = "splines are not done: they center and fit by their own standards and do not roll"
+	)
+	return map[string]string{
+		"bevel": bevel, "cone_angle": bevel, "pitch_angle": bevel, "spiral_angle": bevel, "hypoid": bevel,
+		"worm": worm, "worm_wheel": worm, "lead_angle": worm, "starts": worm,
+		"crossed": cross, "crossed_axis": cross, "shaft_angle": cross, "screw": cross,
+		"spline": spline, "splines": spline, "serration": spline,
+	}
+}
+
+// otherDrive returns why a drive of that name is not done.
+func otherDrive(name string) (string, bool) {
+	why, ok := otherDrives()[strings.ReplaceAll(strings.ToLower(name), "-", "_")]
+	return why, ok
+}
+
+// nearest returns the name closest to the one given, if it is close enough to
+// be meant: at most a third of its letters differ.
+func nearest(name string, names []string) (string, bool) {
+	best, at := "", 1<<30
+	for _, n := range names {
+		if d := editDistance(strings.ToLower(name), n); d < at {
+			best, at = n, d
+		}
+	}
+	return best, at <= max(1, (len(best)+1)/3) || best != "" && len(name) >= 3 && strings.HasPrefix(best, strings.ToLower(name))
+}
+
+// editDistance counts the letters to insert, drop or change (Levenshtein), with
+// two neighbors exchanged counted once.
+func editDistance(a, b string) int {
+	prev2, prev := []int(nil), make([]int, len(b)+1)
+	for j := range prev {
+		prev[j] = j
+	}
+	for i := 1; i <= len(a); i++ {
+		row := make([]int, len(b)+1)
+		row[0] = i
+		for j := 1; j <= len(b); j++ {
+			cost := 1
+			if a[i-1] == b[j-1] {
+				cost = 0
+			}
+			row[j] = min(prev[j]+1, row[j-1]+1, prev[j-1]+cost)
+			if i > 1 && j > 1 && a[i-1] == b[j-2] && a[i-2] == b[j-1] {
+				row[j] = min(row[j], prev2[j-2]+1)
+			}
+		}
+		prev2, prev = prev, row
+	}
+	return prev[len(b)]
+}

@@ -1,0 +1,397 @@
+package main
+
+import (
+	"math"
+
+	"flankwright/inspect"
+	"flankwright/involute"
+	"flankwright/refdata"
+)
+
+// A job is a request worked out: possible gears with thickness limits, and their meshes.
+type job struct {
+	request
+	gears    []*gear
+	meshes   []*mesh
+	warnings []warning
+}
+
+// A gear is one gear of a job.
+type gear struct {
+	name      string
+	index     int
+	g         *involute.Gear
+	nominal   involute.Tooth
+	thickness inspect.Thickness
+	thin      *inspect.Limits
+	faceWidth float64 // mm, 0 for not given
+	bore      *boreSize
+	keyway    *keyway
+	dp        float64 // normal diametral pitch as given, 0 where a module was
+	rack      string  // name for people
+	source    string  // of the rack
+	shortened bool
+	tipBy     tipDecision
+	settings  settings
+}
+
+// A tipDecision is what decided a shortened tip: the center distance, the
+// mate's root diameter and the clearance kept, mm.
+type tipDecision struct{ a, mateRoot, clearance float64 }
+
+type keyway struct{ width, depth float64 } // mm; depth beyond the bore
+
+// part returns what a measuring hand needs to know of the gear.
+func (g *gear) part() inspect.Part { return inspect.Part{FaceWidth: g.faceWidth} }
+
+// middle returns the tooth in the middle of the thickness limits: what is drawn and aimed at.
+func (g *gear) middle() involute.Tooth {
+	t, err := g.g.Tooth(g.thickness.Limits.Middle())
+	if err != nil {
+		return g.nominal // both limits were found possible, so the middle is
+	}
+	return t
+}
+
+// A mesh is two gears of a job that run together.
+type mesh struct {
+	index         int
+	first, second *gear
+	plan          inspect.PlanMesh
+	tolerance     float64 // ±, mm
+	class         string
+	given         bool // the center distance was given, not found
+	at            place
+}
+
+// face returns the common face width, 0 where one is not known.
+func (m *mesh) face() float64 {
+	return min(m.first.faceWidth, m.second.faceWidth)
+}
+
+// resolve works a request out.
+func resolve(r request) (*job, error) {
+	j := &job{request: r}
+	hands, err := j.hands()
+	if err != nil {
+		return nil, err
+	}
+	for i := range r.gears {
+		if err := j.addGear(i, hands[i]); err != nil {
+			return nil, err
+		}
+	}
+	for i := range r.meshes {
+		if err := j.addMesh(i); err != nil {
+			return nil, err
+		}
+	}
+	if err := j.shortenTips(); err != nil {
+		return nil, err
+	}
+	if err := j.planThickness(); err != nil {
+		return nil, err
+	}
+	for _, g := range j.gears {
+		if err := j.finishGear(g); err != nil {
+			return nil, err
+		}
+	}
+	j.warn()
+	return j, nil
+}
+
+func (j *job) addGear(i int, hand float64) error {
+	gr := j.request.gears[i]
+	g := &gear{name: gr.name, index: i, settings: gr.settings}
+	spec, err := j.spec(g, hand)
+	if err != nil {
+		return err
+	}
+	if g.g, err = involute.NewGear(spec); err != nil {
+		return j.impossibleGear(g, err)
+	}
+	if g.nominal, err = g.g.Nominal(); err != nil {
+		return j.impossibleGear(g, err)
+	}
+	if g.faceWidth, _, err = gr.positive("face_width"); err != nil {
+		return err
+	}
+	if l, _, ok, err := gr.limits("thin"); err != nil {
+		return err
+	} else if ok {
+		if l.Min < 0 {
+			return bad("thin", gr.vals["thin"], "is how much thinner the tooth is, 0 or more; for a thicker tooth raise shift")
+		}
+		g.thin = &l
+	}
+	if b, ok, err := gr.bore("bore"); err != nil {
+		return err
+	} else if ok {
+		g.bore = &b
+	}
+	if err := j.readKeyway(g); err != nil {
+		return err
+	}
+	for _, check := range []struct{ key, only string }{{"thinning", "infeed"}, {"root", "generated"}} {
+		if _, _, err := gr.word(check.key, check.only); err != nil {
+			return err
+		}
+	}
+	j.gears = append(j.gears, g)
+	return nil
+}
+
+// spec reads a gear's specification.
+func (j *job) spec(g *gear, hand float64) (involute.Spec, error) {
+	var s involute.Spec
+	var err error
+	var ok bool
+	if s.Teeth, ok, err = g.settings.count("teeth"); err != nil {
+		return s, err
+	} else if !ok {
+		return s, j.missing(g, "teeth", "write teeth = 24, or --teeth 24")
+	}
+	if s.Shift, _, err = g.settings.number("shift"); err != nil {
+		return s, err
+	}
+	if math.Abs(s.Shift) > 5 {
+		return s, bad("shift", g.settings.vals["shift"], "is a coefficient (× module), %v is far beyond ±5; a length is divided by the module first", s.Shift)
+	}
+	helix, _, err := g.settings.angle("helix_angle")
+	if err != nil {
+		return s, err
+	}
+	if helix < 0 || helix >= 80 {
+		return s, bad("helix_angle", g.settings.vals["helix_angle"], "must be from 0° to below 80°, not %v°; the side is said by hand", helix)
+	}
+	s.Helix = hand * helix * involute.Degree
+	if s.Module, err = j.module(g, helix); err != nil {
+		return s, err
+	}
+	if s.Rack, err = j.rack(g, s.Module); err != nil {
+		return s, err
+	}
+	if s.TipChamfer, _, err = g.settings.length("tip_chamfer"); err != nil {
+		return s, err
+	}
+	if s.TipDiameter, _, err = g.settings.positive("tip_diameter"); err != nil {
+		return s, err
+	}
+	word, _, err := g.settings.word("tip", "full", "shortened")
+	if err != nil {
+		return s, err
+	}
+	if g.shortened = word == "shortened"; g.shortened && s.TipDiameter != 0 {
+		return s, bad("tip", g.settings.vals["tip"], "= \"shortened\" and tip_diameter say different things; give one of them")
+	}
+	return s, nil
+}
+
+// largestModule and smallestModule bound what the computation is made for.
+const (
+	smallestModule = 0.01
+	largestModule  = 500
+)
+
+// module reads the normal module from module, dp or transverse_dp, exactly one.
+func (j *job) module(g *gear, helixDeg float64) (float64, error) {
+	var found []string
+	for _, k := range pitchKeys() {
+		if g.settings.has(k) {
+			found = append(found, k)
+		}
+	}
+	if len(found) == 0 {
+		return 0, j.missing(g, "module", "give module = 2 or dp = 16 (or --module, --dp)")
+	}
+	key := found[0]
+	if len(found) > 1 {
+		return 0, bad(found[1], g.settings.vals[found[1]], "and %s both give the tooth size; keep one", found[0])
+	}
+	x, _, err := j.pitchValue(g, key)
+	if err != nil {
+		return 0, err
+	}
+	if x <= 0 {
+		return 0, bad(key, g.settings.vals[key], "must be above 0")
+	}
+	m := x
+	switch key {
+	case "dp":
+		m, g.dp = 25.4/x, x
+	case "transverse_dp":
+		m = 25.4 / x * math.Cos(helixDeg*involute.Degree)
+		g.dp = 25.4 / m
+	}
+	if m < smallestModule || m > largestModule {
+		return 0, bad(key, g.settings.vals[key], "gives a module of %.4g mm; it must be from %g to %g mm", m, smallestModule, float64(largestModule))
+	}
+	return m, nil
+}
+
+// pitchValue reads a tooth size: a plain number (a module may carry mm).
+func (j *job) pitchValue(g *gear, key string) (float64, bool, error) {
+	v := g.settings.vals[key]
+	if text, isText := asText(v); isText && key == "module" {
+		mm, err := inspect.ParseLength(text, inspect.Millimeter)
+		if err != nil {
+			return 0, true, bad(key, v, "%v", err)
+		}
+		return mm, true, nil
+	}
+	return g.settings.number(key)
+}
+
+// rack reads the basic rack: a named one, with free proportions over it.
+func (j *job) rack(g *gear, module float64) (involute.Rack, error) {
+	var out involute.Rack
+	angle, hasAngle, err := g.settings.angle("pressure_angle")
+	if err != nil {
+		return out, err
+	}
+	if hasAngle && (angle < 5 || angle > 45) {
+		return out, bad("pressure_angle", g.settings.vals["pressure_angle"], "must be from 5° to 45°, not %v°", angle)
+	}
+	name, named, err := g.settings.word("rack")
+	if err != nil {
+		return out, err
+	}
+	if !named {
+		name = "ISO 53 A"
+	}
+	table, err := refdata.RackFor(name, angle)
+	if err != nil {
+		return out, bad("rack", g.settings.vals["rack"], "%v", err)
+	}
+	out = involute.Rack{
+		PressureAngle: table.PressureAngleDeg * involute.Degree,
+		Addendum:      table.Addendum,
+		Dedendum:      table.Dedendum + table.DedendumExtraInch*25.4/module,
+		TipRadius:     table.TipRadius,
+	}
+	g.rack, g.source = table.Name, table.Source.String()
+	free := false
+	for _, p := range []struct {
+		key string
+		to  *float64
+	}{{"addendum", &out.Addendum}, {"dedendum", &out.Dedendum}, {"tip_radius", &out.TipRadius}} {
+		x, ok, err := g.settings.number(p.key)
+		if err != nil {
+			return out, err
+		}
+		if ok {
+			*p.to, free = x, true
+		}
+	}
+	if free {
+		g.rack += ", own proportions"
+	}
+	return out, j.fitTipRadius(g, &out)
+}
+
+// fitTipRadius takes the largest tip radius that fits where a named rack's does
+// not, and says so; a radius of the user's own is left for the gear to refuse.
+func (j *job) fitTipRadius(g *gear, r *involute.Rack) error {
+	largest := r.LargestTipRadius()
+	if g.settings.has("tip_radius") || r.TipRadius <= largest || largest < 0 {
+		return nil
+	}
+	j.warnRackRadius(g, r.TipRadius, largest)
+	r.TipRadius = largest
+	return nil
+}
+
+func (j *job) readKeyway(g *gear) error {
+	v, ok := g.settings.vals["keyway"]
+	if !ok {
+		return nil
+	}
+	t, isTable := v.content.(*table)
+	if !isTable {
+		return bad("keyway", v, "needs { width = …, depth = … }")
+	}
+	s, err := g.settings.inline("keyway", t)
+	if err != nil {
+		return err
+	}
+	w, hasW, err := s.positive("width")
+	if err != nil {
+		return err
+	}
+	d, hasD, err := s.positive("depth")
+	if err != nil {
+		return err
+	}
+	if !hasW || !hasD {
+		return bad("keyway", v, "needs both width and depth (depth beyond the bore's wall)")
+	}
+	if g.bore == nil {
+		return bad("keyway", v, "needs a bore to be cut into")
+	}
+	if w >= g.bore.nominal {
+		return bad("keyway", v, "is %s wide, and the bore only %s", j.length(w), j.length(g.bore.nominal))
+	}
+	g.keyway = &keyway{w, d}
+	return nil
+}
+
+// hands returns +1 for right and −1 for left for every gear: its own word; else
+// the opposite of a mate whose hand is known; else the shared word, or right,
+// for the first gear that nothing decides.
+func (j *job) hands() ([]float64, error) {
+	hands := make([]float64, len(j.request.gears))
+	for i, g := range j.request.gears {
+		word, ok, err := settings{vals: g.own}.word("hand", "right", "left")
+		if err != nil {
+			return nil, err
+		}
+		if ok {
+			hands[i] = handSign(word)
+		}
+	}
+	for {
+		j.spreadHands(hands)
+		free := -1
+		for i, h := range hands {
+			if h == 0 {
+				free = i
+				break
+			}
+		}
+		if free < 0 {
+			return hands, nil
+		}
+		word, _, err := j.request.gears[free].word("hand", "right", "left")
+		if err != nil {
+			return nil, err
+		}
+		hands[free] = handSign(word)
+	}
+}
+
+func handSign(word string) float64 {
+	if word == "left" {
+		return -1
+	}
+	return 1
+}
+
+// spreadHands gives every gear that meshes with a known one the opposite hand.
+func (j *job) spreadHands(hands []float64) {
+	for changed := true; changed; {
+		changed = false
+		for _, m := range j.request.meshes {
+			a, b, err := j.meshGears(m)
+			if err != nil {
+				continue // said when the mesh is read
+			}
+			switch {
+			case hands[a] == 0 && hands[b] != 0:
+				hands[a], changed = -hands[b], true
+			case hands[b] == 0 && hands[a] != 0:
+				hands[b], changed = -hands[a], true
+			}
+		}
+	}
+}

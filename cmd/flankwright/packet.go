@@ -1,0 +1,107 @@
+package main
+
+import (
+	"path/filepath"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/export"
+)
+
+func packetCommand() *cli.Command {
+	flags := append(jobFlagsWithout("material"), commonFlags()...)
+	flags = append(flags, fileFlags("folder to write into; made if missing")...)
+	flags = append(flags, targetFlags()...)
+	flags = append(flags, contourFlags()...)
+	flags = append(flags, sheetFlags()...)
+	return &cli.Command{
+		Name: "packet", Usage: "everything for a job, into one folder (-o DIR)",
+		UsageText: "flankwright packet [JOB] -o DIR [flags]", Flags: flags,
+		Action: runPacket,
+	}
+}
+
+// runPacket writes contours, sheet, dimensions and targets, all or nothing.
+func runPacket(c *cli.Context) error {
+	j, gears, err := loadJob(c)
+	if err != nil {
+		return err
+	}
+	dir := c.String("output")
+	if dir == "" || dir == "-" {
+		return wrong("packet needs a folder to write into: -o DIR")
+	}
+	files, drawn, err := j.packetFiles(c, gears)
+	if err != nil {
+		return err
+	}
+	if err := fileError(export.WriteFolder(dir, files, c.Bool("force"))); err != nil {
+		return err
+	}
+	var names []string
+	for _, f := range files {
+		names = append(names, filepath.ToSlash(filepath.Join(dir, f.Name)))
+	}
+	result := &contours{job: j, gears: drawn}
+	for i := range drawn {
+		drawn[i].File = names[i]
+		result.Gears.add(drawn[i].name, drawn[i])
+	}
+	return emitTo(c, map[string]any{"files": names, "gears": result.Gears, "warnings": append([]warning{}, j.warnings...)}, func() []byte {
+		p := newPage(c.App.Writer)
+		for _, n := range names[len(drawn):] {
+			p.line("%s", n)
+		}
+		result.Warnings = j.warnings
+		p.b.Write(result.text(newPage(c.App.Writer), j.digits(c)))
+		return []byte(p.b.String())
+	})
+}
+
+// packetFiles makes every file of a packet in memory; the contours come first.
+func (j *job) packetFiles(c *cli.Context, gears []*gear) ([]export.File, []drawnGear, error) {
+	opt, err := readContourOptions(c, j)
+	if err != nil {
+		return nil, nil, err
+	}
+	if opt.format, err = formatByName("dxf", opt.r12); err != nil {
+		return nil, nil, err
+	}
+	a, err := readAsk(c, j)
+	if err != nil {
+		return nil, nil, err
+	}
+	drawn, files, err := j.draw(gears, opt)
+	if err != nil {
+		return nil, nil, err
+	}
+	pages, err := j.sheetPages(c, gears, a)
+	if err != nil {
+		return nil, nil, err
+	}
+	sheet, err := sheetBytes(j, pages, ".pdf")
+	if err != nil {
+		return nil, nil, err
+	}
+	files = append(files, export.File{Name: "sheet.pdf", Data: sheet})
+	d, t := newDims(j, gears, 0), newTargets(j, gears, a)
+	if c.Bool("explain") {
+		d.Explain, t.Explain = j.explainDims(gears), j.explainTargets(t)
+	}
+	digits := j.digits(c)
+	for _, r := range []struct {
+		name   string
+		result any
+		text   func() []byte
+	}{
+		{"dims", d, func() []byte { return d.text(&page{}, digits) }},
+		{"targets", t, func() []byte { return t.text(&page{}, digits) }},
+	} {
+		data, err := jsonText(r.result)
+		if err != nil {
+			return nil, nil, err
+		}
+		files = append(files, export.File{Name: r.name + ".txt", Data: r.text()}, export.File{Name: r.name + ".json", Data: data})
+	}
+	return files, drawn, nil
+}

@@ -1,0 +1,272 @@
+package main
+
+import (
+	"encoding/json"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"github.com/urfave/cli/v2"
+)
+
+// version is what --version says.
+const version = "0.1.0"
+
+// run is the program: it reads args (without the program's name), writes
+// results to stdout and everything else to stderr, and returns the exit status.
+func run(args []string, stdin io.Reader, stdout, stderr io.Writer) int {
+	app := newApp(stdin, stdout, stderr)
+	err := app.Run(append([]string{"flankwright"}, reorder(app, args)...))
+	return report(err, asksJSON(args), stderr)
+}
+
+func newApp(stdin io.Reader, stdout, stderr io.Writer) *cli.App {
+	app := &cli.App{
+		Name:      "flankwright",
+		Usage:     "gears for small shops: dimensions, what to measure, contour and inspection sheet",
+		UsageText: "flankwright COMMAND [JOB] [flags]\n\nJOB is a job file (TOML), - for standard input, or left out for flags alone.",
+		Version:   version,
+		Reader:    stdin, Writer: stdout, ErrWriter: stderr,
+		HideHelpCommand: true,
+		Commands: []*cli.Command{
+			newCommand(), dimsCommand(), targetsCommand(), contourCommand(),
+			sheetCommand(), packetCommand(), tablesCommand(),
+		},
+		ExitErrHandler: func(*cli.Context, error) {},
+		OnUsageError:   usageError,
+		Suggest:        false,
+		Action:         noCommand,
+	}
+	for _, c := range app.Commands {
+		c.OnUsageError = usageError
+	}
+	return app
+}
+
+// usageError keeps the flag parser's complaint and words it as one of ours.
+func usageError(c *cli.Context, err error, _ bool) error {
+	text := strings.TrimPrefix(err.Error(), "flag provided but not defined: ")
+	if text == err.Error() {
+		return wrong("%s", strings.Replace(text, "flag needs an argument: ", "needs a value: ", 1))
+	}
+	name := strings.TrimLeft(text, "-")
+	if why, ok := otherDrive(name); ok {
+		return wrong("--%s: %s", name, why)
+	}
+	var names []string
+	for _, f := range c.Command.VisibleFlags() {
+		names = append(names, f.Names()[0])
+	}
+	if near, ok := nearest(name, names); ok {
+		return wrong("--%s: no such flag; did you mean --%s?", name, near)
+	}
+	return wrong("--%s: no such flag; flankwright %s --help lists them", name, c.Command.Name)
+}
+
+// plannedCommands are named in the house's plan and not there yet.
+func plannedCommands() []string {
+	return []string{"size", "backlash", "reading", "unknown", "cutters", "load", "bore"}
+}
+
+// noCommand runs where no command was recognized.
+func noCommand(c *cli.Context) error {
+	name := c.Args().First()
+	if name == "" {
+		return cli.ShowAppHelp(c)
+	}
+	if why, ok := otherDrive(name); ok {
+		return wrong("%s: %s", name, why)
+	}
+	var names []string
+	for _, cmd := range c.App.Commands {
+		names = append(names, cmd.Name)
+	}
+	for _, p := range plannedCommands() {
+		if p == name {
+			return wrong("%s: not supported yet; there are %s", name, strings.Join(names, ", "))
+		}
+	}
+	if near, ok := nearest(name, names); ok {
+		return wrong("%s: no such command; did you mean %s?", name, near)
+	}
+	return wrong("%s: no such command; there are %s", name, strings.Join(names, ", "))
+}
+
+// reorder puts a command's flags before its operands, which the flag parser wants.
+// What follows -- stays as it is.
+func reorder(app *cli.App, args []string) []string {
+	at := 0
+	for at < len(args) && strings.HasPrefix(args[at], "-") && args[at] != "-" {
+		at++
+	}
+	if at == len(args) {
+		return args
+	}
+	cmd := app.Command(args[at])
+	if cmd == nil {
+		return args
+	}
+	takes := valueFlags(cmd)
+	var flags, operands []string
+	rest := args[at+1:]
+	for i := 0; i < len(rest); i++ {
+		a := rest[i]
+		switch {
+		case a == "--":
+			operands = append(operands, rest[i:]...)
+			i = len(rest)
+		case !strings.HasPrefix(a, "-") || a == "-":
+			operands = append(operands, a)
+		default:
+			flags = append(flags, a)
+			if takes[strings.TrimLeft(a, "-")] && i+1 < len(rest) {
+				i++
+				flags = append(flags, rest[i])
+			}
+		}
+	}
+	out := append([]string{}, args[:at+1]...)
+	return append(append(out, flags...), operands...)
+}
+
+// valueFlags returns the names of a command's flags that take a value.
+func valueFlags(cmd *cli.Command) map[string]bool {
+	takes := map[string]bool{}
+	for _, f := range cmd.Flags {
+		if d, ok := f.(cli.DocGenerationFlag); ok && d.TakesValue() {
+			for _, n := range f.Names() {
+				takes[n] = true
+			}
+		}
+	}
+	return takes
+}
+
+// asksJSON reports whether errors are to be JSON too.
+func asksJSON(args []string) bool {
+	for _, a := range args {
+		if a == "--" {
+			return false
+		}
+		if a == "--json" || a == "-json" || a == "--json=true" {
+			return true
+		}
+	}
+	return false
+}
+
+// report prints an error and returns the exit status it stands for.
+func report(err error, asJSON bool, stderr io.Writer) int {
+	if err == nil {
+		return exitDone
+	}
+	if errors.Is(err, errNo) {
+		return exitNo
+	}
+	p := &problem{status: exitCannot, text: err.Error()}
+	errors.As(err, &p)
+	if asJSON {
+		data, _ := json.Marshal(map[string]any{"error": map[string]any{"where": p.where, "text": p.text, "status": p.status}})
+		fmt.Fprintln(stderr, string(data))
+	} else {
+		fmt.Fprintln(stderr, "flankwright: "+p.Error())
+	}
+	return p.status
+}
+
+// maxJob bounds a job file; a large one is a mistake.
+const maxJob = 1 << 20
+
+// loadRequest reads the request of a command: a file, standard input, an example, or flags.
+func loadRequest(c *cli.Context) (request, error) {
+	if c.IsSet("shop") {
+		return request{}, wrong("--shop: not supported yet")
+	}
+	if c.NArg() > 1 {
+		return request{}, wrong("one job at a time: %q is one too many", c.Args().Get(1))
+	}
+	path, example := c.Args().First(), c.String("example")
+	if path != "" && example != "" {
+		return request{}, wrong("give a job file or --example, not both")
+	}
+	if path == "" && example == "" {
+		return checkOptions(c)(requestFromFlags(c))
+	}
+	data, name, err := readJob(c, path, example)
+	if err != nil {
+		return request{}, err
+	}
+	r, err := parseJob(data, name)
+	if err != nil {
+		return r, err
+	}
+	return checkOptions(c)(r, r.overrideByFlags(c))
+}
+
+// checkOptions checks the flags that belong to no gear.
+func checkOptions(c *cli.Context) func(request, error) (request, error) {
+	return func(r request, err error) (request, error) {
+		if d := c.Int("digits"); err == nil && c.IsSet("digits") && (d < 0 || d > 9) {
+			err = wrong("--digits: %d decimals make no sense; take 0 to 9", d)
+		}
+		return r, err
+	}
+}
+
+func readJob(c *cli.Context, path, example string) (data []byte, name string, err error) {
+	if example != "" {
+		data, err = exampleJob(example)
+		return data, example + ".toml", err
+	}
+	in, name := c.App.Reader, "standard input"
+	if path != "-" {
+		f, err := os.Open(path)
+		if err != nil {
+			return nil, "", cannot("%v", plainPathError(err))
+		}
+		defer f.Close()
+		in, name = f, filepath.ToSlash(path)
+	}
+	data, err = io.ReadAll(io.LimitReader(in, maxJob+1))
+	if err != nil {
+		return nil, "", cannot("%s: cannot be read: %v", name, err)
+	}
+	if len(data) > maxJob {
+		return nil, "", wrong("%s: larger than a megabyte; that is no job file", name)
+	}
+	return data, name, nil
+}
+
+// plainPathError words a file error without the system call's name.
+func plainPathError(err error) string {
+	var p *os.PathError
+	if errors.As(err, &p) {
+		return fmt.Sprintf("%s: %v", p.Path, p.Err)
+	}
+	return err.Error()
+}
+
+// loadJob reads and resolves the job of a command, and the gears it is about.
+func loadJob(c *cli.Context) (*job, []*gear, error) {
+	r, err := loadRequest(c)
+	if err != nil {
+		return nil, nil, err
+	}
+	j, err := resolve(r)
+	if err != nil {
+		return nil, nil, err
+	}
+	gears, err := j.chosen(c.String("gear"))
+	return j, gears, err
+}
+
+// digits returns the decimals of lengths: --digits, or the unit's own.
+func (r request) digits(c *cli.Context) int {
+	if d := c.Int("digits"); c.IsSet("digits") {
+		return d
+	}
+	return r.display.Decimals()
+}

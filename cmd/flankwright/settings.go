@@ -1,0 +1,362 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"flankwright/inspect"
+	"flankwright/refdata"
+)
+
+// settings are the values that stand for one gear, one mesh or the whole job,
+// from a file, from flags, or from both, with readers that say where a wrong
+// one stands.
+type settings struct {
+	vals     map[string]value
+	jobUnit  inspect.Unit // of bare lengths in the file
+	flagUnit inspect.Unit // of bare lengths on the command line
+	at       place        // of the whole
+}
+
+func (s settings) has(key string) bool { _, ok := s.vals[key]; return ok }
+
+// with returns a copy in which over's values take precedence.
+func (s settings) with(over map[string]value) settings {
+	vals := map[string]value{}
+	for k, v := range s.vals {
+		vals[k] = v
+	}
+	for k, v := range over {
+		vals[k] = v
+	}
+	s.vals = vals
+	return s
+}
+
+// bare returns the unit of a value's bare numbers.
+func (s settings) bare(v value) inspect.Unit {
+	if _, flag := v.content.(flagText); flag {
+		return s.flagUnit
+	}
+	return s.jobUnit
+}
+
+// bad reports a wrong value of a key.
+func bad(key string, v value, format string, args ...any) error {
+	name := key
+	if _, flag := v.content.(flagText); flag {
+		return fault(v.at, format, args...)
+	}
+	return fault(v.at, "%s: %s", name, fmt.Sprintf(format, args...))
+}
+
+func kindOf(v value) string {
+	switch v.content.(type) {
+	case string, flagText:
+		return "a text"
+	case bool:
+		return "true or false"
+	case *table:
+		return "a table"
+	case []value:
+		return "a list"
+	}
+	return "a number"
+}
+
+// number reads a plain number.
+func (s settings) number(key string) (x float64, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return 0, false, nil
+	}
+	switch c := v.content.(type) {
+	case int64:
+		x = float64(c)
+	case float64:
+		x = c
+	case flagText:
+		x, err = inspect.ParseNumber(string(c))
+		if err != nil {
+			return 0, true, bad(key, v, "%v", err)
+		}
+	default:
+		return 0, true, bad(key, v, "needs a plain number, not %s", kindOf(v))
+	}
+	if math.IsNaN(x) || math.IsInf(x, 0) {
+		return 0, true, bad(key, v, "needs a finite number")
+	}
+	return x, true, nil
+}
+
+// count reads a whole number of at least 1.
+func (s settings) count(key string) (n int, ok bool, err error) {
+	x, ok, err := s.number(key)
+	if err != nil || !ok {
+		return 0, ok, err
+	}
+	if x != math.Trunc(x) || x < 1 || x > maxTeeth {
+		return 0, true, bad(key, s.vals[key], "needs a whole number from 1 to %d, not %v", maxTeeth, x)
+	}
+	return int(x), true, nil
+}
+
+// maxTeeth bounds a number of teeth; it keeps a slip of the finger from asking for a million.
+const maxTeeth = 10000
+
+// length reads a length, in mm.
+func (s settings) length(key string) (mm float64, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return 0, false, nil
+	}
+	mm, err = s.asLength(v)
+	if err != nil {
+		return 0, true, bad(key, v, "%v", err)
+	}
+	return mm, true, nil
+}
+
+func (s settings) asLength(v value) (float64, error) {
+	var mm float64
+	switch c := v.content.(type) {
+	case int64:
+		mm = float64(c) * s.jobUnit.MM()
+	case float64:
+		mm = c * s.jobUnit.MM()
+	case string:
+		return inspect.ParseLength(c, s.jobUnit)
+	case flagText:
+		return inspect.ParseLength(string(c), s.flagUnit)
+	default:
+		return 0, fmt.Errorf("needs a length, such as 12.5 or \"0.75in\", not %s", kindOf(v))
+	}
+	if math.IsNaN(mm) || math.IsInf(mm, 0) {
+		return 0, fmt.Errorf("needs a finite length")
+	}
+	return mm, nil
+}
+
+// positive reads a length above 0.
+func (s settings) positive(key string) (mm float64, ok bool, err error) {
+	mm, ok, err = s.length(key)
+	if err == nil && ok && mm <= 0 {
+		err = bad(key, s.vals[key], "needs a length above 0")
+	}
+	return mm, ok, err
+}
+
+// limits reads a range of lengths, or one length; single tells which.
+func (s settings) limits(key string) (l inspect.Limits, single, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return l, false, false, nil
+	}
+	text, isText := asText(v)
+	if !isText {
+		mm, err := s.asLength(v)
+		if err != nil {
+			return l, true, true, bad(key, v, "needs a length or a range such as \"0.04..0.08\", not %s", kindOf(v))
+		}
+		return inspect.Limits{Min: mm, Max: mm}, true, true, nil
+	}
+	l, err = inspect.ParseLimits(text, s.bare(v))
+	if err != nil {
+		return l, false, true, bad(key, v, "%v", err)
+	}
+	return l, !strings.Contains(text, ".."), true, nil
+}
+
+func asText(v value) (string, bool) {
+	switch c := v.content.(type) {
+	case string:
+		return c, true
+	case flagText:
+		return string(c), true
+	}
+	return "", false
+}
+
+// angle reads an angle in degrees.
+func (s settings) angle(key string) (deg float64, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return 0, false, nil
+	}
+	if text, isText := asText(v); isText {
+		deg, err = inspect.ParseAngle(text)
+		if err != nil {
+			err = bad(key, v, "%v", err)
+		}
+		return deg, true, err
+	}
+	return s.number(key)
+}
+
+// word reads a text; where words are given it must be one of them.
+func (s settings) word(key string, words ...string) (text string, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return "", false, nil
+	}
+	text, isText := asText(v)
+	if !isText {
+		return "", true, bad(key, v, "needs a text in quotes, not %s", kindOf(v))
+	}
+	if len(words) == 0 {
+		return text, true, nil
+	}
+	for _, w := range words {
+		if strings.EqualFold(w, text) {
+			return w, true, nil
+		}
+	}
+	return "", true, bad(key, v, "%q is not one of %s", text, quoted(words))
+}
+
+func quoted(words []string) string {
+	q := make([]string, len(words))
+	for i, w := range words {
+		q[i] = fmt.Sprintf("%q", w)
+	}
+	return strings.Join(q, ", ")
+}
+
+// A boreSize is a bore with its limits; without a class both are the nominal.
+type boreSize struct {
+	nominal float64 // mm
+	limits  inspect.Limits
+	class   string
+	source  string
+}
+
+// bore reads a length, or a length with an ISO 286 class: "12 H7".
+func (s settings) bore(key string) (b boreSize, ok bool, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return b, false, nil
+	}
+	text, isText := asText(v)
+	size, class, hasClass := splitClass(text)
+	if !isText || !hasClass {
+		mm, _, err := s.positive(key)
+		return boreSize{nominal: mm, limits: inspect.Limits{Min: mm, Max: mm}}, true, err
+	}
+	mm, err := inspect.ParseLength(size, s.bare(v))
+	if err != nil || mm <= 0 {
+		return b, true, bad(key, v, "%q is not a bore; write it like 12, 0.5in or \"12 H7\"", text)
+	}
+	low, high, src, err := refdata.ISO286Limits(mm, class)
+	if err != nil {
+		return b, true, bad(key, v, "%v", err)
+	}
+	return boreSize{mm, inspect.Limits{Min: mm + low, Max: mm + high}, class, src.String()}, true, nil
+}
+
+// splitClass splits "12 H7" or "12mm H7" into size and class.
+func splitClass(text string) (size, class string, ok bool) {
+	i := strings.LastIndexByte(strings.TrimSpace(text), ' ')
+	if i < 0 {
+		return text, "", false
+	}
+	text = strings.TrimSpace(text)
+	class = text[i+1:]
+	if class == "" || !isLetter(class[0]) || !isDigit(class[len(class)-1]) {
+		return text, "", false
+	}
+	return text[:i], class, true
+}
+
+func isLetter(c byte) bool { return c|0x20 >= 'a' && c|0x20 <= 'z' }
+func isDigit(c byte) bool  { return c >= '0' && c <= '9' }
+
+// center reads a center distance: a length, "2.0±0.0005", or a table with at
+// and a tolerance or a class. at is 0 where it is left to the mesh.
+func (s settings) center(key string) (at, tolerance float64, class string, err error) {
+	v, ok := s.vals[key]
+	if !ok {
+		return 0, 0, "", nil
+	}
+	if t, isTable := v.content.(*table); isTable {
+		return s.centerTable(key, t)
+	}
+	text, isText := asText(v)
+	base, tol, hasTol := strings.Cut(strings.ReplaceAll(text, "+-", "±"), "±")
+	if !isText || !hasTol {
+		at, _, err = s.positive(key)
+		return at, 0, "", err
+	}
+	both, err := inspect.ParseLimits(strings.TrimSpace(base)+".."+strings.TrimSpace(tol), s.bare(v))
+	if err != nil { // a tolerance is smaller than the distance: read the two alone
+		var e1, e2 error
+		bare := s.bare(v)
+		if strings.HasSuffix(tol, "in") {
+			bare = inspect.Inch
+		} else if strings.HasSuffix(tol, "mm") {
+			bare = inspect.Millimeter
+		}
+		both.Min, e1 = inspect.ParseLength(base, bare)
+		both.Max, e2 = inspect.ParseLength(tol, bare)
+		if e1 != nil || e2 != nil {
+			return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50 or \"50±0.02\"", text)
+		}
+	}
+	if both.Min <= 0 || both.Max < 0 {
+		return 0, 0, "", bad(key, v, "needs a distance above 0 and a tolerance of 0 or more")
+	}
+	return both.Min, both.Max, "", nil
+}
+
+func (s settings) centerTable(key string, t *table) (at, tolerance float64, class string, err error) {
+	sub, err := s.inline(key, t)
+	if err != nil {
+		return 0, 0, "", err
+	}
+	if at, _, err = sub.positive("at"); err != nil {
+		return 0, 0, "", err
+	}
+	var hasTol bool
+	if tolerance, hasTol, err = sub.length("tolerance"); err != nil {
+		return 0, 0, "", err
+	}
+	if tolerance < 0 {
+		return 0, 0, "", bad("tolerance", sub.vals["tolerance"], "is ±, and needs a length of 0 or more")
+	}
+	class, hasClass, err := sub.word("class")
+	if err == nil && hasClass && hasTol {
+		err = bad("class", sub.vals["class"], "and tolerance say the same thing; give one of them")
+	}
+	return at, tolerance, class, err
+}
+
+// inline returns the values of a table that stands for one value, and refuses unknown keys.
+func (s settings) inline(key string, t *table) (settings, error) {
+	names := inlineKeys()[key]
+	vals := map[string]value{}
+	for _, e := range t.entries {
+		known := false
+		for _, n := range names {
+			known = known || n == e.key
+		}
+		if !known {
+			return s, unknownKey(e.at, e.key, key, names)
+		}
+		vals[e.key] = e.val
+	}
+	return settings{vals, s.jobUnit, s.flagUnit, t.at}, nil
+}
+
+// unknownKey words the error of a key that does not exist in a place.
+func unknownKey(at place, key, where string, names []string) error {
+	if why, ok := otherDrive(key); ok {
+		return fault(at, "%s: %s", key, why)
+	}
+	if near, ok := nearest(key, names); ok {
+		return fault(at, "%s: no such key in %s; did you mean %s?", key, where, near)
+	}
+	if spec, ok := findKey(key); ok {
+		return fault(at, "%s: belongs %s, not in %s", key, scopeName(spec.where), where)
+	}
+	return fault(at, "%s: no such key in %s; there are %s", key, where, strings.Join(names, ", "))
+}

@@ -1,0 +1,153 @@
+package main
+
+import (
+	"bytes"
+	"path/filepath"
+	"strings"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/export"
+	"flankwright/inspect"
+)
+
+func sheetFlags() []cli.Flag {
+	return []cli.Flag{
+		&cli.StringFlag{Name: "page", Usage: "a4 or letter (letter for inch jobs)", Category: "Head of the sheet"},
+		&cli.StringFlag{Name: "date", Usage: "date to print; otherwise a blank to fill in", Category: "Head of the sheet"},
+		&cli.StringFlag{Name: "material", Usage: "material to print; otherwise a blank to fill in", Category: "Head of the sheet"},
+	}
+}
+
+// jobFlagsWithout returns the flags of a job except some.
+func jobFlagsWithout(names ...string) []cli.Flag {
+	var out []cli.Flag
+	for _, f := range jobFlags() {
+		keep := true
+		for _, n := range names {
+			keep = keep && f.Names()[0] != n
+		}
+		if keep {
+			out = append(out, f)
+		}
+	}
+	return out
+}
+
+func sheetCommand() *cli.Command {
+	flags := append(jobFlagsWithout("material"), commonFlags()...)
+	flags = append(flags, fileFlags("FILE.pdf, a page a gear; FILE.svg for one gear; a folder, DIR/, for an SVG of every gear")...)
+	flags = append(flags, targetFlags()...)
+	flags = append(flags, sheetFlags()...)
+	return &cli.Command{
+		Name: "sheet", Usage: "the inspection sheet, PDF or SVG, at true scale",
+		UsageText: "flankwright sheet [JOB] -o FILE.pdf [flags]", Flags: flags,
+		Action: runSheet,
+	}
+}
+
+func runSheet(c *cli.Context) error {
+	j, gears, err := loadJob(c)
+	if err != nil {
+		return err
+	}
+	a, err := readAsk(c, j)
+	if err != nil {
+		return err
+	}
+	out := c.String("output")
+	ending := strings.ToLower(filepath.Ext(out))
+	folder := out != "" && isFolder(out)
+	switch {
+	case out == "" || out == "-":
+		return wrong("sheet needs a file to write: -o sheet.pdf, or -o sheet.svg for one gear")
+	case folder, ending == ".pdf":
+	case ending == ".svg" && len(gears) > 1:
+		return wrong("-o %s: an SVG holds one page, and the job has %s; give --gear NAME, a folder -o DIR/, or a .pdf", out, quoted(j.gearNames()))
+	case ending != ".svg":
+		return wrong("-o %s: a sheet is written as .pdf or .svg", out)
+	}
+	pages, err := j.sheetPages(c, gears, a)
+	if err != nil {
+		return err
+	}
+	names, err := writeSheets(c, out, folder, ending, j, gears, pages)
+	if err != nil {
+		return err
+	}
+	return emitTo(c, map[string]any{"files": names, "pages": len(pages), "warnings": append([]warning{}, j.warnings...)}, func() []byte {
+		p := newPage(c.App.Writer)
+		for _, n := range names {
+			p.line("%s", n)
+		}
+		p.line("%s, true scale: print without fitting to the page, and check the bar with a rule.", plural(len(pages), "page"))
+		p.warnings(j.warnings)
+		return []byte(p.b.String())
+	})
+}
+
+func writeSheets(c *cli.Context, out string, folder bool, ending string, j *job, gears []*gear, pages []export.Drawing) ([]string, error) {
+	if folder {
+		var files []export.File
+		var names []string
+		for i, g := range gears {
+			var b bytes.Buffer
+			if err := pages[i].WriteSVG(&b); err != nil {
+				return nil, cannot("sheet of %s: %v", g.name, err)
+			}
+			name := g.name + "-sheet.svg"
+			files = append(files, export.File{Name: name, Data: b.Bytes()})
+			names = append(names, filepath.ToSlash(filepath.Join(out, name)))
+		}
+		return names, fileError(export.WriteFolder(out, files, c.Bool("force")))
+	}
+	data, err := sheetBytes(j, pages, ending)
+	if err != nil {
+		return nil, err
+	}
+	return []string{filepath.ToSlash(out)}, writeFile(c, out, data)
+}
+
+func sheetBytes(j *job, pages []export.Drawing, ending string) ([]byte, error) {
+	var b bytes.Buffer
+	title, _, _ := j.top.word("title")
+	var err error
+	if ending == ".svg" {
+		err = pages[0].WriteSVG(&b)
+	} else {
+		err = export.WritePDF(&b, orDefault(title, "Inspection sheet"), pages)
+	}
+	if err != nil {
+		return nil, cannot("sheet: %v", err)
+	}
+	return b.Bytes(), nil
+}
+
+// sheetPages lays out a page for each gear.
+func (j *job) sheetPages(c *cli.Context, gears []*gear, a ask) ([]export.Drawing, error) {
+	size := export.A4
+	if j.display == inspect.Inch {
+		size = export.Letter
+	}
+	if p := c.String("page"); p != "" {
+		var err error
+		if size, err = export.ParsePageSize(p); err != nil {
+			return nil, wrong("--page: %v", err)
+		}
+	}
+	head := sheetHead{date: c.String("date"), material: c.String("material")}
+	var pages []export.Drawing
+	for i, g := range gears {
+		s, err := j.sheet(g, a, head)
+		if err != nil {
+			return nil, err
+		}
+		s.Foot = footText(g.name, i+1, len(gears))
+		page, err := export.LayoutSheet(s, size)
+		if err != nil {
+			return nil, cannot("sheet of %s: %v", g.name, err)
+		}
+		pages = append(pages, page)
+	}
+	return pages, nil
+}

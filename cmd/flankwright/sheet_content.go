@@ -1,0 +1,321 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"flankwright/export"
+	"flankwright/inspect"
+	"flankwright/involute"
+)
+
+type sheetHead struct{ date, material string }
+
+func footText(name string, page, of int) string {
+	return fmt.Sprintf("flankwright · %s · page %d of %d", name, page, of)
+}
+
+// sheetTolerance is how near the drawn teeth follow the exact curves, × module: under a hair's line at any scale.
+const sheetTolerance = 0.002
+
+// sheet gathers what the inspection sheet of one gear says.
+func (j *job) sheet(g *gear, a ask, head sheetHead) (export.Sheet, error) {
+	t := j.gearTargets(g, a)
+	tooth := g.middle()
+	outline, _, err := export.NewContour(g.contourSpec(j, tooth, sheetTolerance*g.g.Module()))
+	if err != nil {
+		return export.Sheet{}, cannot("sheet of %s: %v", g.name, err)
+	}
+	shape := export.GearShape{Teeth: g.g.Teeth(), Reference: g.g.ReferenceDiameter(), Root: tooth.RootDiameter(), Tip: g.g.TipDiameter()}
+	if shape.Outline, err = outline.Cut(); err != nil {
+		return export.Sheet{}, cannot("sheet of %s: %v", g.name, err)
+	}
+	if g.bore != nil {
+		shape.Bore = []export.Path{export.BorePath(g.contourSpec(j, tooth, 0))}
+	}
+	word := func(key string) string { w, _, _ := j.top.word(key); return w }
+	s := export.Sheet{
+		Title: orDefault(word("title"), "Gear inspection"), Gear: g.name,
+		Part: word("part"), DrawingNumber: word("drawing"), Author: word("author"), Date: head.date, Material: head.material,
+		Data: j.sheetData(g), InchFirst: j.display == inspect.Inch,
+		Targets: j.sheetTargets(g, t), Limits: j.sheetLimits(g),
+		Shape: shape, Pins: j.pinView(g, t, tooth), Span: j.spanView(g, t, tooth),
+		Readings: j.sheetReadings(t), Method: sheetMethod(g, t), Cautions: sheetCautions(),
+	}
+	for _, w := range j.forGear(g.name) {
+		s.Warnings = append(s.Warnings, w.Code+": "+w.Text)
+	}
+	return s, nil
+}
+
+// both words a length in the display unit, and in the other.
+func (j *job) both(mm float64) (value, other string) {
+	u, o := j.display, j.display.Other()
+	return u.Format(mm, u.Decimals()) + " " + u.String(), o.Format(mm, o.Decimals()) + " " + o.String()
+}
+
+func (j *job) lengthField(label string, mm float64) export.Field {
+	v, o := j.both(mm)
+	return export.Field{Label: label, Value: v, Other: o}
+}
+
+// limitsField words limits in both units, each rounded inward.
+func (j *job) limitsField(label string, l inspect.Limits) export.Field {
+	words := func(u inspect.Unit) string {
+		p := u.FormatLimits(l, u.Decimals())
+		if p.Low == p.High {
+			return p.Low + " " + u.String()
+		}
+		return p.Low + " … " + p.High + " " + u.String()
+	}
+	return export.Field{Label: label, Value: words(j.display), Other: words(j.display.Other())}
+}
+
+func trim(format string, x float64) string {
+	return strings.TrimSuffix(strings.TrimRight(fmt.Sprintf(format, x), "0"), ".")
+}
+
+func (j *job) sheetData(g *gear) []export.Field {
+	gg := g.g
+	pitch := export.Field{Label: "Module, normal", Value: trim("%.4f", gg.Module()) + " mm", Other: trim("%.4f", 25.4/gg.Module()) + " /in"}
+	if g.dp != 0 {
+		pitch = export.Field{Label: "Diametral pitch, normal", Value: trim("%.4f", 25.4/gg.Module()) + " /in", Other: "module " + trim("%.4f", gg.Module())}
+	}
+	shift := gg.Spec().Shift
+	_, other := j.both(shift * gg.Module())
+	value, _ := j.both(shift * gg.Module())
+	helix := "spur"
+	if gg.Helical() {
+		helix = degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)
+	}
+	data := []export.Field{
+		{Label: "Teeth", Value: fmt.Sprint(gg.Teeth())},
+		pitch,
+		{Label: "Pressure angle, normal", Value: degrees(gg.PressureAngle())},
+		{Label: "Helix angle, hand", Value: helix},
+		{Label: "Profile shift", Value: "x = " + fmt.Sprintf("%+.4f", shift), Other: value + " (" + other + ")"},
+		j.lengthField("Outside (tip) diameter", gg.TipDiameter()),
+		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
+		j.limitsField("Root diameter (reference)", inspect.Limits{Min: gg.RootDiameterAt(g.thickness.Limits.Min), Max: gg.RootDiameterAt(g.thickness.Limits.Max)}),
+		j.limitsField("Depth of cut", inspect.Limits{
+			Min: (gg.TipDiameter() - gg.RootDiameterAt(g.thickness.Limits.Max)) / 2,
+			Max: (gg.TipDiameter() - gg.RootDiameterAt(g.thickness.Limits.Min)) / 2}),
+	}
+	if g.bore != nil {
+		f := j.limitsField(strings.TrimSpace("Bore "+g.bore.class), g.bore.limits)
+		data = append(data, f)
+	}
+	if g.faceWidth > 0 {
+		data = append(data, j.lengthField("Face width", g.faceWidth))
+	}
+	return data
+}
+
+// figures words one target in both units; limits are rounded inward in each.
+func figures(l span, aim float64) (low, mid, high export.Figure) {
+	lim := inspect.Limits{Min: l.Min, Max: l.Max}
+	m, i := inspect.Millimeter.FormatLimits(lim, 3), inspect.Inch.FormatLimits(lim, 4)
+	return export.Figure{MM: m.Low, Inch: i.Low},
+		export.Figure{MM: inspect.Millimeter.Format(aim, m.Decimals), Inch: inspect.Inch.Format(aim, i.Decimals)},
+		export.Figure{MM: m.High, Inch: i.High}
+}
+
+// pinBoth words a pin's diameter in both units.
+func (j *job) pinBoth(d float64) string {
+	mm, in := "Ø "+inspect.Millimeter.Format(d, 3)+" mm", "Ø "+inspect.Inch.Format(d, 4)+" in"
+	if j.display == inspect.Inch {
+		return in + " (" + strings.TrimPrefix(mm, "Ø ") + ")"
+	}
+	return mm + " (" + strings.TrimPrefix(in, "Ø ") + ")"
+}
+
+func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
+	var rows []export.Target
+	add := func(measure, with string, l *span, aim *float64, usable bool, why string) {
+		row := export.Target{Measure: measure, With: with}
+		if !usable || l == nil {
+			row.Unusable = orDefault(why, "no reading exists")
+		} else {
+			row.Low, row.Aim, row.High = figures(*l, *aim)
+			if why != "" {
+				row.With += "; " + why
+			}
+		}
+		rows = append(rows, row)
+	}
+	for i, p := range t.OverPins {
+		where := "in opposite spaces"
+		if t.oddTeeth(g) {
+			where = "in the spaces nearest to opposite"
+		}
+		if p.Kind == "balls" {
+			where += ", in one plane square to the axis"
+		}
+		add("Over two "+p.wires(), "2 "+p.Kind+" "+j.pinBoth(p.Pin)+", "+where, p.Measurement, p.Aim, p.Usable, p.Why)
+		if i == 0 {
+			for _, a := range p.Also {
+				if a.Way != "one pin to the axis" && a.Usable {
+					add(capital(wayText(a.text, p.Kind)), p.Kind+" "+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
+				}
+			}
+		}
+	}
+	if len(t.Span) > 0 {
+		s := t.Span[0]
+		with := "over " + teethText(s.Teeth)
+		if g.g.Helical() {
+			with += ", across the helix"
+		}
+		add("Span", with, s.Length, s.Aim, s.Usable, s.Why)
+	}
+	h, o := j.both(t.Chordal.Height)
+	tip, _ := j.both(t.Chordal.Tip)
+	add("Chordal thickness", fmt.Sprintf("at chordal height %s (%s) below an outside diameter of %s", h, o, tip), &t.Chordal.Thickness, &t.Chordal.Aim, t.Chordal.Usable, t.Chordal.Why)
+	return rows
+}
+
+func (t gearTargets) oddTeeth(g *gear) bool { return g.g.Teeth()%2 != 0 }
+
+// wires names pins as inch readers do too.
+func (p pinTarget) wires() string {
+	if p.Kind == "pins" {
+		return "pins (wires)"
+	}
+	return p.Kind
+}
+
+func capital(s string) string {
+	if s == "" {
+		return s
+	}
+	return strings.ToUpper(s[:1]) + s[1:]
+}
+
+func (j *job) sheetLimits(g *gear) []export.Field {
+	fields := []export.Field{j.limitsField("Tooth thickness, normal, at the pitch (reference) circle", g.thickness.Limits)}
+	if g.thickness.By == inspect.ByNothing {
+		fields[0].Label = "Tooth thickness: nominal, no limits given"
+	}
+	for _, m := range j.meshes {
+		if m.first != g && m.second != g {
+			continue
+		}
+		mate := m.first.name
+		if m.first == g {
+			mate = m.second.name
+		}
+		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
+		if err == nil {
+			fields = append(fields, j.limitsField("Backlash with "+mate+", geometric", inspect.Limits{Min: least.Circumferential, Max: most.Circumferential}))
+		}
+	}
+	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
+}
+
+// firstPin returns the first usable pin target, or the first with numbers.
+func (t gearTargets) firstPin() *pinTarget {
+	for i := range t.OverPins {
+		if t.OverPins[i].Usable {
+			return &t.OverPins[i]
+		}
+	}
+	return nil
+}
+
+func (t gearTargets) firstSpan() *spanTarget {
+	for i := range t.Span {
+		if t.Span[i].Usable {
+			return &t.Span[i]
+		}
+	}
+	return nil
+}
+
+// pinView draws the two pins where they rest. Spaces lie half a pitch beside the tooth on +x.
+func (j *job) pinView(g *gear, t gearTargets, tooth involute.Tooth) *export.PinView {
+	p := t.firstPin()
+	if p == nil {
+		return nil
+	}
+	seat, err := tooth.Seat(p.Pin)
+	if err != nil {
+		return nil
+	}
+	z := g.g.Teeth()
+	pitch := 2 * math.Pi / float64(z)
+	r := seat.CenterDiameter / 2
+	view := &export.PinView{
+		Title:    "Over two " + p.wires(),
+		Centers:  []involute.Vec{involute.Polar(r, pitch/2), involute.Polar(r, pitch/2+float64(z/2)*pitch)},
+		Diameter: p.Pin, Dimension: "M " + j.length(*p.Aim), Label: "2 " + p.Kind + " " + j.pinBoth(p.Pin),
+	}
+	if g.g.Helical() {
+		view.Note = "Transverse section."
+	}
+	return view
+}
+
+// spanView draws the measuring faces. They touch on a tangent of the base circle.
+func (j *job) spanView(g *gear, t gearTargets, tooth involute.Tooth) *export.SpanView {
+	s := t.firstSpan()
+	if s == nil {
+		return nil
+	}
+	half := tooth.Span(s.Teeth) / math.Cos(g.g.BaseHelix()) / 2
+	middle := 0.0 // on the first tooth for an odd number of teeth, in a space for an even one
+	if s.Teeth%2 == 0 {
+		middle = math.Pi / float64(g.g.Teeth())
+	}
+	e := involute.Polar(g.g.BaseDiameter()/2, middle)
+	along := involute.Polar(1, middle).Left()
+	view := &export.SpanView{
+		Title: "Span over " + teethText(s.Teeth),
+		From:  e.Add(along.Scale(half)), To: e.Sub(along.Scale(half)),
+		Teeth: s.Teeth, Reach: 1.2 * g.g.Module(), Dimension: "W " + j.length(*s.Aim),
+	}
+	if g.g.Helical() {
+		view.Note = "Transverse section; the span is taken across the helix, square to the flanks."
+	}
+	return view
+}
+
+func (j *job) sheetReadings(t gearTargets) []export.Reading {
+	var out []export.Reading
+	add := func(measure string, l *span) {
+		p := j.display.FormatLimits(inspect.Limits{Min: l.Min, Max: l.Max}, j.display.Decimals())
+		out = append(out, export.Reading{Measure: measure, Limits: p.Low + " … " + p.High + " " + j.display.String()})
+	}
+	if p := t.firstPin(); p != nil {
+		add("Over two "+p.Kind+" Ø "+j.length(p.Pin), p.Measurement)
+	}
+	if s := t.firstSpan(); s != nil {
+		add("Span over "+teethText(s.Teeth), s.Length)
+	}
+	return out
+}
+
+// sheetMethod says how to measure, in four lines.
+func sheetMethod(g *gear, t gearTargets) []string {
+	place := "Set the two pins in opposite spaces."
+	if g.g.Teeth()%2 != 0 {
+		place = "Odd teeth: set the two pins in the spaces nearest to opposite."
+	}
+	if g.g.Helical() {
+		place = "Set the two balls in the spaces nearest to opposite, in one plane square to the axis."
+	}
+	return []string{
+		"Deburr, clean gear, pins and anvils; let gear and instrument come to 20 °C. Stop the machine first.",
+		place + " Rock the gear gently and take the largest reading.",
+		"Span: touch the flanks, not tips or roots; rock and take the smallest reading.",
+		"Measure at four places round the gear, a quarter turn apart; write down all four.",
+	}
+}
+
+// sheetCautions stand on every sheet.
+func sheetCautions() []string {
+	return []string{
+		"The targets hold for the pin or ball diameter stated; another diameter needs other targets. Backlash is geometric: before runout, pitch error and temperature.",
+		"Measure with the spindle stopped and locked. Guard running gears. Where a failure could hurt people, local codes, the machine's guarding rules and a licensed engineer decide.",
+	}
+}

@@ -1,0 +1,339 @@
+package main
+
+import (
+	"math"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/inspect"
+	"flankwright/involute"
+)
+
+func targetsCommand() *cli.Command {
+	flags := append(jobFlags(), commonFlags()...)
+	flags = append(flags, fileFlags("file to write instead of standard output")...)
+	flags = append(flags, targetFlags()...)
+	return &cli.Command{
+		Name: "targets", Usage: "what to measure: over pins, span, chordal thickness, with limits",
+		UsageText: "flankwright targets [JOB] [flags]\nflankwright targets --module 2 --teeth 24 --thin 0.04..0.08 --pin 3.5mm", Flags: flags,
+		Action: func(c *cli.Context) error {
+			j, gears, err := loadJob(c)
+			if err != nil {
+				return err
+			}
+			ask, err := readAsk(c, j)
+			if err != nil {
+				return err
+			}
+			t := newTargets(j, gears, ask)
+			if c.Bool("explain") {
+				t.Explain = j.explainTargets(t)
+			}
+			if err := emit(c, t, func() []byte { return t.text(newPage(c.App.Writer), j.digits(c)) }); err != nil {
+				return err
+			}
+			if ask.pins != nil && !t.anyPinUsable() {
+				return errNo
+			}
+			return nil
+		},
+	}
+}
+
+func targetFlags() []cli.Flag {
+	return []cli.Flag{
+		&cli.StringSliceFlag{Name: "pin", Usage: "pin or ball to measure with; may be given again", Category: "Measuring"},
+		&cli.IntSliceFlag{Name: "span-teeth", Usage: "number of teeth to measure over; may be given again", Category: "Measuring"},
+		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured, for chordal heights", Category: "Measuring"},
+		&cli.StringFlag{Name: "arbor", Usage: "diameter of the arbor to measure to (the bore)", Category: "Measuring"},
+	}
+}
+
+// An ask is what the user wants measured with; nil lists mean choose.
+type ask struct {
+	pins  []float64 // mm
+	teeth []int
+	tip   float64 // measured, mm, 0 for the nominal
+	arbor float64 // mm, 0 for the bore
+}
+
+func readAsk(c *cli.Context, j *job) (ask, error) {
+	var a ask
+	for _, text := range c.StringSlice("pin") {
+		d, err := inspect.ParseLength(text, j.display)
+		if err != nil {
+			return a, wrong("--pin: %v", err)
+		}
+		if d <= 0 {
+			return a, wrong("--pin: needs a diameter above 0, not %s", j.length(d))
+		}
+		a.pins = append(a.pins, d)
+	}
+	for _, k := range c.IntSlice("span-teeth") {
+		if k < 1 || k > maxTeeth {
+			return a, wrong("--span-teeth: needs 1 tooth or more, not %d", k)
+		}
+		a.teeth = append(a.teeth, k)
+	}
+	for _, f := range []struct {
+		name string
+		to   *float64
+	}{{"measured-tip", &a.tip}, {"arbor", &a.arbor}} {
+		v, ok := flagValue(c, f.name)
+		if !ok {
+			continue
+		}
+		d, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
+		if err != nil {
+			return a, err
+		}
+		*f.to = d
+	}
+	return a, nil
+}
+
+// targets is the result of the command, as JSON writes it.
+type targets struct {
+	Gears    ordered       `json:"gears"`
+	Warnings []warning     `json:"warnings"`
+	Explain  []explanation `json:"explain,omitempty"`
+
+	job   *job
+	list  []*gear
+	gears []gearTargets
+}
+
+type gearTargets struct {
+	Thickness     span         `json:"tooth_thickness_mm"`
+	DecidedBy     string       `json:"thickness_decided_by"`
+	IdealPin      *float64     `json:"ideal_pin_mm"`
+	OverPins      []pinTarget  `json:"over_pins"`
+	Span          []spanTarget `json:"span"`
+	Chordal       chordTarget  `json:"chordal"`
+	ConstantChord chordTarget  `json:"constant_chord"`
+	Warnings      []warning    `json:"-"`
+}
+
+type pinTarget struct {
+	Pin         float64   `json:"pin_diameter_mm"`
+	From        string    `json:"from"`
+	Pins        int       `json:"pins"`
+	Kind        string    `json:"kind"`
+	Measurement *span     `json:"measurement_mm"`
+	Aim         *float64  `json:"aim_mm"`
+	Contact     *span     `json:"contact_diameter_mm"`
+	ByThickness *float64  `json:"change_per_thickness"`
+	ByPin       *float64  `json:"change_per_pin_diameter"`
+	FaceNeeded  float64   `json:"face_width_needed_mm"`
+	Usable      bool      `json:"usable"`
+	Why         string    `json:"why"`
+	Also        []alsoWay `json:"also"`
+	target      inspect.Target
+}
+
+type alsoWay struct {
+	Way         string   `json:"way"`
+	Measurement *span    `json:"measurement_mm"`
+	Aim         *float64 `json:"aim_mm"`
+	AxialOffset float64  `json:"axial_offset_mm"`
+	FaceNeeded  float64  `json:"face_width_needed_mm"`
+	Usable      bool     `json:"usable"`
+	Why         string   `json:"why"`
+	text        string
+}
+
+type spanTarget struct {
+	Teeth      int      `json:"teeth"`
+	Length     *span    `json:"length_mm"`
+	Aim        *float64 `json:"aim_mm"`
+	Contact    *span    `json:"contact_diameter_mm"`
+	FaceNeeded float64  `json:"face_width_needed_mm"`
+	Usable     bool     `json:"usable"`
+	Why        string   `json:"why"`
+	target     inspect.Target
+}
+
+type chordTarget struct {
+	Thickness span    `json:"thickness_mm"`
+	Aim       float64 `json:"aim_mm"`
+	Height    float64 `json:"height_mm"`
+	Tip       float64 `json:"tip_diameter_mm"`
+	Usable    bool    `json:"usable"`
+	Why       string  `json:"why"`
+}
+
+func newTargets(j *job, gears []*gear, a ask) *targets {
+	t := &targets{job: j, list: gears, Warnings: append([]warning{}, j.warnings...)}
+	for _, g := range gears {
+		one := j.gearTargets(g, a)
+		t.gears = append(t.gears, one)
+		t.Gears.add(g.name, one)
+	}
+	return t
+}
+
+func (j *job) gearTargets(g *gear, a ask) gearTargets {
+	out := gearTargets{
+		Thickness: toSpan(g.thickness.Limits), DecidedBy: thicknessWords(g.thickness.By),
+		OverPins: []pinTarget{}, Span: []spanTarget{},
+	}
+	if ideal, ok := inspect.IdealPin(g.g, g.thickness.Limits); ok {
+		out.IdealPin = &ideal
+	}
+	pins := choosePins(g, j.display == inspect.Inch)
+	if a.pins != nil {
+		pins = nil
+		for _, d := range a.pins {
+			pins = append(pins, inspect.PinCandidate{Diameter: d, From: "asked for"})
+		}
+	}
+	for _, p := range pins {
+		out.OverPins = append(out.OverPins, j.pinTarget(g, p, a.arbor))
+	}
+	teeth := a.teeth
+	if teeth == nil {
+		teeth = inspect.SpanChoices(g.g, g.thickness.Limits, g.part())
+	}
+	for _, k := range teeth {
+		out.Span = append(out.Span, j.spanTarget(g, k))
+	}
+	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: a.tip})
+	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: a.tip})
+	return out
+}
+
+// measured returns the JSON fields of a target that has numbers.
+func measured(t inspect.Target) (value *span, aim *float64, contact *span) {
+	if t.Exists {
+		s, a := toSpan(t.Value), t.Aim
+		value, aim = &s, &a
+	}
+	if t.Contact.Max > 0 {
+		s := toSpan(t.Contact)
+		contact = &s
+	}
+	return value, aim, contact
+}
+
+func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarget {
+	m := inspect.OverPins{Pin: p.Diameter}
+	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
+	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), target: t, Also: []alsoWay{}}
+	if g.g.Helical() {
+		out.Kind = "balls"
+		out.Why = j.withFace(out.Why, g, m.FaceNeeded(g.middle()))
+		out.FaceNeeded = m.FaceNeeded(g.middle())
+	}
+	out.Measurement, out.Aim, out.Contact = measured(t)
+	if seat, err := g.middle().Seat(p.Diameter); err == nil {
+		bt, bp := g.g.PinSensitivity(involute.TwoPins, seat)
+		out.ByThickness, out.ByPin = &bt, &bp
+	}
+	for _, w := range otherWays() {
+		if also, ok := j.alsoWay(g, p.Diameter, w, arbor); ok {
+			out.Also = append(out.Also, also)
+		}
+	}
+	return out
+}
+
+// withFace adds to a usable helical measure what face it needs where none is given.
+func (j *job) withFace(why string, g *gear, need float64) string {
+	if g.faceWidth == 0 && why == "" && need > 0 {
+		return "needs a face width over " + j.length(need) + "; none is given"
+	}
+	return why
+}
+
+// alsoWay measures with the same pin in another way, where that way exists for the gear.
+func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay, bool) {
+	m := inspect.OverPins{Pin: pin, Way: w.way}
+	out := alsoWay{Way: w.name, text: w.text}
+	if w.way == involute.PinToFarSide {
+		switch {
+		case arbor > 0:
+			m.Bore = arbor
+			out.Way, out.text = "one pin to the far side of the arbor", "one %s to the arbor's far side"
+		case g.bore != nil:
+			m.Bore = g.bore.nominal
+		default:
+			return out, false
+		}
+	}
+	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
+	if len(t.Faults) > 0 && t.Faults[0].Code == inspect.WrongWay {
+		return out, false
+	}
+	out.Usable, out.Why = t.Usable(), j.why(t.Faults)
+	out.Measurement, out.Aim, _ = measured(t)
+	if seat, err := g.middle().Seat(pin); err == nil && g.g.Helical() {
+		if r, err := g.g.Reading(w.way, seat.CenterDiameter, pin, m.Bore); err == nil {
+			out.AxialOffset, out.FaceNeeded = r.AxialOffset, g.g.FaceForPins(r, pin)
+			out.Why = j.withFace(out.Why, g, out.FaceNeeded)
+		}
+	}
+	return out, true
+}
+
+func (j *job) spanTarget(g *gear, k int) spanTarget {
+	t := inspect.NewTarget(g.g, inspect.Span{Teeth: k}, g.thickness.Limits, g.part())
+	out := spanTarget{Teeth: k, Usable: t.Usable(), Why: j.why(t.Faults), target: t}
+	if len(t.Faults) > 0 && t.Faults[0].Code == inspect.NoReading {
+		out.Why = "the gear has not that many teeth"
+	}
+	out.Length, out.Aim, out.Contact = measured(t)
+	if out.Length != nil && g.g.Helical() {
+		out.FaceNeeded = g.g.SpanFaceWidth(out.Length.Max)
+		out.Why = j.withFace(out.Why, g, out.FaceNeeded)
+	}
+	return out
+}
+
+// heighted is a chordal measure, which has a height too.
+type heighted interface {
+	inspect.Measure
+	Height(t involute.Tooth) float64
+}
+
+func (j *job) chordTarget(g *gear, m heighted) chordTarget {
+	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
+	out := chordTarget{
+		Thickness: toSpan(t.Value), Aim: t.Aim, Height: m.Height(g.middle()),
+		Tip: g.g.TipDiameter(), Usable: t.Usable(), Why: j.why(t.Faults),
+	}
+	switch c := m.(type) {
+	case inspect.Chordal:
+		out.Tip = math.Max(c.Tip, 0)
+	case inspect.ConstantChord:
+		out.Tip = math.Max(c.Tip, 0)
+	}
+	if out.Tip == 0 {
+		out.Tip = g.g.TipDiameter()
+	}
+	for _, f := range t.Faults {
+		if f.Code == inspect.NoReading {
+			out.Why = "the caliper's tongue would have to stand above the tip"
+		}
+	}
+	return out
+}
+
+// anyPinUsable reports whether one of the pins of any gear can be used.
+func (t *targets) anyPinUsable() bool {
+	for _, g := range t.gears {
+		for _, p := range g.OverPins {
+			if p.Usable {
+				return true
+			}
+			for _, a := range p.Also {
+				if a.Usable {
+					return true
+				}
+			}
+		}
+	}
+	return false
+}
+
+// warningsBelow returns how many warnings a gear has.
+func (t *targets) warningsBelow(name string) int { return len(t.job.forGear(name)) }
