@@ -85,31 +85,35 @@ func (j *job) sheetData(g *gear) []export.Field {
 	shift := gg.Spec().Shift
 	_, other := j.both(shift * gg.Module())
 	value, _ := j.both(shift * gg.Module())
-	helix := "spur"
+	data := []export.Field{{Label: "Teeth, spur", Value: fmt.Sprint(gg.Teeth())}, pitch, {Label: "Pressure angle, normal", Value: degrees(gg.PressureAngle())}}
 	if gg.Helical() {
-		helix = degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)
+		data[0].Label = "Teeth, helical"
+		data = append(data, export.Field{Label: "Helix angle, hand", Value: degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)})
 	}
-	data := []export.Field{
-		{Label: "Teeth", Value: fmt.Sprint(gg.Teeth())},
-		pitch,
-		{Label: "Pressure angle, normal", Value: degrees(gg.PressureAngle())},
-		{Label: "Helix angle, hand", Value: helix},
+	data = append(data, []export.Field{
 		{Label: "Profile shift", Value: "x = " + fmt.Sprintf("%+.4f", shift), Other: value + " (" + other + ")"},
 		j.lengthField("Outside (tip) diameter", gg.TipDiameter()),
 		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
-		j.limitsField("Root diameter (reference)", inspect.Limits{Min: gg.RootDiameterAt(g.thickness.Limits.Min), Max: gg.RootDiameterAt(g.thickness.Limits.Max)}),
-		j.limitsField("Depth of cut", inspect.Limits{
-			Min: (gg.TipDiameter() - gg.RootDiameterAt(g.thickness.Limits.Max)) / 2,
-			Max: (gg.TipDiameter() - gg.RootDiameterAt(g.thickness.Limits.Min)) / 2}),
-	}
+		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),
+		j.lengthField("Depth of cut, aim", (gg.TipDiameter()-g.middle().RootDiameter())/2),
+	}...)
 	if g.bore != nil {
-		f := j.limitsField(strings.TrimSpace("Bore "+g.bore.class), g.bore.limits)
-		data = append(data, f)
+		data = append(data, j.boreField(g.bore))
 	}
 	if g.faceWidth > 0 {
 		data = append(data, j.lengthField("Face width", g.faceWidth))
 	}
 	return data
+}
+
+// boreField words a bore: its size in both units, or with a class its limits in the display unit.
+func (j *job) boreField(b *boreSize) export.Field {
+	if b.class == "" {
+		return j.lengthField("Bore", b.nominal)
+	}
+	f := j.limitsField("Bore "+b.class, b.limits)
+	f.Other = ""
+	return f
 }
 
 // figures words one target in both units; limits are rounded inward in each.
@@ -130,6 +134,11 @@ func (j *job) pinBoth(d float64) string {
 	return mm + " (" + strings.TrimPrefix(in, "Ø ") + ")"
 }
 
+// sheetPins is how many pin sizes a sheet lists; more would crowd out span and chord.
+const sheetPins = 2
+
+// sheetTargets picks the rows that a sheet has room for: each pin, one other way
+// with the first pin, the span and the chord.
 func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 	var rows []export.Target
 	add := func(measure, with string, l *span, aim *float64, usable bool, why string) {
@@ -144,21 +153,17 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 		}
 		rows = append(rows, row)
 	}
-	for i, p := range t.OverPins {
-		where := "in opposite spaces"
-		if t.oddTeeth(g) {
-			where = "in the spaces nearest to opposite"
-		}
-		if p.Kind == "balls" {
-			where += ", in one plane square to the axis"
-		}
+	where := "opposite spaces"
+	if g.g.Teeth()%2 != 0 {
+		where = "nearest to opposite"
+	}
+	for _, p := range t.OverPins[:min(sheetPins, len(t.OverPins))] {
 		add("Over two "+p.wires(), "2 "+p.Kind+" "+j.pinBoth(p.Pin)+", "+where, p.Measurement, p.Aim, p.Usable, p.Why)
-		if i == 0 {
-			for _, a := range p.Also {
-				if a.Way != "one pin to the axis" && a.Usable {
-					add(capital(wayText(a.text, p.Kind)), p.Kind+" "+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
-				}
-			}
+	}
+	if len(t.OverPins) > 0 {
+		p := t.OverPins[0]
+		if a := p.firstAlso(); a != nil {
+			add(capital(wayText(a.text, p.Kind)), alsoWith(a.Way)+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
 		}
 	}
 	if len(t.Span) > 0 {
@@ -171,11 +176,30 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 	}
 	h, o := j.both(t.Chordal.Height)
 	tip, _ := j.both(t.Chordal.Tip)
-	add("Chordal thickness", fmt.Sprintf("at chordal height %s (%s) below an outside diameter of %s", h, o, tip), &t.Chordal.Thickness, &t.Chordal.Aim, t.Chordal.Usable, t.Chordal.Why)
+	add("Chordal thickness", fmt.Sprintf("height %s (%s) below Ø %s", h, o, tip), &t.Chordal.Thickness, &t.Chordal.Aim, t.Chordal.Usable, t.Chordal.Why)
 	return rows
 }
 
-func (t gearTargets) oddTeeth(g *gear) bool { return g.g.Teeth()%2 != 0 }
+// firstAlso returns the first other way that can be used and is not just half of the two-pin reading.
+func (p pinTarget) firstAlso() *alsoWay {
+	for i, a := range p.Also {
+		if a.Usable && a.Way != "one pin to the axis" {
+			return &p.Also[i]
+		}
+	}
+	return nil
+}
+
+// alsoWith says how many pins a way takes.
+func alsoWith(way string) string {
+	switch {
+	case strings.HasPrefix(way, "three"):
+		return "3 pins "
+	case strings.HasPrefix(way, "one"):
+		return "1 pin or ball "
+	}
+	return "2 straight pins "
+}
 
 // wires names pins as inch readers do too.
 func (p pinTarget) wires() string {
@@ -193,9 +217,9 @@ func capital(s string) string {
 }
 
 func (j *job) sheetLimits(g *gear) []export.Field {
-	fields := []export.Field{j.limitsField("Tooth thickness, normal, at the pitch (reference) circle", g.thickness.Limits)}
+	fields := []export.Field{j.limitsField("Tooth thickness", g.thickness.Limits)}
 	if g.thickness.By == inspect.ByNothing {
-		fields[0].Label = "Tooth thickness: nominal, no limits given"
+		fields[0].Label = "Thickness, nominal"
 	}
 	for _, m := range j.meshes {
 		if m.first != g && m.second != g {
@@ -207,7 +231,7 @@ func (j *job) sheetLimits(g *gear) []export.Field {
 		}
 		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
 		if err == nil {
-			fields = append(fields, j.limitsField("Backlash with "+mate+", geometric", inspect.Limits{Min: least.Circumferential, Max: most.Circumferential}))
+			fields = append(fields, j.limitsField("Backlash, "+mate, inspect.Limits{Min: least.Circumferential, Max: most.Circumferential}))
 		}
 	}
 	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
@@ -315,7 +339,7 @@ func sheetMethod(g *gear, t gearTargets) []string {
 // sheetCautions stand on every sheet.
 func sheetCautions() []string {
 	return []string{
-		"The targets hold for the pin or ball diameter stated; another diameter needs other targets. Backlash is geometric: before runout, pitch error and temperature.",
+		"The targets hold for the pin or ball diameter stated; another diameter needs other targets. Tooth thickness is normal, at the pitch (reference) circle. Backlash is geometric: before runout, pitch error and temperature.",
 		"Measure with the spindle stopped and locked. Guard running gears. Where a failure could hurt people, local codes, the machine's guarding rules and a licensed engineer decide.",
 	}
 }
