@@ -75,15 +75,25 @@ type Thickness struct {
 	By     Decider
 }
 
+// A ProblemKind says what is wrong with a backlash that cannot be had.
+type ProblemKind int
+
+// The kinds of problems.
+const (
+	TooThick ProblemKind = iota // the teeth would have to be thicker than nominal
+	NoRoom                      // the center's tolerance, or a mate already fixed, takes more than the range
+	Conflict                    // another mesh of the same gear asks for something else
+)
+
 // A PlanProblem says why a mesh's backlash cannot be had.
 type PlanProblem struct {
-	Mesh     int     // index
-	Gear     int     // index of the gear that cannot be made, −1 for the pair
-	Negative bool    // the teeth would have to be thicker than nominal
-	Thin     Limits  // the thinning asked for, mm; empty where Min > Max
-	Play     Limits  // the backlash that teeth of nominal (or fixed) thickness have at the tightest and loosest center
-	Spread   float64 // how much backlash the center's tolerance alone takes, mm
-	Tight    float64 // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
+	Kind  ProblemKind
+	Mesh  int     // index
+	Gear  int     // index of the gear that cannot be made
+	Thin  Limits  // the thinning it would need, mm; empty where Min > Max
+	Play  float64 // the least backlash of nominal (or fixed) teeth, at the tightest center, mm
+	Tight float64 // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
+	Most  float64 // NoRoom: the greatest backlash that would have to be allowed, mm
 }
 
 // Error says so in short; the program's edge words it for people.
@@ -117,14 +127,13 @@ func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
 			return nil, err
 		}
 		for _, w := range m.split(gears, want) {
-			if p := checkShare(w.thin); p != nil {
-				p.Mesh, p.Gear = k, w.gear
-				return nil, m.explain(p, gears)
+			if kind, bad := w.thin.problem(); bad {
+				return nil, m.explain(&PlanProblem{Kind: kind, Mesh: k, Gear: w.gear, Thin: w.thin}, gears)
 			}
 			if out[w.gear].By == ByBacklash {
 				w.thin = Limits{max(w.thin.Min, thin[w.gear].Min), min(w.thin.Max, thin[w.gear].Max)}
 				if w.thin.Min > w.thin.Max+noThinning {
-					return nil, m.explain(&PlanProblem{Mesh: k, Gear: w.gear, Thin: w.thin}, gears)
+					return nil, m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: w.gear, Thin: w.thin}, gears)
 				}
 			}
 			out[w.gear].By, thin[w.gear] = ByBacklash, w.thin
@@ -174,36 +183,42 @@ func (m PlanMesh) split(gears []PlanGear, want Limits) []share {
 	return []share{{m.First, half}, {m.Second, half}}
 }
 
-// checkShare refuses an empty range and a negative thinning, and drops noise.
-func checkShare(l Limits) *PlanProblem {
-	if l.Min > l.Max+noThinning || l.Min < -noThinning {
-		return &PlanProblem{Thin: l, Negative: l.Min < -noThinning && l.Min <= l.Max+noThinning}
+// problem reports an empty or a negative thinning.
+func (l Limits) problem() (ProblemKind, bool) {
+	switch {
+	case l.Min > l.Max+noThinning:
+		return NoRoom, true
+	case l.Min < -noThinning:
+		return TooThick, true
 	}
-	return nil
+	return 0, false
 }
 
 // explain adds the numbers that tell a person what would make it possible.
 func (m PlanMesh) explain(p *PlanProblem, gears []PlanGear) error {
-	s := func(i int, pick func(Limits) float64) float64 {
+	thickest := func(i int) float64 {
 		n := gears[i].Gear.NominalThickness()
 		if t := gears[i].Thin; t != nil {
-			return n - pick(*t)
+			n -= t.Min
 		}
 		return n
 	}
-	low, high := func(l Limits) float64 { return l.Min }, func(l Limits) float64 { return l.Max }
-	tight, err1 := m.Mesh.Backlash(m.Tightest(), s(m.First, low), s(m.Second, low))
-	loose, err2 := m.Mesh.Backlash(m.Loosest(), s(m.First, high), s(m.Second, high))
-	if err1 != nil || err2 != nil {
+	s1, s2 := thickest(m.First), thickest(m.Second)
+	play, err := m.Mesh.Backlash(m.Tightest(), s1, s2)
+	if err != nil {
 		return p
 	}
-	p.Play = Limits{tight.Circumferential, loose.Circumferential}
-	nominal, err := m.Mesh.Backlash(m.Loosest(), s(m.First, low), s(m.Second, low))
-	if err == nil {
-		p.Spread = nominal.Circumferential - tight.Circumferential
-	}
-	if a, err := m.Mesh.TightCenter(s(m.First, low), s(m.Second, low)); err == nil {
+	p.Play = play.Circumferential
+	if a, err := m.Mesh.TightCenter(s1, s2); err == nil {
 		p.Tight = math.Abs(a)
+	}
+	alpha, err := m.Mesh.WorkingPressureAngle(m.Loosest())
+	if err == nil {
+		short := p.Thin.Min - p.Thin.Max
+		if gears[m.First].Thin == nil && gears[m.Second].Thin == nil && m.Share == ShareEqual {
+			short *= 2
+		}
+		p.Most = m.Backlash.Max + short/m.Mesh.ThinningPerBacklash(alpha)
 	}
 	return p
 }

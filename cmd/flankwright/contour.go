@@ -172,7 +172,6 @@ type drawnGear struct {
 	AsWritten    *asWritten `json:"as_written"`
 
 	name  string
-	pin   float64
 	kind  string
 	tooth involute.Tooth
 }

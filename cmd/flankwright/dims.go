@@ -13,7 +13,7 @@ func dimsCommand() *cli.Command {
 	flags := append(jobFlags(), commonFlags()...)
 	flags = append(flags, fileFlags("file to write instead of standard output")...)
 	flags = append(flags,
-		&cli.BoolFlag{Name: "index-list", Usage: "the angle of every tooth from the first, for the dividing head", Category: catOutput},
+		&cli.BoolFlag{Name: "index-list", Usage: "the angle of every tooth from the first, for the dividing head", Category: catOutput, DisableDefaultText: true},
 		&cli.StringFlag{Name: "dial-radius", Usage: "radius at which a dial indicator reads the backlash (the pitch circle's)", Category: catOutput})
 	return &cli.Command{
 		Name: "dims", Usage: "all dimensions of the gears and meshes, with warnings",

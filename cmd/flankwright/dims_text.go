@@ -89,7 +89,7 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	length("Root diameter, nominal tooth", func(x gearDims) float64 { return x.Root })
 	limits("Root diameter, thinned tooth", func(x gearDims) span { return x.RootLimits })
 	d.boreRows(&g, u, digits)
-	limits("Tooth thickness, normal, at the pitch (reference) circle", func(x gearDims) span { return x.Limits })
+	limits("Tooth thickness, normal, thinned", func(x gearDims) span { return x.Limits })
 	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i].thickness.By) })...)
 	g.row("Angle of index", "deg", d.each(func(_ int, x gearDims) string { return fmt.Sprintf("%.6f", x.Index) })...)
 	g.row("", "", d.each(func(_ int, x gearDims) string { return angleDMS(2 * math.Pi / float64(x.Teeth)) })...)

@@ -53,7 +53,7 @@ func jobFlags() []cli.Flag {
 
 func keyFlag(name, usage, category string, k keySpec) cli.Flag {
 	if k.name == "ring" {
-		return &cli.BoolFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
+		return &cli.BoolFlag{Name: name, Usage: usage, Category: category, Hidden: k.later, DisableDefaultText: true}
 	}
 	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
 }
@@ -62,9 +62,9 @@ func keyFlag(name, usage, category string, k keySpec) cli.Flag {
 func commonFlags() []cli.Flag {
 	return []cli.Flag{
 		&cli.StringFlag{Name: "units", Usage: "show lengths in mm or in, and read bare lengths of flags so", Category: catOutput},
-		&cli.BoolFlag{Name: "json", Usage: "JSON instead of text, not rounded, lengths in mm", Category: catOutput},
+		&cli.BoolFlag{Name: "json", Usage: "JSON instead of text, not rounded, lengths in mm", Category: catOutput, DisableDefaultText: true},
 		&cli.IntFlag{Name: "digits", Usage: "decimals of lengths (3 in mm, 4 in inches)", Value: -1, DefaultText: "by unit", Category: catOutput},
-		&cli.BoolFlag{Name: "explain", Usage: "each result with its formula, the numbers put in and the source", Category: catOutput},
+		&cli.BoolFlag{Name: "explain", Usage: "each result with its formula, the numbers put in and the source", Category: catOutput, DisableDefaultText: true},
 		&cli.StringFlag{Name: "gear", Usage: "one gear of the job, by name", Category: catOutput},
 		&cli.StringFlag{Name: "example", Usage: "use an example job that the program carries", Category: catOutput},
 		&cli.StringFlag{Name: "shop", Usage: "what is on hand", Hidden: true},
@@ -75,7 +75,7 @@ func commonFlags() []cli.Flag {
 func fileFlags(usage string) []cli.Flag {
 	return []cli.Flag{
 		&cli.StringFlag{Name: "output", Aliases: []string{"o"}, Usage: usage, Category: catOutput},
-		&cli.BoolFlag{Name: "force", Usage: "overwrite files that exist", Category: catOutput},
+		&cli.BoolFlag{Name: "force", Usage: "overwrite files that exist", Category: catOutput, DisableDefaultText: true},
 	}
 }
 
@@ -171,10 +171,12 @@ func requestFromFlags(c *cli.Context) (request, error) {
 	if face, ok := own["face_width"]; ok && !has(mate, "face_width") {
 		mate["face_width"] = face // one face width given is meant for both
 	}
-	delete(mate, "hand")
+	if tip, ok := own["tip"]; ok && !has(mate, "tip_diameter") {
+		mate["tip"] = tip // so is a word about tips
+	}
 	r.gears = []gearRequest{
 		{"pinion", base.with(own), own},
-		{"wheel", base.with(mate), without(mate, "hand")},
+		{"wheel", base.with(mate), mate},
 	}
 	r.gears[1].settings.vals = without(r.gears[1].settings.vals, "hand")
 	mesh.vals["gears"] = value{content: []value{{content: "pinion"}, {content: "wheel"}}}

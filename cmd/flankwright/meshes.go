@@ -2,6 +2,7 @@ package main
 
 import (
 	"math"
+	"strings"
 
 	"flankwright/inspect"
 	"flankwright/involute"
@@ -90,6 +91,9 @@ func (j *job) readCenter(m *mesh, s settings) error {
 	}
 	low, high := -tol, tol
 	if class != "" {
+		if !strings.HasPrefix(strings.ToLower(class), "js") {
+			return bad("center", s.vals["center"], "class = %q: a center distance takes a js class, such as js7", class)
+		}
 		low, high, _, err = refdata.ISO286Limits(at, class)
 		if err != nil {
 			return bad("center", s.vals["center"], "%v", err)

@@ -39,7 +39,7 @@ func newCommand() *cli.Command {
 		UsageText: "flankwright new [--example NAME] [-o FILE]\n\nExamples: " + strings.Join(exampleNames(), ", "),
 		Flags: append(fileFlags("file to write; without it the job goes to standard output"),
 			&cli.StringFlag{Name: "example", Usage: "which example", Value: exampleNames()[0]},
-			&cli.BoolFlag{Name: "json", Usage: "errors as JSON", Category: catOutput}),
+			&cli.BoolFlag{Name: "json", Usage: "errors as JSON", Category: catOutput, DisableDefaultText: true}),
 		Action: func(c *cli.Context) error {
 			if c.NArg() > 0 {
 				return wrong("new takes no file to read; write it to %q by -o %s", c.Args().First(), c.Args().First())

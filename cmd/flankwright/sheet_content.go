@@ -91,7 +91,7 @@ func (j *job) sheetData(g *gear) []export.Field {
 		data = append(data, export.Field{Label: "Helix angle, hand", Value: degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)})
 	}
 	data = append(data, []export.Field{
-		{Label: "Profile shift", Value: "x = " + fmt.Sprintf("%+.4f", shift), Other: value + " (" + other + ")"},
+		{Label: "Profile shift x", Value: fmt.Sprintf("%+.4f", shift), Other: value + " (" + other + ")"},
 		j.lengthField("Outside (tip) diameter", gg.TipDiameter()),
 		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
 		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),

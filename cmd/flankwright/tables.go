@@ -11,7 +11,7 @@ import (
 
 func tablesCommand() *cli.Command {
 	flags := append(fileFlags("file to write instead of standard output"),
-		&cli.BoolFlag{Name: "json", Usage: "JSON instead of text", Category: catOutput})
+		&cli.BoolFlag{Name: "json", Usage: "JSON instead of text", Category: catOutput, DisableDefaultText: true})
 	return &cli.Command{
 		Name: "tables", Usage: "the reference data the program carries, with sources and confidence",
 		UsageText: "flankwright tables          lists them\nflankwright tables NAME     shows one", Flags: flags,

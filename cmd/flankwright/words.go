@@ -41,14 +41,35 @@ func (j *job) impossibleGear(g *gear, err error) error {
 		return err
 	}
 	at := g.settings.at
-	text := fmt.Sprintf("gear %s: %s", g.name, j.gearReason(g, imp))
+	text := fmt.Sprintf("%s: %s", called(g), j.gearReason(imp))
 	if v, ok := g.settings.vals[keyOf(imp.Reason)]; ok {
+		at = v.at
+	} else if v, ok := j.backlashOf(g); ok && keyOf(imp.Reason) == "thin" {
 		at = v.at
 	}
 	if at.file == "" {
 		return wrong("%s", text)
 	}
 	return fault(at, "%s", text)
+}
+
+// called names a gear in a sentence.
+func called(g *gear) string {
+	if g.name == "gear" {
+		return "the gear"
+	}
+	return "gear " + g.name
+}
+
+// backlashOf returns the backlash that decided a gear's thickness.
+func (j *job) backlashOf(g *gear) (value, bool) {
+	for _, m := range j.meshes {
+		if (m.first == g || m.second == g) && g.thickness.By == inspect.ByBacklash {
+			v, ok := j.request.meshes[m.index].vals["backlash"]
+			return v, ok
+		}
+	}
+	return value{}, false
 }
 
 // keyOf names the key that a reason is most likely about, for its place in the file.
@@ -70,7 +91,7 @@ func keyOf(r involute.Reason) string {
 	return "teeth"
 }
 
-func (j *job) gearReason(g *gear, e *involute.Impossible) string {
+func (j *job) gearReason(e *involute.Impossible) string {
 	v, l := j.length(e.Value), j.length(e.Limit)
 	switch e.Reason {
 	case involute.RackPointed:
@@ -158,23 +179,32 @@ func (j *job) planError(err error) error {
 		}
 		return err
 	}
+	return bad("backlash", j.request.meshes[p.Mesh].vals["backlash"], "%s", j.planReason(p))
+}
+
+// planReason says why a backlash cannot be had, and what could.
+func (j *job) planReason(p *inspect.PlanProblem) string {
 	m := j.meshes[p.Mesh]
 	want := m.plan.Backlash
-	v := j.request.meshes[p.Mesh].vals["backlash"]
-	span := fmt.Sprintf("%s to %s", j.length(want.Min), j.length(want.Max))
-	text := ""
-	switch {
-	case p.Negative:
-		text = fmt.Sprintf("%s and %s: %s of backlash needs teeth thicker than nominal: as they are they already have %s at the tightest center. ", m.first.name, m.second.name, span, j.length(p.Play.Min))
+	text := fmt.Sprintf("%s and %s: %s to %s of backlash ", m.first.name, m.second.name, j.length(want.Min), j.length(want.Max))
+	switch p.Kind {
+	case inspect.TooThick:
+		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s at the tightest center. Ask for %s or more, ", j.length(p.Play), j.length(p.Play))
 		if p.Tight > 0 {
-			text += fmt.Sprintf("Ask for %s or more, bring the center toward %s, or raise shift", j.length(p.Play.Min), j.length(p.Tight))
-		} else {
-			text += fmt.Sprintf("Ask for %s or more, or raise shift", j.length(p.Play.Min))
+			text += fmt.Sprintf("bring the center toward %s, ", j.length(p.Tight))
 		}
-	default:
-		text = fmt.Sprintf("%s and %s: %s of backlash leaves nothing for the teeth: the center distance's tolerance takes %s, and a gear already fixed takes its own. Widen the backlash or tighten the tolerances", m.first.name, m.second.name, span, j.length(p.Spread))
+		return text + "or raise shift"
+	case inspect.Conflict:
+		return text + fmt.Sprintf("cannot be had together with the other mesh of %s: it would have to be %s to %s thinner than nominal. Change one of the two backlashes, or give %s a thin of its own",
+			j.gears[p.Gear].name, j.length(p.Thin.Min), j.length(p.Thin.Max), j.gears[p.Gear].name)
 	}
-	return bad("backlash", v, "%s", text)
+	text += "leaves nothing for the teeth: "
+	if m.first.thin != nil || m.second.thin != nil {
+		text += "the center distance's tolerance and the gear that is already fixed take it all. "
+	} else {
+		text += "the center distance's tolerance takes it all. "
+	}
+	return text + fmt.Sprintf("Allow more than %s, or tighten the tolerance", j.length(p.Most))
 }
 
 // faultText words why a measure cannot be used.
