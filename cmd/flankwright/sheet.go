@@ -36,7 +36,7 @@ func jobFlagsWithout(names ...string) []cli.Flag {
 
 func sheetCommand() *cli.Command {
 	flags := append(jobFlagsWithout("material"), commonFlags()...)
-	flags = append(flags, fileFlags("FILE.pdf, a page a gear; FILE.svg for one gear; a folder, DIR/, for an SVG of every gear")...)
+	flags = append(flags, fileFlags("FILE.pdf, a page a gear; FILE.svg or .png for one gear; a folder, DIR/, for an SVG of every gear")...)
 	flags = append(flags, targetFlags()...)
 	flags = append(flags, sheetFlags()...)
 	return &cli.Command{
@@ -62,10 +62,10 @@ func runSheet(c *cli.Context) error {
 	case out == "" || out == "-":
 		return wrong("sheet needs a file to write: -o sheet.pdf, or -o sheet.svg for one gear")
 	case folder, ending == ".pdf":
-	case ending == ".svg" && len(gears) > 1:
-		return wrong("-o %s: an SVG holds one page, and the job has %s; give --gear NAME, a folder -o DIR/, or a .pdf", out, quoted(j.gearNames()))
-	case ending != ".svg":
-		return wrong("-o %s: a sheet is written as .pdf or .svg", out)
+	case ending != ".svg" && ending != ".png":
+		return wrong("-o %s: a sheet is written as .pdf, .svg or .png", out)
+	case len(gears) > 1:
+		return wrong("-o %s: a picture holds one page, and the job has %s; give --gear NAME, a folder -o DIR/, or a .pdf", out, quoted(j.gearNames()))
 	}
 	pages, err := j.sheetPages(c, gears, a)
 	if err != nil {
@@ -108,13 +108,19 @@ func writeSheets(c *cli.Context, out string, folder bool, ending string, j *job,
 	return []string{filepath.ToSlash(out)}, writeFile(c, out, data)
 }
 
+// pictureDPI is the resolution of a sheet as PNG, for a look on a screen.
+const pictureDPI = 110
+
 func sheetBytes(j *job, pages []export.Drawing, ending string) ([]byte, error) {
 	var b bytes.Buffer
 	title, _, _ := j.top.word("title")
 	var err error
-	if ending == ".svg" {
+	switch ending {
+	case ".svg":
 		err = pages[0].WriteSVG(&b)
-	} else {
+	case ".png":
+		err = pages[0].WritePNG(&b, pictureDPI)
+	default:
 		err = export.WritePDF(&b, orDefault(title, "Inspection sheet"), pages)
 	}
 	if err != nil {
