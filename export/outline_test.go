@@ -78,17 +78,6 @@ func drawOutline(t *rapid.T) Outline {
 	return o
 }
 
-// asFile returns what a file of the outline holds, in mm.
-func asFile(t testing.TB, o Outline) Outline {
-	t.Helper()
-	f, err := o.fileForm()
-	if err != nil {
-		t.Fatal(err)
-	}
-	f.scale(func(x float64) float64 { return x * o.Unit.MM() })
-	return f
-}
-
 // Differences that count as the same: 1e-9 mm, and a bulge off by 1e-12.
 const (
 	samePlace = 1e-9

@@ -133,9 +133,7 @@ func TestSheetSaysWhatItIsGiven(t *testing.T) {
 					want = append(want, f.MM, f.Inch)
 				}
 			}
-			for _, line := range append(append(s.Method, s.Warnings...), s.Cautions...) {
-				want = append(want, line)
-			}
+			want = append(want, append(append(s.Method, s.Warnings...), s.Cautions...)...)
 			for _, w := range want {
 				if !strings.Contains(all, w) {
 					t.Errorf("%s on %v: %q is not on the sheet", name, size, w)

@@ -58,8 +58,7 @@ type cutting struct {
 	Inner    float64 // mm
 }
 
-func (c cutting) half() float64   { return (c.To - c.From) / 2 }
-func (c cutting) middle() float64 { return (c.To + c.From) / 2 }
+func (c cutting) half() float64 { return (c.To - c.From) / 2 }
 
 // widestCutting is the widest half angle of a picture that shows a part of the gear
 // only: beyond it the cut would hang beside the teeth instead of below them.

@@ -115,7 +115,7 @@ func holeDeviation(r record, nominalMM float64, letter string, grade int) (um fl
 		return r.number(letter), true, nil
 	case "J":
 		if grade < 6 || grade > 8 {
-			return 0, false, fmt.Errorf("J is tabulated for grades 6 to 8 only; use JS%d", grade)
+			return 0, false, fmt.Errorf("deviation J is tabulated for grades 6 to 8 only; use JS%d", grade)
 		}
 		return r.number("J" + strconv.Itoa(grade)), false, nil
 	case "K", "M", "N":
@@ -127,14 +127,14 @@ func holeDeviation(r record, nominalMM float64, letter string, grade int) (um fl
 	case letter == "M" && grade == 6 && (over == 250 || over == 280):
 		return -9, false, nil // the standard's exception from 250 to 315 mm: not −20 + 9
 	case letter == "K" && grade > 8 && over > 0:
-		return 0, false, fmt.Errorf("K coarser than grade 8 is tabulated up to 3 mm only; use JS%d", grade)
+		return 0, false, fmt.Errorf("deviation K coarser than grade 8 is tabulated up to 3 mm only; use JS%d", grade)
 	case letter == "N" && grade > 8:
 		if nominalMM <= 1 {
-			return 0, false, fmt.Errorf("N coarser than grade 8 is not used up to 1 mm")
+			return 0, false, fmt.Errorf("deviation N coarser than grade 8 is not used up to 1 mm")
 		}
 		column = "N_over8"
 	case !r.has(column): // T alone has blanks
-		return 0, false, fmt.Errorf("T is not tabulated up to 24 mm; use U%d", grade)
+		return 0, false, fmt.Errorf("deviation T is not tabulated up to 24 mm; use U%d", grade)
 	}
 	um = r.number(column)
 	if grade <= deltaUpTo {
