@@ -63,16 +63,34 @@ func jsonText(v any) ([]byte, error) {
 	return b.Bytes(), nil
 }
 
-// emit delivers a result as JSON or as text.
+// emit delivers a result as JSON or as text, to -o or to standard output.
 func emit(c *cli.Context, result any, text func() []byte) error {
-	data := []byte(nil)
-	if c.Bool("json") {
-		var err error
-		if data, err = jsonText(result); err != nil {
-			return err
-		}
-	} else {
-		data = text()
+	data, err := render(c, result, text)
+	if err != nil {
+		return err
 	}
 	return deliver(c, data)
+}
+
+// emitBeside prints a result to standard output where -o names a drawing or a folder.
+func emitBeside(c *cli.Context, result any, text func() []byte) error {
+	data, err := render(c, result, text)
+	if err != nil {
+		return err
+	}
+	return print(c, data)
+}
+
+func render(c *cli.Context, result any, text func() []byte) ([]byte, error) {
+	if c.Bool("json") {
+		return jsonText(result)
+	}
+	return text(), nil
+}
+
+func print(c *cli.Context, data []byte) error {
+	if _, err := c.App.Writer.Write(data); err != nil {
+		return cannot("standard output: %v", err)
+	}
+	return nil
 }

@@ -1,5 +1,5 @@
-// Command flankwright sizes nothing yet but dimensions a gear pair, says what
-// to measure, draws the contour and prints the inspection sheet.
+// Command flankwright dimensions gear pairs, says what to measure and between
+// which limits, draws the contour and prints the inspection sheet.
 package main
 
 import "os"

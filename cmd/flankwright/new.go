@@ -1,10 +1,8 @@
 package main
 
 import (
-	"bytes"
 	"embed"
 	"fmt"
-	"io"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -57,11 +55,7 @@ func newCommand() *cli.Command {
 func deliver(c *cli.Context, data []byte) error {
 	path := c.String("output")
 	if path == "" || path == "-" {
-		_, err := io.Copy(c.App.Writer, bytes.NewReader(data))
-		if err != nil {
-			return cannot("standard output: %v", err)
-		}
-		return nil
+		return print(c, data)
 	}
 	if err := writeFile(c, path, data); err != nil {
 		return err

@@ -47,7 +47,7 @@ func runPacket(c *cli.Context) error {
 		drawn[i].File = names[i]
 		result.Gears.add(drawn[i].name, drawn[i])
 	}
-	return emitTo(c, map[string]any{"files": names, "gears": result.Gears, "warnings": append([]warning{}, j.warnings...)}, func() []byte {
+	return emitBeside(c, map[string]any{"files": names, "gears": result.Gears, "warnings": append([]warning{}, j.warnings...)}, func() []byte {
 		p := newPage(c.App.Writer)
 		for _, n := range names[len(drawn):] {
 			p.line("%s", n)

@@ -75,15 +75,28 @@ func runSheet(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	return emitTo(c, map[string]any{"files": names, "pages": len(pages), "warnings": append([]warning{}, j.warnings...)}, func() []byte {
+	r := sheetResult{Files: names, Pages: len(pages), Warnings: append([]warning{}, j.warnings...)}
+	if c.Bool("explain") {
+		r.Explain = j.explainTargets(newTargets(j, gears, a))
+	}
+	return emitBeside(c, r, func() []byte {
 		p := newPage(c.App.Writer)
 		for _, n := range names {
 			p.line("%s", n)
 		}
 		p.line("%s, true scale: print without fitting to the page, and check the bar with a rule.", plural(len(pages), "page"))
-		p.warnings(j.warnings)
+		p.explanations(r.Explain)
+		p.warnings(r.Warnings)
 		return []byte(p.b.String())
 	})
+}
+
+// sheetResult is what the command says, as JSON writes it.
+type sheetResult struct {
+	Files    []string      `json:"files"`
+	Pages    int           `json:"pages"`
+	Warnings []warning     `json:"warnings"`
+	Explain  []explanation `json:"explain,omitempty"`
 }
 
 func writeSheets(c *cli.Context, out string, folder bool, ending string, j *job, gears []*gear, pages []export.Drawing) ([]string, error) {
