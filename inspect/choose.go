@@ -73,13 +73,13 @@ func SpanChoices(g *involute.Gear, s Limits, p Part) []int {
 		d float64
 	}
 	var usable []choice
-	for k := max(1, nearest-2); k <= nearest+2 && k < g.Teeth(); k++ {
+	for k := max(2, nearest-2); k <= nearest+2 && k < g.Teeth(); k++ {
 		if NewTarget(g, Span{k}, s, p).Usable() {
 			usable = append(usable, choice{k, math.Abs(float64(k) - ideal)})
 		}
 	}
 	if len(usable) == 0 {
-		return []int{nearest}
+		return []int{nearest} // of few teeth perhaps one: its base thickness, which a narrow caliper can take
 	}
 	slices.SortStableFunc(usable, func(a, b choice) int {
 		if a.d < b.d {

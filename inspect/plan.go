@@ -106,44 +106,141 @@ const noThinning = 1e-9
 
 // Plan finds the thickness limits of all gears: a gear's own thinning rules;
 // else its meshes' backlash, the thickest pair at the tightest center giving
-// the least, the thinnest at the loosest the greatest; a gear that is already
-// fixed leaves its mate the rest; a gear in several meshes takes what
-// satisfies all; else nominal.
+// the least, the thinnest at the loosest the greatest; else nominal.
+//
+// In each mesh the gears share the thinning out, and a gear that is already fixed
+// leaves its mate the rest. A gear in several meshes takes the least of its
+// shares, least thinning and range alike, which suits all; its mates in one mesh
+// only take what that leaves them.
 func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
-	out := make([]Thickness, len(gears))
-	thin := make([]Limits, len(gears))
+	p := planner{gears: gears, meshes: meshes, thin: make([]Limits, len(gears)), by: make([]Decider, len(gears)), hard: make([]bool, len(gears))}
 	for i, g := range gears {
-		out[i].By = ByNothing
+		p.by[i] = ByNothing
 		if g.Thin != nil {
-			out[i].By, thin[i] = ByThin, *g.Thin
+			p.by[i], p.thin[i] = ByThin, *g.Thin
 		}
 	}
-	for k, m := range meshes {
-		if m.Backlash == nil || (gears[m.First].Thin != nil && gears[m.Second].Thin != nil) {
-			continue
-		}
-		want, err := m.thinning(gears)
-		if err != nil {
-			return nil, err
-		}
-		for _, w := range m.split(gears, want) {
-			if kind, bad := w.thin.problem(); bad {
-				return nil, m.explain(&PlanProblem{Kind: kind, Mesh: k, Gear: w.gear, Thin: w.thin}, gears)
-			}
-			if out[w.gear].By == ByBacklash {
-				w.thin = Limits{max(w.thin.Min, thin[w.gear].Min), min(w.thin.Max, thin[w.gear].Max)}
-				if w.thin.Min > w.thin.Max+noThinning {
-					return nil, m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: w.gear, Thin: w.thin}, gears)
-				}
-			}
-			out[w.gear].By, thin[w.gear] = ByBacklash, w.thin
-		}
+	if err := p.shareOut(); err != nil {
+		return nil, err
 	}
+	if err := p.settle(); err != nil {
+		return nil, err
+	}
+	out := make([]Thickness, len(gears))
 	for i, g := range gears {
 		s := g.Gear.NominalThickness()
-		out[i].Limits = Limits{s - thin[i].Max, s - thin[i].Min}
+		out[i] = Thickness{Limits{s - p.thin[i].Max, s - p.thin[i].Min}, p.by[i]}
 	}
 	return out, nil
+}
+
+// A planner works a plan out.
+type planner struct {
+	gears  []PlanGear
+	meshes []PlanMesh
+	thin   []Limits
+	by     []Decider
+	wants  []Limits // by mesh: the thinning of both gears together
+	active []int    // the meshes that decide something
+	hard   []bool   // by gear: its share is not to be changed
+}
+
+// shareOut gives every free gear the least of the shares that its meshes ask for.
+func (p *planner) shareOut() error {
+	p.wants = make([]Limits, len(p.meshes))
+	for k, m := range p.meshes {
+		if m.Backlash == nil || (p.gears[m.First].Thin != nil && p.gears[m.Second].Thin != nil) {
+			continue
+		}
+		var err error
+		if p.wants[k], err = m.thinning(p.gears); err != nil {
+			return err
+		}
+		p.active = append(p.active, k)
+		for _, w := range m.split(p.gears, p.wants[k]) {
+			if kind, bad := w.thin.problem(); bad {
+				return m.explain(&PlanProblem{Kind: kind, Mesh: k, Gear: w.gear, Thin: w.thin}, p.gears)
+			}
+			p.take(w)
+		}
+	}
+	return nil
+}
+
+// take adds one mesh's share to what a gear has. A hard share, of a mesh that
+// names the gear that takes it all, rules over soft ones.
+func (p *planner) take(w share) {
+	old, first := p.thin[w.gear], p.by[w.gear] != ByBacklash
+	p.by[w.gear] = ByBacklash
+	switch {
+	case first || (w.hard && !p.hard[w.gear]):
+		p.thin[w.gear], p.hard[w.gear] = w.thin, w.hard
+		return
+	case w.hard:
+		p.thin[w.gear] = Limits{max(old.Min, w.thin.Min), min(old.Max, w.thin.Max)}
+		return
+	case p.hard[w.gear]:
+		return
+	}
+	least := min(old.Min, w.thin.Min)
+	p.thin[w.gear] = Limits{least, least + min(old.Width(), w.thin.Width())}
+}
+
+// settle gives what a gear in several meshes leaves over to its mates, and
+// checks every mesh.
+func (p *planner) settle() error {
+	for _, k := range p.active {
+		m := p.meshes[k]
+		for _, side := range []struct{ own, mate int }{{m.First, m.Second}, {m.Second, m.First}} {
+			if p.by[side.own] == ByBacklash && !p.hard[side.own] && p.count(side.own) == 1 && p.count(side.mate) > 1 {
+				rest := Limits{p.wants[k].Min - p.thin[side.mate].Min, p.wants[k].Max - p.thin[side.mate].Max}
+				p.thin[side.own] = rest
+				break
+			}
+		}
+	}
+	for _, k := range p.active {
+		m, want := p.meshes[k], p.wants[k]
+		a, b := p.thin[m.First], p.thin[m.Second]
+		if short := want.Min - a.Min - b.Min; short > noThinning && !p.deepen(k, short) {
+			return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: a}, p.gears)
+		}
+	}
+	return p.check()
+}
+
+// check holds every mesh against what it asked for.
+func (p *planner) check() error {
+	for _, k := range p.active {
+		m, want := p.meshes[k], p.wants[k]
+		a, b := p.thin[m.First], p.thin[m.Second]
+		if a.Min > a.Max+noThinning || b.Min > b.Max+noThinning || a.Min+b.Min < want.Min-noThinning || a.Max+b.Max > want.Max+noThinning {
+			return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: a}, p.gears)
+		}
+	}
+	return nil
+}
+
+// deepen thins one of two gears that both run in several meshes by what their own mesh still lacks.
+func (p *planner) deepen(k int, short float64) bool {
+	for _, i := range []int{p.meshes[k].First, p.meshes[k].Second} {
+		if p.by[i] == ByBacklash && !p.hard[i] {
+			p.thin[i] = Limits{p.thin[i].Min + short, p.thin[i].Max + short}
+			return true
+		}
+	}
+	return false
+}
+
+// count returns how many deciding meshes a gear runs in.
+func (p *planner) count(gear int) int {
+	n := 0
+	for _, k := range p.active {
+		if p.meshes[k].First == gear || p.meshes[k].Second == gear {
+			n++
+		}
+	}
+	return n
 }
 
 // thinning returns how much the two teeth together must be thinner than
@@ -162,6 +259,7 @@ func (m PlanMesh) thinning(gears []PlanGear) (Limits, error) {
 type share struct {
 	gear int
 	thin Limits
+	hard bool
 }
 
 // split shares the pair's thinning out to the gears that are still free. With
@@ -171,16 +269,16 @@ func (m PlanMesh) split(gears []PlanGear, want Limits) []share {
 	f1, f2 := gears[m.First].Thin, gears[m.Second].Thin
 	switch {
 	case f1 != nil:
-		return []share{{m.Second, Limits{want.Min - f1.Min, want.Max - f1.Max}}}
+		return []share{{m.Second, Limits{want.Min - f1.Min, want.Max - f1.Max}, false}}
 	case f2 != nil:
-		return []share{{m.First, Limits{want.Min - f2.Min, want.Max - f2.Max}}}
+		return []share{{m.First, Limits{want.Min - f2.Min, want.Max - f2.Max}, false}}
 	case m.Share == ShareFirst:
-		return []share{{m.First, want}, {m.Second, Limits{}}}
+		return []share{{m.First, want, true}, {m.Second, Limits{}, true}}
 	case m.Share == ShareSecond:
-		return []share{{m.First, Limits{}}, {m.Second, want}}
+		return []share{{m.First, Limits{}, true}, {m.Second, want, true}}
 	}
 	half := Limits{want.Min / 2, want.Max / 2}
-	return []share{{m.First, half}, {m.Second, half}}
+	return []share{{m.First, half, false}, {m.Second, half, false}}
 }
 
 // problem reports an empty or a negative thinning.

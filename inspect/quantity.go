@@ -19,8 +19,8 @@ func ParseNumber(text string) (float64, error) {
 	}
 	v, err := strconv.ParseFloat(s, 64)
 	if err != nil || math.IsNaN(v) || math.IsInf(v, 0) {
-		if strings.Count(s, ",") == 1 {
-			return 0, fmt.Errorf("%q is not a number; write a decimal point, not a comma", clip(text))
+		if strings.Contains(s, ",") && decimalComma(s) {
+			return 0, fmt.Errorf("%q is not a number; decimals take a point, not a comma", clip(text))
 		}
 		return 0, fmt.Errorf("%q is not a number", clip(text))
 	}
@@ -39,10 +39,19 @@ func clip(s string) string {
 func ParseLength(text string, bare Unit) (float64, error) {
 	number, unit := splitUnit(text, bare)
 	v, err := parseFraction(number)
+	if err != nil && decimalComma(number) {
+		return 0, fmt.Errorf("%q is not a length; decimals take a point, not a comma", clip(text))
+	}
 	if err != nil {
 		return 0, fmt.Errorf("%q is not a length; write it like 19.05mm, 0.75in or 3/16in", clip(text))
 	}
 	return v * unit.MM(), nil
+}
+
+// decimalComma reports whether a number would do if its comma were a point.
+func decimalComma(number string) bool {
+	_, err := ParseNumber(strings.Replace(number, ",", ".", 1))
+	return err == nil && strings.Contains(number, ",")
 }
 
 // splitUnit takes the unit off the end of a length.
@@ -98,6 +107,9 @@ func ParseLimits(text string, bare Unit) (Limits, error) {
 	low, high, isRange := strings.Cut(text, "..")
 	if !isRange {
 		v, err := ParseLength(text, bare)
+		if i := strings.LastIndexByte(text, '-'); err != nil && i > 0 && !strings.Contains(text, "/") {
+			return Limits{}, fmt.Errorf("%q is not a range; write it with two points: %s..%s", clip(text), strings.TrimSpace(text[:i]), strings.TrimSpace(text[i+1:]))
+		}
 		return Limits{v, v}, err
 	}
 	_, bare = splitUnit(high, bare)

@@ -55,13 +55,14 @@ func runContour(c *cli.Context) error {
 	folder := isFolder(out)
 	if folder {
 		opt.format, err = formatByName(c.String("format"), opt.r12)
-	} else if len(gears) > 1 {
-		return wrong("-o %s: one file holds one gear, and the job has %s; give --gear NAME, or a folder -o DIR/", out, quoted(j.gearNames()))
 	} else {
 		opt.format, err = formatByEnding(out, opt.r12)
 	}
 	if err != nil {
 		return err
+	}
+	if !folder && len(gears) > 1 {
+		return wrong("-o %s: one file holds one gear, and the job has %s; give --gear NAME, or a folder -o DIR/", out, quoted(j.gearNames()))
 	}
 	drawn, files, err := j.draw(gears, opt)
 	if err != nil {
@@ -181,6 +182,8 @@ type asWritten struct {
 	OverPins   float64 `json:"over_pins_mm"`
 	Target     float64 `json:"target_mm"`
 	Difference float64 `json:"difference_mm"`
+	Limits     span    `json:"limits_mm"`
+	Within     bool    `json:"within_limits"`
 	Teeth      int     `json:"teeth_counted"`
 }
 
@@ -281,6 +284,13 @@ func (j *job) measureBack(g *gear, tooth involute.Tooth, data []byte, o contourO
 		w.OverPins = most
 	}
 	w.Difference = w.OverPins - target
+	limits := inspect.NewTarget(g.g, m, g.thickness.Limits, inspect.Part{})
+	w.Limits = toSpan(limits.Value)
+	w.Within = w.OverPins >= w.Limits.Min && w.OverPins <= w.Limits.Max
+	if g.thickness.By != inspect.ByNothing && limits.Value.Width() > 0 && math.Abs(w.Difference) > mostDrift*limits.Value.Width() {
+		j.addWarning("coarse-contour", g.name, "the arcs alone take %s of the %s between the limits over pins; draw it finer with --tolerance %.4gmm",
+			j.length(math.Abs(w.Difference)), j.length(limits.Value.Width()), o.tolerance/4)
+	}
 	seat, err := tooth.Seat(pin)
 	_, byPin := g.g.PinSensitivity(involute.TwoPins, seat)
 	if usable := len(m.Faults(tooth, inspect.Part{})) == 0; err == nil && usable && math.Abs(w.Difference) > 2*o.tolerance*byPin+closeEnough {
@@ -289,13 +299,17 @@ func (j *job) measureBack(g *gear, tooth involute.Tooth, data []byte, o contourO
 	return w, nil
 }
 
+// mostDrift is the share of the tolerance over pins that a drawing may use up
+// before it is said: a quarter leaves the machine most of it.
+const mostDrift = 0.25
+
 // closeEnough is what the search for a pin's seat on a contour may be off by, mm.
 const closeEnough = 1e-6
 
 // writeDrawn writes contour files, all or none, and reads them once more to see that the disk has them.
 func writeDrawn(c *cli.Context, out string, folder bool, files []export.File) error {
 	if folder {
-		if err := fileError(export.WriteFolder(out, files, c.Bool("force"))); err != nil {
+		if err := fileError(out, export.WriteFolder(out, files, c.Bool("force"))); err != nil {
 			return err
 		}
 	} else if err := writeFile(c, out, files[0].Data); err != nil {
@@ -314,17 +328,20 @@ func writeDrawn(c *cli.Context, out string, folder bool, files []export.File) er
 	return nil
 }
 
-// fileError words an error of writing files.
-func fileError(err error) error {
+// fileError words an error of writing a file or into a folder.
+func fileError(path string, err error) error {
 	if err == nil {
 		return nil
 	}
 	var exists *export.ExistError
+	var p *os.PathError
 	switch {
 	case errors.As(err, &exists):
 		return cannot("%v; --force overwrites", exists)
 	case errors.Is(err, fs.ErrNotExist):
-		return cannot("%s; make the folder first", plainPathError(err))
+		return cannot("%s: there is no such folder; make it first", path)
+	case errors.As(err, &p):
+		return cannot("%s: %v", path, p.Err)
 	}
-	return cannot("%s", plainPathError(err))
+	return cannot("%s: %v", path, err)
 }

@@ -51,6 +51,15 @@ func (r *contours) text(p *page, digits int) []byte {
 	written("  target", func(w *asWritten) float64 { return w.Target })
 	written("  as written", func(w *asWritten) float64 { return w.OverPins })
 	written("  difference", func(w *asWritten) float64 { return w.Difference })
+	each("  within the limits", "", func(d drawnGear) string {
+		switch {
+		case d.AsWritten == nil:
+			return "-"
+		case d.AsWritten.Limits.Min == d.AsWritten.Limits.Max:
+			return "no limits"
+		}
+		return yesNo(d.AsWritten.Within)
+	})
 	p.grid(g)
 	for _, d := range r.gears {
 		if d.Section == "transverse" {

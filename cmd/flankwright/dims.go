@@ -79,6 +79,7 @@ type gearDims struct {
 	Thickness       float64  `json:"tooth_thickness_mm"`
 	TransverseThick float64  `json:"transverse_tooth_thickness_mm"`
 	TipThickness    float64  `json:"tip_thickness_mm"`
+	MeasuredTip     *float64 `json:"measured_tip_diameter_mm,omitempty"`
 	Undercut        bool     `json:"undercut"`
 	WholeDepth      float64  `json:"whole_depth_mm"`
 	Limits          span     `json:"thickness_limits_mm"`
@@ -137,9 +138,12 @@ func newGearDims(g *gear) gearDims {
 		Index: 360 / float64(gg.Teeth()), VirtualTeeth: gg.VirtualTeeth(),
 		Rack: rackDims{g.rack, spec.Rack.Addendum, spec.Rack.Dedendum, spec.Rack.TipRadius, g.source},
 	}
-	d.CutDepth = span{(d.Tip - d.RootLimits.Max) / 2, (d.Tip - d.RootLimits.Min) / 2}
+	d.CutDepth = toSpan(g.depthOfCut())
 	if lead, ok := gg.Lead(); ok {
 		d.Lead, d.Hand = &lead, handWord(spec.Helix)
+	}
+	if g.measured > 0 {
+		d.MeasuredTip = &g.measured
 	}
 	if g.bore != nil {
 		b := toSpan(g.bore.limits)

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strconv"
 
 	"flankwright/inspect"
@@ -14,8 +15,11 @@ func (d *dims) text(p *page, digits int) []byte {
 	f := func(mm float64) string { return u.Format(mm, digits) }
 	if title, _, _ := d.job.top.word("title"); title != "" {
 		p.head(title)
-		p.blank()
 	}
+	if n := len(d.Warnings); n > 0 {
+		p.line("%s below", plural(n, "warning"))
+	}
+	p.blank()
 	p.grid(d.shopGrid(u, f, digits))
 	for _, m := range d.Meshes {
 		p.blank()
@@ -26,6 +30,7 @@ func (d *dims) text(p *page, digits int) []byte {
 	for _, m := range d.Meshes {
 		p.blank()
 		p.grid(m.theoryGrid(u, f))
+		p.grid(m.pairGrid(u, f))
 	}
 	if len(d.Meshes) > 0 {
 		p.blank()
@@ -84,6 +89,7 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	}
 	g.row("Teeth", "", d.each(func(_ int, x gearDims) string { return strconv.Itoa(x.Teeth) })...)
 	length("Outside (tip) diameter", func(x gearDims) float64 { return x.Tip })
+	d.blankRow(&g, unit, f)
 	length("Whole depth, nominal tooth", func(x gearDims) float64 { return x.WholeDepth })
 	limits("Depth of cut from the outside", func(x gearDims) span { return x.CutDepth })
 	length("Root diameter, nominal tooth", func(x gearDims) float64 { return x.Root })
@@ -94,6 +100,19 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	g.row("Angle of index", "deg", d.each(func(_ int, x gearDims) string { return fmt.Sprintf("%.6f", x.Index) })...)
 	g.row("", "", d.each(func(_ int, x gearDims) string { return angleDMS(2 * math.Pi / float64(x.Teeth)) })...)
 	return g
+}
+
+// blankRow shows measured blanks, where there are any.
+func (d *dims) blankRow(g *grid, unit string, f func(float64) string) {
+	var cells []string
+	any := false
+	for _, x := range d.list {
+		any = any || x.measured > 0
+		cells = append(cells, f(x.blank()))
+	}
+	if any {
+		g.row("  blank as measured", unit, cells...)
+	}
 }
 
 func (d *dims) boreRows(g *grid, u inspect.Unit, digits int) {
@@ -108,7 +127,10 @@ func (d *dims) boreRows(g *grid, u inspect.Unit, digits int) {
 		out := u.FormatLimits(x.bore.limits, digits)
 		low, high, class = append(low, out.Low), append(high, out.High), append(class, x.bore.class)
 	}
-	if any {
+	switch {
+	case any && slices.Equal(low, high):
+		g.row("Bore", u.String(), low...)
+	case any:
 		g.row("Bore, least", u.String(), low...)
 		g.row("  most", u.String(), high...)
 	}
@@ -200,17 +222,20 @@ func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) g
 	g.section(m.Gears[0] + " and " + m.Gears[1])
 	center := u.FormatLimits(m.mesh.plan.Center, digits)
 	g.row("Center distance", unit, center.Low, center.High)
-	range_ := func(label, unit string, s span, format func(float64) string) {
-		g.row(label, unit, format(s.Min), format(s.Max))
+	lengths := func(label string, s span) {
+		out := u.FormatLimits(inspect.Limits(s), digits)
+		g.row(label, unit, out.Low, out.High)
 	}
-	minutes := func(deg float64) string { return fmt.Sprintf("%.2f", deg*60) }
-	range_("Backlash, circumferential, at the working pitch circle", unit, m.Circumferental, f)
-	range_("  normal to the flanks", unit, m.Normal, f)
-	range_("  as an angle of "+m.Gears[0], "arcmin", m.AngleFirst, minutes)
-	range_("  as an angle of "+m.Gears[1], "arcmin", m.AngleSecond, minutes)
-	range_("  as play of the center distance", unit, m.CenterPlay, f)
-	range_(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.First), m.Gears[0]), unit, m.Dial.First, f)
-	range_(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.Second), m.Gears[1]), unit, m.Dial.Second, f)
+	minutes := func(label string, s span) {
+		g.row(label, "arcmin", fmt.Sprintf("%.2f", s.Min*60), fmt.Sprintf("%.2f", s.Max*60))
+	}
+	lengths("Backlash, circumferential, at the working pitch circle", m.Circumferental)
+	lengths("  normal to the flanks", m.Normal)
+	minutes("  as an angle of "+m.Gears[0], m.AngleFirst)
+	minutes("  as an angle of "+m.Gears[1], m.AngleSecond)
+	lengths("  as play of the center distance", m.CenterPlay)
+	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.First), m.Gears[0]), m.Dial.First)
+	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.Second), m.Gears[1]), m.Dial.Second)
 	return g
 }
 
@@ -227,13 +252,19 @@ func (m meshDims) theoryGrid(u inspect.Unit, f func(float64) string) grid {
 	slides := func(label string, s pairSlides) { g.row(label, "", slideText(s.First), slideText(s.Second)) }
 	slides("Specific sliding at the root end", m.SlidingRoot)
 	slides("  at the tip end", m.SlidingTip)
-	g.row("Ratio", "", "", fmt.Sprintf("%.5f", m.Ratio))
-	g.row("Working pressure angle, transverse", "deg", "", fmt.Sprintf("%.4f", m.WorkingAngle))
-	g.row("Contact ratio, transverse", "", "", fmt.Sprintf("%.4f", m.Contact))
-	if m.Overlap > 0 || m.mesh.first.g.Helical() {
-		g.row("Overlap ratio", "", "", overlapText(m))
+	return g
+}
+
+// pairGrid holds what belongs to the pair, not to one of its gears.
+func (m meshDims) pairGrid(u inspect.Unit, f func(float64) string) grid {
+	g := grid{heads: []string{""}}
+	g.row("Ratio", "", fmt.Sprintf("%.5f", m.Ratio))
+	g.row("Working pressure angle, transverse", "deg", fmt.Sprintf("%.4f", m.WorkingAngle))
+	g.row("Contact ratio, transverse", "", fmt.Sprintf("%.4f", m.Contact))
+	if m.mesh.first.g.Helical() {
+		g.row("Overlap ratio", "", overlapText(m))
 	}
-	g.row("Center distance without backlash, nominal teeth", unit, "", f(m.Tight))
+	g.row("Center distance without backlash, nominal teeth", u.String(), f(m.Tight))
 	return g
 }
 

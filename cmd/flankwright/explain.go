@@ -4,6 +4,7 @@ import (
 	"math"
 	"strconv"
 
+	"flankwright/inspect"
 	"flankwright/involute"
 )
 
@@ -151,9 +152,16 @@ func explainLimits(e *explainer, g *gear, an, m, hfP, d quantity) {
 	if low == g.nominal.Thickness() {
 		return
 	}
+	if g.thin != nil {
+		sn := mm("s_n", g.nominal.Thickness())
+		e.result("thickest tooth, from thin", "s_nmax = s_n - t_min", mm("s_nmax", g.thickness.Limits.Max), "the job", sn, mm("t_min", g.thin.Min))
+		e.result("thinnest tooth, from thin", "s_nmin = s_n - t_max", mm("s_nmin", low), "the job", sn, mm("t_max", g.thin.Max))
+	}
 	xe := num("x_E", g.g.GeneratingShift(low))
 	e.result("generating shift of the thinnest tooth", "x_E = (s_nmin / m_n - pi / 2) / (2 * tan(α_n))", xe, srcGear, mm("s_nmin", low), m, an)
-	e.result("root diameter of the thinnest tooth", "d_fE = d - 2 * m_n * (h_fP - x_E)", mm("d_fE", g.g.RootDiameterAt(low)), srcGear, d, m, hfP, xe)
+	dfe := mm("d_fE", g.g.RootDiameterAt(low))
+	e.result("root diameter of the thinnest tooth", "d_fE = d - 2 * m_n * (h_fP - x_E)", dfe, srcGear, d, m, hfP, xe)
+	e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.blank()), dfe)
 }
 
 func explainMesh(m *mesh) []explanation {
@@ -169,6 +177,7 @@ func explainMesh(m *mesh) []explanation {
 	e.result("working pressure angle", "α_wt = acos((d_b1 + d_b2) / (2 * a))", aw, srcPair, db1, db2, a)
 	explainTight(e, m, db1, db2)
 	explainContact(e, m, a, aw, db1, db2)
+	explainThinning(e, m)
 	explainPlay(e, m, db1, db2)
 	c1, c2 := mm1.TipClearances(a.Value, m.first.nominal, m.second.nominal)
 	e.result("tip clearance of "+m.first.name, "c_1 = a - d_a1 / 2 - d_f2 / 2", mm("c_1", c1), srcPair, a, mm("d_a1", g1.TipDiameter()), mm("d_f2", m.second.nominal.RootDiameter()))
@@ -212,6 +221,39 @@ func explainContact(e *explainer, m *mesh, a, aw, db1, db2 quantity) {
 	e.result("contact ratio, transverse, between the ends of the active profiles",
 		"ε_α = (sqrt(d_Na1 ^ 2 - d_b1 ^ 2) / 2 + sqrt(d_Na2 ^ 2 - d_b2 ^ 2) / 2 - a * sin(α_wt)) / p_bt",
 		num("ε_α", c.TransverseRatio), srcPair, end1, db1, end2, db2, a, aw, pbt)
+}
+
+// explainThinning explains what both gears together must be thinner for the
+// backlash asked for, and where they share it alone, the limits that follow.
+func explainThinning(e *explainer, m *mesh) {
+	want := m.plan.Backlash
+	if want == nil || (m.first.thin != nil && m.second.thin != nil) {
+		return
+	}
+	g := m.first.g
+	s1, s2 := m.first.g.NominalThickness(), m.second.g.NominalThickness()
+	for _, end := range []struct {
+		name, index string
+		a, j        float64
+		pick        func(inspect.Limits) float64
+	}{
+		{"least", "min", m.plan.Tightest(), want.Min, func(l inspect.Limits) float64 { return l.Max }},
+		{"greatest", "max", m.plan.Loosest(), want.Max, func(l inspect.Limits) float64 { return l.Min }},
+	} {
+		p, err1 := m.plan.Mesh.Backlash(end.a, s1, s2)
+		alpha, err2 := m.plan.Mesh.WorkingPressureAngle(end.a)
+		sum, err3 := m.plan.Mesh.ThinningForBacklash(end.a, s1, s2, end.j)
+		if err1 != nil || err2 != nil || err3 != nil {
+			return
+		}
+		t := mm("T_"+end.index, sum)
+		e.result("thinning of both gears for the "+end.name+" backlash, from what nominal teeth have at that center",
+			t.Symbol+" = (j_asked - j_nominal) * cos(α_wt) * cos(β) / cos(α_t)", t, srcPair,
+			mm("j_asked", end.j), mm("j_nominal", p.Circumferential), deg("α_wt", alpha), deg("β", math.Abs(g.Spec().Helix)), deg("α_t", g.TransversePressureAngle()))
+		r := mm("T_"+end.index, (s1-end.pick(m.first.thickness.Limits))+(s2-end.pick(m.second.thickness.Limits)))
+		e.result("what the thickness limits found come to", r.Symbol+" = s_n1 - s_1 + s_n2 - s_2", r, srcPair,
+			mm("s_n1", s1), mm("s_1", end.pick(m.first.thickness.Limits)), mm("s_n2", s2), mm("s_2", end.pick(m.second.thickness.Limits)))
+	}
 }
 
 // explainPlay explains the least and the greatest backlash.

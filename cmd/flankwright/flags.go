@@ -15,6 +15,7 @@ const (
 	catMate   = "Mate, for a pair without a job file"
 	catMesh   = "Mesh"
 	catOutput = "Output"
+	catHead   = "Head of the sheet"
 )
 
 func flagName(key string) string { return strings.ReplaceAll(key, "_", "-") }
@@ -31,7 +32,7 @@ func jobFlags() []cli.Flag {
 	for _, k := range keys() {
 		category := ""
 		switch {
-		case k.usage == "":
+		case k.usage == "" || k.where&atTop != 0:
 			continue
 		case k.where&inTooth != 0:
 			category = catTooth
@@ -39,8 +40,6 @@ func jobFlags() []cli.Flag {
 			category = catGear
 		case k.where&inMesh != 0:
 			category = catMesh
-		default:
-			category = "Head of the sheet"
 		}
 		flags = append(flags, keyFlag(flagName(k.name), k.usage, category, k))
 	}
@@ -66,6 +65,7 @@ func commonFlags() []cli.Flag {
 		&cli.IntFlag{Name: "digits", Usage: "decimals of lengths (3 in mm, 4 in inches)", Value: -1, DefaultText: "by unit", Category: catOutput},
 		&cli.BoolFlag{Name: "explain", Usage: "each result with its formula, the numbers put in and the source", Category: catOutput, DisableDefaultText: true},
 		&cli.StringFlag{Name: "gear", Usage: "one gear of the job, by name", Category: catOutput},
+		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured, for chordal heights and the depth of cut", Category: "Measuring"},
 		&cli.StringFlag{Name: "example", Usage: "use an example job that the program carries", Category: catOutput},
 		&cli.StringFlag{Name: "shop", Usage: "what is on hand", Hidden: true},
 	}
@@ -133,6 +133,9 @@ func requestFromFlags(c *cli.Context) (request, error) {
 	shared, err := flagged(c, inTooth, "")
 	if err != nil {
 		return r, err
+	}
+	if c.NumFlags() == 0 {
+		return r, wrong("give a job file (flankwright new writes one), or a gear by flags: --dp 16 --teeth 20")
 	}
 	unit, ok, err := unitFlag(c)
 	if err != nil {

@@ -101,12 +101,28 @@ func (j *job) readCenter(m *mesh, s settings) error {
 	}
 	m.tolerance, m.class = (high-low)/2, class
 	m.plan.Center = inspect.Limits{Min: at + low, Max: at + high}
+	if v, ok := s.vals["center"]; ok {
+		m.at = v.at
+	}
 	for _, a := range []float64{m.plan.Tightest(), m.plan.Loosest()} {
 		if _, err := m.plan.Mesh.WorkingPressureAngle(a); err != nil {
 			return j.impossibleMesh(m, err)
 		}
 	}
+	if reach := (m.first.g.TipDiameter() + m.second.g.TipDiameter()) / 2; at >= reach {
+		return fault(m.at, "%s and %s: at a center distance of %s the teeth do not reach each other; the tips meet at %s, and the pair is tight at %s",
+			m.first.name, m.second.name, j.length(at), j.length(reach), j.length(m.tight()))
+	}
 	return nil
+}
+
+// tight returns the center distance without backlash of nominal teeth, 0 where there is none.
+func (m *mesh) tight() float64 {
+	a, err := m.plan.Mesh.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness())
+	if err != nil {
+		return 0
+	}
+	return math.Abs(a)
 }
 
 func (j *job) readBacklash(m *mesh, s settings) error {

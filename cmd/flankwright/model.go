@@ -2,6 +2,7 @@ package main
 
 import (
 	"math"
+	"strings"
 
 	"flankwright/inspect"
 	"flankwright/involute"
@@ -31,8 +32,23 @@ type gear struct {
 	rack      string  // name for people
 	source    string  // of the rack
 	shortened bool
+	measured  float64 // outside diameter of the blank as measured, mm, 0 for not
 	tipBy     tipDecision
 	settings  settings
+}
+
+// blank returns the outside diameter of the blank: as measured, or nominal.
+func (g *gear) blank() float64 {
+	if g.measured > 0 {
+		return g.measured
+	}
+	return g.g.TipDiameter()
+}
+
+// depthOfCut returns the limits of the depth of cut from the blank's outside, mm.
+func (g *gear) depthOfCut() inspect.Limits {
+	l := g.thickness.Limits
+	return inspect.Limits{Min: (g.blank() - g.g.RootDiameterAt(l.Max)) / 2, Max: (g.blank() - g.g.RootDiameterAt(l.Min)) / 2}
 }
 
 // A tipDecision is what decided a shortened tip: the center distance, the
@@ -234,6 +250,9 @@ func (j *job) module(g *gear, helixDeg float64) (float64, error) {
 func (j *job) pitchValue(g *gear, key string) (float64, bool, error) {
 	v := g.settings.vals[key]
 	if text, isText := asText(v); isText && key == "module" {
+		if t := strings.TrimSpace(text); strings.HasSuffix(t, "in") || strings.HasSuffix(t, "\"") {
+			return 0, true, bad(key, v, "a module is in mm; for inch gears give dp instead")
+		}
 		mm, err := inspect.ParseLength(text, inspect.Millimeter)
 		if err != nil {
 			return 0, true, bad(key, v, "%v", err)
@@ -271,6 +290,9 @@ func (j *job) rack(g *gear, module float64) (involute.Rack, error) {
 		TipRadius:     table.TipRadius,
 	}
 	g.rack, g.source = table.Name, table.Source.String()
+	if !named {
+		j.warnRackAngle(g, table.PressureAngleDeg)
+	}
 	free := false
 	for _, p := range []struct {
 		key string

@@ -3,6 +3,7 @@ package main
 import (
 	"embed"
 	"fmt"
+	"os"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -66,5 +67,14 @@ func deliver(c *cli.Context, data []byte) error {
 
 // writeFile writes one file whole or not at all; an existing one is kept unless --force.
 func writeFile(c *cli.Context, path string, data []byte) error {
-	return fileError(export.WriteFileAtomic(path, data, c.Bool("force")))
+	if job := c.Args().First(); job != "" && job != "-" && sameFile(job, path) {
+		return wrong("-o %s: is the job itself; write to another file", path)
+	}
+	return fileError(path, export.WriteFileAtomic(path, data, c.Bool("force")))
+}
+
+func sameFile(a, b string) bool {
+	x, err1 := os.Stat(a)
+	y, err2 := os.Stat(b)
+	return err1 == nil && err2 == nil && os.SameFile(x, y)
 }

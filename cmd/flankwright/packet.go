@@ -35,7 +35,7 @@ func runPacket(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	if err := fileError(export.WriteFolder(dir, files, c.Bool("force"))); err != nil {
+	if err := fileError(dir, export.WriteFolder(dir, files, c.Bool("force"))); err != nil {
 		return err
 	}
 	var names []string

@@ -23,7 +23,7 @@ func choosePins(g *gear, inch bool) []inspect.PinCandidate {
 	if !ok {
 		return nil
 	}
-	series := [][]inspect.PinCandidate{metricSeries(), setCandidates("mm", "metric 0.01")}
+	series := [][]inspect.PinCandidate{metricSeries(), setCandidates("mm", "metric 0.0")}
 	if inch {
 		series = append(pitchSeries(g, ideal), setCandidates("in", "inch"))
 	}
@@ -34,10 +34,31 @@ func choosePins(g *gear, inch bool) []inspect.PinCandidate {
 			chosen = append(chosen, pin)
 		}
 	}
+	if len(chosen) > 1 {
+		chosen = dropFar(chosen, ideal)
+	}
 	if len(chosen) == 0 {
 		return []inspect.PinCandidate{{Diameter: ideal, From: "the ideal size"}}
 	}
 	return chosen
+}
+
+// farPin is how far a pin may be from the ideal and still be offered beside a
+// nearer one, as a share: farther ones touch near tip or root.
+const farPin = 1.0 / 3
+
+// dropFar drops pins far from the ideal, as long as one is left.
+func dropFar(pins []inspect.PinCandidate, ideal float64) []inspect.PinCandidate {
+	var near []inspect.PinCandidate
+	for _, p := range pins {
+		if math.Abs(p.Diameter-ideal) <= farPin*ideal {
+			near = append(near, p)
+		}
+	}
+	if len(near) == 0 {
+		return pins
+	}
+	return near
 }
 
 // samePin is how near two pins are one pin, mm: a tenth of the finest class.

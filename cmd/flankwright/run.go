@@ -1,13 +1,16 @@
 package main
 
 import (
+	"bytes"
 	"encoding/json"
 	"errors"
 	"fmt"
 	"io"
+	"math"
 	"os"
 	"path/filepath"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/urfave/cli/v2"
 )
@@ -30,7 +33,8 @@ func newApp(stdin io.Reader, stdout, stderr io.Writer) *cli.App {
 		UsageText: "flankwright COMMAND [JOB] [flags]\n\nJOB is a job file (TOML), - for standard input, or left out for flags alone.",
 		Version:   version,
 		Reader:    stdin, Writer: stdout, ErrWriter: stderr,
-		HideHelpCommand: true,
+		HideHelpCommand:           true,
+		DisableSliceFlagSeparator: true, // --pin 3,5 is a slip, not two pins
 		Commands: []*cli.Command{
 			newCommand(), dimsCommand(), targetsCommand(), contourCommand(),
 			sheetCommand(), packetCommand(), tablesCommand(),
@@ -50,7 +54,7 @@ func newApp(stdin io.Reader, stdout, stderr io.Writer) *cli.App {
 func usageError(c *cli.Context, err error, _ bool) error {
 	text := strings.TrimPrefix(err.Error(), "flag provided but not defined: ")
 	if text == err.Error() {
-		return wrong("%s", strings.Replace(text, "flag needs an argument: ", "needs a value: ", 1))
+		return wrong("%s", strings.Replace(text, "flag needs an argument: -", "needs a value: --", 1))
 	}
 	name := strings.TrimLeft(text, "-")
 	if why, ok := otherDrive(name); ok {
@@ -228,11 +232,17 @@ func readJob(c *cli.Context, path, example string) (data []byte, name string, er
 			return nil, "", cannot("%v", plainPathError(err))
 		}
 		defer f.Close()
+		if info, err := f.Stat(); err == nil && info.IsDir() {
+			return nil, "", cannot("%s: is a folder, not a job file", path)
+		}
 		in, name = f, filepath.ToSlash(path)
 	}
 	data, err = io.ReadAll(io.LimitReader(in, maxJob+1))
 	if err != nil {
 		return nil, "", cannot("%s: cannot be read: %v", name, err)
+	}
+	if !utf8.Valid(data) || bytes.IndexByte(data, 0) >= 0 {
+		return nil, "", wrong("%s: is no text; a job is a TOML file (flankwright new writes one)", name)
 	}
 	if len(data) > maxJob {
 		return nil, "", wrong("%s: larger than a megabyte; that is no job file", name)
@@ -260,7 +270,31 @@ func loadJob(c *cli.Context) (*job, []*gear, error) {
 		return nil, nil, err
 	}
 	gears, err := j.chosen(c.String("gear"))
-	return j, gears, err
+	if err != nil {
+		return nil, nil, err
+	}
+	return j, gears, j.readBlank(c, gears)
+}
+
+// readBlank takes a measured outside diameter, which is about one gear.
+func (j *job) readBlank(c *cli.Context, gears []*gear) error {
+	v, ok := flagValue(c, "measured-tip")
+	if !ok {
+		return nil
+	}
+	tip, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
+	if err != nil {
+		return err
+	}
+	if len(gears) > 1 {
+		return wrong("--measured-tip: is about one gear, and the job has %s; say which by --gear", quoted(j.gearNames()))
+	}
+	g := gears[0]
+	if off := math.Abs(tip - g.g.TipDiameter()); off > g.g.Module() || tip <= g.nominal.FormDiameter() {
+		return wrong("--measured-tip: %s is not this gear's blank, which is %s across", j.length(tip), j.length(g.g.TipDiameter()))
+	}
+	g.measured = tip
+	return nil
 }
 
 // digits returns the decimals of lengths: --digits, or the unit's own.

@@ -12,11 +12,16 @@ import (
 )
 
 func sheetFlags() []cli.Flag {
-	return []cli.Flag{
-		&cli.StringFlag{Name: "page", Usage: "a4 or letter (letter for inch jobs)", Category: "Head of the sheet"},
-		&cli.StringFlag{Name: "date", Usage: "date to print; otherwise a blank to fill in", Category: "Head of the sheet"},
-		&cli.StringFlag{Name: "material", Usage: "material to print; otherwise a blank to fill in", Category: "Head of the sheet"},
+	var flags []cli.Flag
+	for _, k := range keys() {
+		if k.where&atTop != 0 && k.usage != "" {
+			flags = append(flags, keyFlag(flagName(k.name), k.usage, catHead, k))
+		}
 	}
+	return append(flags,
+		&cli.StringFlag{Name: "page", Usage: "a4 or letter (letter for inch jobs)", Category: catHead},
+		&cli.StringFlag{Name: "date", Usage: "date to print; otherwise a blank to fill in", Category: catHead},
+		&cli.StringFlag{Name: "material", Usage: "material to print; otherwise a blank to fill in", Category: catHead})
 }
 
 // jobFlagsWithout returns the flags of a job except some.
@@ -112,7 +117,7 @@ func writeSheets(c *cli.Context, out string, folder bool, ending string, j *job,
 			files = append(files, export.File{Name: name, Data: b.Bytes()})
 			names = append(names, filepath.ToSlash(filepath.Join(out, name)))
 		}
-		return names, fileError(export.WriteFolder(out, files, c.Bool("force")))
+		return names, fileError(out, export.WriteFolder(out, files, c.Bool("force")))
 	}
 	data, err := sheetBytes(j, pages, ending)
 	if err != nil {

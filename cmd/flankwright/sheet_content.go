@@ -91,19 +91,52 @@ func (j *job) sheetData(g *gear) []export.Field {
 		data = append(data, export.Field{Label: "Helix angle, hand", Value: degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)})
 	}
 	data = append(data, []export.Field{
-		{Label: "Profile shift x", Value: fmt.Sprintf("%+.4f", shift), Other: value + " (" + other + ")"},
-		j.lengthField("Outside (tip) diameter", gg.TipDiameter()),
+		shiftField(shift, value+" ("+other+")"),
+		j.lengthField(g.tipLabel(), g.blank()),
 		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
 		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),
-		j.lengthField("Depth of cut, aim", (gg.TipDiameter()-g.middle().RootDiameter())/2),
+		j.lengthField("Depth of cut, aim", (g.blank()-g.middle().RootDiameter())/2),
 	}...)
 	if g.bore != nil {
 		data = append(data, j.boreField(g.bore))
 	}
+	if g.keyway != nil {
+		data = append(data, j.keywayField(g))
+	}
 	if g.faceWidth > 0 {
 		data = append(data, j.lengthField("Face width", g.faceWidth))
 	}
-	return data
+	if lead, ok := gg.Lead(); ok {
+		data = append(data, j.lengthField("Lead", lead))
+	}
+	return append(data,
+		export.Field{Label: "Angle of index", Value: angleDMS(2 * math.Pi / float64(gg.Teeth()))},
+		export.Field{Label: "Rack", Value: g.rack})
+}
+
+// shiftField words a profile shift, as a coefficient and a length.
+func shiftField(x float64, length string) export.Field {
+	if x == 0 {
+		return export.Field{Label: "Profile shift", Value: "none"}
+	}
+	return export.Field{Label: "Profile shift x", Value: fmt.Sprintf("%+.4f", x), Other: length}
+}
+
+// tipLabel names the outside diameter, nominal or as measured.
+func (g *gear) tipLabel() string {
+	if g.measured > 0 {
+		return "Outside diameter, as measured"
+	}
+	return "Outside (tip) diameter"
+}
+
+// keywayField words a keyway: its width, and the size across from the bore's wall.
+func (j *job) keywayField(g *gear) export.Field {
+	across := g.bore.nominal + g.keyway.depth
+	words := func(u inspect.Unit) string {
+		return u.Format(g.keyway.width, u.Decimals()) + " × " + u.Format(across, u.Decimals()) + " " + u.String()
+	}
+	return export.Field{Label: "Keyway, width × across", Value: words(j.display)}
 }
 
 // boreField words a bore: its size in both units, or with a class its limits in the display unit.
@@ -229,12 +262,22 @@ func (j *job) sheetLimits(g *gear) []export.Field {
 		if m.first == g {
 			mate = m.second.name
 		}
+		center := j.limitsField(fmt.Sprintf("Center, %s (%d teeth)", mate, mateTeeth(m, g)), m.plan.Center)
+		center.Other = ""
+		fields = append(fields, center)
 		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
 		if err == nil {
 			fields = append(fields, j.limitsField("Backlash, "+mate, inspect.Limits{Min: least.Circumferential, Max: most.Circumferential}))
 		}
 	}
 	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
+}
+
+func mateTeeth(m *mesh, g *gear) int {
+	if m.first == g {
+		return m.second.g.Teeth()
+	}
+	return m.first.g.Teeth()
 }
 
 // firstPin returns the first usable pin target, or the first with numbers.

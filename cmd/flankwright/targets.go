@@ -44,7 +44,6 @@ func targetFlags() []cli.Flag {
 	return []cli.Flag{
 		&cli.StringSliceFlag{Name: "pin", Usage: "pin or ball to measure with; may be given again", Category: "Measuring"},
 		&cli.IntSliceFlag{Name: "span-teeth", Usage: "number of teeth to measure over; may be given again", Category: "Measuring"},
-		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured, for chordal heights", Category: "Measuring"},
 		&cli.StringFlag{Name: "arbor", Usage: "diameter of the arbor to measure to (the bore)", Category: "Measuring"},
 	}
 }
@@ -53,7 +52,6 @@ func targetFlags() []cli.Flag {
 type ask struct {
 	pins  []float64 // mm
 	teeth []int
-	tip   float64 // measured, mm, 0 for the nominal
 	arbor float64 // mm, 0 for the bore
 }
 
@@ -78,7 +76,7 @@ func readAsk(c *cli.Context, j *job) (ask, error) {
 	for _, f := range []struct {
 		name string
 		to   *float64
-	}{{"measured-tip", &a.tip}, {"arbor", &a.arbor}} {
+	}{{"arbor", &a.arbor}} {
 		v, ok := flagValue(c, f.name)
 		if !ok {
 			continue
@@ -124,6 +122,7 @@ type pinTarget struct {
 	Contact     *span     `json:"contact_diameter_mm"`
 	ByThickness *float64  `json:"change_per_thickness"`
 	ByPin       *float64  `json:"change_per_pin_diameter"`
+	ByDepth     *float64  `json:"change_per_depth_of_cut"`
 	FaceNeeded  float64   `json:"face_width_needed_mm"`
 	Usable      bool      `json:"usable"`
 	Why         string    `json:"why"`
@@ -197,8 +196,8 @@ func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	for _, k := range teeth {
 		out.Span = append(out.Span, j.spanTarget(g, k))
 	}
-	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: a.tip})
-	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: a.tip})
+	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: g.blank()})
+	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: g.blank()})
 	return out
 }
 
@@ -221,13 +220,13 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), target: t, Also: []alsoWay{}}
 	if g.g.Helical() {
 		out.Kind = "balls"
-		out.Why = j.withFace(out.Why, g, m.FaceNeeded(g.middle()))
 		out.FaceNeeded = m.FaceNeeded(g.middle())
 	}
 	out.Measurement, out.Aim, out.Contact = measured(t)
 	if seat, err := g.middle().Seat(p.Diameter); err == nil {
 		bt, bp := g.g.PinSensitivity(involute.TwoPins, seat)
-		out.ByThickness, out.ByPin = &bt, &bp
+		bd := 2 * math.Tan(g.g.PressureAngle()) * bt // a tooth loses 2 tan α_n of each unit of depth
+		out.ByThickness, out.ByPin, out.ByDepth = &bt, &bp, &bd
 	}
 	for _, w := range otherWays() {
 		if also, ok := j.alsoWay(g, p.Diameter, w, arbor); ok {
@@ -235,14 +234,6 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 		}
 	}
 	return out
-}
-
-// withFace adds to a usable helical measure what face it needs where none is given.
-func (j *job) withFace(why string, g *gear, need float64) string {
-	if g.faceWidth == 0 && why == "" && need > 0 {
-		return "needs a face width over " + j.length(need) + "; none is given"
-	}
-	return why
 }
 
 // alsoWay measures with the same pin in another way, where that way exists for the gear.
@@ -269,7 +260,6 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 	if seat, err := g.middle().Seat(pin); err == nil && g.g.Helical() {
 		if r, err := g.g.Reading(w.way, seat.CenterDiameter, pin, m.Bore); err == nil {
 			out.AxialOffset, out.FaceNeeded = r.AxialOffset, g.g.FaceForPins(r, pin)
-			out.Why = j.withFace(out.Why, g, out.FaceNeeded)
 		}
 	}
 	return out, true
@@ -284,7 +274,6 @@ func (j *job) spanTarget(g *gear, k int) spanTarget {
 	out.Length, out.Aim, out.Contact = measured(t)
 	if out.Length != nil && g.g.Helical() {
 		out.FaceNeeded = g.g.SpanFaceWidth(out.Length.Max)
-		out.Why = j.withFace(out.Why, g, out.FaceNeeded)
 	}
 	return out
 }
@@ -299,16 +288,7 @@ func (j *job) chordTarget(g *gear, m heighted) chordTarget {
 	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
 	out := chordTarget{
 		Thickness: toSpan(t.Value), Aim: t.Aim, Height: m.Height(g.middle()),
-		Tip: g.g.TipDiameter(), Usable: t.Usable(), Why: j.why(t.Faults),
-	}
-	switch c := m.(type) {
-	case inspect.Chordal:
-		out.Tip = math.Max(c.Tip, 0)
-	case inspect.ConstantChord:
-		out.Tip = math.Max(c.Tip, 0)
-	}
-	if out.Tip == 0 {
-		out.Tip = g.g.TipDiameter()
+		Tip: g.blank(), Usable: t.Usable(), Why: j.why(t.Faults),
 	}
 	for _, f := range t.Faults {
 		if f.Code == inspect.NoReading {

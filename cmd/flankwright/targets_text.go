@@ -119,6 +119,11 @@ func pinText(d float64, u inspect.Unit) string {
 // below prints what stands under a gear's table: heights, contacts, sensitivities.
 func (t *targets) below(p *page, gear *gear, g gearTargets, u inspect.Unit, digits int) {
 	f := func(mm float64) string { return u.Format(mm, digits) }
+	fine := func(mm float64) string { return u.Format(mm, digits+1) }
+	step := 0.01 // a usual correction: 0.01 mm, or 0.001 in
+	if u == inspect.Inch {
+		step = 0.0254
+	}
 	p.line("  Chordal height %s, constant chord height %s, below an outside diameter of %s %s", f(g.Chordal.Height), f(g.ConstantChord.Height), f(g.Chordal.Tip), u)
 	if g.IdealPin != nil {
 		p.line("  Ideal pin Ø%s %s", u.Format(*g.IdealPin, u.Decimals()), u)
@@ -127,8 +132,9 @@ func (t *targets) below(p *page, gear *gear, g gearTargets, u inspect.Unit, digi
 		if m.ByThickness == nil || m.Contact == nil {
 			continue
 		}
-		p.line("  %s (%s): touches at %s to %s; a tooth thinner by 1 reads %.2f less, a pin larger by 1 reads %.2f more",
-			pinText(m.Pin, u), m.From, f(m.Contact.Min), f(m.Contact.Max), *m.ByThickness, *m.ByPin)
+		p.line("  %s (%s): touches at %s to %s", pinText(m.Pin, u), m.From, f(m.Contact.Min), f(m.Contact.Max))
+		p.line("    %s deeper reads %s less; a tooth %s thinner reads %s less; a pin %s larger reads %s more",
+			f(step), fine(step**m.ByDepth), f(step), fine(step**m.ByThickness), f(step), fine(step**m.ByPin))
 	}
 }
 

@@ -78,7 +78,7 @@ func (p *page) grid(g grid) {
 	for i := range cols {
 		cols[i] = g.column(i)
 	}
-	if len(g.heads) > 0 {
+	if strings.Join(g.heads, "") != "" {
 		line := pad("", label) + "  " + pad("", unit)
 		for i, h := range g.heads {
 			line += "  " + padLeft(h, cols[i].total)

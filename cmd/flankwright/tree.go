@@ -91,7 +91,11 @@ func syntaxError(err error, file string) error {
 	var d *toml.DecodeError
 	if errors.As(err, &d) {
 		row, col := d.Position()
-		return fault(place{file, row, col}, "%s", strings.TrimPrefix(d.Error(), "toml: "))
+		text := strings.TrimPrefix(d.Error(), "toml: ")
+		if strings.Contains(text, "','") {
+			text += "; decimals take a point: 2.5, not 2,5"
+		}
+		return fault(place{file, row, col}, "%s", text)
 	}
 	return fault(place{file, 1, 1}, "%s", strings.TrimPrefix(err.Error(), "toml: "))
 }

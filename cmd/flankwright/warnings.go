@@ -6,6 +6,7 @@ import (
 
 	"flankwright/inspect"
 	"flankwright/involute"
+	"flankwright/refdata"
 )
 
 // A warning is something the user should know, in a machinist's words: a code
@@ -24,10 +25,25 @@ func (j *job) warnRackRadius(g *gear, asked, largest float64) {
 	j.addWarning("rack-radius", g.name, "the tip radius %.4g × module of %s does not fit between the flanks at this pressure angle; %.4f, the largest that fits, is used", asked, g.rack, largest)
 }
 
+// warnRackAngle says, where no rack is named, that another named rack is made
+// for the pressure angle asked for.
+func (j *job) warnRackAngle(g *gear, angle float64) {
+	if math.Abs(angle-20) < 1e-9 {
+		return
+	}
+	for _, r := range refdata.Racks() {
+		if math.Abs(r.PressureAngleDeg-angle) < 1e-9 {
+			j.addWarning("rack-angle", g.name, "the depths are those of ISO 53 A, a rack for 20°; gears of %g° are usually rack = %q, with a whole depth of %.3f × module", angle, r.Name, r.Addendum+r.Dedendum)
+			return
+		}
+	}
+}
+
 // Thresholds of warnings, as shares of the normal module or plain ratios.
 const (
 	lowClearance   = 0.15 // tip clearance; racks leave 0.25, and under 0.15 dirt and runout reach the root
 	thinTip        = 0.2  // tip land; common practice wants 0.2 to 0.25, 0.4 where the case is hardened
+	heavyThinning  = 0.1  // of the tooth; backlash takes a few percent
 	lowContact     = 1.2  // transverse contact ratio; common practice
 	thinRim        = 1.2  // rim under the root, in whole depths; under it the rim bends (ISO 6336-3 rim factor)
 	barelyNegative = 1e-9 // backlash below zero by rounding only, mm
@@ -48,6 +64,12 @@ func (j *job) warnGear(g *gear) {
 	if g.thickness.By == inspect.ByNothing {
 		j.addWarning("no-limits", g.name, "no thin and no backlash is given: the targets are the nominal tooth without tolerance. Give thin or backlash")
 	}
+	if g.thin != nil && g.thin.Width() == 0 {
+		j.addWarning("no-tolerance", g.name, "thin is one value: the targets are without tolerance. Give a range such as \"0.04..0.08\"")
+	}
+	if taken := g.g.NominalThickness() - g.thickness.Limits.Min; taken > heavyThinning*g.g.NominalThickness() {
+		j.addWarning("heavy-thinning", g.name, "the teeth come out up to %s thinner than nominal, %.0f %% of the tooth. Is the center distance right?", j.length(taken), 100*taken/g.g.NominalThickness())
+	}
 	if g.nominal.Undercut() {
 		lost := (g.nominal.FormDiameter() - g.g.BaseDiameter()) / 2
 		j.addWarning("undercut", g.name, "the cutter undercuts the root; the involute begins at %s, %s above the base circle. A shift of %+.4f or more avoids it",
@@ -62,6 +84,22 @@ func (j *job) warnGear(g *gear) {
 	if g.bore != nil {
 		j.warnRim(g)
 	}
+	if g.g.Helical() && g.faceWidth == 0 {
+		j.warnFace(g)
+	}
+}
+
+// warnFace says what face a helical gear needs to be measured.
+func (j *job) warnFace(g *gear) {
+	text := ""
+	if pins := choosePins(g, j.display == inspect.Inch); len(pins) > 0 {
+		m := inspect.OverPins{Pin: pins[0].Diameter}
+		text += fmt.Sprintf("; two balls of %s need over %s", j.length(m.Pin), j.length(m.FaceNeeded(g.middle())))
+	}
+	if ks := inspect.SpanChoices(g.g, g.thickness.Limits, g.part()); len(ks) > 0 {
+		text += fmt.Sprintf("; a span over %s needs over %s", teethText(ks[0]), j.length(g.g.SpanFaceWidth(g.middle().Span(ks[0]))))
+	}
+	j.addWarning("no-face-width", g.name, "no face_width is given, and a helical gear needs some face to be measured%s", text)
 }
 
 func (j *job) warnRim(g *gear) {
@@ -111,14 +149,18 @@ func (j *job) warnContact(m *mesh, pair string, a float64) {
 	if c.LimitedByRoots() && c.RatioByTips-c.TransverseRatio > 0.0005 {
 		j.addWarning("short-contact", m.first.name, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f", pair, c.RatioByTips, c.TransverseRatio)
 	}
+	c1, c2 := m.plan.Mesh.TipClearances(a, m.first.nominal, m.second.nominal)
 	for _, first := range []bool{true, false} {
 		own, mate := m.first, m.second
+		if (first && c2 <= 0) || (!first && c1 <= 0) {
+			continue // the mate's tip is in the root already; that is said
+		}
 		if !first {
 			own, mate = m.second, m.first
 		}
 		gap, err := m.plan.Mesh.FilletClearance(a, m.first.nominal, m.second.nominal, first)
 		if err == nil && gap < -interferes*own.g.Module() {
-			j.addWarning("interference", own.name, "the tip of %s cuts %s into its root fillet; the pair will bind. Shorten the tip of %s or shift %s outward", mate.name, j.length(-gap), mate.name, own.name)
+			j.addWarning("interference", own.name, "the tip of %s cuts %s into its root fillet; the pair will bind. Shorten the tip of %s, or give %s less of the shift and %s more", mate.name, j.length(-gap), mate.name, mate.name, own.name)
 		}
 	}
 }
@@ -133,7 +175,8 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 		return
 	}
 	if least.Circumferential < -barelyNegative {
-		j.addWarning("no-backlash", m.first.name, "%s bind: at the tightest center with the thickest teeth the backlash is %s. Thin the teeth or open the center", pair, j.length(least.Circumferential))
+		j.addWarning("no-backlash", m.first.name, "%s bind: at the tightest center with the thickest teeth the backlash is %s. Thin the teeth, open the center toward %s, or bring the shifts together to %+.4f, from %+.4f",
+			pair, j.length(least.Circumferential), j.length(m.tight()), m.tightShift(), m.first.g.Spec().Shift+m.second.g.Spec().Shift)
 	}
 	want := m.plan.Backlash
 	if want == nil || m.first.thin == nil || m.second.thin == nil {
@@ -144,6 +187,18 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 		j.addWarning("backlash-out", m.first.name, "%s: the thicknesses given make %s to %s of backlash, not the %s to %s asked for; the thicknesses rule", pair,
 			j.length(least.Circumferential), j.length(most.Circumferential), j.length(want.Min), j.length(want.Max))
 	}
+}
+
+// tightShift returns the sum of the shifts with which nominal teeth are tight
+// at the tightest center: (inv α_wt − inv α_t)(z_1 + z_2)/(2 tan α_n)
+// (ISO 21771:2007, clause 5).
+func (m *mesh) tightShift() float64 {
+	g := m.first.g
+	alpha, err := m.plan.Mesh.WorkingPressureAngle(m.plan.Tightest())
+	if err != nil {
+		return 0
+	}
+	return (involute.Inv(alpha) - involute.Inv(g.TransversePressureAngle())) * float64(g.Teeth()+m.second.g.Teeth()) / (2 * math.Tan(g.PressureAngle()))
 }
 
 // forGear returns the warnings of one gear.
