@@ -119,14 +119,15 @@ func (m OverPins) Faults(t involute.Tooth, p Part) []Fault {
 	if c := t.PinRootClearance(seat); c < -rootTouch {
 		faults = append(faults, Fault{TouchesRoot, -c, 0})
 	}
-	if over, need := m.aboveTips(t, r.Value); over <= need {
+	if over, need := m.aboveTips(t, seat.CenterDiameter, r.Value); over <= need {
 		faults = append(faults, Fault{UnderTips, over, need})
 	}
 	return append(faults, faceFault(p, t.FaceForPins(r, m.Pin))...)
 }
 
-// rootTouch is how deep a pin may seem to sink into the root before it is said
-// to touch: the fillet is sampled, which leaves its distance uncertain by this much, mm.
+// rootTouch is how deep a pin must sink into the root before it is said to
+// touch, mm: far below what matters, and above rounding. The root's distance is
+// sampled and so never too small; a touch by less than a micrometer can be missed.
 const rootTouch = 1e-6
 
 // noContact turns the error of a pin that falls through into a fault.
@@ -137,9 +138,15 @@ func noContact(err error, pin float64) Fault {
 	return Fault{Code: NoReading, Value: pin}
 }
 
-// aboveTips returns the reading and the value above which flat anvils meet the pins before the teeth.
-func (m OverPins) aboveTips(t involute.Tooth, value float64) (over, need float64) {
+// aboveTips returns the reading and the value above which flat anvils meet the
+// pins before the teeth. It asks that the pins stand above the whole tip circle;
+// with few teeth an anvil could pass a pin that sits a little lower. Of three
+// pins the two in neighboring spaces decide: the anvil across them must clear the
+// tooth between, d_K cos(180°/z) + D > d_a.
+func (m OverPins) aboveTips(t involute.Tooth, dK, value float64) (over, need float64) {
 	switch m.Way {
+	case involute.ThreePins:
+		return dK*math.Cos(math.Pi/float64(t.Teeth())) + m.Pin, t.TipDiameter()
 	case involute.PinToAxis:
 		return value, t.TipDiameter() / 2
 	case involute.PinToFarSide:

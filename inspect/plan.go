@@ -193,8 +193,8 @@ func (p *planner) settle() error {
 		m := p.meshes[k]
 		for _, side := range []struct{ own, mate int }{{m.First, m.Second}, {m.Second, m.First}} {
 			if p.by[side.own] == ByBacklash && !p.hard[side.own] && p.count(side.own) == 1 && p.count(side.mate) > 1 {
-				rest := Limits{p.wants[k].Min - p.thin[side.mate].Min, p.wants[k].Max - p.thin[side.mate].Max}
-				p.thin[side.own] = rest
+				// A mate that another mesh thins more than this one asks leaves nothing to take, not a thicker tooth.
+				p.thin[side.own] = Limits{max(0, p.wants[k].Min-p.thin[side.mate].Min), p.wants[k].Max - p.thin[side.mate].Max}
 				break
 			}
 		}

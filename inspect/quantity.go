@@ -8,6 +8,9 @@ import (
 	"strings"
 )
 
+// maxLength bounds a length, mm; it keeps slips of the finger from overflowing.
+const maxLength = 1e6
+
 // maxText bounds what is read as one quantity; nothing sensible is longer.
 const maxText = 80
 
@@ -45,7 +48,16 @@ func ParseLength(text string, bare Unit) (float64, error) {
 	if err != nil {
 		return 0, fmt.Errorf("%q is not a length; write it like 19.05mm, 0.75in or 3/16in", clip(text))
 	}
-	return v * unit.MM(), nil
+	if mm := v * unit.MM(); math.Abs(mm) <= maxLength {
+		return mm, nil
+	}
+	return 0, fmt.Errorf("%q is longer than a kilometer; that is no length in a gear shop", clip(text))
+}
+
+// UnitOf returns the unit that a length names, or bare where it names none.
+func UnitOf(text string, bare Unit) Unit {
+	_, u := splitUnit(text, bare)
+	return u
 }
 
 // decimalComma reports whether a number would do if its comma were a point.
@@ -112,7 +124,7 @@ func ParseLimits(text string, bare Unit) (Limits, error) {
 		}
 		return Limits{v, v}, err
 	}
-	_, bare = splitUnit(high, bare)
+	bare = UnitOf(high, bare)
 	a, err := ParseLength(low, bare)
 	if err != nil {
 		return Limits{}, err

@@ -71,10 +71,11 @@ func inverseStart(y float64) float64 {
 }
 
 // InverseInv returns the angle α in [0, π/2) with inv α = y, to 1e-14 rad. It
-// is false where there is none: y negative or not finite. Each step is
+// is false where there is none that can be told from 90°: y negative, not finite,
+// or above 1e15. Each step is
 // Halley's (third order) and calls math.Tan at most once; two or three steps do.
 func InverseInv(y float64) (alpha float64, ok bool) {
-	if !(y >= 0) || math.IsInf(y, 1) {
+	if !(y >= 0 && y <= 1e15) {
 		return 0, false
 	}
 	if y == 0 {

@@ -22,8 +22,8 @@ func (t Tooth) Chord(tip float64) Chord {
 // cylinder: Chord turned round.
 func (g *Gear) ThicknessFromChord(chord float64) (float64, error) {
 	dv := g.VirtualTeeth() * g.spec.Module
-	if math.Abs(chord) > dv {
-		return 0, impossible(SpaceClosed, chord, dv)
+	if math.Abs(chord) > math.Abs(dv) {
+		return 0, impossible(ReadingTooLarge, chord, math.Abs(dv))
 	}
 	return dv * math.Asin(chord/dv), nil
 }
@@ -47,5 +47,5 @@ func (g *Gear) ThicknessFromConstantChord(chord float64) float64 {
 // the point s_n cos α_n/2 along the flank's normal from the pitch point.
 func (t Tooth) ConstantChordDiameter() float64 {
 	along := t.db/2*math.Tan(t.alphaT) + t.sn*math.Cos(t.PressureAngle())/2*math.Cos(t.betaB)
-	return 2 * math.Hypot(t.db/2, along)
+	return math.Copysign(2*math.Hypot(t.db/2, along), t.z)
 }

@@ -63,7 +63,7 @@ func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
 	c.Pitch1, c.Pitch2 = m.PitchDiameters(a)
 	line := a * math.Sin(alpha)
 	tip1, tip2 := m.First.rollLength(m.First.daFa), m.Second.rollLength(m.Second.daFa)
-	form1, form2 := m.First.rollLength(t1.formOrBase()), m.Second.rollLength(t2.formOrBase())
+	form1, form2 := m.First.rollLength(t1.innerEnd()), m.Second.rollLength(t2.innerEnd())
 	pitch := m.First.TransverseBasePitch()
 
 	c.RatioByTips = (m.First.rollLength(m.First.da) + m.Second.rollLength(m.Second.da) - line) / pitch
@@ -81,9 +81,9 @@ func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
 	return c, nil
 }
 
-// formOrBase returns the form diameter, or the base diameter of a ring, whose
-// root no rack generates.
-func (t Tooth) formOrBase() float64 {
+// innerEnd returns where the flank ends at the root: the form diameter, or the
+// root diameter of a ring, whose root no rack generates.
+func (t Tooth) innerEnd() float64 {
 	if t.z < 0 {
 		return t.RootDiameter()
 	}
@@ -104,6 +104,9 @@ func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, err
 	own, mate := t1, t2
 	if !first {
 		own, mate = t2, t1
+	}
+	if own.z < 0 || mate.z < 0 {
+		return 0, impossible(NotExternal, min(own.z, mate.z), 0)
 	}
 	play, err := m.Backlash(a, t1.sn, t2.sn)
 	if err != nil {

@@ -10,7 +10,7 @@ type Spec struct {
 	Shift       float64 // x, profile shift coefficient (× m_n); positive thickens the tooth
 	Rack        Rack
 	TipDiameter float64 // d_a, mm, with the sign of z; 0 for d + 2 m_n (h_aP* + x)
-	TipChamfer  float64 // radial height of a 45° chamfer of the tip corner, mm
+	TipChamfer  float64 // radial height of a 45° chamfer of the tip corner, mm; external gears only
 }
 
 // A Gear is a possible Spec with the dimensions that do not depend on the
@@ -67,7 +67,7 @@ func (g *Gear) check() error {
 		return impossible(TipBelowRoot, math.Abs(g.da), math.Abs(root))
 	case math.Abs(g.da) <= math.Abs(g.db):
 		return impossible(TipBelowBase, math.Abs(g.da), math.Abs(g.db))
-	case g.spec.TipChamfer < 0:
+	case g.spec.TipChamfer < 0 || (g.spec.TipChamfer > 0 && !external):
 		return impossible(ChamferTooLarge, g.spec.TipChamfer, 0)
 	case math.Abs(g.daFa) <= math.Abs(g.db):
 		return impossible(ChamferTooLarge, g.spec.TipChamfer, (g.da-g.db)/2)
@@ -99,7 +99,8 @@ func (g *Gear) TransversePressureAngle() float64 { return g.alphaT }
 // BaseHelix returns β_b ≥ 0, sin β_b = sin β cos α_n, radians (ISO 21771:2007, clause 4).
 func (g *Gear) BaseHelix() float64 { return g.betaB }
 
-// HelixAt returns the helix angle ≥ 0 on the cylinder of diameter d: tan β_y = tan β · d_y/d, radians.
+// HelixAt returns the helix angle ≥ 0 on the cylinder of diameter d: tan β_y = tan β · d_y/d, radians
+// (ISO 21771:2007, clause 4).
 func (g *Gear) HelixAt(d float64) float64 {
 	return math.Atan(math.Tan(math.Abs(g.spec.Helix)) * d / g.d)
 }
@@ -116,19 +117,19 @@ func (g *Gear) TipDiameter() float64 { return g.da }
 // TipFormDiameter returns d_Fa, where the usable flank ends at the tip: d_a less the chamfer on both sides, mm.
 func (g *Gear) TipFormDiameter() float64 { return g.daFa }
 
-// TransversePitch returns p_t = π m_t, mm.
+// TransversePitch returns p_t = π m_t, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TransversePitch() float64 { return math.Pi * g.TransverseModule() }
 
-// NormalPitch returns p_n = π m_n, mm.
+// NormalPitch returns p_n = π m_n, mm (ISO 21771:2007, clause 4).
 func (g *Gear) NormalPitch() float64 { return math.Pi * g.spec.Module }
 
 // TransverseBasePitch returns p_bt = p_t cos α_t, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TransverseBasePitch() float64 { return g.TransversePitch() * math.Cos(g.alphaT) }
 
-// NormalBasePitch returns p_bn = p_n cos α_n, mm.
+// NormalBasePitch returns p_bn = p_n cos α_n, mm (ISO 21771:2007, clause 4).
 func (g *Gear) NormalBasePitch() float64 { return g.NormalPitch() * math.Cos(g.PressureAngle()) }
 
-// AxialPitch returns p_x = π m_n / sin |β|, mm; +Inf never: it is false for a spur gear.
+// AxialPitch returns p_x = π m_n / sin |β|, mm, false for a spur gear (ISO 21771:2007, clause 4).
 func (g *Gear) AxialPitch() (px float64, ok bool) {
 	if !g.Helical() {
 		return 0, false

@@ -33,6 +33,8 @@ const (
 	PinFallsThrough                    // Value: D; Limit: the least pin that rests on both flanks
 	NoSpan                             // Value: k; Limit: the least
 	ReadingTooSmall                    // Value: the reading, mm; Limit: what the base circle alone gives
+	ReadingTooLarge                    // Value: the reading, mm; Limit: what the circle allows
+	NotExternal                        // Value: z; the question is about external gears
 	NoFreeReading                      // straight pins between free anvils find no least distance; Value: β_K
 )
 

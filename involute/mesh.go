@@ -55,16 +55,16 @@ func (m Mesh) WorkingPressureAngle(a float64) (float64, error) {
 	return math.Atan(tanOfCos(m.sumBase(), 2*a)), nil
 }
 
-// PitchDiameters returns d_w = d_b/cos α_wt of both gears at center distance a, mm.
+// PitchDiameters returns d_w = d_b/cos α_wt of both gears at center distance a, mm (ISO 21771:2007, clause 5).
 func (m Mesh) PitchDiameters(a float64) (dw1, dw2 float64) {
 	k := 2 * a / (m.First.z + m.Second.z)
 	return m.First.z * k, m.Second.z * k
 }
 
-// tightInv returns inv α_wt of the mesh without backlash for normal tooth
+// TightInv returns inv α_wt of the mesh without backlash for normal tooth
 // thicknesses s1 and s2: inv α_t + ((s_n1 + s_n2)/cos β − p_t)/(d_1 + d_2).
 // It may be negative: such teeth do not touch at any center distance.
-func (m Mesh) tightInv(s1, s2 float64) float64 {
+func (m Mesh) TightInv(s1, s2 float64) float64 {
 	g := m.First
 	return g.invT + ((s1+s2)/math.Cos(g.spec.Helix)-g.TransversePitch())/(m.First.d+m.Second.d)
 }
@@ -73,7 +73,7 @@ func (m Mesh) tightInv(s1, s2 float64) float64 {
 // thicknesses s1 and s2, mm. With nominal teeth the condition is
 // inv α_wt = inv α_t + 2 tan α_n (x_1 + x_2)/(z_1 + z_2) (ISO 21771:2007, clause 5).
 func (m Mesh) TightCenter(s1, s2 float64) (float64, error) {
-	inv := m.tightInv(s1, s2)
+	inv := m.TightInv(s1, s2)
 	alpha, ok := InverseInv(inv)
 	if !ok {
 		return 0, impossible(CenterNeverTight, inv, 0)
@@ -101,7 +101,7 @@ func (m Mesh) Backlash(a, s1, s2 float64) (Play, error) {
 	if err != nil {
 		return Play{}, err
 	}
-	jbt := m.sumBase() * (Inv(alpha) - m.tightInv(s1, s2))
+	jbt := m.sumBase() * (Inv(alpha) - m.TightInv(s1, s2))
 	p := Play{
 		Circumferential: jbt / math.Cos(alpha),
 		Base:            jbt,

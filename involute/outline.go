@@ -40,8 +40,11 @@ func (o Outline) Pitch() float64 { return 2 * math.Pi / float64(o.Teeth) }
 func (g *Gear) RollAngle(dy float64) float64 { return tanOfCos(g.db, dy) }
 
 // Outline returns one pitch of the tooth's transverse section. Only external
-// gears have one yet.
+// gears have one yet; a ring's is empty.
 func (t Tooth) Outline() Outline {
+	if t.z < 0 {
+		return Outline{Teeth: t.spec.Teeth}
+	}
 	half := math.Pi / t.z
 	up := t.rackTip(-half, 1)
 	up.T1 = t.tau

@@ -262,18 +262,19 @@ const rootSteps = 200
 // theta from it, turning by q radians per mm of face. Along the helix the angle is
 // theta + ζ q and
 //
-//	distance² = c² + r² − 2 c r cos(theta + ζ q) + ζ²,
+//	distance² = (c − r)² + 4 c r sin²((theta + ζ q)/2) + ζ²
 //
-// least where ζ + c r q sin(theta + ζ q) = 0. A q of 0 is a straight line along
-// the axis. |theta| must be under π.
+// (the cosine rule, written so that near points keep their digits), least where
+// ζ + c r q sin(theta + ζ q) = 0. A q of 0 is a straight line along the axis.
 func HelixDistance(c, r, theta, q float64) float64 {
 	theta = math.Remainder(theta, 2*math.Pi)
-	if q == 0 || theta == 0 {
-		return math.Sqrt(max(0, c*c+r*r-2*c*r*math.Cos(theta)))
+	zeta := 0.0
+	if q != 0 && theta != 0 {
+		slope := func(z float64) float64 { return z + c*r*q*math.Sin(theta+z*q) }
+		if z, err := FindRoot(slope, -theta/q, 0); err == nil {
+			zeta = z
+		}
 	}
-	zeta, err := FindRoot(func(z float64) float64 { return z + c*r*q*math.Sin(theta+z*q) }, -theta/q, 0)
-	if err != nil {
-		zeta = 0
-	}
-	return math.Sqrt(max(0, c*c+r*r-2*c*r*math.Cos(theta+zeta*q)+zeta*zeta))
+	chord := 2 * math.Sqrt(c*r) * math.Sin((theta+zeta*q)/2)
+	return math.Hypot(math.Hypot(c-r, chord), zeta)
 }

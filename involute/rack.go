@@ -12,7 +12,7 @@ type Rack struct {
 	TipRadius     float64 // ρ_fP*, of the tool's tip, which rounds the gear's root
 }
 
-// Clearance returns the bottom clearance coefficient c_P* = h_fP* − h_aP* (ISO 53:1998, clause 3).
+// Clearance returns the bottom clearance coefficient c_P* = h_fP* − h_aP* (ISO 53:1998).
 func (r Rack) Clearance() float64 { return r.Dedendum - r.Addendum }
 
 // sharpHalfTip returns half the width of the tool's tip before it is rounded: π/4 − h_fP* tan α_P.

@@ -9,10 +9,14 @@ import (
 // both ends, or is not a number there.
 var ErrNoBracket = errors.New("no change of sign between the ends")
 
+// ErrNotConverged is returned by FindRoot where the function is not a number
+// inside the bracket, or the steps run out.
+var ErrNotConverged = errors.New("no root found in the bracket")
+
 // FindRoot returns a zero of f between a and b, where f must change its sign.
 // It is Brent's method (R. P. Brent, Algorithms for Minimization without
-// Derivatives, 1973, chapter 4): it never leaves the bracket and always ends,
-// with the last bracket no wider than a few units in the last place.
+// Derivatives, 1973, chapter 4): it never leaves the bracket, and ends with a
+// bracket no wider than a few units in the last place, or with an error.
 func FindRoot(f func(float64) float64, a, b float64) (float64, error) {
 	fa, fb := f(a), f(b)
 	if fa == 0 {
@@ -46,9 +50,11 @@ func FindRoot(f func(float64) float64, a, b float64) (float64, error) {
 		} else {
 			b += math.Copysign(tol, half)
 		}
-		fb = f(b)
+		if fb = f(b); math.IsNaN(fb) {
+			return 0, ErrNotConverged
+		}
 	}
-	return b, nil
+	return 0, ErrNotConverged
 }
 
 // brentStep returns the next step and the one before it: inverse quadratic or

@@ -32,8 +32,7 @@ func (g *Gear) SpanFaceWidth(w float64) float64 { return w * math.Sin(g.betaB) }
 // IdealSpanTeeth returns the number of teeth, not rounded, whose span touches
 // on the cylinder d + 2 x m_n, x being the shift that the thickness implies.
 func (t Tooth) IdealSpanTeeth() float64 {
-	dc := t.d + 2*t.GeneratingShift(t.sn)*t.spec.Module
-	w := t.db * tanOfCos(t.db, dc) / math.Cos(t.betaB)
+	w := t.db * tanOfCos(t.db, t.TouchDiameter()) / math.Cos(t.betaB)
 	return (w-t.Span(1))/t.NormalBasePitch() + 1
 }
 

@@ -31,7 +31,7 @@ func (g *Gear) Tooth(sn float64) (Tooth, error) {
 		return t, impossible(RootNotPositive, t.RootDiameter(), 0)
 	case t.ThicknessAt(g.da) <= 0:
 		return t, impossible(Pointed, math.Abs(g.da), math.Abs(t.PointedDiameter()))
-	case g.spec.TipChamfer > 0 && t.chamferedLand() <= 0:
+	case g.spec.TipChamfer > 0 && !t.chamferFits():
 		return t, impossible(ChamferTooLarge, g.spec.TipChamfer, t.largestChamfer())
 	}
 	if g.z < 0 {
@@ -42,9 +42,6 @@ func (g *Gear) Tooth(sn float64) (Tooth, error) {
 
 // Thickness returns s_n, normal, at the reference cylinder, mm.
 func (t Tooth) Thickness() float64 { return t.sn }
-
-// Thinning returns how much thinner than nominal the tooth is, normal, at the reference cylinder, mm.
-func (t Tooth) Thinning() float64 { return t.NominalThickness() - t.sn }
 
 // halfBaseAngle returns ψ_b = s_t/d + inv α_t: half the angle of the tooth at
 // the base circle, radians (ISO 21771:2007, clause 4).
@@ -108,23 +105,35 @@ func (t Tooth) chamferEnd() (from, to Vec) {
 	return from, from.Add(dir.Scale(k))
 }
 
-// chamferedLand returns half the tip land that the chamfer leaves, mm.
-func (t Tooth) chamferedLand() float64 {
+// chamferFits reports whether the chamfer leaves a land and takes metal off: on
+// gears of few teeth the flank itself leans by 45° near the tip, and a chamfer
+// would lie outside it.
+func (t Tooth) chamferFits() bool {
 	_, to := t.chamferEnd()
-	return to.Y
+	return to.Y > 0 && to.Angle() < t.HalfAngleAt(t.da)
 }
 
-// largestChamfer returns the chamfer that would just leave no tip land, mm.
-func (t Tooth) largestChamfer() float64 {
-	h, err := FindRoot(func(h float64) float64 {
-		s := t
-		g := *t.Gear
-		g.daFa = g.da - 2*h
-		s.Gear = &g
-		return s.chamferedLand()
-	}, 0, t.spec.TipChamfer)
-	if err != nil {
-		return 0
+// TipLand returns the arc length of the tip that is left between the chamfers,
+// or between the flanks where there are none, normal, mm.
+func (t Tooth) TipLand() float64 {
+	if t.spec.TipChamfer <= 0 {
+		return t.TipThickness()
 	}
-	return h
+	_, to := t.chamferEnd()
+	return t.da * to.Angle() * math.Cos(t.HelixAt(t.da))
+}
+
+// largestChamfer returns the largest chamfer that fits, mm, to a thousandth of
+// the one that does not.
+func (t Tooth) largestChamfer() float64 {
+	for share := 0.999; share > 0; share -= 0.001 {
+		g := *t.Gear
+		g.daFa = g.da - 2*share*g.spec.TipChamfer
+		s := t
+		s.Gear = &g
+		if s.chamferFits() {
+			return share * t.spec.TipChamfer
+		}
+	}
+	return 0
 }

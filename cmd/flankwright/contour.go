@@ -241,7 +241,7 @@ func (g *gear) contourSpec(j *job, tooth involute.Tooth, tolerance float64) expo
 
 // checkPin returns a pin to measure a contour with: the first usable choice, or the ideal one.
 func (j *job) checkPin(g *gear) (float64, bool) {
-	for _, p := range choosePins(g, j.display == inspect.Inch) {
+	for _, p := range j.choosePins(g) {
 		if _, err := g.middle().Seat(p.Diameter); err == nil {
 			return p.Diameter, true
 		}

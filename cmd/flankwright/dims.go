@@ -163,7 +163,7 @@ type meshDims struct {
 	Gears          []string   `json:"gears"`
 	Center         float64    `json:"center_distance_mm"`
 	CenterLimits   span       `json:"center_distance_limits_mm"`
-	Tight          float64    `json:"tight_center_distance_mm"`
+	Tight          *float64   `json:"tight_center_distance_mm"` // null where no center distance is tight
 	ReferenceCtr   float64    `json:"reference_center_distance_mm"`
 	Ratio          float64    `json:"ratio"`
 	WorkingAngle   float64    `json:"working_pressure_angle_deg"`
@@ -174,12 +174,12 @@ type meshDims struct {
 	Normal         span       `json:"normal_backlash_mm"`
 	AngleFirst     span       `json:"angular_backlash_first_deg"`
 	AngleSecond    span       `json:"angular_backlash_second_deg"`
-	CenterPlay     span       `json:"center_play_mm"`
+	CenterPlay     *span      `json:"center_play_mm"` // null where no center distance is tight
 	Dial           dialDims   `json:"dial_backlash"`
 	Clearance      pairDims   `json:"tip_clearance_mm"`
 	Pitch          pairDims   `json:"working_pitch_diameter_mm"`
-	Start          pairDims   `json:"start_of_active_profile_mm"`
-	End            pairDims   `json:"end_of_active_profile_mm"`
+	Start          *pairDims  `json:"start_of_active_profile_mm"` // null where the involutes do not meet
+	End            *pairDims  `json:"end_of_active_profile_mm"`
 	SlidingRoot    pairSlides `json:"specific_sliding_at_root"`
 	SlidingTip     pairSlides `json:"specific_sliding_at_tip"`
 	Note           string     `json:"note"`
@@ -211,16 +211,20 @@ func newMeshDims(m *mesh, dial float64) meshDims {
 	d := meshDims{Gears: []string{m.first.name, m.second.name}, mesh: m, Note: geometricNote}
 	mm, a := m.plan.Mesh, m.plan.Nominal()
 	d.Center, d.CenterLimits = a, toSpan(m.plan.Center)
-	d.Tight, _ = mm.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness())
+	if tight, err := mm.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness()); err == nil {
+		d.Tight = &tight
+	}
 	d.ReferenceCtr, d.Ratio = mm.ReferenceCenter(), mm.Ratio()
 	c, err := mm.Contact(a, m.first.nominal, m.second.nominal)
 	if err == nil {
 		d.WorkingAngle = c.WorkingAngle / involute.Degree
 		d.Contact, d.ContactByTips = c.TransverseRatio, c.RatioByTips
 		d.Pitch = pairDims{c.Pitch1, c.Pitch2}
-		d.Start, d.End = pairDims{c.Start1, c.Start2}, pairDims{c.End1, c.End2}
-		d.SlidingRoot = pairSlides{slide(c.SlidingA1), slide(c.SlidingE2)}
-		d.SlidingTip = pairSlides{slide(c.SlidingE1), slide(c.SlidingA2)}
+		if c.TransverseRatio > 0 {
+			d.Start, d.End = &pairDims{c.Start1, c.Start2}, &pairDims{c.End1, c.End2}
+			d.SlidingRoot = pairSlides{slide(c.SlidingA1), slide(c.SlidingE2)}
+			d.SlidingTip = pairSlides{slide(c.SlidingE1), slide(c.SlidingA2)}
+		}
 	}
 	d.Overlap = mm.OverlapRatio(m.face())
 	d.Clearance.First, d.Clearance.Second = mm.TipClearances(a, m.first.nominal, m.second.nominal)
@@ -236,7 +240,9 @@ func (d *meshDims) backlash(least, most involute.Play, dial float64) {
 	d.Normal = span{least.Normal, most.Normal}
 	d.AngleFirst = span{least.AngleFirst / involute.Degree, most.AngleFirst / involute.Degree}
 	d.AngleSecond = span{least.AngleSecond / involute.Degree, most.AngleSecond / involute.Degree}
-	d.CenterPlay = span{least.CenterPlay, most.CenterPlay}
+	if least.CanTighten && most.CanTighten {
+		d.CenterPlay = &span{least.CenterPlay, most.CenterPlay}
+	}
 	r1, r2 := dial, dial
 	if dial == 0 {
 		r1, r2 = d.Pitch.First/2, d.Pitch.Second/2

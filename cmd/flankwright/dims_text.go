@@ -233,7 +233,9 @@ func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) g
 	lengths("  normal to the flanks", m.Normal)
 	minutes("  as an angle of "+m.Gears[0], m.AngleFirst)
 	minutes("  as an angle of "+m.Gears[1], m.AngleSecond)
-	lengths("  as play of the center distance", m.CenterPlay)
+	if m.CenterPlay != nil {
+		lengths("  as play of the center distance", *m.CenterPlay)
+	}
 	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.First), m.Gears[0]), m.Dial.First)
 	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.Second), m.Gears[1]), m.Dial.Second)
 	return g
@@ -247,8 +249,12 @@ func (m meshDims) theoryGrid(u inspect.Unit, f func(float64) string) grid {
 	pair := func(label string, d pairDims) { g.row(label, unit, f(d.First), f(d.Second)) }
 	pair("Working pitch diameter", m.Pitch)
 	pair("Tip clearance, tip to the mate's root", m.Clearance)
-	pair("Start of active profile", m.Start)
-	pair("End of active profile", m.End)
+	if m.Start == nil {
+		g.row("Start of active profile", "", "no contact", "no contact")
+		return g
+	}
+	pair("Start of active profile", *m.Start)
+	pair("End of active profile", *m.End)
 	slides := func(label string, s pairSlides) { g.row(label, "", slideText(s.First), slideText(s.Second)) }
 	slides("Specific sliding at the root end", m.SlidingRoot)
 	slides("  at the tip end", m.SlidingTip)
@@ -264,7 +270,11 @@ func (m meshDims) pairGrid(u inspect.Unit, f func(float64) string) grid {
 	if m.mesh.first.g.Helical() {
 		g.row("Overlap ratio", "", overlapText(m))
 	}
-	g.row("Center distance without backlash, nominal teeth", u.String(), f(m.Tight))
+	tight := "none"
+	if m.Tight != nil {
+		tight = f(*m.Tight)
+	}
+	g.row("Center distance without backlash, nominal teeth", u.String(), tight)
 	return g
 }
 

@@ -53,7 +53,26 @@ func explainPins(e *explainer, t involute.Tooth, p pinTarget) {
 		e.result("over two "+p.Kind, "M = d_K * cos(pi / (2 * z)) + D", m, srcThickness+" (over balls)", dK, pin, z)
 	}
 	e.result("contact diameter of the "+p.Kind, "d_c = d_b * sqrt(1 + (tan(α_Kt) - D * cos(β_b) / d_b) ^ 2)", mm("d_c", seat.ContactDiameter), srcGeometry, db, ak, pin, bb)
+	explainSensitivity(e, t, seat, at, b, ak, bb, z)
 	explainAlso(e, t, p, dK, pin, z)
+}
+
+// explainSensitivity explains what a thinner tooth and a larger pin do to the reading.
+func explainSensitivity(e *explainer, t involute.Tooth, seat involute.PinSeat, at, b, ak, bb, z quantity) {
+	byThickness, byPin := t.PinSensitivity(involute.TwoPins, seat)
+	factor, more := "1", []quantity(nil)
+	if t.Teeth()%2 != 0 {
+		factor, more = "cos(pi / (2 * z))", []quantity{z}
+	}
+	e.result("how much less a tooth thinner by 1 reads", "M_s = "+factor+" * cos(α_t) / (cos(β) * sin(α_Kt))", num("M_s", byThickness), srcGeometry, append(more, at, b, ak)...)
+	e.result("how much more a pin larger by 1 reads", "M_D = "+factor+" / (sin(α_Kt) * cos(β_b)) + 1", num("M_D", byPin), srcGeometry, append(more, ak, bb)...)
+}
+
+func valueOf(p *float64) float64 {
+	if p == nil {
+		return 0
+	}
+	return *p
 }
 
 func explainAlso(e *explainer, t involute.Tooth, p pinTarget, dK, pin, z quantity) {
@@ -63,10 +82,39 @@ func explainAlso(e *explainer, t involute.Tooth, p pinTarget, dK, pin, z quantit
 			e.result("over three pins", "M_3 = d_K * (1 + cos(pi / z)) / 2 + D", mm("M_3", dK.Value*(1+math.Cos(math.Pi/z.Value))/2+pin.Value), srcGeometry, dK, z, pin)
 		case "one pin to the axis":
 			e.result("one pin to the axis", "M_1 = (d_K + D) / 2", mm("M_1", (dK.Value+pin.Value)/2), srcGeometry, dK, pin)
+		case "one pin to the far side of the bore", "one pin to the far side of the arbor":
+			bore := mm("d_i", 2*valueOf(a.Aim)-dK.Value-pin.Value)
+			e.result(a.Way, "M_b = (d_K + D + d_i) / 2", mm("M_b", valueOf(a.Aim)), srcGeometry, dK, pin, bore)
+		case "rollers between free parallel anvils":
+			explainFree(e, t, dK, pin, z)
 		case "rollers exactly opposed":
 			e.result("over straight pins exactly opposed", "M_R = d_K + D", mm("M_R", dK.Value+pin.Value), "DIN 3960:1987, rollers", dK, pin)
 		}
 	}
+}
+
+// explainFree explains the least reading over straight pins between free
+// anvils: the slide ζ along the axis is solved for, the reading follows.
+func explainFree(e *explainer, t involute.Tooth, dK, pin, z quantity) {
+	r, err := t.Reading(involute.FreePins, dK.Value, pin.Value, 0)
+	if err != nil {
+		return
+	}
+	const src = "geometry of two skew pins between parallel anvils; no standard gives it"
+	b, d := deg("β", math.Abs(t.Spec().Helix)), mm("d", t.ReferenceDiameter())
+	bk := deg("β_K", t.HelixAt(dK.Value))
+	e.result("helix angle on the circle of the pin centers", "β_K = atan(tan(β) * d_K / d)", bk, srcGear, b, dK, d)
+	s, c := math.Sincos(bk.Value * involute.Degree)
+	zeta := mm("ζ", -r.AxialOffset)
+	delta := -math.Pi/z.Value + zeta.Value*s/c/(dK.Value/2)
+	sd, cd := math.Sincos(delta / 2)
+	dq := deg("δ", delta)
+	e.result("how far the pins stand from exactly opposite", "δ = -pi / z + ζ * tan(β_K) / (d_K / 2)", dq, src, z, zeta, bk, dK)
+	left := zeta.Value * (c*c + s*s*sd*sd)
+	e.solved("slide along the axis for the least reading", "ζ * (cos(β_K) ^ 2 + sin(β_K) ^ 2 * sin(δ / 2) ^ 2) = (d_K * cos(β_K) * cos(δ / 2) + ζ * sin(β_K) * sin(δ / 2)) * sin(β_K) * sin(δ / 2)",
+		zeta, left-(dK.Value*c*cd+zeta.Value*s*sd)*s*sd, src, bk, dq, dK)
+	e.result("over straight pins, free anvils", "M_F = (d_K * cos(β_K) * cos(δ / 2) + ζ * sin(β_K) * sin(δ / 2)) / sqrt(cos(β_K) ^ 2 + sin(β_K) ^ 2 * sin(δ / 2) ^ 2) + D",
+		mm("M_F", r.Value), src, dK, bk, dq, zeta, pin)
 }
 
 func explainSpan(e *explainer, t involute.Tooth, s spanTarget) {

@@ -24,7 +24,7 @@ func badJobs(f *testing.F) []string {
 		"", "units = \"mm\"", gear, pair, gear+"shift = nan", gear+"shift = 1.3", gear+"thin = \"3..4\"", gear+"tip_diameter = 36",
 		gear+"bore = \"10 H7\"\nkeyway = { width = 3, depth = 1.4 }", gear+"helix_angle = \"12°30'\"\nhand = \"left\"", gear+"rack = \"ISO 53 D\"",
 		gear+"addendum = 0.8\ndedendum = 1.0\ntip_radius = 0.3", gear+"tip_chamfer = 0.2", gear+"[gear.a.b]\nx = 1", gear+"gear.b.teeth = 3",
-		pair+"center = { at = 50.2, tolerance = 0.02 }\nbacklash = \"0.2..0.4\"\nthin_share = \"a\"", pair+"center = \"50±0.01\"", pair+"center = 1e300",
+		pair+"center = { at = 50.2, tolerance = 0.02 }\nbacklash = \"0.2..0.4\"\nthin_share = \"a\"", pair+"center = \"50±0.01\"", pair+"center = 1e300", gear+"face_width = 1e308\nhelix_angle = 20",
 		pair+"center = {at = 50, class = \"js7\"}", strings.Replace(pair, "teeth = 20", "teeth = 8\ntip = \"shortened\"", 1), strings.Replace(gear, "module = 2", "transverse_dp = 12\nhelix_angle = 30", 1),
 		"units = \"in\"\n[gear.a]\ndp = 1e-9\nteeth = 10000", "units = \"in\"\n[[gear]]\nteeth = 3", "units = \"mm\"\nmesh = [1, [2]]\n[gear.a]\nteeth = 9\nmodule = 1",
 	)
@@ -69,7 +69,7 @@ func checkComplaint(t *testing.T, err error) {
 	if !ok {
 		t.Fatalf("an error that no one worded: %v", err)
 	}
-	if p.status != exitQuestion || !strings.HasPrefix(p.where, "job.toml:") || p.text == "" {
+	if p.status != exitQuestion || !strings.HasPrefix(p.where, "job.toml") || p.text == "" {
 		t.Errorf("status %d, where %q, text %q", p.status, p.where, p.text)
 	}
 }

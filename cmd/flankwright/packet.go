@@ -67,7 +67,7 @@ func (j *job) packetFiles(c *cli.Context, gears []*gear) ([]export.File, []drawn
 	if opt.format, err = formatByName("dxf", opt.r12); err != nil {
 		return nil, nil, err
 	}
-	a, err := readAsk(c, j)
+	a, err := readAsk(c, j, gears)
 	if err != nil {
 		return nil, nil, err
 	}

@@ -18,13 +18,13 @@ const longAddendum = 0.25
 // first of a series that shops keep for gears, then of a gauge-pin set. Where
 // none of a series is usable it is left out; where none at all is, the ideal
 // pin alone is shown with the reason.
-func choosePins(g *gear, inch bool) []inspect.PinCandidate {
+func (j *job) choosePins(g *gear) []inspect.PinCandidate {
 	ideal, ok := inspect.IdealPin(g.g, g.thickness.Limits)
 	if !ok {
 		return nil
 	}
 	series := [][]inspect.PinCandidate{metricSeries(), setCandidates("mm", "metric 0.0")}
-	if inch {
+	if g.dp != 0 || j.display == inspect.Inch {
 		series = append(pitchSeries(g, ideal), setCandidates("in", "inch"))
 	}
 	var chosen []inspect.PinCandidate

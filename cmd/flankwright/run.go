@@ -6,7 +6,6 @@ import (
 	"errors"
 	"fmt"
 	"io"
-	"math"
 	"os"
 	"path/filepath"
 	"strings"
@@ -274,27 +273,6 @@ func loadJob(c *cli.Context) (*job, []*gear, error) {
 		return nil, nil, err
 	}
 	return j, gears, j.readBlank(c, gears)
-}
-
-// readBlank takes a measured outside diameter, which is about one gear.
-func (j *job) readBlank(c *cli.Context, gears []*gear) error {
-	v, ok := flagValue(c, "measured-tip")
-	if !ok {
-		return nil
-	}
-	tip, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
-	if err != nil {
-		return err
-	}
-	if len(gears) > 1 {
-		return wrong("--measured-tip: is about one gear, and the job has %s; say which by --gear", quoted(j.gearNames()))
-	}
-	g := gears[0]
-	if off := math.Abs(tip - g.g.TipDiameter()); off > g.g.Module() || tip <= g.nominal.FormDiameter() {
-		return wrong("--measured-tip: %s is not this gear's blank, which is %s across", j.length(tip), j.length(g.g.TipDiameter()))
-	}
-	g.measured = tip
-	return nil
 }
 
 // digits returns the decimals of lengths: --digits, or the unit's own.

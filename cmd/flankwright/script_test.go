@@ -31,5 +31,9 @@ func TestScripts(t *testing.T) {
 		RequireExplicitExec: true,
 		RequireUniqueNames:  true,
 		Cmds:                scriptCommands(),
+		Setup: func(env *testscript.Env) error {
+			env.Setenv("GORACE", "atexit_sleep_ms=0") // else every program of a -race run waits a second
+			return nil
+		},
 	})
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
 
 	"flankwright/inspect"
@@ -132,10 +133,7 @@ func (s settings) asLength(v value) (float64, error) {
 	default:
 		return 0, fmt.Errorf("needs a length, such as 12.5 or \"0.75in\", not %s", kindOf(v))
 	}
-	if math.IsNaN(mm) || math.IsInf(mm, 0) {
-		return 0, fmt.Errorf("needs a finite length")
-	}
-	return mm, nil
+	return inspect.ParseLength(strconv.FormatFloat(mm, 'g', -1, 64), inspect.Millimeter)
 }
 
 // positive reads a length above 0.
@@ -287,25 +285,16 @@ func (s settings) center(key string) (at, tolerance float64, class string, err e
 		at, _, err = s.positive(key)
 		return at, 0, "", err
 	}
-	both, err := inspect.ParseLimits(strings.TrimSpace(base)+".."+strings.TrimSpace(tol), s.bare(v))
-	if err != nil { // a tolerance is smaller than the distance: read the two alone
-		var e1, e2 error
-		bare := s.bare(v)
-		if strings.HasSuffix(tol, "in") {
-			bare = inspect.Inch
-		} else if strings.HasSuffix(tol, "mm") {
-			bare = inspect.Millimeter
-		}
-		both.Min, e1 = inspect.ParseLength(base, bare)
-		both.Max, e2 = inspect.ParseLength(tol, bare)
-		if e1 != nil || e2 != nil {
-			return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50 or \"50±0.02\"", text)
-		}
+	unit := inspect.UnitOf(tol, s.bare(v)) // a unit at the end covers both
+	distance, err1 := inspect.ParseLength(base, unit)
+	tolerance, err2 := inspect.ParseLength(tol, unit)
+	if err1 != nil || err2 != nil {
+		return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50 or \"50±0.02\"", text)
 	}
-	if both.Min <= 0 || both.Max < 0 {
+	if distance <= 0 || tolerance < 0 {
 		return 0, 0, "", bad(key, v, "needs a distance above 0 and a tolerance of 0 or more")
 	}
-	return both.Min, both.Max, "", nil
+	return distance, tolerance, "", nil
 }
 
 func (s settings) centerTable(key string, t *table) (at, tolerance float64, class string, err error) {

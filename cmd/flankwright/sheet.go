@@ -56,7 +56,7 @@ func runSheet(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	a, err := readAsk(c, j)
+	a, err := readAsk(c, j, gears)
 	if err != nil {
 		return err
 	}

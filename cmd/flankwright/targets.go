@@ -1,6 +1,7 @@
 package main
 
 import (
+	"fmt"
 	"math"
 
 	"github.com/urfave/cli/v2"
@@ -21,7 +22,7 @@ func targetsCommand() *cli.Command {
 			if err != nil {
 				return err
 			}
-			ask, err := readAsk(c, j)
+			ask, err := readAsk(c, j, gears)
 			if err != nil {
 				return err
 			}
@@ -38,56 +39,6 @@ func targetsCommand() *cli.Command {
 			return nil
 		},
 	}
-}
-
-func targetFlags() []cli.Flag {
-	return []cli.Flag{
-		&cli.StringSliceFlag{Name: "pin", Usage: "pin or ball to measure with; may be given again", Category: "Measuring"},
-		&cli.IntSliceFlag{Name: "span-teeth", Usage: "number of teeth to measure over; may be given again", Category: "Measuring"},
-		&cli.StringFlag{Name: "arbor", Usage: "diameter of the arbor to measure to (the bore)", Category: "Measuring"},
-	}
-}
-
-// An ask is what the user wants measured with; nil lists mean choose.
-type ask struct {
-	pins  []float64 // mm
-	teeth []int
-	arbor float64 // mm, 0 for the bore
-}
-
-func readAsk(c *cli.Context, j *job) (ask, error) {
-	var a ask
-	for _, text := range c.StringSlice("pin") {
-		d, err := inspect.ParseLength(text, j.display)
-		if err != nil {
-			return a, wrong("--pin: %v", err)
-		}
-		if d <= 0 {
-			return a, wrong("--pin: needs a diameter above 0, not %s", j.length(d))
-		}
-		a.pins = append(a.pins, d)
-	}
-	for _, k := range c.IntSlice("span-teeth") {
-		if k < 1 || k > maxTeeth {
-			return a, wrong("--span-teeth: needs 1 tooth or more, not %d", k)
-		}
-		a.teeth = append(a.teeth, k)
-	}
-	for _, f := range []struct {
-		name string
-		to   *float64
-	}{{"arbor", &a.arbor}} {
-		v, ok := flagValue(c, f.name)
-		if !ok {
-			continue
-		}
-		d, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
-		if err != nil {
-			return a, err
-		}
-		*f.to = d
-	}
-	return a, nil
 }
 
 // targets is the result of the command, as JSON writes it.
@@ -179,7 +130,7 @@ func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	if ideal, ok := inspect.IdealPin(g.g, g.thickness.Limits); ok {
 		out.IdealPin = &ideal
 	}
-	pins := choosePins(g, j.display == inspect.Inch)
+	pins := j.choosePins(g)
 	if a.pins != nil {
 		pins = nil
 		for _, d := range a.pins {
@@ -256,6 +207,9 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 		return out, false
 	}
 	out.Usable, out.Why = t.Usable(), j.why(t.Faults)
+	if w.way == involute.PinToFarSide && out.Why == "" && arbor == 0 && g.bore.limits.Width() > 0 {
+		out.Why = fmt.Sprintf("for a bore of exactly %s; add half of what it measures more", j.length(g.bore.nominal))
+	}
 	out.Measurement, out.Aim, _ = measured(t)
 	if seat, err := g.middle().Seat(pin); err == nil && g.g.Helical() {
 		if r, err := g.g.Reading(w.way, seat.CenterDiameter, pin, m.Bore); err == nil {

@@ -25,7 +25,7 @@ func (t *targets) text(p *page, digits int) []byte {
 		p.head(head)
 		var more []string
 		p.grid(t.measureGrid(g, u, digits, &more))
-		notes = append(notes, t.usable(p, gear.name, g)...)
+		notes = append(notes, t.reasons(gear.name, g)...)
 		for _, m := range more {
 			p.line("  %s", m)
 		}
@@ -138,8 +138,8 @@ func (t *targets) below(p *page, gear *gear, g gearTargets, u inspect.Unit, digi
 	}
 }
 
-// usable returns the reasons against measures, named so that they are found.
-func (t *targets) usable(_ *page, name string, g gearTargets) []string {
+// reasons returns the reasons against measures, named so that they are found.
+func (t *targets) reasons(name string, g gearTargets) []string {
 	var notes []string
 	add := func(what, why string) {
 		if why != "" {

@@ -64,22 +64,27 @@ func (j *job) warnGear(g *gear) {
 	if g.thickness.By == inspect.ByNothing {
 		j.addWarning("no-limits", g.name, "no thin and no backlash is given: the targets are the nominal tooth without tolerance. Give thin or backlash")
 	}
+	if g.thickness.By == inspect.ByBacklash && g.thickness.Limits.Width() == 0 {
+		j.addWarning("no-tolerance", g.name, "its mate takes all the thinning, and the center's tolerance all the room: its targets are without tolerance")
+	}
 	if g.thin != nil && g.thin.Width() == 0 {
 		j.addWarning("no-tolerance", g.name, "thin is one value: the targets are without tolerance. Give a range such as \"0.04..0.08\"")
 	}
 	if taken := g.g.NominalThickness() - g.thickness.Limits.Min; taken > heavyThinning*g.g.NominalThickness() {
 		j.addWarning("heavy-thinning", g.name, "the teeth come out up to %s thinner than nominal, %.0f %% of the tooth. Is the center distance right?", j.length(taken), 100*taken/g.g.NominalThickness())
 	}
-	if g.nominal.Undercut() {
-		lost := (g.nominal.FormDiameter() - g.g.BaseDiameter()) / 2
-		j.addWarning("undercut", g.name, "the cutter undercuts the root; the involute begins at %s, %s above the base circle. A shift of %+.4f or more avoids it",
-			j.length(g.nominal.FormDiameter()), j.length(lost), g.g.UndercutLimit())
-	}
 	thinnest, err := g.g.Tooth(g.thickness.Limits.Min)
-	if err == nil {
-		if land := thinnest.TipThickness(); land < thinTip*m {
-			j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift or the outside diameter", j.length(land), land/m, thinTip)
-		}
+	if err != nil {
+		return
+	}
+	if thinnest.Undercut() {
+		lost := (thinnest.FormDiameter() - g.g.BaseDiameter()) / 2
+		deeper := g.g.Spec().Shift - g.g.GeneratingShift(thinnest.Thickness())
+		j.addWarning("undercut", g.name, "the cutter undercuts the root; the involute begins at %s, %s above the base circle. A shift of %+.4f or more avoids it",
+			j.length(thinnest.FormDiameter()), j.length(lost), g.g.UndercutLimit()+deeper)
+	}
+	if land := thinnest.TipLand(); land < thinTip*m {
+		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
 	}
 	if g.bore != nil {
 		j.warnRim(g)
@@ -92,7 +97,7 @@ func (j *job) warnGear(g *gear) {
 // warnFace says what face a helical gear needs to be measured.
 func (j *job) warnFace(g *gear) {
 	text := ""
-	if pins := choosePins(g, j.display == inspect.Inch); len(pins) > 0 {
+	if pins := j.choosePins(g); len(pins) > 0 {
 		m := inspect.OverPins{Pin: pins[0].Diameter}
 		text += fmt.Sprintf("; two balls of %s need over %s", j.length(m.Pin), j.length(m.FaceNeeded(g.middle())))
 	}
@@ -114,10 +119,23 @@ func (j *job) warnRim(g *gear) {
 	}
 }
 
+// warnMesh judges the teeth that will be cut: clearance and interference of the
+// thickest, with the highest roots, at the tightest center; contact of the
+// thinnest at the loosest.
 func (j *job) warnMesh(m *mesh) {
 	pair := m.first.name + " and " + m.second.name
-	a := m.plan.Nominal()
-	c1, c2 := m.plan.Mesh.TipClearances(a, m.first.nominal, m.second.nominal)
+	thick1, err1 := m.first.g.Tooth(m.first.thickness.Limits.Max)
+	thick2, err2 := m.second.g.Tooth(m.second.thickness.Limits.Max)
+	if err1 == nil && err2 == nil {
+		j.warnClearance(m, thick1, thick2)
+		j.warnInterference(m, thick1, thick2)
+	}
+	j.warnContact(m, pair)
+	j.warnBacklash(m, pair)
+}
+
+func (j *job) warnClearance(m *mesh, t1, t2 involute.Tooth) {
+	c1, c2 := m.plan.Mesh.TipClearances(m.plan.Tightest(), t1, t2)
 	module := m.first.g.Module()
 	for _, side := range []struct {
 		own, mate *gear
@@ -125,49 +143,71 @@ func (j *job) warnMesh(m *mesh) {
 	}{{m.first, m.second, c1}, {m.second, m.first, c2}} {
 		switch {
 		case side.c <= 0:
-			j.addWarning("tip-in-root", side.own.name, "the tip runs %s into the root of %s at the nominal center distance. Shorten the tip (tip = \"shortened\" or tip_diameter)", j.length(-side.c), side.mate.name)
+			j.addWarning("tip-in-root", side.own.name, "the tip runs %s into the root of %s at the tightest center distance. Shorten the tip (tip = \"shortened\" or tip_diameter)", j.length(-side.c), side.mate.name)
 		case side.c < lowClearance*module:
 			j.addWarning("low-clearance", side.own.name, "only %s (%.2f × module) between its tip and the root of %s; racks leave 0.25. tip = \"shortened\" restores it", j.length(side.c), side.c/module, side.mate.name)
 		}
 	}
-	j.warnContact(m, pair, a)
-	j.warnBacklash(m, pair)
 }
 
-func (j *job) warnContact(m *mesh, pair string, a float64) {
-	c, err := m.plan.Mesh.Contact(a, m.first.nominal, m.second.nominal)
+func (j *job) warnInterference(m *mesh, t1, t2 involute.Tooth) {
+	a := m.plan.Tightest()
+	c1, c2 := m.plan.Mesh.TipClearances(a, t1, t2)
+	play, err := m.plan.Mesh.Backlash(a, t1.Thickness(), t2.Thickness())
 	if err != nil {
 		return
 	}
-	total := c.TransverseRatio + m.plan.Mesh.OverlapRatio(m.face())
+	for _, first := range []bool{true, false} {
+		own, mate := m.first, m.second
+		if !first {
+			own, mate = m.second, m.first
+		}
+		if (first && c2 <= 0) || (!first && c1 <= 0) {
+			continue // the mate's tip is in the root already; that is said
+		}
+		gap, err := m.plan.Mesh.FilletClearance(a, t1, t2, first)
+		if err != nil || gap >= -max(interferes*own.g.Module(), leastOverlap) {
+			continue
+		}
+		then := "it rubs there"
+		if -gap > play.Circumferential {
+			then = "the pair will bind"
+		}
+		j.addWarning("interference", own.name, "the tip of %s cuts %s into its root fillet; %s. Shorten the tip of %s, or give %s less of the shift and %s more", mate.name, j.length(-gap), then, mate.name, mate.name, own.name)
+	}
+}
+
+func (j *job) warnContact(m *mesh, pair string) {
+	thin1, err1 := m.first.g.Tooth(m.first.thickness.Limits.Min)
+	thin2, err2 := m.second.g.Tooth(m.second.thickness.Limits.Min)
+	if err1 != nil || err2 != nil {
+		return
+	}
+	c, err := m.plan.Mesh.Contact(m.plan.Loosest(), thin1, thin2)
+	if err != nil {
+		return
+	}
+	overlap := m.plan.Mesh.OverlapRatio(m.face())
+	total := c.TransverseRatio + overlap
 	switch {
+	case m.first.g.Helical() && m.face() == 0 && total < lowContact:
+		j.addWarning("low-contact", m.first.name, "%s: the transverse contact ratio is %.3f; whether the helix makes up for it needs face_width", pair, total)
 	case total < 1:
-		j.addWarning("no-drive", m.first.name, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted; the pair will not run smoothly", pair, c.TransverseRatio)
+		j.addWarning("no-drive", m.first.name, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted; the pair will not run smoothly", pair, total)
 	case total < lowContact:
-		j.addWarning("low-contact", m.first.name, "%s: contact ratio %.3f is low; under %.1f every error is heard", pair, c.TransverseRatio, lowContact)
+		j.addWarning("low-contact", m.first.name, "%s: contact ratio %.3f is low; under %.1f every error is heard", pair, total, lowContact)
 	}
 	if c.LimitedByRoots() && c.RatioByTips-c.TransverseRatio > 0.0005 {
 		j.addWarning("short-contact", m.first.name, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f", pair, c.RatioByTips, c.TransverseRatio)
 	}
-	c1, c2 := m.plan.Mesh.TipClearances(a, m.first.nominal, m.second.nominal)
-	for _, first := range []bool{true, false} {
-		own, mate := m.first, m.second
-		if (first && c2 <= 0) || (!first && c1 <= 0) {
-			continue // the mate's tip is in the root already; that is said
-		}
-		if !first {
-			own, mate = m.second, m.first
-		}
-		gap, err := m.plan.Mesh.FilletClearance(a, m.first.nominal, m.second.nominal, first)
-		if err == nil && gap < -interferes*own.g.Module() {
-			j.addWarning("interference", own.name, "the tip of %s cuts %s into its root fillet; the pair will bind. Shorten the tip of %s, or give %s less of the shift and %s more", mate.name, j.length(-gap), mate.name, mate.name, own.name)
-		}
-	}
 }
 
-// interferes is the least overlap of tip and fillet that counts, as a share of
-// the module: a contact that ends just at the form diameter overlaps by rounding.
-const interferes = 1e-5
+// What counts as interference: a contact that ends just at the form diameter
+// overlaps by rounding, and under a micrometer no harm is done.
+const (
+	interferes   = 1e-4  // share of the module
+	leastOverlap = 0.001 // mm
+)
 
 func (j *job) warnBacklash(m *mesh, pair string) {
 	least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
@@ -212,7 +252,7 @@ func (j *job) forGear(name string) []warning {
 	return ws
 }
 
-// common returns how many gears of the job are chosen by --gear: all, or one.
+// chosen returns the gears that --gear chooses: all, or one.
 func (j *job) chosen(name string) ([]*gear, error) {
 	if name == "" {
 		return j.gears, nil
