@@ -110,13 +110,14 @@ func (j *job) readCenter(m *mesh, s settings) error {
 		}
 	}
 	if reach := (m.first.g.TipDiameter() + m.second.g.TipDiameter()) / 2; at >= reach {
-		return fault(m.at, "%s and %s: at a center distance of %s the teeth do not reach each other; the tips meet at %s, and the pair is tight at %s",
-			m.first.name, m.second.name, j.length(at), j.length(reach), j.length(m.tight()))
+		return fault(m.at, "%s and %s: at a center distance of %s the teeth do not reach each other; the tips alone meet at %s",
+			m.first.name, m.second.name, j.length(at), j.length(reach))
 	}
 	return nil
 }
 
-// tight returns the center distance without backlash of nominal teeth, 0 where there is none.
+// tight returns the center distance without backlash of nominal teeth, 0 where
+// there is none.
 func (m *mesh) tight() float64 {
 	a, err := m.plan.Mesh.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness())
 	if err != nil {

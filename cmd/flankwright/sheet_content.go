@@ -196,7 +196,7 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 	if len(t.OverPins) > 0 {
 		p := t.OverPins[0]
 		if a := p.firstAlso(); a != nil {
-			add(capital(wayText(a.text, p.Kind)), alsoWith(a.Way)+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
+			add(capital(wayText(a.text, p.Kind)), alsoWith(a.Way, p.Kind)+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
 		}
 	}
 	if len(t.Span) > 0 {
@@ -224,12 +224,12 @@ func (p pinTarget) firstAlso() *alsoWay {
 }
 
 // alsoWith says how many pins a way takes.
-func alsoWith(way string) string {
+func alsoWith(way, kind string) string {
 	switch {
 	case strings.HasPrefix(way, "three"):
 		return "3 pins "
 	case strings.HasPrefix(way, "one"):
-		return "1 pin or ball "
+		return "1 " + strings.TrimSuffix(kind, "s") + " "
 	}
 	return "2 straight pins "
 }

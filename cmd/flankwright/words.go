@@ -117,6 +117,9 @@ func (j *job) gearReason(e *involute.Impossible) string {
 	case involute.CutOff:
 		return "undercut cuts the teeth off at their roots; raise shift or teeth"
 	case involute.ChamferTooLarge:
+		if e.Limit <= 0 && e.Value > 0 {
+			return "a 45° tip chamfer does not fit: the flanks of so few teeth lean as much themselves at the tip. Leave tip_chamfer out"
+		}
 		return fmt.Sprintf("a tip chamfer of %s is too large; it must be from 0 to under %s", v, l)
 	case involute.BadHelix:
 		return fmt.Sprintf("a helix angle of %s is past the limit of %s", degrees(e.Value), degrees(e.Limit))
