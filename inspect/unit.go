@@ -66,7 +66,7 @@ func fixed(x float64, decimals int) string {
 const rounding = 1e-6
 
 // moreDigits bounds how many digits beyond the usual ones a narrow range may take.
-const moreDigits = 6
+const moreDigits = 12
 
 // A Printed is a pair of limits as text, rounded inward.
 type Printed struct {

@@ -15,7 +15,7 @@ const (
 	BadModule                          // Value: m_n, mm
 	BadPressureAngle                   // Value: α_n; Limit: the bound passed, radians
 	BadHelix                           // Value: β; Limit: the bound passed, radians
-	RackPointed                        // Value: the rack's half tip width/m_n before rounding (negative); Limit 0
+	RackPointed                        // Value: h_fP*; Limit: where the tool comes to a point, π/(4 tan α_n)
 	RackTipTooRound                    // Value: ρ_fP*; Limit: the largest that fits
 	RackTooShallow                     // Value: h_fP*; Limit: 0
 	TipBelowBase                       // Value: d_a; Limit: d_b

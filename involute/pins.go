@@ -270,11 +270,28 @@ func HelixDistance(c, r, theta, q float64) float64 {
 	theta = math.Remainder(theta, 2*math.Pi)
 	zeta := 0.0
 	if q != 0 && theta != 0 {
-		slope := func(z float64) float64 { return z + c*r*q*math.Sin(theta+z*q) }
-		if z, err := FindRoot(slope, -theta/q, 0); err == nil {
-			zeta = z
-		}
+		zeta = nearestAlong(c*r*q, theta, q)
 	}
 	chord := 2 * math.Sqrt(c*r) * math.Sin((theta+zeta*q)/2)
 	return math.Hypot(math.Hypot(c-r, chord), zeta)
+}
+
+// nearestAlong solves ζ + k sin(theta + ζ q) = 0 by Newton's method, which four
+// or five steps do for the small angles within a tooth space, and by bracketing
+// where they do not.
+func nearestAlong(k, theta, q float64) float64 {
+	zeta := -k * theta / (1 + k*q)
+	for range 6 {
+		s, c := math.Sincos(theta + zeta*q)
+		step := (zeta + k*s) / (1 + k*q*c)
+		zeta -= step
+		if math.Abs(step) <= 4*ulp(zeta) {
+			return zeta
+		}
+	}
+	slope := func(z float64) float64 { return z + k*math.Sin(theta+z*q) }
+	if z, err := FindRoot(slope, -theta/q, 0); err == nil {
+		return z
+	}
+	return 0
 }

@@ -57,7 +57,7 @@ func (r Rack) validate() error {
 	case r.Dedendum <= 0 || r.Addendum+r.Dedendum <= 0:
 		return impossible(RackTooShallow, r.Dedendum, 0)
 	case r.sharpHalfTip() < 0:
-		return impossible(RackPointed, r.sharpHalfTip(), 0)
+		return impossible(RackPointed, r.Dedendum, math.Pi/4/math.Tan(r.PressureAngle))
 	case r.TipRadius < 0 || r.TipRadius > r.LargestTipRadius()+radiusSlack:
 		return impossible(RackTipTooRound, r.TipRadius, r.LargestTipRadius())
 	}

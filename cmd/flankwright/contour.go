@@ -57,6 +57,9 @@ func runContour(c *cli.Context) error {
 		opt.format, err = formatByName(c.String("format"), opt.r12)
 	} else {
 		opt.format, err = formatByEnding(out, opt.r12)
+		if f := c.String("format"); err == nil && f != "" && "."+strings.ToLower(f) != opt.format.Ending() {
+			err = wrong("-o %s: and --format %s say different things; the ending decides, leave --format out", out, f)
+		}
 	}
 	if err != nil {
 		return err

@@ -64,7 +64,7 @@ func (r *contours) text(p *page, digits int) []byte {
 	for _, d := range r.gears {
 		if d.Section == "transverse" {
 			p.blank()
-			p.wrapped(fmt.Sprintf("%s is helical: the contour is its transverse section, square to the axis. It is good for a look, for templates and for wire EDM of a thin gear's stand-in; milled straight through it makes a spur gear, not this one.", d.name), "  ")
+			p.wrapped(fmt.Sprintf("%s is helical: the contour is its transverse section, square to the axis. It is good for a look, for templates and for laying out; cut straight through it makes a spur gear, not this one.", d.name), "  ")
 		}
 	}
 	p.explanations(r.Explain)

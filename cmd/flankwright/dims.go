@@ -28,7 +28,9 @@ func dimsCommand() *cli.Command {
 				return err
 			}
 			d := newDims(j, gears, radius)
-			d.indexList = c.Bool("index-list")
+			if c.Bool("index-list") {
+				d.listIndex()
+			}
 			if c.Bool("explain") {
 				d.Explain = j.explainDims(gears)
 			}
@@ -53,45 +55,45 @@ type dims struct {
 	Warnings []warning     `json:"warnings"`
 	Explain  []explanation `json:"explain,omitempty"`
 
-	job       *job
-	list      []*gear
-	gears     []gearDims
-	indexList bool
+	job   *job
+	list  []*gear
+	gears []gearDims
 }
 
 type gearDims struct {
-	Teeth           int      `json:"teeth"`
-	Module          float64  `json:"module_mm"`
-	DP              float64  `json:"dp"`
-	PressureAngle   float64  `json:"pressure_angle_deg"`
-	TransverseAngle float64  `json:"transverse_pressure_angle_deg"`
-	Helix           float64  `json:"helix_angle_deg"`
-	Hand            string   `json:"hand,omitempty"`
-	Lead            *float64 `json:"lead_mm,omitempty"`
-	Shift           float64  `json:"shift"`
-	ShiftLength     float64  `json:"shift_mm"`
-	Reference       float64  `json:"reference_diameter_mm"`
-	Base            float64  `json:"base_diameter_mm"`
-	Tip             float64  `json:"tip_diameter_mm"`
-	Root            float64  `json:"root_diameter_mm"`
-	Form            float64  `json:"form_diameter_mm"`
-	TipForm         float64  `json:"tip_form_diameter_mm"`
-	Thickness       float64  `json:"tooth_thickness_mm"`
-	TransverseThick float64  `json:"transverse_tooth_thickness_mm"`
-	TipThickness    float64  `json:"tip_thickness_mm"`
-	MeasuredTip     *float64 `json:"measured_tip_diameter_mm,omitempty"`
-	Undercut        bool     `json:"undercut"`
-	WholeDepth      float64  `json:"whole_depth_mm"`
-	Limits          span     `json:"thickness_limits_mm"`
-	RootLimits      span     `json:"root_diameter_limits_mm"`
-	CutDepth        span     `json:"depth_of_cut_mm"`
-	NormalPitch     float64  `json:"normal_pitch_mm"`
-	BasePitch       float64  `json:"normal_base_pitch_mm"`
-	TransverseBase  float64  `json:"transverse_base_pitch_mm"`
-	Index           float64  `json:"index_angle_deg"`
-	VirtualTeeth    float64  `json:"virtual_teeth"`
-	Bore            *span    `json:"bore_mm,omitempty"`
-	Rack            rackDims `json:"rack"`
+	Teeth           int       `json:"teeth"`
+	Module          float64   `json:"module_mm"`
+	DP              float64   `json:"dp"`
+	PressureAngle   float64   `json:"pressure_angle_deg"`
+	TransverseAngle float64   `json:"transverse_pressure_angle_deg"`
+	Helix           float64   `json:"helix_angle_deg"`
+	Hand            string    `json:"hand,omitempty"`
+	Lead            *float64  `json:"lead_mm,omitempty"`
+	Shift           float64   `json:"shift"`
+	ShiftLength     float64   `json:"shift_mm"`
+	Reference       float64   `json:"reference_diameter_mm"`
+	Base            float64   `json:"base_diameter_mm"`
+	Tip             float64   `json:"tip_diameter_mm"`
+	Root            float64   `json:"root_diameter_mm"`
+	Form            float64   `json:"form_diameter_mm"`
+	TipForm         float64   `json:"tip_form_diameter_mm"`
+	Thickness       float64   `json:"tooth_thickness_mm"`
+	TransverseThick float64   `json:"transverse_tooth_thickness_mm"`
+	TipThickness    float64   `json:"tip_thickness_mm"`
+	MeasuredTip     *float64  `json:"measured_tip_diameter_mm,omitempty"`
+	Undercut        bool      `json:"undercut"`
+	WholeDepth      float64   `json:"whole_depth_mm"`
+	Limits          span      `json:"thickness_limits_mm"`
+	RootLimits      span      `json:"root_diameter_limits_mm"`
+	CutDepth        span      `json:"depth_of_cut_mm"`
+	NormalPitch     float64   `json:"normal_pitch_mm"`
+	BasePitch       float64   `json:"normal_base_pitch_mm"`
+	TransverseBase  float64   `json:"transverse_base_pitch_mm"`
+	Index           float64   `json:"index_angle_deg"`
+	IndexList       []float64 `json:"index_list_deg,omitempty"`
+	VirtualTeeth    float64   `json:"virtual_teeth"`
+	Bore            *span     `json:"bore_mm,omitempty"`
+	Rack            rackDims  `json:"rack"`
 }
 
 type rackDims struct {
@@ -115,6 +117,18 @@ func newDims(j *job, gears []*gear, dial float64) *dims {
 		}
 	}
 	return d
+}
+
+// listIndex adds the angle of every tooth from the first.
+func (d *dims) listIndex() {
+	d.Gears = ordered{}
+	for i := range d.gears {
+		g := &d.gears[i]
+		for k := range g.Teeth {
+			g.IndexList = append(g.IndexList, 360*float64(k)/float64(g.Teeth))
+		}
+		d.Gears.add(d.list[i].name, *g)
+	}
 }
 
 func newGearDims(g *gear) gearDims {

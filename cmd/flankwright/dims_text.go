@@ -7,6 +7,7 @@ import (
 	"strconv"
 
 	"flankwright/inspect"
+	"flankwright/involute"
 )
 
 // text prints the dimensions: first what the lathe and the mill need, then backlash, theory last.
@@ -37,9 +38,7 @@ func (d *dims) text(p *page, digits int) []byte {
 		p.line("Backlash here is geometric: before runout, pitch error and temperature.")
 	}
 	d.job.moreDigits(p, d.list, digits)
-	if d.indexList {
-		d.printIndex(p)
-	}
+	d.printIndex(p)
 	p.explanations(d.Explain)
 	p.warnings(d.Warnings)
 	return []byte(p.b.String())
@@ -294,11 +293,13 @@ func slideText(s *float64) string {
 
 func (d *dims) printIndex(p *page) {
 	for i, g := range d.gears {
+		if g.IndexList == nil {
+			continue
+		}
 		p.blank()
 		p.head("Index list, " + d.list[i].name)
-		for k := range g.Teeth {
-			rad := 2 * math.Pi * float64(k) / float64(g.Teeth)
-			p.line("%5d  %12.6f  %s", k+1, 360*float64(k)/float64(g.Teeth), angleDMS(rad))
+		for k, deg := range g.IndexList {
+			p.line("%5d  %12.6f  %s", k+1, deg, angleDMS(deg*involute.Degree))
 		}
 	}
 }

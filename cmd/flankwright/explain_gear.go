@@ -89,12 +89,12 @@ func explainForm(e *explainer, t involute.Tooth, z, x, m, an, at, db, hfP, rho q
 func explainUndercut(e *explainer, t involute.Tooth, z, at, db, form quantity) {
 	end := t.FilletEnd()
 	b, d := deg("β", math.Abs(t.Spec().Helix)), mm("d", t.ReferenceDiameter())
-	psi, h, rho, land := deg("ψ", end.Psi), mm("h", end.H), mm("ρ", end.Rho), mm("e", end.E)
+	psi, h, rho, land := deg("ψ", end.Psi), mm("h_0", end.H), mm("ρ_0", end.Rho), mm("e_0", end.E)
 	a, y, theta := mm("A", end.A), mm("Y", end.Y), deg("θ", end.SpaceAngle)
 	const src = "trochoid of the rack's tip by the law of gearing; " + srcRack
-	e.result("end of the fillet, across", "A = cos(β) * (h * tan(ψ) + ρ * sin(ψ))", a, src, b, h, psi, rho)
-	e.result("end of the fillet, up", "Y = d / 2 - h - ρ * cos(ψ)", y, src, d, h, rho, psi)
-	e.result("end of the fillet, angle from the space's center", "θ = atan(A / Y) - (A - (e + ρ * sin(ψ)) / cos(β)) / (d / 2)", theta, src, a, y, land, rho, psi, b, d)
+	e.result("end of the fillet, across", "A = cos(β) * (h_0 * tan(ψ) + ρ_0 * sin(ψ))", a, src, b, h, psi, rho)
+	e.result("end of the fillet, up", "Y = d / 2 - h_0 - ρ_0 * cos(ψ)", y, src, d, h, rho, psi)
+	e.result("end of the fillet, angle from the space's center", "θ = atan(A / Y) - (A - (e_0 + ρ_0 * sin(ψ)) / cos(β)) / (d / 2)", theta, src, a, y, land, rho, psi, b, d)
 	e.solved("where the undercut meets the involute (undercut)",
 		"θ = pi / z - (s_n / cos(β) / d + inv(α_t) - inv(acos(d_b / (2 * sqrt(A ^ 2 + Y ^ 2)))))", psi, end.Residual, src,
 		theta, z, mm("s_n", t.Thickness()), b, d, at, db, a, y)

@@ -115,11 +115,6 @@ func number(v any, path ...any) (float64, bool) {
 	return x, ok
 }
 
-// twoMeanings are symbols that stand for two numbers of one subject: h for the
-// whole depth and for the height of the tool's tip, α_wt for the working angle
-// at the nominal center distance and at the ends of its tolerance.
-func twoMeanings() map[string]bool { return map[string]bool{"h": true, "α_wt": true} }
-
 // checkChain follows the numbers through the blocks: an input that was a
 // result before, of the same subject, is that number again, or the one that
 // the equation solved next gives (the slide ζ stands in two equations at once).
@@ -130,7 +125,7 @@ func checkChain(t *testing.T, blocks []printedBlock) {
 		about := lastPart(b.title) + " "
 		for _, q := range b.inputs {
 			was, ok := results[about+q.symbol]
-			if ok && was.digits != q.digits && !twoMeanings()[q.symbol] && !solvedNext(blocks[i:], q) {
+			if ok && was.digits != q.digits && !solvedNext(blocks[i:], q) {
 				t.Errorf("%s: %s is %s here and came out as %s above", b.title, q.symbol, q.digits, was.digits)
 			}
 		}

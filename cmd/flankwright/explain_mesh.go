@@ -124,14 +124,24 @@ func explainThinning(e *explainer, m *mesh) {
 		if err1 != nil || err2 != nil || err3 != nil {
 			return
 		}
+		aw := workingAt(e, m, end.index, end.a, alpha)
 		t := mm("T_"+end.index, sum)
 		e.result("thinning of both gears for the "+end.name+" backlash, from what nominal teeth have at that center",
-			t.Symbol+" = (j_asked - j_nominal) * cos(α_wt) * cos(β) / cos(α_t)", t, srcPair,
-			mm("j_asked", end.j), mm("j_nominal", p.Circumferential), deg("α_wt", alpha), deg("β", math.Abs(g.Spec().Helix)), deg("α_t", g.TransversePressureAngle()))
+			t.Symbol+" = (j_asked - j_nominal) * cos("+aw.Symbol+") * cos(β) / cos(α_t)", t, srcPair,
+			mm("j_asked", end.j), mm("j_nominal", p.Circumferential), aw, deg("β", math.Abs(g.Spec().Helix)), deg("α_t", g.TransversePressureAngle()))
 		r := mm("T_"+end.index, (s1-end.pick(m.first.thickness.Limits))+(s2-end.pick(m.second.thickness.Limits)))
 		e.result("what the thickness limits found come to", r.Symbol+" = s_n1 - s_1 + s_n2 - s_2", r, srcPair,
 			mm("s_n1", s1), mm("s_1", end.pick(m.first.thickness.Limits)), mm("s_n2", s2), mm("s_2", end.pick(m.second.thickness.Limits)))
 	}
+}
+
+// workingAt explains the working pressure angle at the tightest (min) or the
+// loosest (max) center distance, and returns it.
+func workingAt(e *explainer, m *mesh, index string, a, alpha float64) quantity {
+	aw, at := deg("α_wt"+index, alpha), mm("a_"+index, a)
+	e.result("working pressure angle at the center distance of the "+map[string]string{"min": "least", "max": "greatest"}[index]+" backlash",
+		aw.Symbol+" = acos((d_b1 + d_b2) / (2 * "+at.Symbol+"))", aw, srcPair, mm("d_b1", m.first.g.BaseDiameter()), mm("d_b2", m.second.g.BaseDiameter()), at)
+	return aw
 }
 
 // explainPlay explains the least and the greatest backlash.
@@ -150,25 +160,25 @@ func explainPlay(e *explainer, m *mesh, db1, db2 quantity) {
 			continue
 		}
 		alpha, _ := mm1.WorkingPressureAngle(end.a)
-		aw := deg("α_wt", alpha)
-		inv := num("inv_tight", mm1.TightInv(end.s1, end.s2))
+		aw := workingAt(e, m, end.index, end.a, alpha)
+		inv := num("inv_tight_"+end.index, mm1.TightInv(end.s1, end.s2))
 		e.result("involute of the working angle at which the "+end.name+" backlash would be nil",
-			"inv_tight = inv(α_t) + ((s_n1 + s_n2) / cos(β) - pi * m_n / cos(β)) / (d_1 + d_2)", inv, srcPair,
+			inv.Symbol+" = inv(α_t) + ((s_n1 + s_n2) / cos(β) - pi * m_n / cos(β)) / (d_1 + d_2)", inv, srcPair,
 			deg("α_t", g.TransversePressureAngle()), mm("s_n1", end.s1), mm("s_n2", end.s2), deg("β", math.Abs(g.Spec().Helix)),
 			mm("m_n", g.Module()), mm("d_1", g.ReferenceDiameter()), mm("d_2", m.second.g.ReferenceDiameter()))
 		j := mm("j_wt"+end.index, p.Circumferential)
-		e.result(end.name+" backlash, circumferential", j.Symbol+" = (d_b1 + d_b2) * (inv(α_wt) - inv_tight) / cos(α_wt)", j, srcPair, db1, db2, aw, inv)
+		e.result(end.name+" backlash, circumferential", j.Symbol+" = (d_b1 + d_b2) * (inv("+aw.Symbol+") - "+inv.Symbol+") / cos("+aw.Symbol+")", j, srcPair, db1, db2, aw, inv)
 		n := mm("j_bn"+end.index, p.Normal)
-		e.result(end.name+" backlash, normal", n.Symbol+" = "+j.Symbol+" * cos(α_wt) * cos(β_b)", n, srcPair, j, aw, deg("β_b", g.BaseHelix()))
+		e.result(end.name+" backlash, normal", n.Symbol+" = "+j.Symbol+" * cos("+aw.Symbol+") * cos(β_b)", n, srcPair, j, aw, deg("β_b", g.BaseHelix()))
 		t1, t2 := deg("j_θ1"+end.index, p.AngleFirst), deg("j_θ2"+end.index, p.AngleSecond)
-		e.result(end.name+" backlash as an angle of "+m.first.name, t1.Symbol+" = 2 * "+j.Symbol+" * cos(α_wt) / d_b1", t1, srcPair, j, aw, db1)
-		e.result(end.name+" backlash as an angle of "+m.second.name, t2.Symbol+" = 2 * "+j.Symbol+" * cos(α_wt) / d_b2", t2, srcPair, j, aw, db2)
+		e.result(end.name+" backlash as an angle of "+m.first.name, t1.Symbol+" = 2 * "+j.Symbol+" * cos("+aw.Symbol+") / d_b1", t1, srcPair, j, aw, db1)
+		e.result(end.name+" backlash as an angle of "+m.second.name, t2.Symbol+" = 2 * "+j.Symbol+" * cos("+aw.Symbol+") / d_b2", t2, srcPair, j, aw, db2)
 		if tight, err := mm1.TightCenter(end.s1, end.s2); err == nil && p.CanTighten {
 			angle, _ := mm1.WorkingPressureAngle(tight)
-			at := deg("α_tight", angle)
-			e.solved("working pressure angle at which the "+end.name+" backlash would be nil", "inv(α_tight) = inv_tight", at, involute.Inv(angle)-inv.Value, srcPair, inv)
+			at := deg("α_tight_"+end.index, angle)
+			e.solved("working pressure angle at which the "+end.name+" backlash would be nil", "inv("+at.Symbol+") = "+inv.Symbol, at, involute.Inv(angle)-inv.Value, srcPair, inv)
 			r := mm("j_r"+end.index, p.CenterPlay)
-			e.result(end.name+" play of the center distance", r.Symbol+" = a_"+end.index+" - (d_b1 + d_b2) / (2 * cos(α_tight))", r, srcPair, mm("a_"+end.index, end.a), db1, db2, at)
+			e.result(end.name+" play of the center distance", r.Symbol+" = a_"+end.index+" - (d_b1 + d_b2) / (2 * cos("+at.Symbol+"))", r, srcPair, mm("a_"+end.index, end.a), db1, db2, at)
 		}
 	}
 }

@@ -120,6 +120,11 @@ func (r *request) readGears(root *table, shared map[string]value) error {
 		if err := checkName(e.at, e.key); err != nil {
 			return err
 		}
+		for _, g := range r.gears {
+			if strings.EqualFold(g.name, e.key) {
+				return fault(e.at, "gear.%s: and gear.%s differ by capitals only; they become names of files, which some machines cannot tell apart", e.key, g.name)
+			}
+		}
 		where := fmt.Sprintf("[gear.%s]", e.key)
 		if err := checkKeys(t, inGear, where); err != nil {
 			return err
@@ -160,12 +165,24 @@ func without(vals map[string]value, keys ...string) map[string]value {
 	return rest
 }
 
+// reserved reports whether a name is a device on some machines, with any ending.
+func reserved(name string) bool {
+	switch strings.ToLower(name) {
+	case "con", "prn", "aux", "nul":
+		return true
+	}
+	return len(name) == 4 && isDigit(name[3]) && (strings.EqualFold(name[:3], "com") || strings.EqualFold(name[:3], "lpt"))
+}
+
 // checkName refuses gear names that cannot be part of a file's name everywhere.
 func checkName(at place, name string) error {
 	ok := name != "" && len(name) <= 40 && name[0] != '-'
 	for i := range len(name) {
 		c := name[i]
 		ok = ok && (isLetter(c) || isDigit(c) || c == '-' || c == '_')
+	}
+	if reserved(name) {
+		return fault(at, "gear name %q: is kept by some machines for a device and cannot be a file's name; take another", name)
 	}
 	if !ok {
 		return fault(at, "gear name %q: use up to 40 letters, digits, - and _; it becomes part of file names", name)
@@ -204,6 +221,11 @@ func checkKeys(t *table, where scope, name string) error {
 	for _, e := range t.entries {
 		spec, ok := findKey(e.key)
 		if !ok || spec.where&where == 0 {
+			if text, isText := asText(e.val); isText && !ok {
+				if why, other := otherDrive(text); other {
+					return fault(e.at, "%s = %q: %s", e.key, text, why)
+				}
+			}
 			return unknownKey(e.at, e.key, name, keysIn(where))
 		}
 		if err := refuseLater(spec, e.val, e.at); err != nil {

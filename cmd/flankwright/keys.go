@@ -96,6 +96,17 @@ func findKey(name string) (keySpec, bool) {
 	return keySpec{}, false
 }
 
+// supported drops the names of keys that are not supported yet.
+func supported(names []string) []string {
+	var out []string
+	for _, n := range names {
+		if k, ok := findKey(n); !ok || !k.later {
+			out = append(out, n)
+		}
+	}
+	return out
+}
+
 // keysIn returns the names of the keys that may stand in a scope.
 func keysIn(where scope) []string {
 	var names []string
@@ -143,15 +154,24 @@ func otherDrive(name string) (string, bool) {
 }
 
 // nearest returns the name closest to the one given, if it is close enough to
-// be meant: at most a third of its letters differ.
+// be meant: at most a third of its letters differ, or one contains the other as a word.
 func nearest(name string, names []string) (string, bool) {
+	low := strings.ReplaceAll(strings.ToLower(name), "-", "_")
 	best, at := "", 1<<30
 	for _, n := range names {
-		if d := editDistance(strings.ToLower(name), n); d < at {
+		if d := editDistance(low, strings.ReplaceAll(n, "-", "_")); d < at {
 			best, at = n, d
 		}
 	}
-	return best, at <= max(1, (len(best)+1)/3) || best != "" && len(name) >= 3 && strings.HasPrefix(best, strings.ToLower(name))
+	if at <= max(1, (len(best)+1)/3) {
+		return best, true
+	}
+	for _, n := range names {
+		if len(low) >= 3 && strings.HasPrefix(n, low) || len(n) > 2 && (strings.HasPrefix(low, n) || strings.HasSuffix(low, "_"+n)) {
+			return n, true
+		}
+	}
+	return "", false
 }
 
 // editDistance counts the letters to insert, drop or change (Levenshtein), with

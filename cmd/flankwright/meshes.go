@@ -60,6 +60,11 @@ func (j *job) addMesh(i int) error {
 	if err != nil {
 		return err
 	}
+	for _, old := range j.meshes {
+		if (old.plan.First == a && old.plan.Second == b) || (old.plan.First == b && old.plan.Second == a) {
+			return fault(s.at, "mesh: %s and %s mesh already", j.gears[a].name, j.gears[b].name)
+		}
+	}
 	m := &mesh{index: i, first: j.gears[a], second: j.gears[b], at: s.at}
 	m.plan.First, m.plan.Second = a, b
 	if m.plan.Mesh, err = involute.NewMesh(m.first.g, m.second.g); err != nil {
@@ -182,7 +187,7 @@ func (j *job) shortenTips() error {
 		}
 		tip, ok := tips[g]
 		if !ok {
-			return bad("tip", g.settings.vals["tip"], "= \"shortened\" needs a mesh: the mate's root decides")
+			return bad("tip", g.settings.vals["tip"], "\"shortened\" needs a mesh: the mate's root decides")
 		}
 		if full := g.g.TipDiameter(); tip >= full {
 			g.shortened = false // the full tip already keeps the clearance

@@ -199,7 +199,7 @@ func (j *job) spec(g *gear, hand float64) (involute.Spec, error) {
 		return s, err
 	}
 	if g.shortened = word == "shortened"; g.shortened && s.TipDiameter != 0 {
-		return s, bad("tip", g.settings.vals["tip"], "= \"shortened\" and tip_diameter say different things; give one of them")
+		return s, bad("tip", g.settings.vals["tip"], "\"shortened\" and tip_diameter say different things; give one of them")
 	}
 	return s, nil
 }

@@ -24,7 +24,7 @@ func (j *job) choosePins(g *gear) []inspect.PinCandidate {
 		return nil
 	}
 	series := [][]inspect.PinCandidate{metricSeries(), setCandidates("mm", "metric 0.0")}
-	if g.dp != 0 || j.display == inspect.Inch {
+	if g.dp != 0 || j.jobUnit == inspect.Inch {
 		series = append(pitchSeries(g, ideal), setCandidates("in", "inch"))
 	}
 	var chosen []inspect.PinCandidate

@@ -51,13 +51,30 @@ func newApp(stdin io.Reader, stdout, stderr io.Writer) *cli.App {
 
 // usageError keeps the flag parser's complaint and words it as one of ours.
 func usageError(c *cli.Context, err error, _ bool) error {
-	text := strings.TrimPrefix(err.Error(), "flag provided but not defined: ")
-	if text == err.Error() {
-		return wrong("%s", strings.Replace(text, "flag needs an argument: -", "needs a value: --", 1))
+	text := err.Error()
+	if name, ok := strings.CutPrefix(text, "flag provided but not defined: "); ok {
+		return unknownFlag(c, strings.TrimLeft(name, "-"))
 	}
-	name := strings.TrimLeft(text, "-")
+	if name, ok := strings.CutPrefix(text, "flag needs an argument: "); ok {
+		return wrong("--%s: needs a value", strings.TrimLeft(name, "-"))
+	}
+	var given, name string
+	if n, _ := fmt.Sscanf(text, "invalid value %q for flag -%s", &given, &name); n == 2 {
+		return wrong("--%s: %q is not a whole number", strings.TrimSuffix(name, ":"), given)
+	}
+	return wrong("%s", text)
+}
+
+func unknownFlag(c *cli.Context, name string) error {
 	if why, ok := otherDrive(name); ok {
 		return wrong("--%s: %s", name, why)
+	}
+	command := strings.TrimSpace(strings.TrimPrefix(c.Command.Name, "flankwright"))
+	if k, ok := findKey(strings.ReplaceAll(name, "-", "_")); ok && command != "" {
+		if k.where&atTop != 0 || k.name == "material" {
+			return wrong("--%s: is for the sheet; %s does not use it", name, command)
+		}
+		return wrong("--%s: no such flag; write %s into a job file, %s", name, k.name, scopeName(k.where))
 	}
 	var names []string
 	for _, f := range c.Command.VisibleFlags() {
@@ -66,7 +83,7 @@ func usageError(c *cli.Context, err error, _ bool) error {
 	if near, ok := nearest(name, names); ok {
 		return wrong("--%s: no such flag; did you mean --%s?", name, near)
 	}
-	return wrong("--%s: no such flag; flankwright %s --help lists them", name, c.Command.Name)
+	return wrong("--%s: no such flag; %s lists them", name, strings.Join(strings.Fields("flankwright "+command+" --help"), " "))
 }
 
 // plannedCommands are named in the house's plan and not there yet.
@@ -77,7 +94,7 @@ func plannedCommands() []string {
 // noCommand runs where no command was recognized.
 func noCommand(c *cli.Context) error {
 	name := c.Args().First()
-	if name == "" {
+	if name == "" || name == "help" {
 		return cli.ShowAppHelp(c)
 	}
 	if why, ok := otherDrive(name); ok {
@@ -119,20 +136,25 @@ func reorder(app *cli.App, args []string) []string {
 		a := rest[i]
 		switch {
 		case a == "--":
-			operands = append(operands, rest[i:]...)
+			operands = append(operands, rest[i+1:]...)
 			i = len(rest)
 		case !strings.HasPrefix(a, "-") || a == "-":
 			operands = append(operands, a)
 		default:
 			flags = append(flags, a)
-			if takes[strings.TrimLeft(a, "-")] && i+1 < len(rest) {
-				i++
-				flags = append(flags, rest[i])
+			if !takes[strings.TrimLeft(a, "-")] {
+				continue
 			}
+			if i+1 == len(rest) {
+				return append(append([]string{}, args[:at+1]...), flags...) // its value is missing: the parser says so
+			}
+			i++
+			flags = append(flags, rest[i])
 		}
 	}
 	out := append([]string{}, args[:at+1]...)
-	return append(append(out, flags...), operands...)
+	out = append(append(out, flags...), "--")
+	return append(out, operands...)
 }
 
 // valueFlags returns the names of a command's flags that take a value.

@@ -133,6 +133,9 @@ func (s settings) asLength(v value) (float64, error) {
 	default:
 		return 0, fmt.Errorf("needs a length, such as 12.5 or \"0.75in\", not %s", kindOf(v))
 	}
+	if math.IsNaN(mm) || math.IsInf(mm, 0) {
+		return 0, fmt.Errorf("needs a finite length")
+	}
 	return inspect.ParseLength(strconv.FormatFloat(mm, 'g', -1, 64), inspect.Millimeter)
 }
 
@@ -347,5 +350,5 @@ func unknownKey(at place, key, where string, names []string) error {
 	if spec, ok := findKey(key); ok {
 		return fault(at, "%s: belongs %s, not in %s", key, scopeName(spec.where), where)
 	}
-	return fault(at, "%s: no such key in %s; there are %s", key, where, strings.Join(names, ", "))
+	return fault(at, "%s: no such key in %s; there are %s", key, where, strings.Join(supported(names), ", "))
 }

@@ -92,6 +92,9 @@ func syntaxError(err error, file string) error {
 	if errors.As(err, &d) {
 		row, col := d.Position()
 		text := strings.TrimPrefix(d.Error(), "toml: ")
+		if strings.Contains(text, "strconv.") {
+			text = "a number is too large or too small to be one"
+		}
 		if strings.Contains(text, "','") {
 			text += "; decimals take a point: 2.5, not 2,5"
 		}

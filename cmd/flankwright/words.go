@@ -87,6 +87,10 @@ func keyOf(r involute.Reason) string {
 		return "tip_chamfer"
 	case involute.ThicknessNotPositive, involute.SpaceClosed:
 		return "thin"
+	case involute.Pointed:
+		return "shift"
+	case involute.NotFinite:
+		return "addendum"
 	}
 	return "teeth"
 }
@@ -95,7 +99,7 @@ func (j *job) gearReason(e *involute.Impossible) string {
 	v, l := j.length(e.Value), j.length(e.Limit)
 	switch e.Reason {
 	case involute.RackPointed:
-		return "the rack's tooth is pointed above its tip: at this pressure angle the dedendum must be less"
+		return fmt.Sprintf("a rack dedendum of %.4g × module makes the rack pointed; at this pressure angle it must be under %.4f × module", e.Value, e.Limit)
 	case involute.RackTipTooRound:
 		return fmt.Sprintf("a rack tip radius of %.4g × module does not fit; it must be from 0 to %.4f × module", e.Value, e.Limit)
 	case involute.RackTooShallow:
@@ -126,7 +130,7 @@ func (j *job) gearReason(e *involute.Impossible) string {
 	case involute.BadPressureAngle:
 		return fmt.Sprintf("a pressure angle of %s is past the limit of %s", degrees(e.Value), degrees(e.Limit))
 	}
-	return "the numbers make no gear"
+	return "a number is out of any sense; the module must be from 0.01 to 500 mm, coefficients of the order of 1"
 }
 
 // impossibleMesh words why two gears cannot run together.
@@ -198,8 +202,8 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 		}
 		return text + "or raise shift"
 	case inspect.Conflict:
-		return text + fmt.Sprintf("cannot be had together with the other mesh of %s: it would have to be %s to %s thinner than nominal. Change one of the two backlashes, or give %s a thin of its own",
-			j.gears[p.Gear].name, j.length(p.Thin.Min), j.length(p.Thin.Max), j.gears[p.Gear].name)
+		name := j.gears[p.Gear].name
+		return text + fmt.Sprintf("cannot be had together with what the other meshes of %s and its mate ask for. Change one of the backlashes or thin_share, or give %s a thin of its own", name, name)
 	}
 	text += "leaves nothing for the teeth: "
 	if m.first.thin != nil || m.second.thin != nil {
