@@ -56,7 +56,7 @@ func (k rollingRack) cut(radius, tau float64, w func(float64) float64) float64 {
 // removed returns how far the rolling tool cuts on the circle of that radius:
 // the largest angle over all positions, by the tip alone and by the flank alone.
 func (k rollingRack) removed(radius float64) (byTip, byFlank float64) {
-	byTip, byFlank = math.Inf(-1), math.Inf(-1)
+	byFlank = math.Inf(-1)
 	end := math.Acos(min(1, k.bottom/radius))
 	turn := 0.0
 	cut := func(tau float64) float64 { return k.cut(radius, tau, k.width) }

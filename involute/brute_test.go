@@ -83,16 +83,6 @@ func bisect(yes func(float64) bool, a, b float64) float64 {
 	return a + (b-a)/2
 }
 
-// distance returns the least distance of p to a curve.
-func distance(c Curve, p Vec, n int) float64 {
-	t0, t1 := c.Domain()
-	_, d := lowest(func(t float64) float64 {
-		q, _ := c.At(t)
-		return q.Sub(p).Norm()
-	}, t0, t1, n)
-	return d
-}
-
 // pieces returns the outline's curves of the roles asked for.
 func (o Outline) pieces(roles ...Role) []Curve {
 	var cs []Curve
