@@ -259,11 +259,6 @@ func (t *targets) anyPinUsable() bool {
 			if p.Usable {
 				return true
 			}
-			for _, a := range p.Also {
-				if a.Usable {
-					return true
-				}
-			}
 		}
 	}
 	return false
