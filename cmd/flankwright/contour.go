@@ -74,7 +74,7 @@ func runContour(c *cli.Context) error {
 	if err := writeDrawn(c, out, folder, files); err != nil {
 		return err
 	}
-	r := &contours{job: j, gears: drawn, Warnings: append([]warning{}, j.warnings...)}
+	r := &contours{job: j, gears: drawn, Warnings: j.about(gears)}
 	for i := range drawn {
 		drawn[i].File = out
 		if folder {

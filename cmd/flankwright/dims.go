@@ -105,7 +105,7 @@ type rackDims struct {
 }
 
 func newDims(j *job, gears []*gear, dial float64) *dims {
-	d := &dims{job: j, list: gears, Warnings: append([]warning{}, j.warnings...), Meshes: []meshDims{}}
+	d := &dims{job: j, list: gears, Warnings: j.about(gears), Meshes: []meshDims{}}
 	for _, g := range gears {
 		one := newGearDims(g)
 		d.gears = append(d.gears, one)

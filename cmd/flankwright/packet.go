@@ -47,12 +47,12 @@ func runPacket(c *cli.Context) error {
 		drawn[i].File = names[i]
 		result.Gears.add(drawn[i].name, drawn[i])
 	}
-	return emitBeside(c, map[string]any{"files": names, "gears": result.Gears, "warnings": append([]warning{}, j.warnings...)}, func() []byte {
+	return emitBeside(c, map[string]any{"files": names, "gears": result.Gears, "warnings": j.about(gears)}, func() []byte {
 		p := newPage(c.App.Writer)
 		for _, n := range names[len(drawn):] {
 			p.line("%s", n)
 		}
-		result.Warnings = j.warnings
+		result.Warnings = j.about(gears)
 		p.b.Write(result.text(newPage(c.App.Writer), j.digits(c)))
 		return []byte(p.b.String())
 	})

@@ -80,7 +80,7 @@ func runSheet(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	r := sheetResult{Files: names, Pages: len(pages), Warnings: append([]warning{}, j.warnings...)}
+	r := sheetResult{Files: names, Pages: len(pages), Warnings: j.about(gears)}
 	if c.Bool("explain") {
 		r.Explain = j.explainTargets(newTargets(j, gears, a))
 	}

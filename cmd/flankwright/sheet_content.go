@@ -43,7 +43,7 @@ func (j *job) sheet(g *gear, a ask, head sheetHead) (export.Sheet, error) {
 		Shape: shape, Pins: j.pinView(g, t, tooth), Span: j.spanView(g, t, tooth),
 		Readings: j.sheetReadings(t), Method: sheetMethod(g, t), Cautions: sheetCautions(),
 	}
-	for _, w := range j.forGear(g.name) {
+	for _, w := range j.about([]*gear{g}) {
 		s.Warnings = append(s.Warnings, w.Code+": "+w.Text)
 	}
 	return s, nil

@@ -113,7 +113,7 @@ type chordTarget struct {
 }
 
 func newTargets(j *job, gears []*gear, a ask) *targets {
-	t := &targets{job: j, list: gears, Warnings: append([]warning{}, j.warnings...)}
+	t := &targets{job: j, list: gears, Warnings: j.about(gears)}
 	for _, g := range gears {
 		one := j.gearTargets(g, a)
 		t.gears = append(t.gears, one)
@@ -265,4 +265,4 @@ func (t *targets) anyPinUsable() bool {
 }
 
 // warningsBelow returns how many warnings a gear has.
-func (t *targets) warningsBelow(name string) int { return len(t.job.forGear(name)) }
+func (t *targets) warningsBelow(g *gear) int { return len(t.job.about([]*gear{g})) }

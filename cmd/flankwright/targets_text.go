@@ -19,7 +19,7 @@ func (t *targets) text(p *page, digits int) []byte {
 		p.blank()
 		gear := t.list[i]
 		head := fmt.Sprintf("%s, %d teeth", gear.name, gear.g.Teeth())
-		if n := t.warningsBelow(gear.name); n > 0 {
+		if n := t.warningsBelow(gear); n > 0 {
 			head += fmt.Sprintf("  (%s below)", plural(n, "warning"))
 		}
 		p.head(head)

@@ -15,10 +15,16 @@ type warning struct {
 	Code string `json:"code"`
 	Gear string `json:"gear,omitempty"`
 	Text string `json:"text"`
+	mate string // of a warning about a mesh: the other gear
 }
 
 func (j *job) addWarning(code, gear, format string, args ...any) {
-	j.warnings = append(j.warnings, warning{code, gear, fmt.Sprintf(format, args...)})
+	j.warnings = append(j.warnings, warning{Code: code, Gear: gear, Text: fmt.Sprintf(format, args...)})
+}
+
+// addMeshWarning adds a warning about two gears; it stands under the first.
+func (j *job) addMeshWarning(code string, m *mesh, format string, args ...any) {
+	j.warnings = append(j.warnings, warning{code, m.first.name, fmt.Sprintf(format, args...), m.second.name})
 }
 
 func (j *job) warnRackRadius(g *gear, asked, largest float64) {
@@ -191,14 +197,14 @@ func (j *job) warnContact(m *mesh, pair string) {
 	total := c.TransverseRatio + overlap
 	switch {
 	case m.first.g.Helical() && m.face() == 0 && total < lowContact:
-		j.addWarning("low-contact", m.first.name, "%s: the transverse contact ratio is %.3f; whether the helix makes up for it needs face_width", pair, total)
+		j.addMeshWarning("low-contact", m, "%s: the transverse contact ratio is %.3f; whether the helix makes up for it needs face_width", pair, total)
 	case total < 1:
-		j.addWarning("no-drive", m.first.name, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted; the pair will not run smoothly", pair, total)
+		j.addMeshWarning("no-drive", m, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted; the pair will not run smoothly", pair, total)
 	case total < lowContact:
-		j.addWarning("low-contact", m.first.name, "%s: contact ratio %.3f is low; under %.1f every error is heard", pair, total, lowContact)
+		j.addMeshWarning("low-contact", m, "%s: contact ratio %.3f is low; under %.1f every error is heard", pair, total, lowContact)
 	}
 	if c.LimitedByRoots() && c.RatioByTips-c.TransverseRatio > 0.0005 {
-		j.addWarning("short-contact", m.first.name, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f", pair, c.RatioByTips, c.TransverseRatio)
+		j.addMeshWarning("short-contact", m, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f", pair, c.RatioByTips, c.TransverseRatio)
 	}
 }
 
@@ -215,7 +221,7 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 		return
 	}
 	if least.Circumferential < -barelyNegative {
-		j.addWarning("no-backlash", m.first.name, "%s bind: at the tightest center with the thickest teeth the backlash is %s. Thin the teeth, open the center toward %s, or bring the shifts together to %+.4f, from %+.4f",
+		j.addMeshWarning("no-backlash", m, "%s bind: at the tightest center with the thickest teeth the backlash is %s. Thin the teeth, open the center toward %s, or bring the shifts together to %+.4f, from %+.4f",
 			pair, j.length(least.Circumferential), j.length(m.tight()), m.tightShift(), m.first.g.Spec().Shift+m.second.g.Spec().Shift)
 	}
 	want := m.plan.Backlash
@@ -224,7 +230,7 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 	}
 	slack := 1e-6 // mm, rounding of limits given in decimals
 	if least.Circumferential < want.Min-slack || most.Circumferential > want.Max+slack {
-		j.addWarning("backlash-out", m.first.name, "%s: the thicknesses given make %s to %s of backlash, not the %s to %s asked for; the thicknesses rule", pair,
+		j.addMeshWarning("backlash-out", m, "%s: the thicknesses given make %s to %s of backlash, not the %s to %s asked for; the thicknesses rule", pair,
 			j.length(least.Circumferential), j.length(most.Circumferential), j.length(want.Min), j.length(want.Max))
 	}
 }
@@ -241,12 +247,15 @@ func (m *mesh) tightShift() float64 {
 	return (involute.Inv(alpha) - involute.Inv(g.TransversePressureAngle())) * float64(g.Teeth()+m.second.g.Teeth()) / (2 * math.Tan(g.PressureAngle()))
 }
 
-// forGear returns the warnings of one gear.
-func (j *job) forGear(name string) []warning {
-	var ws []warning
+// about returns the warnings that concern any of some gears, never nil.
+func (j *job) about(gears []*gear) []warning {
+	ws := []warning{}
 	for _, w := range j.warnings {
-		if w.Gear == name {
-			ws = append(ws, w)
+		for _, g := range gears {
+			if w.Gear == g.name || w.mate == g.name {
+				ws = append(ws, w)
+				break
+			}
 		}
 	}
 	return ws
