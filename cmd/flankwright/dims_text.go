@@ -221,10 +221,8 @@ func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) g
 	g.section(m.Gears[0] + " and " + m.Gears[1])
 	center := u.FormatLimits(m.mesh.plan.Center, digits)
 	g.row("Center distance", unit, center.Low, center.High)
-	lengths := func(label string, s span) {
-		out := u.FormatLimits(inspect.Limits(s), digits)
-		g.row(label, unit, out.Low, out.High)
-	}
+	// What follows is what comes out, not what to hold: rounded to the nearest.
+	lengths := func(label string, s span) { g.row(label, unit, f(s.Min), f(s.Max)) }
 	minutes := func(label string, s span) {
 		g.row(label, "arcmin", fmt.Sprintf("%.2f", s.Min*60), fmt.Sprintf("%.2f", s.Max*60))
 	}

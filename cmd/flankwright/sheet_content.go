@@ -72,6 +72,14 @@ func (j *job) limitsField(label string, l inspect.Limits) export.Field {
 	return export.Field{Label: label, Value: words(j.display), Other: words(j.display.Other())}
 }
 
+// rangeField words a range that comes out, in both units, each rounded to the nearest.
+func (j *job) rangeField(label string, least, most float64) export.Field {
+	words := func(u inspect.Unit) string {
+		return u.Format(least, u.Decimals()) + " … " + u.Format(most, u.Decimals()) + " " + u.String()
+	}
+	return export.Field{Label: label, Value: words(j.display), Other: words(j.display.Other())}
+}
+
 func trim(format string, x float64) string {
 	return strings.TrimSuffix(strings.TrimRight(fmt.Sprintf(format, x), "0"), ".")
 }
@@ -267,7 +275,7 @@ func (j *job) sheetLimits(g *gear) []export.Field {
 		fields = append(fields, center)
 		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
 		if err == nil {
-			fields = append(fields, j.limitsField("Backlash, "+mate, inspect.Limits{Min: least.Circumferential, Max: most.Circumferential}))
+			fields = append(fields, j.rangeField("Backlash, "+mate, least.Circumferential, most.Circumferential))
 		}
 	}
 	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
