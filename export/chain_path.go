@@ -72,7 +72,9 @@ func ClosedPath(pitch []involute.Curve, count int, tolerance float64) (Path, Fit
 	}
 	switch plain(pitch[0]).(type) {
 	case involute.Line, involute.Arc:
-		path = startInMiddle(path, len(chains[0].Pieces))
+		if roughLength(pitch[0]) >= negligible { // else it was left out, and its end is where the path starts
+			path = startInMiddle(path, len(chains[0].Pieces))
+		}
 	}
 	report.countPieces(path)
 	return path, report, nil

@@ -93,7 +93,7 @@ func (s *dxfScanner) next() (dxfPair, error) {
 	p := dxfPair{line: s.line}
 	p.code, err = strconv.Atoi(strings.TrimSpace(text))
 	if err != nil || p.code < 0 || p.code > 1071 {
-		if s.line == 1 && strings.HasPrefix(text, "AutoCAD Binary DXF") {
+		if s.line == 1 && strings.HasPrefix(text, "AutoCAD Binary DXF") { // the format's own magic text
 			return p, errors.New("DXF: this is a binary DXF file; save it as ASCII DXF")
 		}
 		return p, p.errorf("%.40q is not a group code (0 to 1071)", text)

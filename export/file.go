@@ -1,6 +1,7 @@
 package export
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"io/fs"
@@ -39,7 +40,7 @@ func WriteFileAtomic(path string, data []byte, force bool) error {
 	if dir == "" {
 		dir = "."
 	}
-	w := folderWriter{dir: dir, force: force, rename: os.Rename}
+	w := folderWriter{dir: dir, force: force, rename: os.Rename, link: os.Link}
 	return w.write([]File{{name, data}})
 }
 
@@ -51,7 +52,7 @@ func WriteFolder(dir string, files []File, force bool) error {
 	if err := os.MkdirAll(dir, 0o755); err != nil {
 		return err
 	}
-	w := folderWriter{dir: dir, force: force, rename: os.Rename}
+	w := folderWriter{dir: dir, force: force, rename: os.Rename, link: os.Link}
 	err := w.write(files)
 	if err != nil {
 		// Take away the folders made here, from the inside out; Remove spares
@@ -81,6 +82,7 @@ type folderWriter struct {
 	dir    string
 	force  bool
 	rename func(from, to string) error // os.Rename; another one in tests
+	link   func(from, to string) error // os.Link; another one in tests
 	undo   []func()                    // what to do on failure, last first
 	done   []func()                    // what to do after success
 }
@@ -147,9 +149,10 @@ func (w *folderWriter) check(files []File) error {
 	return nil
 }
 
-// stage writes a file under a temporary name beside its place.
+// stage writes a file under a temporary name beside its place, reads it back
+// from the disk, and compares.
 func (w *folderWriter) stage(f File) (name string, err error) {
-	t, err := os.CreateTemp(w.dir, ".flankwright-*.tmp")
+	t, err := w.temporary()
 	if err != nil {
 		return "", err
 	}
@@ -161,24 +164,42 @@ func (w *folderWriter) stage(f File) (name string, err error) {
 	if e := t.Close(); err == nil {
 		err = e
 	}
-	if err == nil {
-		err = os.Chmod(t.Name(), 0o644) // CreateTemp makes it private
+	if err != nil {
+		return "", err
+	}
+	back, err := os.ReadFile(t.Name())
+	if err == nil && !bytes.Equal(back, f.Data) {
+		err = fmt.Errorf("%s: the disk gives back other bytes than were written", f.Name)
 	}
 	return t.Name(), err
 }
 
-// place renames a staged file to its name. What stood there comes back on failure.
+// temporary opens a new file of a name of our own, with the permissions that
+// any new file gets here.
+func (w *folderWriter) temporary() (*os.File, error) {
+	for n := 0; ; n++ {
+		name := filepath.Join(w.dir, fmt.Sprintf(".flankwright-%d-%d.tmp", os.Getpid(), n))
+		t, err := os.OpenFile(name, os.O_RDWR|os.O_CREATE|os.O_EXCL, 0o666)
+		if !errors.Is(err, fs.ErrExist) || n > 10000 {
+			return t, err
+		}
+	}
+}
+
+// place gives a staged file its name. Without force it never replaces a file,
+// even one that somebody wrote since check looked: a hard link fails where the
+// name is taken. With force, what stood there comes back on failure.
 func (w *folderWriter) place(staged, path string, last bool) error {
+	if !w.force {
+		return w.placeNew(staged, path)
+	}
 	undo := func() { os.Remove(path) }
-	old, err := os.ReadFile(path)
-	switch {
-	case errors.Is(err, fs.ErrNotExist):
-	case err != nil:
-		return err
-	case !w.force: // somebody wrote it since check looked
-		return &ExistError{Paths: []string{path}}
-	case !last: // after the last rename nothing can fail any more
-		aside, err := w.stage(File{Data: old})
+	if _, err := os.Lstat(path); err == nil && !last { // after the last rename nothing can fail any more
+		old, err := os.ReadFile(path)
+		if err != nil {
+			return err
+		}
+		aside, err := w.stage(File{Name: filepath.Base(path), Data: old})
 		if err != nil {
 			return err
 		}
@@ -189,5 +210,26 @@ func (w *folderWriter) place(staged, path string, last bool) error {
 		return err
 	}
 	w.undo = append(w.undo, undo)
+	return nil
+}
+
+// placeNew puts a staged file where there is none. Where the disk knows no hard
+// links it is renamed, after one more look.
+func (w *folderWriter) placeNew(staged, path string) error {
+	err := w.link(staged, path)
+	switch {
+	case errors.Is(err, fs.ErrExist):
+		return &ExistError{Paths: []string{path}}
+	case err == nil:
+		w.done = append(w.done, func() { os.Remove(staged) })
+	default:
+		if _, err := os.Lstat(path); err == nil {
+			return &ExistError{Paths: []string{path}}
+		}
+		if err := w.rename(staged, path); err != nil {
+			return err
+		}
+	}
+	w.undo = append(w.undo, func() { os.Remove(path) })
 	return nil
 }

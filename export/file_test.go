@@ -127,16 +127,39 @@ func TestWriteFolderRollsBack(t *testing.T) {
 	}
 }
 
-// A file that appears while others are staged is not overwritten.
+// A file that appears while others are staged is neither overwritten nor taken
+// away, whether the disk knows hard links or not.
 func TestWriteFolderLateFile(t *testing.T) {
-	dir := t.TempDir()
-	w := folderWriter{dir: dir, rename: func(from, to string) error {
-		if err := os.WriteFile(filepath.Join(dir, "b"), []byte("late"), 0o644); err != nil {
-			return err
+	for _, links := range []bool{true, false} {
+		dir := t.TempDir()
+		late := func() error { return os.WriteFile(filepath.Join(dir, "b"), []byte("late"), 0o644) }
+		w := folderWriter{dir: dir,
+			rename: func(from, to string) error {
+				if err := late(); err != nil {
+					return err
+				}
+				return os.Rename(from, to)
+			},
+			link: func(from, to string) error {
+				if !links {
+					return errors.ErrUnsupported
+				}
+				if err := late(); err != nil {
+					return err
+				}
+				return os.Link(from, to)
+			}}
+		if err := w.write([]File{{"a", nil}, {"b", nil}}); !errors.Is(err, fs.ErrExist) || listing(t, dir) != "b=late" {
+			t.Errorf("links %v: %v; %s", links, err, listing(t, dir))
 		}
-		return os.Rename(from, to)
-	}}
-	if err := w.write([]File{{"a", nil}, {"b", nil}}); !errors.Is(err, fs.ErrExist) || listing(t, dir) != "b=late" {
+	}
+}
+
+// Without force a new folder is written as well where there are no hard links.
+func TestWriteFolderWithoutLinks(t *testing.T) {
+	dir := t.TempDir()
+	w := folderWriter{dir: dir, rename: os.Rename, link: func(string, string) error { return errors.ErrUnsupported }}
+	if err := w.write([]File{{"a", []byte("1")}, {"b", []byte("2")}}); err != nil || listing(t, dir) != "a=1 b=2" {
 		t.Errorf("%v; %s", err, listing(t, dir))
 	}
 }

@@ -1,6 +1,7 @@
 package export
 
 import (
+	"cmp"
 	"errors"
 	"fmt"
 	"math"
@@ -42,6 +43,7 @@ func NewSection(p Path, lead float64) (Section, error) {
 			s.least, s.most = min(s.least, q.Norm()), max(s.most, q.Norm())
 		}
 	}
+	slices.SortStableFunc(s.pieces, func(a, b placed) int { return cmp.Compare(a.angle, b.angle) })
 	return s, s.findSpaces()
 }
 
@@ -161,21 +163,20 @@ func (s Section) rest(space, pin float64) (involute.Vec, error) {
 // sides returns the pieces of the two teeth beside a space, by side.
 func (s Section) sides(space float64) (left, right []placed) {
 	reach := 2 * math.Pi / float64(len(s.spaces))
-	for _, p := range s.pieces {
-		switch d := math.Remainder(p.angle-space, 2*math.Pi); {
-		case d >= 0 && d <= reach:
-			left = append(left, p)
-		case d < 0 && d >= -reach:
-			right = append(right, p)
-		}
-	}
-	return left, right
+	return s.between(space, space+reach), s.between(space-reach, space)
 }
 
-// sweptShare is the least share of a piece's distance in the plane that the
-// surface swept by it can come near: about the cosine of the helix angle, which
-// stays under 60° wherever teeth can be measured over balls.
-const sweptShare = 0.5
+// between returns the pieces whose middles lie between two polar angles, from < to.
+func (s Section) between(from, to float64) []placed {
+	var out []placed
+	for turn := -2 * math.Pi; turn <= 2*math.Pi; turn += 2 * math.Pi {
+		i, _ := slices.BinarySearchFunc(s.pieces, from+turn, func(p placed, a float64) int { return cmp.Compare(p.angle, a) })
+		for ; i < len(s.pieces) && s.pieces[i].angle < to+turn; i++ {
+			out = append(out, s.pieces[i])
+		}
+	}
+	return out
+}
 
 // distance returns how far a point is from the nearest of the pieces, or, on a
 // helical gear, from the nearest of the surfaces that they sweep along the helix.
@@ -189,9 +190,12 @@ func (s Section) distance(pieces []placed, c involute.Vec) float64 {
 	if s.twist == 0 || len(pieces) == 0 {
 		return least
 	}
+	// A surface swept along the helix comes nearer than the piece itself by the
+	// cosine of the helix angle at most; at the outermost radius that is least.
+	share := 1 / math.Hypot(1, s.twist*s.most)
 	least = s.sweptDistance(pieces[nearest].Curve, c)
 	for i, p := range pieces {
-		if i != nearest && sweptShare*pieceDistance(p.Curve, c) < least {
+		if i != nearest && share*pieceDistance(p.Curve, c) < least {
 			least = min(least, s.sweptDistance(p.Curve, c))
 		}
 	}

@@ -24,6 +24,13 @@ func isoA() involute.Rack {
 	return involute.Rack{PressureAngle: 20 * involute.Degree, Addendum: 1, Dedendum: 1.25, TipRadius: 0.38}
 }
 
+// fullRadius is a rack whose tip is all round and leaves no root land.
+func fullRadius() involute.Rack {
+	r := isoA()
+	r.TipRadius = r.LargestTipRadius()
+	return r
+}
+
 // What is written is measured: contours of several gears, through every format
 // and back, must give the closed formula's reading over pins within what the
 // tolerance allows: each flank off by ε moves a pin's center by ε/sin α_K.
@@ -40,6 +47,8 @@ func TestContourMeasuresItself(t *testing.T) {
 		{"inch", involute.Spec{Teeth: 18, Module: 25.4 / 16, Rack: isoA(), Shift: 0.25}, 0.04, 3.048, 12.7},
 		{"chamfer", involute.Spec{Teeth: 45, Module: 1, Rack: isoA(), TipChamfer: 0.1}, 0.03, 1.75, 8},
 		{"helical", involute.Spec{Teeth: 17, Module: 1.5, Helix: 15 * involute.Degree, Rack: isoA(), Shift: 0.3}, 0.03, 2.75, 10},
+		{"full radius", involute.Spec{Teeth: 30, Module: 1, Rack: fullRadius()}, 0.05, 1.75, 8},
+		{"helical very steep", involute.Spec{Teeth: 12, Module: 1, Helix: 65 * involute.Degree, Rack: isoA()}, 0.02, 1.75, 0},
 		{"helical steep", involute.Spec{Teeth: 20, Module: 2, Helix: -30 * involute.Degree, Rack: isoA()}, 0.05, 3.5, 10},
 	} {
 		const tolerance = 0.0025
@@ -81,6 +90,9 @@ func TestContourMeasuresItself(t *testing.T) {
 			if s.Teeth() != tt.Teeth() {
 				t.Errorf("%s: %d teeth counted, want %d", c.name, s.Teeth(), tt.Teeth())
 			}
+			if d := s.Deviation(tt); d > 1.05*report.MaxDeviation+1e-9 || d < report.MaxDeviation/2 {
+				t.Errorf("%s: %.6f off the exact shape as read back, %.6f as fitted", c.name, d, report.MaxDeviation)
+			}
 			least, most, err := s.OverPins(c.pin)
 			if err != nil {
 				t.Fatal(c.name, err)
@@ -117,5 +129,50 @@ func TestSectionSeesAWrongFlank(t *testing.T) {
 	}
 	if most-least < 0.03 {
 		t.Errorf("a flank moved by 0.05 mm spreads the readings by %.4f mm only", most-least)
+	}
+}
+
+// Faults that pins do not touch show in the shape: a root too shallow, a tip too
+// low, one vertex off, a contour turned or too large.
+func TestDeviationSeesFaults(t *testing.T) {
+	tt := tooth(t, involute.Spec{Teeth: 24, Module: 2, Rack: isoA()}, 0)
+	rf, ra := tt.RootDiameter()/2, tt.TipDiameter()/2
+	for name, change := range map[string]func(i int, p involute.Vec) involute.Vec{
+		"shallow root": func(_ int, p involute.Vec) involute.Vec {
+			if p.Norm() < rf+1e-6 {
+				return p.Scale((rf + 0.3) / p.Norm())
+			}
+			return p
+		},
+		"low tip": func(_ int, p involute.Vec) involute.Vec {
+			if p.Norm() > ra-1e-6 {
+				return p.Scale((ra - 0.5) / p.Norm())
+			}
+			return p
+		},
+		"one vertex": func(i int, p involute.Vec) involute.Vec {
+			if i == 100 {
+				return p.Add(involute.Vec{X: 0.1, Y: 0.1})
+			}
+			return p
+		},
+		"turned": func(_ int, p involute.Vec) involute.Vec { return p.Rotate(1e-3) },
+		"scaled": func(_ int, p involute.Vec) involute.Vec { return p.Scale(1.0005) },
+	} {
+		o, report, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.0025})
+		if err != nil {
+			t.Fatal(err)
+		}
+		path := o.Contours[0].Path
+		for i, v := range path.Vertices {
+			path.Vertices[i].P = change(i, v.P)
+		}
+		s, err := NewSection(path, 0)
+		if err != nil {
+			t.Fatal(name, err)
+		}
+		if d := s.Deviation(tt); d < 3*report.MaxDeviation {
+			t.Errorf("%s: deviation %.4f only, the fit's own is %.4f", name, d, report.MaxDeviation)
+		}
 	}
 }

@@ -91,3 +91,16 @@ func FuzzParseLength(f *testing.F) {
 		}
 	})
 }
+
+// A length exactly between two printable ones is printed alike however its last
+// bit fell: 32.54375 mm is 1.28125 in.
+func TestFormatHalves(t *testing.T) {
+	for _, mm := range []float64{32.54375, 32.543749999999996, 32.543750000000003} {
+		if got := Inch.Format(mm, 4); got != "1.2813" {
+			t.Errorf("%.17g mm printed as %s in", mm, got)
+		}
+		if got := Inch.Format(-mm, 4); got != "-1.2813" {
+			t.Errorf("%.17g mm printed as %s in", -mm, got)
+		}
+	}
+}

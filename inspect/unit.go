@@ -48,7 +48,14 @@ func (u Unit) Other() Unit { return 1 - u }
 // Format returns a length in mm in the unit u, rounded to the nearest at the
 // given number of decimals, without the unit's name and never as "-0".
 func (u Unit) Format(mm float64, decimals int) string {
-	return fixed(mm/u.MM(), decimals)
+	return fixed(nudged(mm/u.MM(), decimals), decimals)
+}
+
+// nudged moves a number away from zero by far less than its last printed digit
+// shows, so that one that is exactly between two printable ones, but for
+// rounding, is printed alike on every machine: 1.28125 in to four places.
+func nudged(x float64, decimals int) float64 {
+	return x + math.Copysign(rounding*math.Pow10(-decimals), x)
 }
 
 // fixed prints x with decimals places, and a zero without a sign.

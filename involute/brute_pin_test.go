@@ -245,7 +245,7 @@ func TestFreePinsByTurningLines(t *testing.T) {
 			n := cross(d1, d2)
 			return math.Abs(dot(vec3{p2[0] - p1[0], p2[1] - p1[1], p2[2] - p1[2]}, n)) / math.Sqrt(dot(n, n))
 		}
-		turn, least := lowest(apart, -8*math.Pi/float64(c.z), 8*math.Pi/float64(c.z), 200)
+		turn, least := lowest(apart, -6*math.Pi/float64(c.z), 6*math.Pi/float64(c.z), 200) // not as far as where the lines are parallel
 		got := reading(t, tooth, FreePins, c.pin)
 		near(t, name+": free pins", got.Value, least+c.pin, 1e-9)
 		near(t, name+": offset", math.Abs(got.AxialOffset), math.Abs(k*turn), 2e-5)

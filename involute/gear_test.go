@@ -95,3 +95,30 @@ func TestUndercutFormDiameters(t *testing.T) {
 		}
 	}
 }
+
+// The outline lies on its own profile, and a point moved off it square by 0.01 of
+// the module is that far off.
+func TestProfileOffset(t *testing.T) {
+	for _, s := range outlineSpecs() {
+		tooth := mustTooth(t, s)
+		o := tooth.Outline()
+		for turn := range 3 {
+			for _, p := range o.Pieces {
+				t0, t1 := p.Domain()
+				for k := range 21 {
+					u := t0 + (t1-t0)*(float64(k)+0.5)/21
+					q, dq := p.At(u)
+					q = q.Rotate(float64(turn) * o.Pitch())
+					if d := tooth.ProfileOffset(q); d > 1e-9*s.Module {
+						t.Errorf("%+v: piece %v at %g is %g off its own profile", s, p.Role, u, d)
+					}
+					if p.Role != ToothFlank {
+						continue
+					}
+					n := dq.Left().Scale(0.001 * s.Module / dq.Norm()).Rotate(float64(turn) * o.Pitch())
+					near(t, "offset", tooth.ProfileOffset(q.Sub(n)), 0.001*s.Module, 2e-5*s.Module)
+				}
+			}
+		}
+	}
+}

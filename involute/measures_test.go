@@ -34,7 +34,7 @@ func isoAt(alphaDeg float64) Rack {
 }
 
 // Over two wires, 1 diametral pitch, 1.728 in wires, external spur gears
-// (Machinery's Handbook, Van Keuren tables; recalled). For odd teeth the
+// (over-wire tables of Machinery's Handbook; recalled). For odd teeth the
 // wires lie in the nearest opposite spaces.
 func TestOverWireTables(t *testing.T) {
 	for _, c := range []struct {

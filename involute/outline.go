@@ -39,6 +39,10 @@ func (o Outline) Pitch() float64 { return 2 * math.Pi / float64(o.Teeth) }
 // RollAngle returns t = tan α_y of the involute at diameter dy.
 func (g *Gear) RollAngle(dy float64) float64 { return tanOfCos(g.db, dy) }
 
+// noLand is the angle up to which a root land is rounding: a full-radius tool
+// leaves none, but its tip's half width comes out as a few 1e-17 of the radius.
+const noLand = 1e-12
+
 // Outline returns one pitch of the tooth's transverse section. Only external
 // gears have one yet; a ring's is empty.
 func (t Tooth) Outline() Outline {
@@ -55,7 +59,7 @@ func (t Tooth) Outline() Outline {
 	add := func(c Curve, r Role) { ps = append(ps, Piece{c, r}) }
 	// The fillet starts where the tool's tip land ends: e/(r cos β) from the space's center.
 	land := up.E / up.CosBeta / up.R
-	if land > 0 {
+	if land > noLand {
 		add(Arc{Radius: t.RootDiameter() / 2, Start: -half - land, Sweep: 2 * land}, RootLand)
 	}
 	add(up, RootFillet)

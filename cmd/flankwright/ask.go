@@ -41,19 +41,9 @@ func readAsk(c *cli.Context, j *job, gears []*gear) (ask, error) {
 		}
 		a.teeth = append(a.teeth, k)
 	}
-	for _, f := range []struct {
-		name string
-		to   *float64
-	}{{"arbor", &a.arbor}} {
-		v, ok := flagValue(c, f.name)
-		if !ok {
-			continue
-		}
-		d, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
-		if err != nil {
-			return a, err
-		}
-		*f.to = d
+	var err error
+	if a.arbor, _, err = flagLength(c, j, "arbor"); err != nil {
+		return a, err
 	}
 	return a, j.checkArbor(a, gears)
 }
@@ -70,12 +60,8 @@ func (j *job) checkArbor(a ask, gears []*gear) error {
 
 // readBlank takes a measured outside diameter, which is about one gear.
 func (j *job) readBlank(c *cli.Context, gears []*gear) error {
-	v, ok := flagValue(c, "measured-tip")
-	if !ok {
-		return nil
-	}
-	tip, _, err := settings{vals: map[string]value{"d": v}, flagUnit: j.display}.positive("d")
-	if err != nil {
+	tip, ok, err := flagLength(c, j, "measured-tip")
+	if err != nil || !ok {
 		return err
 	}
 	if len(gears) > 1 {

@@ -131,7 +131,7 @@ func impossibleJobs() []badJob {
 		// d_f = 40 − 5 = 35
 		{oneGear + "bore = 35.5\n", "5:8", []string{"bore", "35.500 mm", "root circle, 35.000 mm"}},
 		{oneGear + "bore = \"35 H7\"\n", "5:8", []string{"bore", "35.000 mm"}},
-		{oneGear + "bore = 10\nkeyway = { width = 3, depth = 30 }\n", "6:10", []string{"35.000 mm", "17.500 mm"}},
+		{oneGear + "bore = 10\nkeyway = { width = 3, depth = 30 }\n", "6:10", []string{"35.032 mm", "17.500 mm"}},
 		// s_n = π; 4 mm thinner is −0.858
 		{oneGear + "thin = \"0.1..4\"\n", "5:8", []string{"-0.858 mm"}},
 		{onePair + "center = 50\nbacklash = \"6..7\"\n", "11:12", []string{"tooth thickness", "-0."}},

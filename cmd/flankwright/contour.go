@@ -1,18 +1,12 @@
 package main
 
 import (
-	"bytes"
-	"errors"
-	"io/fs"
-	"math"
-	"os"
 	"path/filepath"
 	"strings"
 
 	"github.com/urfave/cli/v2"
 
 	"flankwright/export"
-	"flankwright/inspect"
 	"flankwright/involute"
 )
 
@@ -71,7 +65,12 @@ func runContour(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	if err := writeDrawn(c, out, folder, files); err != nil {
+	if folder {
+		err = fileError(out, export.WriteFolder(out, files, c.Bool("force")))
+	} else {
+		err = writeFile(c, out, files[0].Data)
+	}
+	if err != nil {
 		return err
 	}
 	r := &contours{job: j, gears: drawn, Warnings: j.about(gears)}
@@ -86,15 +85,6 @@ func runContour(c *cli.Context) error {
 		r.Explain = explainContours(drawn)
 	}
 	return emitBeside(c, r, func() []byte { return r.text(newPage(c.App.Writer), j.digits(c)) })
-}
-
-// isFolder reports whether an output names a folder: it ends in a slash, or is one.
-func isFolder(path string) bool {
-	if strings.HasSuffix(path, "/") || strings.HasSuffix(path, string(filepath.Separator)) {
-		return true
-	}
-	info, err := os.Stat(path)
-	return err == nil && info.IsDir()
 }
 
 func formatByEnding(path string, r12 bool) (export.Format, error) {
@@ -130,11 +120,9 @@ type contourOptions struct {
 
 func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
 	o := contourOptions{tolerance: defaultTolerance}
-	if v, ok := flagValue(c, "tolerance"); ok {
-		mm, _, err := settings{vals: map[string]value{"t": v}, flagUnit: j.display}.positive("t")
-		if err != nil {
-			return o, err
-		}
+	if mm, ok, err := flagLength(c, j, "tolerance"); err != nil {
+		return o, err
+	} else if ok {
 		if mm < leastTolerance || mm > 1 {
 			return o, wrong("--tolerance: %g mm is out of range; take %g to 1 mm", mm, leastTolerance)
 		}
@@ -148,7 +136,7 @@ func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
 	return o, nil
 }
 
-// leastTolerance keeps the count of arcs sensible; nothing is cut to a tenth of a micrometer.
+// leastTolerance keeps the count of arcs sensible; nothing is cut to a hundredth of a micrometer.
 const leastTolerance = 1e-5
 
 func orDefault(s, d string) string {
@@ -179,15 +167,22 @@ type drawnGear struct {
 	tooth involute.Tooth
 }
 
-// asWritten is what the file measures, and what it should.
+// asWritten is what the file measures, and what it should. Over pins it is null
+// where no pin rests on the flanks, within the limits where there are none.
 type asWritten struct {
-	Pin        float64 `json:"pin_diameter_mm"`
-	OverPins   float64 `json:"over_pins_mm"`
-	Target     float64 `json:"target_mm"`
-	Difference float64 `json:"difference_mm"`
-	Limits     span    `json:"limits_mm"`
-	Within     bool    `json:"within_limits"`
-	Teeth      int     `json:"teeth_counted"`
+	Pin        *float64 `json:"pin_diameter_mm"`
+	OverPins   *float64 `json:"over_pins_mm"`
+	Target     *float64 `json:"target_mm"`
+	Difference *float64 `json:"difference_mm"`
+	Limits     *span    `json:"limits_mm"`
+	Within     *bool    `json:"within_limits"`
+	Teeth      int      `json:"teeth_counted"`
+	Shape      float64  `json:"shape_deviation_mm"`
+}
+
+func (w *asWritten) measured(pin, over, target float64) {
+	diff := over - target
+	w.Pin, w.OverPins, w.Target, w.Difference = &pin, &over, &target, &diff
 }
 
 // draw makes the contour files of gears: drawn at the middle of the thickness
@@ -225,7 +220,7 @@ func (j *job) drawOne(g *gear, o contourOptions) (drawnGear, []byte, error) {
 	if g.g.Helical() {
 		d.Section, d.kind = "transverse", "balls"
 	}
-	d.AsWritten, err = j.measureBack(g, tooth, data, o)
+	d.AsWritten, err = j.measureBack(g, tooth, data, o, report.MaxDeviation)
 	return d, data, err
 }
 
@@ -240,111 +235,4 @@ func (g *gear) contourSpec(j *job, tooth involute.Tooth, tolerance float64) expo
 		s.KeyWidth, s.KeyDepth = g.keyway.width, g.keyway.depth
 	}
 	return s
-}
-
-// checkPin returns a pin to measure a contour with: the first usable choice, or the ideal one.
-func (j *job) checkPin(g *gear) (float64, bool) {
-	for _, p := range j.choosePins(g) {
-		if _, err := g.middle().Seat(p.Diameter); err == nil {
-			return p.Diameter, true
-		}
-	}
-	return 0, false
-}
-
-// measureBack reads a file's bytes as anybody would, measures the contour over
-// pins, and refuses a file that does not measure as it should: each flank may
-// be off by the tolerance, which moves a pin's center by it over sin α_K.
-func (j *job) measureBack(g *gear, tooth involute.Tooth, data []byte, o contourOptions) (*asWritten, error) {
-	back, err := o.format.Decode(data)
-	if err != nil {
-		return nil, cannot("gear %s: the file written cannot be read back: %v", g.name, err)
-	}
-	path, err := back.Cut()
-	if err != nil {
-		return nil, cannot("gear %s: the file written holds no contour: %v", g.name, err)
-	}
-	lead, _ := g.g.Lead()
-	section, err := export.NewSection(path, lead)
-	if err != nil || section.Teeth() != g.g.Teeth() {
-		return nil, cannot("gear %s: the contour written has %d teeth, not %d (%v)", g.name, section.Teeth(), g.g.Teeth(), err)
-	}
-	pin, ok := j.checkPin(g)
-	if !ok {
-		return nil, nil
-	}
-	m := inspect.OverPins{Pin: pin}
-	target, err := m.Of(tooth)
-	if err != nil {
-		return nil, nil
-	}
-	least, most, err := section.OverPins(pin)
-	if err != nil {
-		return nil, nil // a pin that rests on the root first measures no flanks
-	}
-	w := &asWritten{Pin: pin, Target: target, OverPins: least, Teeth: section.Teeth()}
-	if math.Abs(most-target) > math.Abs(least-target) {
-		w.OverPins = most
-	}
-	w.Difference = w.OverPins - target
-	limits := inspect.NewTarget(g.g, m, g.thickness.Limits, inspect.Part{})
-	w.Limits = toSpan(limits.Value)
-	w.Within = w.OverPins >= w.Limits.Min && w.OverPins <= w.Limits.Max
-	if g.thickness.By != inspect.ByNothing && limits.Value.Width() > 0 && math.Abs(w.Difference) > mostDrift*limits.Value.Width() {
-		j.addWarning("coarse-contour", g.name, "the arcs alone take %s of the %s between the limits over pins; draw it finer with --tolerance %.4gmm",
-			j.length(math.Abs(w.Difference)), j.length(limits.Value.Width()), o.tolerance/4)
-	}
-	seat, err := tooth.Seat(pin)
-	_, byPin := g.g.PinSensitivity(involute.TwoPins, seat)
-	if usable := len(m.Faults(tooth, inspect.Part{})) == 0; err == nil && usable && math.Abs(w.Difference) > 2*o.tolerance*byPin+closeEnough {
-		return nil, cannot("gear %s: the contour written measures %s over pins, not %s; it is not delivered", g.name, j.length(w.OverPins), j.length(target))
-	}
-	return w, nil
-}
-
-// mostDrift is the share of the tolerance over pins that a drawing may use up
-// before it is said: a quarter leaves the machine most of it.
-const mostDrift = 0.25
-
-// closeEnough is what the search for a pin's seat on a contour may be off by, mm.
-const closeEnough = 1e-6
-
-// writeDrawn writes contour files, all or none, and reads them once more to see that the disk has them.
-func writeDrawn(c *cli.Context, out string, folder bool, files []export.File) error {
-	if folder {
-		if err := fileError(out, export.WriteFolder(out, files, c.Bool("force"))); err != nil {
-			return err
-		}
-	} else if err := writeFile(c, out, files[0].Data); err != nil {
-		return err
-	}
-	for _, f := range files {
-		path := out
-		if folder {
-			path = filepath.Join(out, f.Name)
-		}
-		data, err := os.ReadFile(path)
-		if err != nil || !bytes.Equal(data, f.Data) {
-			return cannot("%s: the disk gives back other bytes than were written (%v)", path, err)
-		}
-	}
-	return nil
-}
-
-// fileError words an error of writing a file or into a folder.
-func fileError(path string, err error) error {
-	if err == nil {
-		return nil
-	}
-	var exists *export.ExistError
-	var p *os.PathError
-	switch {
-	case errors.As(err, &exists):
-		return cannot("%v; --force overwrites", exists)
-	case errors.Is(err, fs.ErrNotExist):
-		return cannot("%s: there is no such folder; make it first", path)
-	case errors.As(err, &p):
-		return cannot("%s: %v", path, p.Err)
-	}
-	return cannot("%s: %v", path, err)
 }

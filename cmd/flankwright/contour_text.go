@@ -38,28 +38,7 @@ func (r *contours) text(p *page, digits int) []byte {
 	each("Shortest arc", u.String(), func(d drawnGear) string { return fine(d.ShortestArc) })
 	each("Smallest radius", u.String(), func(d drawnGear) string { return fine(d.Radius.Min) })
 	each("Tooth thickness drawn, normal", u.String(), func(d drawnGear) string { return fine(d.Thickness) })
-	written := func(label string, pick func(w *asWritten) float64) {
-		each(label, u.String(), func(d drawnGear) string {
-			if d.AsWritten == nil {
-				return "-"
-			}
-			return fine(pick(d.AsWritten))
-		})
-	}
-	g.section("Measured on the file, over two " + kinds(r.gears))
-	written("  pin diameter", func(w *asWritten) float64 { return w.Pin })
-	written("  target", func(w *asWritten) float64 { return w.Target })
-	written("  as written", func(w *asWritten) float64 { return w.OverPins })
-	written("  difference", func(w *asWritten) float64 { return w.Difference })
-	each("  within the limits", "", func(d drawnGear) string {
-		switch {
-		case d.AsWritten == nil:
-			return "-"
-		case d.AsWritten.Limits.Min == d.AsWritten.Limits.Max:
-			return "no limits"
-		}
-		return yesNo(d.AsWritten.Within)
-	})
+	r.measured(&g, each, u.String(), fine)
 	p.grid(g)
 	for _, d := range r.gears {
 		if d.Section == "transverse" {
@@ -70,6 +49,30 @@ func (r *contours) text(p *page, digits int) []byte {
 	p.explanations(r.Explain)
 	p.warnings(r.Warnings)
 	return []byte(p.b.String())
+}
+
+// measured adds what was measured on the files: the shape, and over pins.
+func (r *contours) measured(g *grid, each func(label, unit string, cell func(drawnGear) string), unit string, fine func(float64) string) {
+	g.section("Measured on the file")
+	each("Greatest deviation from the exact shape", unit, func(d drawnGear) string { return fine(d.AsWritten.Shape) })
+	number := func(label string, pick func(w *asWritten) *float64) {
+		each(label, unit, func(d drawnGear) string {
+			if v := pick(d.AsWritten); v != nil {
+				return fine(*v)
+			}
+			return "-"
+		})
+	}
+	number("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
+	number("  target", func(w *asWritten) *float64 { return w.Target })
+	number("  as written", func(w *asWritten) *float64 { return w.OverPins })
+	number("  difference", func(w *asWritten) *float64 { return w.Difference })
+	each("  within the limits", "", func(d drawnGear) string {
+		if d.AsWritten.Within == nil {
+			return "no limits"
+		}
+		return yesNo(*d.AsWritten.Within)
+	})
 }
 
 func kinds(gears []drawnGear) string {
@@ -85,13 +88,13 @@ func kinds(gears []drawnGear) string {
 func explainContours(drawn []drawnGear) []explanation {
 	var all []explanation
 	for _, d := range drawn {
-		if d.AsWritten == nil {
+		if d.AsWritten.OverPins == nil {
 			continue
 		}
 		e := &explainer{about: d.name}
-		explainPins(e, d.tooth, pinTarget{Pin: d.AsWritten.Pin, Kind: d.kind})
-		e.result("difference of the contour as written", "Δ = M_w - M", mm("Δ", d.AsWritten.Difference), "measured on the arcs of the file",
-			mm("M_w", d.AsWritten.OverPins), mm("M", d.AsWritten.Target))
+		explainPins(e, d.tooth, pinTarget{Pin: *d.AsWritten.Pin, Kind: d.kind})
+		e.result("difference of the contour as written", "Δ = M_w - M", mm("Δ", *d.AsWritten.Difference), "measured on the arcs of the file",
+			mm("M_w", *d.AsWritten.OverPins), mm("M", *d.AsWritten.Target))
 		all = append(all, e.list...)
 	}
 	return all

@@ -23,7 +23,7 @@ func dimsCommand() *cli.Command {
 			if err != nil {
 				return err
 			}
-			radius, err := dialRadius(c, j)
+			radius, _, err := flagLength(c, j, "dial-radius")
 			if err != nil {
 				return err
 			}
@@ -37,15 +37,6 @@ func dimsCommand() *cli.Command {
 			return emit(c, d, func() []byte { return d.text(newPage(c.App.Writer), j.digits(c)) })
 		},
 	}
-}
-
-func dialRadius(c *cli.Context, j *job) (float64, error) {
-	v, ok := flagValue(c, "dial-radius")
-	if !ok {
-		return 0, nil
-	}
-	r, _, err := settings{vals: map[string]value{"r": v}, flagUnit: j.display}.positive("r")
-	return r, err
 }
 
 // dims is the result of the command, as JSON writes it.

@@ -91,6 +91,16 @@ func flagValue(c *cli.Context, name string) (value, bool) {
 	return value{flagText(text), place{file: "--" + name}}, true
 }
 
+// flagLength reads a flag's length above 0; ok tells whether it is given.
+func flagLength(c *cli.Context, j *job, name string) (mm float64, ok bool, err error) {
+	v, ok := flagValue(c, name)
+	if !ok {
+		return 0, false, nil
+	}
+	mm, _, err = settings{vals: map[string]value{name: v}, flagUnit: j.display}.positive(name)
+	return mm, true, err
+}
+
 // flagged collects the flags of the keys of a scope; prefix is "" or "mate-".
 func flagged(c *cli.Context, where scope, prefix string) (map[string]value, error) {
 	vals := map[string]value{}

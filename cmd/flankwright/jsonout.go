@@ -78,7 +78,7 @@ func emitBeside(c *cli.Context, result any, text func() []byte) error {
 	if err != nil {
 		return err
 	}
-	return print(c, data)
+	return toStdout(c, data)
 }
 
 func render(c *cli.Context, result any, text func() []byte) ([]byte, error) {
@@ -88,7 +88,7 @@ func render(c *cli.Context, result any, text func() []byte) ([]byte, error) {
 	return text(), nil
 }
 
-func print(c *cli.Context, data []byte) error {
+func toStdout(c *cli.Context, data []byte) error {
 	if _, err := c.App.Writer.Write(data); err != nil {
 		return cannot("standard output: %v", err)
 	}

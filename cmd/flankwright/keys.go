@@ -20,7 +20,7 @@ type keySpec struct {
 	usage string // what the flag's help says; blank where there is no flag
 }
 
-// keys lists every key there is, in the order of the house's table.
+// keys lists every key there is, in the order of the README's table.
 func keys() []keySpec {
 	return []keySpec{
 		{"title", atTop, false, "job title for sheets"},

@@ -253,8 +253,8 @@ func (j *job) finishGear(g *gear) error {
 	if g.bore.limits.Max >= root {
 		return bad("bore", g.settings.vals["bore"], "of %s reaches the root circle, %s; it must be smaller", j.length(g.bore.nominal), j.length(root))
 	}
-	if k := g.keyway; k != nil && g.bore.limits.Max+2*k.depth >= root {
-		return bad("keyway", g.settings.vals["keyway"], "reaches %s from the axis, past the root circle's radius %s", j.length(g.bore.limits.Max/2+k.depth), j.length(root/2))
+	if k := g.keyway; k != nil && 2*k.reach(g.bore.limits.Max) >= root {
+		return bad("keyway", g.settings.vals["keyway"], "has corners %s from the axis, past the root circle's radius %s", j.length(k.reach(g.bore.limits.Max)), j.length(root/2))
 	}
 	return nil
 }

@@ -57,6 +57,9 @@ type tipDecision struct{ a, mateRoot, clearance float64 }
 
 type keyway struct{ width, depth float64 } // mm; depth beyond the bore
 
+// reach returns how far the keyway's corners lie from the axis of a bore, mm.
+func (k keyway) reach(bore float64) float64 { return math.Hypot(bore/2+k.depth, k.width/2) }
+
 // part returns what a measuring hand needs to know of the gear.
 func (g *gear) part() inspect.Part { return inspect.Part{FaceWidth: g.faceWidth} }
 
@@ -351,8 +354,8 @@ func (j *job) readKeyway(g *gear) error {
 	if g.bore == nil {
 		return bad("keyway", v, "needs a bore to be cut into")
 	}
-	if w >= g.bore.nominal {
-		return bad("keyway", v, "is %s wide, and the bore only %s", j.length(w), j.length(g.bore.nominal))
+	if w >= g.bore.limits.Min {
+		return bad("keyway", v, "is %s wide, and the bore only %s", j.length(w), j.length(g.bore.limits.Min))
 	}
 	g.keyway = &keyway{w, d}
 	return nil

@@ -2,13 +2,9 @@ package main
 
 import (
 	"embed"
-	"fmt"
-	"os"
 	"strings"
 
 	"github.com/urfave/cli/v2"
-
-	"flankwright/export"
 )
 
 //go:embed examples/*.toml
@@ -50,31 +46,4 @@ func newCommand() *cli.Command {
 			return deliver(c, data)
 		},
 	}
-}
-
-// deliver writes a result to -o, or to standard output.
-func deliver(c *cli.Context, data []byte) error {
-	path := c.String("output")
-	if path == "" || path == "-" {
-		return print(c, data)
-	}
-	if err := writeFile(c, path, data); err != nil {
-		return err
-	}
-	fmt.Fprintf(c.App.ErrWriter, "%s written\n", path)
-	return nil
-}
-
-// writeFile writes one file whole or not at all; an existing one is kept unless --force.
-func writeFile(c *cli.Context, path string, data []byte) error {
-	if job := c.Args().First(); job != "" && job != "-" && sameFile(job, path) {
-		return wrong("-o %s: is the job itself; write to another file", path)
-	}
-	return fileError(path, export.WriteFileAtomic(path, data, c.Bool("force")))
-}
-
-func sameFile(a, b string) bool {
-	x, err1 := os.Stat(a)
-	y, err2 := os.Stat(b)
-	return err1 == nil && err2 == nil && os.SameFile(x, y)
 }

@@ -6,6 +6,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
@@ -86,7 +87,7 @@ func unknownFlag(c *cli.Context, name string) error {
 	return wrong("--%s: no such flag; %s lists them", name, strings.Join(strings.Fields("flankwright "+command+" --help"), " "))
 }
 
-// plannedCommands are named in the house's plan and not there yet.
+// plannedCommands are to come, and are refused until then.
 func plannedCommands() []string {
 	return []string{"size", "backlash", "reading", "unknown", "cutters", "load", "bore"}
 }
@@ -217,8 +218,11 @@ func loadRequest(c *cli.Context) (request, error) {
 	if path != "" && example != "" {
 		return request{}, wrong("give a job file or --example, not both")
 	}
+	if d := c.Int("digits"); c.IsSet("digits") && (d < 0 || d > 9) {
+		return request{}, wrong("--digits: %d decimals make no sense; take 0 to 9", d)
+	}
 	if path == "" && example == "" {
-		return checkOptions(c)(requestFromFlags(c))
+		return requestFromFlags(c)
 	}
 	data, name, err := readJob(c, path, example)
 	if err != nil {
@@ -228,17 +232,7 @@ func loadRequest(c *cli.Context) (request, error) {
 	if err != nil {
 		return r, err
 	}
-	return checkOptions(c)(r, r.overrideByFlags(c))
-}
-
-// checkOptions checks the flags that belong to no gear.
-func checkOptions(c *cli.Context) func(request, error) (request, error) {
-	return func(r request, err error) (request, error) {
-		if d := c.Int("digits"); err == nil && c.IsSet("digits") && (d < 0 || d > 9) {
-			err = wrong("--digits: %d decimals make no sense; take 0 to 9", d)
-		}
-		return r, err
-	}
+	return r, r.overrideByFlags(c)
 }
 
 func readJob(c *cli.Context, path, example string) (data []byte, name string, err error) {
@@ -271,13 +265,16 @@ func readJob(c *cli.Context, path, example string) (data []byte, name string, er
 	return data, name, nil
 }
 
-// plainPathError words a file error without the system call's name.
+// plainPathError words a file error without the system call's name, and alike on every machine.
 func plainPathError(err error) string {
 	var p *os.PathError
-	if errors.As(err, &p) {
-		return fmt.Sprintf("%s: %v", p.Path, p.Err)
+	switch {
+	case !errors.As(err, &p):
+		return err.Error()
+	case errors.Is(err, fs.ErrNotExist):
+		return p.Path + ": there is no such file"
 	}
-	return err.Error()
+	return fmt.Sprintf("%s: %v", p.Path, p.Err)
 }
 
 // loadJob reads and resolves the job of a command, and the gears it is about.

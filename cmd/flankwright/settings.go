@@ -45,11 +45,10 @@ func (s settings) bare(v value) inspect.Unit {
 
 // bad reports a wrong value of a key.
 func bad(key string, v value, format string, args ...any) error {
-	name := key
 	if _, flag := v.content.(flagText); flag {
 		return fault(v.at, format, args...)
 	}
-	return fault(v.at, "%s: %s", name, fmt.Sprintf(format, args...))
+	return fault(v.at, "%s: %s", key, fmt.Sprintf(format, args...))
 }
 
 func kindOf(v value) string {

@@ -118,7 +118,7 @@ func (j *job) warnRim(g *gear) {
 	depth := (g.g.TipDiameter() - root) / 2
 	wall, where := (root-g.bore.limits.Max)/2, "bore"
 	if g.keyway != nil {
-		wall, where = wall-g.keyway.depth, "keyway"
+		wall, where = root/2-g.keyway.reach(g.bore.limits.Max), "keyway"
 	}
 	if wall < thinRim*depth {
 		j.addWarning("thin-rim", g.name, "only %s of metal is left between root and %s, under %.1f whole depths; the rim bends under load", j.length(wall), where, thinRim)
