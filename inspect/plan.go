@@ -284,10 +284,10 @@ func (m PlanMesh) split(gears []PlanGear, want Limits) []share {
 // problem reports an empty or a negative thinning.
 func (l Limits) problem() (ProblemKind, bool) {
 	switch {
-	case l.Min > l.Max+noThinning:
-		return NoRoom, true
 	case l.Min < -noThinning:
 		return TooThick, true
+	case l.Min > l.Max+noThinning:
+		return NoRoom, true
 	}
 	return 0, false
 }

@@ -128,9 +128,9 @@ func newGearDims(g *gear) gearDims {
 	thick := g.thickness.Limits
 	d := gearDims{
 		Teeth: gg.Teeth(), Module: gg.Module(), DP: 25.4 / gg.Module(),
-		PressureAngle:   gg.PressureAngle() / involute.Degree,
+		PressureAngle:   plainDegrees(gg.PressureAngle()),
 		TransverseAngle: gg.TransversePressureAngle() / involute.Degree,
-		Helix:           math.Abs(spec.Helix) / involute.Degree,
+		Helix:           plainDegrees(math.Abs(spec.Helix)),
 		Shift:           spec.Shift, ShiftLength: spec.Shift * gg.Module(),
 		Reference: gg.ReferenceDiameter(), Base: gg.BaseDiameter(), Tip: gg.TipDiameter(),
 		Root: t.RootDiameter(), Form: t.FormDiameter(), TipForm: gg.TipFormDiameter(),
@@ -156,6 +156,10 @@ func newGearDims(g *gear) gearDims {
 	}
 	return d
 }
+
+// plainDegrees returns an angle in degrees as it was given, free of what going to
+// radians and back adds in the sixteenth digit.
+func plainDegrees(rad float64) float64 { return math.Round(rad/involute.Degree*1e12) / 1e12 }
 
 func handWord(helix float64) string {
 	if helix < 0 {

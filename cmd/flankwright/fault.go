@@ -3,6 +3,7 @@ package main
 import (
 	"errors"
 	"fmt"
+	"strings"
 )
 
 // Exit statuses, as the README lists them.
@@ -33,9 +34,14 @@ func fault(at place, format string, args ...any) error {
 	return &problem{exitQuestion, at.String(), fmt.Sprintf(format, args...)}
 }
 
-// wrong says that the question is wrong, without a place.
+// wrong says that the question is wrong, without a place in a file. A text that
+// begins with a flag and a colon is placed at that flag.
 func wrong(format string, args ...any) error {
-	return &problem{exitQuestion, "", fmt.Sprintf(format, args...)}
+	text := fmt.Sprintf(format, args...)
+	if flag, rest, ok := strings.Cut(text, ": "); ok && strings.HasPrefix(flag, "-") {
+		return &problem{exitQuestion, flag, rest}
+	}
+	return &problem{exitQuestion, "", text}
 }
 
 // cannot says that a file or the disk failed.

@@ -40,6 +40,8 @@ func jobFlags() []cli.Flag {
 			category = catGear
 		case k.where&inMesh != 0:
 			category = catMesh
+		case k.where&inLoad != 0:
+			category = "Load"
 		}
 		flags = append(flags, keyFlag(flagName(k.name), k.usage, category, k))
 	}
@@ -171,6 +173,9 @@ func requestFromFlags(c *cli.Context) (request, error) {
 		return r, err
 	}
 	base := settings{vals: shared, jobUnit: unit, flagUnit: unit}
+	if _, err := flagged(c, inLoad, ""); err != nil {
+		return r, err
+	}
 	if len(mate) == 0 {
 		if len(mesh.vals) > 0 {
 			return r, wrong("--center, --backlash and --thin-share are about a pair: give --mate-teeth too")
@@ -220,6 +225,9 @@ func (r *request) overrideByFlags(c *cli.Context) error {
 		if c.IsSet("mate-" + flagName(k)) {
 			return wrong("--mate-%s: is for a pair without a job file; use --gear NAME --%s", flagName(k), flagName(k))
 		}
+	}
+	if _, err := flagged(c, inLoad, ""); err != nil {
+		return err
 	}
 	top, err := flagged(c, atTop, "")
 	if err != nil {

@@ -2,13 +2,14 @@ package main
 
 // hands returns +1 for right and −1 for left for every gear: its own word; else
 // the opposite of a mate whose hand is known; else the shared word, or right,
-// for the first gear that nothing decides.
-func (j *job) hands() ([]float64, error) {
-	hands := make([]float64, len(j.request.gears))
+// for the first gear that nothing decides, which is said to be assumed.
+func (j *job) hands() (hands []float64, assumed []bool, err error) {
+	hands = make([]float64, len(j.request.gears))
+	assumed = make([]bool, len(j.request.gears))
 	for i, g := range j.request.gears {
 		word, ok, err := settings{vals: g.own}.word("hand", "right", "left")
 		if err != nil {
-			return nil, err
+			return nil, nil, err
 		}
 		if ok {
 			hands[i] = handSign(word)
@@ -24,13 +25,13 @@ func (j *job) hands() ([]float64, error) {
 			}
 		}
 		if free < 0 {
-			return hands, nil
+			return hands, assumed, nil
 		}
-		word, _, err := j.request.gears[free].word("hand", "right", "left")
+		word, ok, err := j.request.gears[free].word("hand", "right", "left")
 		if err != nil {
-			return nil, err
+			return nil, nil, err
 		}
-		hands[free] = handSign(word)
+		hands[free], assumed[free] = handSign(word), !ok
 	}
 }
 

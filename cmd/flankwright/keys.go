@@ -10,6 +10,7 @@ const (
 	inTooth
 	inGear
 	inMesh
+	inLoad
 )
 
 // A keySpec is one key of the job file; the flag of the same name has - for _.
@@ -59,7 +60,7 @@ func keys() []keySpec {
 		{"root", inGear, false, "generated (generated)"},
 		{"face_width", inGear, false, "face width"},
 		{"bore", inGear, false, "bore, with an ISO 286 class if wanted: \"12 H7\""},
-		{"keyway", inGear, false, ""},
+		{"keyway", inGear, false, "keyway, width x depth beyond the bore's wall: 4x1.8mm"},
 		{"hub", inGear, true, "hub diameter"},
 		{"bolt_circle", inGear, true, "bolt circle"},
 		{"material", inGear, true, ""},
@@ -74,6 +75,12 @@ func keys() []keySpec {
 		{"thin_share", inMesh, false, "equal, or the gear that takes it all (equal)"},
 		{"temperature", inMesh, true, "temperature range"},
 		{"housing", inMesh, true, "housing material"},
+
+		{"torque", inLoad, true, "torque"},
+		{"speed", inLoad, true, "speed"},
+		{"power", inLoad, true, "power"},
+		{"hours", inLoad, true, "hours"},
+		{"application", inLoad, true, "application factor"},
 	}
 }
 
@@ -127,6 +134,9 @@ func scopeName(where scope) string {
 		return "in [tooth] or [gear.NAME]"
 	case where&inGear != 0:
 		return "in [gear.NAME]"
+	}
+	if where&inLoad != 0 {
+		return "in [load]"
 	}
 	return "in [[mesh]]"
 }

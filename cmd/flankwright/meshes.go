@@ -62,7 +62,7 @@ func (j *job) addMesh(i int) error {
 	}
 	for _, old := range j.meshes {
 		if (old.plan.First == a && old.plan.Second == b) || (old.plan.First == b && old.plan.Second == a) {
-			return fault(s.at, "mesh: %s and %s mesh already", j.gears[a].name, j.gears[b].name)
+			return fault(s.at, "mesh: %s and %s mesh already; keep one of the two", j.gears[a].name, j.gears[b].name)
 		}
 	}
 	m := &mesh{index: i, first: j.gears[a], second: j.gears[b], at: s.at}
@@ -243,7 +243,7 @@ func (j *job) planThickness() error {
 func (j *job) finishGear(g *gear) error {
 	for _, s := range []float64{g.thickness.Limits.Min, g.thickness.Limits.Max} {
 		if _, err := g.g.Tooth(s); err != nil {
-			return j.impossibleGear(g, err)
+			return j.impossibleThinning(g, err)
 		}
 	}
 	if g.bore == nil {

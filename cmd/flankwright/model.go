@@ -32,9 +32,11 @@ type gear struct {
 	rack      string  // name for people
 	source    string  // of the rack
 	shortened bool
-	measured  float64 // outside diameter of the blank as measured, mm, 0 for not
-	tipBy     tipDecision
-	settings  settings
+	// handAssumed: neither the gear nor a mate nor the shared values say a hand.
+	handAssumed bool
+	measured    float64 // outside diameter of the blank as measured, mm, 0 for not
+	tipBy       tipDecision
+	settings    settings
 }
 
 // blank returns the outside diameter of the blank: as measured, or nominal.
@@ -91,7 +93,7 @@ func (m *mesh) face() float64 {
 // resolve works a request out.
 func resolve(r request) (*job, error) {
 	j := &job{request: r}
-	hands, err := j.hands()
+	hands, assumed, err := j.hands()
 	if err != nil {
 		return nil, err
 	}
@@ -99,6 +101,7 @@ func resolve(r request) (*job, error) {
 		if err := j.addGear(i, hands[i]); err != nil {
 			return nil, err
 		}
+		j.gears[i].handAssumed = assumed[i]
 	}
 	for i := range r.meshes {
 		if err := j.addMesh(i); err != nil {
@@ -201,8 +204,8 @@ func (j *job) spec(g *gear, hand float64) (involute.Spec, error) {
 	if err != nil {
 		return s, err
 	}
-	if g.shortened = word == "shortened"; g.shortened && s.TipDiameter != 0 {
-		return s, bad("tip", g.settings.vals["tip"], "\"shortened\" and tip_diameter say different things; give one of them")
+	if g.shortened = word == "shortened"; word != "" && s.TipDiameter != 0 {
+		return s, bad("tip", g.settings.vals["tip"], "%q and tip_diameter say different things; give one of them", word)
 	}
 	return s, nil
 }
@@ -332,24 +335,9 @@ func (j *job) readKeyway(g *gear) error {
 	if !ok {
 		return nil
 	}
-	t, isTable := v.content.(*table)
-	if !isTable {
-		return bad("keyway", v, "needs { width = …, depth = … }")
-	}
-	s, err := g.settings.inline("keyway", t)
+	w, d, err := g.settings.keywaySize(v)
 	if err != nil {
 		return err
-	}
-	w, hasW, err := s.positive("width")
-	if err != nil {
-		return err
-	}
-	d, hasD, err := s.positive("depth")
-	if err != nil {
-		return err
-	}
-	if !hasW || !hasD {
-		return bad("keyway", v, "needs both width and depth (depth beyond the bore's wall)")
 	}
 	if g.bore == nil {
 		return bad("keyway", v, "needs a bore to be cut into")
@@ -359,4 +347,35 @@ func (j *job) readKeyway(g *gear) error {
 	}
 	g.keyway = &keyway{w, d}
 	return nil
+}
+
+// keywaySize reads a keyway's width and depth from a table or from "4x1.8mm".
+func (s settings) keywaySize(v value) (w, d float64, err error) {
+	if text, isText := asText(v); isText {
+		width, depth, ok := strings.Cut(strings.ReplaceAll(text, "×", "x"), "x")
+		unit := inspect.UnitOf(depth, s.bare(v)) // a unit at the end covers both
+		w, err1 := inspect.ParseLength(width, unit)
+		d, err2 := inspect.ParseLength(depth, unit)
+		if !ok || err1 != nil || err2 != nil || w <= 0 || d <= 0 {
+			return 0, 0, bad("keyway", v, "%q is not a keyway; write width x depth, such as 4x1.8mm", text)
+		}
+		return w, d, nil
+	}
+	t, isTable := v.content.(*table)
+	if !isTable {
+		return 0, 0, bad("keyway", v, "needs { width = …, depth = … }")
+	}
+	sub, err := s.inline("keyway", t)
+	if err != nil {
+		return 0, 0, err
+	}
+	w, hasW, err := sub.positive("width")
+	if err != nil {
+		return 0, 0, err
+	}
+	d, hasD, err := sub.positive("depth")
+	if err == nil && !(hasW && hasD) {
+		err = bad("keyway", v, "needs both width and depth (depth beyond the bore's wall)")
+	}
+	return w, d, err
 }

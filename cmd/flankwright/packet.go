@@ -31,44 +31,52 @@ func runPacket(c *cli.Context) error {
 	if dir == "" || dir == "-" {
 		return wrong("packet needs a folder to write into: -o DIR")
 	}
-	files, drawn, err := j.packetFiles(c, gears)
+	a, err := readAsk(c, j, gears)
+	if err != nil {
+		return err
+	}
+	files, drawn, err := j.packetFiles(c, gears, a)
 	if err != nil {
 		return err
 	}
 	if err := fileError(dir, export.WriteFolder(dir, files, c.Bool("force"))); err != nil {
 		return err
 	}
-	var names []string
+	r := packetResult{contours: contours{job: j, gears: drawn, Warnings: j.about(gears)}}
 	for _, f := range files {
-		names = append(names, filepath.ToSlash(filepath.Join(dir, f.Name)))
+		r.Files = append(r.Files, filepath.ToSlash(filepath.Join(dir, f.Name)))
 	}
-	result := &contours{job: j, gears: drawn}
 	for i := range drawn {
-		drawn[i].File = names[i]
-		result.Gears.add(drawn[i].name, drawn[i])
+		drawn[i].File = r.Files[i]
+		r.Gears.add(drawn[i].name, drawn[i])
 	}
-	return emitBeside(c, map[string]any{"files": names, "gears": result.Gears, "warnings": j.about(gears)}, func() []byte {
+	err = emitBeside(c, r, func() []byte {
 		p := newPage(c.App.Writer)
-		for _, n := range names[len(drawn):] {
+		for _, n := range r.Files[len(drawn):] {
 			p.line("%s", n)
 		}
-		result.Warnings = j.about(gears)
-		p.b.Write(result.text(newPage(c.App.Writer), j.digits(c)))
+		p.b.Write(r.text(newPage(c.App.Writer), j.digits(c)))
 		return []byte(p.b.String())
 	})
+	if err != nil {
+		return err
+	}
+	return pinVerdict(c, newTargets(j, gears, a), a)
+}
+
+// packetResult is what the command says, as JSON writes it.
+type packetResult struct {
+	Files []string `json:"files"`
+	contours
 }
 
 // packetFiles makes every file of a packet in memory; the contours come first.
-func (j *job) packetFiles(c *cli.Context, gears []*gear) ([]export.File, []drawnGear, error) {
+func (j *job) packetFiles(c *cli.Context, gears []*gear, a ask) ([]export.File, []drawnGear, error) {
 	opt, err := readContourOptions(c, j)
 	if err != nil {
 		return nil, nil, err
 	}
 	if opt.format, err = formatByName("dxf", opt.r12); err != nil {
-		return nil, nil, err
-	}
-	a, err := readAsk(c, j, gears)
-	if err != nil {
 		return nil, nil, err
 	}
 	drawn, files, err := j.draw(gears, opt)

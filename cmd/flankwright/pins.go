@@ -14,6 +14,9 @@ import (
 // pinions, may come before the 1.728/P ones: half the usual long addendum of 0.5.
 const longAddendum = 0.25
 
+// idealOnly marks a pin of the ideal size that no series has.
+const idealOnly = "the ideal size, in no series"
+
 // choosePins returns the pins to measure a gear with when none is asked for:
 // first of a series that shops keep for gears, then of a gauge-pin set. Where
 // none of a series is usable it is left out; where none at all is, the ideal
@@ -38,7 +41,7 @@ func (j *job) choosePins(g *gear) []inspect.PinCandidate {
 		chosen = dropFar(chosen, ideal)
 	}
 	if len(chosen) == 0 {
-		return []inspect.PinCandidate{{Diameter: ideal, From: "the ideal size"}}
+		return []inspect.PinCandidate{{Diameter: ideal, From: idealOnly}}
 	}
 	return chosen
 }

@@ -71,8 +71,8 @@ func unknownFlag(c *cli.Context, name string) error {
 		return wrong("--%s: %s", name, why)
 	}
 	command := strings.TrimSpace(strings.TrimPrefix(c.Command.Name, "flankwright"))
-	if k, ok := findKey(strings.ReplaceAll(name, "-", "_")); ok && command != "" {
-		if k.where&atTop != 0 || k.name == "material" {
+	if k, ok := findKey(strings.ReplaceAll(name, "-", "_")); ok && command != "" && command != "tables" && command != "new" {
+		if k.usage != "" && k.where&atTop != 0 || k.name == "material" {
 			return wrong("--%s: is for the sheet; %s does not use it", name, command)
 		}
 		return wrong("--%s: no such flag; write %s into a job file, %s", name, k.name, scopeName(k.where))
@@ -256,6 +256,7 @@ func readJob(c *cli.Context, path, example string) (data []byte, name string, er
 	if err != nil {
 		return nil, "", cannot("%s: cannot be read: %v", name, err)
 	}
+	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf")) // some editors begin a file with it
 	if !utf8.Valid(data) || bytes.IndexByte(data, 0) >= 0 {
 		return nil, "", wrong("%s: is no text; a job is a TOML file (flankwright new writes one)", name)
 	}

@@ -282,6 +282,9 @@ func (s settings) center(key string) (at, tolerance float64, class string, err e
 		return s.centerTable(key, t)
 	}
 	text, isText := asText(v)
+	if at, class, ok := s.centerClass(v, text); ok {
+		return at, 0, class, nil
+	}
 	base, tol, hasTol := strings.Cut(strings.ReplaceAll(text, "+-", "±"), "±")
 	if !isText || !hasTol {
 		at, _, err = s.positive(key)
@@ -297,6 +300,16 @@ func (s settings) center(key string) (at, tolerance float64, class string, err e
 		return 0, 0, "", bad(key, v, "needs a distance above 0 and a tolerance of 0 or more")
 	}
 	return distance, tolerance, "", nil
+}
+
+// centerClass reads a distance with an ISO 286 class: "50 js7" or "50js7".
+func (s settings) centerClass(v value, text string) (at float64, class string, ok bool) {
+	i := strings.Index(strings.ToLower(text), "js")
+	if i < 0 {
+		return 0, "", false
+	}
+	at, err := inspect.ParseLength(text[:i], s.bare(v))
+	return at, strings.TrimSpace(text[i:]), err == nil && at > 0
 }
 
 func (s settings) centerTable(key string, t *table) (at, tolerance float64, class string, err error) {

@@ -2,6 +2,7 @@ package main
 
 import (
 	"bytes"
+	"fmt"
 	"path/filepath"
 	"strings"
 
@@ -84,7 +85,7 @@ func runSheet(c *cli.Context) error {
 	if c.Bool("explain") {
 		r.Explain = j.explainTargets(newTargets(j, gears, a))
 	}
-	return emitBeside(c, r, func() []byte {
+	err = emitBeside(c, r, func() []byte {
 		p := newPage(c.App.Writer)
 		for _, n := range names {
 			p.line("%s", n)
@@ -94,6 +95,19 @@ func runSheet(c *cli.Context) error {
 		p.warnings(r.Warnings)
 		return []byte(p.b.String())
 	})
+	if err != nil {
+		return err
+	}
+	return pinVerdict(c, newTargets(j, gears, a), a)
+}
+
+// pinVerdict says, of files that are written, that none of the pins asked for can be used.
+func pinVerdict(c *cli.Context, t *targets, a ask) error {
+	err := t.verdict(a)
+	if err != nil {
+		fmt.Fprintln(c.App.ErrWriter, "flankwright: none of the pins asked for can be used; the sheet says why")
+	}
+	return err
 }
 
 // sheetResult is what the command says, as JSON writes it.

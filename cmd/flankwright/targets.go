@@ -33,10 +33,7 @@ func targetsCommand() *cli.Command {
 			if err := emit(c, t, func() []byte { return t.text(newPage(c.App.Writer), j.digits(c)) }); err != nil {
 				return err
 			}
-			if ask.pins != nil && !t.anyPinUsable() {
-				return errNo
-			}
-			return nil
+			return t.verdict(ask)
 		},
 	}
 }
@@ -250,6 +247,14 @@ func (j *job) chordTarget(g *gear, m heighted) chordTarget {
 		}
 	}
 	return out
+}
+
+// verdict is errNo where pins were asked for and none of them can be used.
+func (t *targets) verdict(a ask) error {
+	if a.pins != nil && !t.anyPinUsable() {
+		return errNo
+	}
+	return nil
 }
 
 // anyPinUsable reports whether one of the pins of any gear can be used.

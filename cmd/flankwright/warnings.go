@@ -86,8 +86,12 @@ func (j *job) warnGear(g *gear) {
 	if thinnest.Undercut() {
 		lost := (thinnest.FormDiameter() - g.g.BaseDiameter()) / 2
 		deeper := g.g.Spec().Shift - g.g.GeneratingShift(thinnest.Thickness())
+		above := j.length(lost)
+		if lost < math.Pow10(-j.display.Decimals())*j.display.MM()/2 {
+			above = "just"
+		}
 		j.addWarning("undercut", g.name, "the cutter undercuts the root; the involute begins at %s, %s above the base circle. A shift of %+.4f or more avoids it",
-			j.length(thinnest.FormDiameter()), j.length(lost), g.g.UndercutLimit()+deeper)
+			j.length(thinnest.FormDiameter()), above, g.g.UndercutLimit()+deeper)
 	}
 	if land := thinnest.TipLand(); land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
@@ -97,6 +101,12 @@ func (j *job) warnGear(g *gear) {
 	}
 	if g.g.Helical() && g.faceWidth == 0 {
 		j.warnFace(g)
+	}
+	if g.g.Helical() && g.handAssumed {
+		j.addWarning("no-hand", g.name, "no hand is given; it is taken as %s hand, its mates as the other. Say hand = \"right\" or \"left\"", handWord(g.g.Spec().Helix))
+	}
+	if pins := j.choosePins(g); len(pins) == 1 && pins[0].From == idealOnly {
+		j.addWarning("no-pin", g.name, "no pin of the usual series can be used; the ideal size, %s, is shown instead and would have to be made", j.length(pins[0].Diameter))
 	}
 }
 
@@ -199,12 +209,12 @@ func (j *job) warnContact(m *mesh, pair string) {
 	case m.first.g.Helical() && m.face() == 0 && total < lowContact:
 		j.addMeshWarning("low-contact", m, "%s: the transverse contact ratio is %.3f; whether the helix makes up for it needs face_width", pair, total)
 	case total < 1:
-		j.addMeshWarning("no-drive", m, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted; the pair will not run smoothly", pair, total)
+		j.addMeshWarning("no-drive", m, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted: it knocks and wears. Take more teeth, a smaller center distance or longer tips", pair, total)
 	case total < lowContact:
-		j.addMeshWarning("low-contact", m, "%s: contact ratio %.3f is low; under %.1f every error is heard", pair, total, lowContact)
+		j.addMeshWarning("low-contact", m, "%s: contact ratio %.3f is low; under %.1f every error is heard. More teeth, less shift or longer tips raise it", pair, total, lowContact)
 	}
 	if c.LimitedByRoots() && c.RatioByTips-c.TransverseRatio > 0.0005 {
-		j.addMeshWarning("short-contact", m, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f", pair, c.RatioByTips, c.TransverseRatio)
+		j.addMeshWarning("short-contact", m, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f. Shift the undercut gear outward", pair, c.RatioByTips, c.TransverseRatio)
 	}
 }
 

@@ -34,33 +34,6 @@ func degrees(rad float64) string {
 	return strings.TrimSuffix(strings.TrimRight(fmt.Sprintf("%.4f", rad/involute.Degree), "0"), ".") + "°"
 }
 
-// impossibleGear words why a gear cannot be, with its numbers and the way out.
-func (j *job) impossibleGear(g *gear, err error) error {
-	var imp *involute.Impossible
-	if !errors.As(err, &imp) {
-		return err
-	}
-	at := g.settings.at
-	text := fmt.Sprintf("%s: %s", called(g), j.gearReason(imp))
-	if v, ok := g.settings.vals[keyOf(imp.Reason)]; ok {
-		at = v.at
-	} else if v, ok := j.backlashOf(g); ok && keyOf(imp.Reason) == "thin" {
-		at = v.at
-	}
-	if at.file == "" {
-		return wrong("%s", text)
-	}
-	return fault(at, "%s", text)
-}
-
-// called names a gear in a sentence.
-func called(g *gear) string {
-	if g.name == "gear" {
-		return "the gear"
-	}
-	return "gear " + g.name
-}
-
 // backlashOf returns the backlash that decided a gear's thickness.
 func (j *job) backlashOf(g *gear) (value, bool) {
 	for _, m := range j.meshes {
@@ -70,67 +43,6 @@ func (j *job) backlashOf(g *gear) (value, bool) {
 		}
 	}
 	return value{}, false
-}
-
-// keyOf names the key that a reason is most likely about, for its place in the file.
-func keyOf(r involute.Reason) string {
-	switch r {
-	case involute.BadModule:
-		return "module"
-	case involute.RackTipTooRound:
-		return "tip_radius"
-	case involute.RackPointed, involute.RackTooShallow:
-		return "dedendum"
-	case involute.TipBelowBase, involute.TipBelowRoot:
-		return "tip_diameter"
-	case involute.ChamferTooLarge:
-		return "tip_chamfer"
-	case involute.ThicknessNotPositive, involute.SpaceClosed:
-		return "thin"
-	case involute.Pointed:
-		return "shift"
-	case involute.NotFinite:
-		return "addendum"
-	}
-	return "teeth"
-}
-
-func (j *job) gearReason(e *involute.Impossible) string {
-	v, l := j.length(e.Value), j.length(e.Limit)
-	switch e.Reason {
-	case involute.RackPointed:
-		return fmt.Sprintf("a rack dedendum of %.4g × module makes the rack pointed; at this pressure angle it must be under %.4f × module", e.Value, e.Limit)
-	case involute.RackTipTooRound:
-		return fmt.Sprintf("a rack tip radius of %.4g × module does not fit; it must be from 0 to %.4f × module", e.Value, e.Limit)
-	case involute.RackTooShallow:
-		return "the rack has no depth; dedendum must be above 0"
-	case involute.TipBelowBase:
-		return fmt.Sprintf("the outside (tip) diameter %s is not above the base circle, %s; there is no involute. Raise shift, teeth or the tip diameter", v, l)
-	case involute.TipBelowRoot:
-		return fmt.Sprintf("the outside (tip) diameter %s is not above the root diameter, %s", v, l)
-	case involute.RootNotPositive:
-		return fmt.Sprintf("the root diameter comes out at %s; take more teeth or a larger shift", v)
-	case involute.Pointed:
-		return fmt.Sprintf("pointed teeth: the flanks meet at a diameter of %s, below the outside (tip) diameter %s. Lower shift, or give tip_diameter under %s", l, v, l)
-	case involute.ThicknessNotPositive:
-		return fmt.Sprintf("the tooth thickness comes out at %s; the thinning is more than the whole tooth", v)
-	case involute.SpaceClosed:
-		return fmt.Sprintf("the tooth thickness %s leaves no space in the pitch of %s; lower shift", v, l)
-	case involute.NoInvolute:
-		return fmt.Sprintf("undercut up to a diameter of %s, the tip ends at %s: no involute is left. Raise shift or teeth", v, l)
-	case involute.CutOff:
-		return "undercut cuts the teeth off at their roots; raise shift or teeth"
-	case involute.ChamferTooLarge:
-		if e.Limit <= 0 && e.Value > 0 {
-			return "a 45° tip chamfer does not fit: the flanks of so few teeth lean as much themselves at the tip. Leave tip_chamfer out"
-		}
-		return fmt.Sprintf("a tip chamfer of %s is too large; it must be from 0 to under %s", v, l)
-	case involute.BadHelix:
-		return fmt.Sprintf("a helix angle of %s is past the limit of %s", degrees(e.Value), degrees(e.Limit))
-	case involute.BadPressureAngle:
-		return fmt.Sprintf("a pressure angle of %s is past the limit of %s", degrees(e.Value), degrees(e.Limit))
-	}
-	return "a number is out of any sense; the module must be from 0.01 to 500 mm, coefficients of the order of 1"
 }
 
 // impossibleMesh words why two gears cannot run together.
@@ -149,10 +61,7 @@ func (j *job) impossibleMesh(m *mesh, err error) error {
 		text = "teeth this thin touch at no center distance; give center"
 	}
 	text = fmt.Sprintf("%s and %s: %s", m.first.name, m.second.name, text)
-	if m.at.file == "" {
-		return wrong("%s", text)
-	}
-	return fault(m.at, "%s", text)
+	return faultAt(m.at, "%s", text)
 }
 
 func (j *job) differ(a, b *involute.Gear) string {
