@@ -86,8 +86,7 @@ func (j *job) readCenter(m *mesh, s settings) error {
 	if err != nil {
 		return err
 	}
-	m.given = at != 0
-	if !m.given {
+	if at == 0 {
 		at, err = m.plan.Mesh.TightCenter(m.first.g.NominalThickness(), m.second.g.NominalThickness())
 		if err != nil {
 			return j.impossibleMesh(m, err)
@@ -104,7 +103,6 @@ func (j *job) readCenter(m *mesh, s settings) error {
 			return bad("center", s.vals["center"], "%v", err)
 		}
 	}
-	m.tolerance, m.class = (high-low)/2, class
 	m.plan.Center = inspect.Limits{Min: at + low, Max: at + high}
 	if v, ok := s.vals["center"]; ok {
 		m.at = v.at

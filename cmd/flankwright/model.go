@@ -79,10 +79,7 @@ type mesh struct {
 	index         int
 	first, second *gear
 	plan          inspect.PlanMesh
-	tolerance     float64 // ±, mm
-	class         string
-	given         bool // the center distance was given, not found
-	at            place
+	at            place // of the center distance, or of the mesh
 }
 
 // face returns the common face width, 0 where one is not known.

@@ -75,7 +75,6 @@ type pinTarget struct {
 	Usable      bool      `json:"usable"`
 	Why         string    `json:"why"`
 	Also        []alsoWay `json:"also"`
-	target      inspect.Target
 }
 
 type alsoWay struct {
@@ -97,7 +96,6 @@ type spanTarget struct {
 	FaceNeeded float64  `json:"face_width_needed_mm"`
 	Usable     bool     `json:"usable"`
 	Why        string   `json:"why"`
-	target     inspect.Target
 }
 
 type chordTarget struct {
@@ -165,7 +163,7 @@ func measured(t inspect.Target) (value *span, aim *float64, contact *span) {
 func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarget {
 	m := inspect.OverPins{Pin: p.Diameter}
 	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
-	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), target: t, Also: []alsoWay{}}
+	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), Also: []alsoWay{}}
 	if g.g.Helical() {
 		out.Kind = "balls"
 		out.FaceNeeded = m.FaceNeeded(g.middle())
@@ -218,7 +216,7 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 
 func (j *job) spanTarget(g *gear, k int) spanTarget {
 	t := inspect.NewTarget(g.g, inspect.Span{Teeth: k}, g.thickness.Limits, g.part())
-	out := spanTarget{Teeth: k, Usable: t.Usable(), Why: j.why(t.Faults), target: t}
+	out := spanTarget{Teeth: k, Usable: t.Usable(), Why: j.why(t.Faults)}
 	if len(t.Faults) > 0 && t.Faults[0].Code == inspect.NoReading {
 		out.Why = "the gear has not that many teeth"
 	}
