@@ -7,10 +7,19 @@ import (
 	"flankwright/involute"
 )
 
-// A Chain is a curve written as arcs and lines that meet end to end without a
+// From a tooth's exact curves to the arcs that a machine runs. Read, in this order:
+//
+//   - chain_piece.go: one line or arc between two points, told by its bulge
+//   - chain_walk.go: the curve to be fitted (a flank, a fillet), walked at an even pace
+//   - chain_biarc.go and chain_triarc.go: two or three arcs over a stretch of it, a strip
+//   - chain_deviation.go: how far arcs and curve lie apart, and why that is certain
+//   - chain.go, here: strips dealt out over the whole curve, with the fewest arcs
+//   - chain_path.go: the chains of one pitch, repeated round the gear to its contour
+
+// A chain is a curve written as arcs and lines that meet end to end without a
 // corner: piece i+1 starts where piece i ends, in the same direction.
-type Chain struct {
-	Pieces []Piece
+type chain struct {
+	Pieces []piece
 	// MaxDeviation is the greatest distance in mm between chain and curve, both
 	// ways: no point of the one is farther than this from the other. It is
 	// measured on the finished chain (see walk.deviation), not assumed.
@@ -38,7 +47,7 @@ const (
 	finestTolerance = 1e-10
 )
 
-// FitArcs returns a chain of arcs that stays within tolerance (mm, on both
+// fitArcs returns a chain of arcs that stays within tolerance (mm, on both
 // sides) of the curve, starts and ends exactly on its ends and in its
 // direction there, and has no corner inside. Lines and arcs pass as they are
 // (an arc over 85° in equal parts).
@@ -53,9 +62,9 @@ const (
 // An error is returned for a tolerance that is not a positive number or is
 // beyond the precision of coordinates, and for a curve without length or with
 // a point that is not finite.
-func FitArcs(c involute.Curve, tolerance float64) (Chain, error) {
-	if !(tolerance > 0) || math.IsInf(tolerance, 0) {
-		return Chain{}, fmt.Errorf("fit arcs: tolerance %g mm: must be a length above 0", tolerance)
+func fitArcs(c involute.Curve, tolerance float64) (chain, error) {
+	if !positive(tolerance) {
+		return chain{}, fmt.Errorf("fit arcs: tolerance %g mm: must be a length above 0", tolerance)
 	}
 	switch c := plain(c).(type) {
 	case involute.Line:
@@ -65,10 +74,10 @@ func FitArcs(c involute.Curve, tolerance float64) (Chain, error) {
 	}
 	w, err := newWalk(c)
 	if err != nil {
-		return Chain{}, fmt.Errorf("fit arcs: %w", err)
+		return chain{}, fmt.Errorf("fit arcs: %w", err)
 	}
 	if least := finestTolerance * w.size; tolerance < least {
-		return Chain{}, fmt.Errorf("fit arcs: tolerance %g mm is finer than coordinates of this size carry: at least %.2g mm", tolerance, least)
+		return chain{}, fmt.Errorf("fit arcs: tolerance %g mm is finer than coordinates of this size carry: at least %.2g mm", tolerance, least)
 	}
 	best, err := w.fitBetween([]float64{0, 1}, tolerance)
 	if cuts := w.extremes(); len(cuts) > 0 {
@@ -79,34 +88,34 @@ func FitArcs(c involute.Curve, tolerance float64) (Chain, error) {
 		}
 	}
 	if err != nil {
-		return Chain{}, fmt.Errorf("fit arcs: %w", err)
+		return chain{}, fmt.Errorf("fit arcs: %w", err)
 	}
 	return best, nil
 }
 
 // exactLine returns a line as the chain of one piece that it is.
-func exactLine(l involute.Line) (Chain, error) {
-	if length := l.To.Sub(l.From).Norm(); !(length > 0) || math.IsInf(length, 0) {
-		return Chain{}, fmt.Errorf("fit arcs: a line of length %g mm: must be above 0", length)
+func exactLine(l involute.Line) (chain, error) {
+	if length := l.To.Sub(l.From).Norm(); !positive(length) {
+		return chain{}, fmt.Errorf("fit arcs: a line of length %g mm: must be above 0", length)
 	}
-	return Chain{Pieces: []Piece{{From: l.From, To: l.To}}}, nil
+	return chain{Pieces: []piece{{From: l.From, To: l.To}}}, nil
 }
 
 // exactArc returns an arc as itself, in equal parts if it turns by more than maxSweep.
-func exactArc(a involute.Arc) (Chain, error) {
-	if length := a.Radius * math.Abs(a.Sweep); !(length > 0) || math.IsInf(length, 0) {
-		return Chain{}, fmt.Errorf("fit arcs: an arc of radius %g mm and sweep %g rad: both must be numbers other than 0", a.Radius, a.Sweep)
+func exactArc(a involute.Arc) (chain, error) {
+	if length := a.Radius * math.Abs(a.Sweep); !positive(length) {
+		return chain{}, fmt.Errorf("fit arcs: an arc of radius %g mm and sweep %g rad: both must be numbers other than 0", a.Radius, a.Sweep)
 	}
 	if turns := math.Abs(a.Sweep) / (2 * math.Pi); turns > 1+1e-12 {
-		return Chain{}, fmt.Errorf("fit arcs: an arc of %.3g turns: at most one", turns)
+		return chain{}, fmt.Errorf("fit arcs: an arc of %.3g turns: at most one", turns)
 	}
 	parts := int(math.Ceil(math.Abs(a.Sweep) / maxSweep))
 	bulge := math.Tan(a.Sweep / float64(parts) / 4)
-	var ch Chain
+	var ch chain
 	from, _ := a.At(0)
 	for i := 1; i <= parts; i++ {
 		to, _ := a.At(float64(i) / float64(parts))
-		ch.Pieces = append(ch.Pieces, Piece{From: from, To: to, Bulge: bulge})
+		ch.Pieces = append(ch.Pieces, piece{From: from, To: to, Bulge: bulge})
 		from = to
 	}
 	return ch, nil
@@ -114,12 +123,12 @@ func exactArc(a involute.Arc) (Chain, error) {
 
 // fitBetween returns a chain of strips that passes through every stop (places
 // on the walk, from 0 to 1) with the curve's direction there.
-func (w *walk) fitBetween(stops []float64, tolerance float64) (Chain, error) {
-	var all Chain
+func (w *walk) fitBetween(stops []float64, tolerance float64) (chain, error) {
+	var all chain
 	for i := 1; i < len(stops); i++ {
 		ch, err := w.fitRun(stops[i-1], stops[i], tolerance)
 		if err != nil {
-			return Chain{}, err
+			return chain{}, err
 		}
 		all.Pieces = append(all.Pieces, ch.Pieces...)
 		all.MaxDeviation = max(all.MaxDeviation, ch.MaxDeviation)
@@ -128,12 +137,12 @@ func (w *walk) fitBetween(stops []float64, tolerance float64) (Chain, error) {
 }
 
 // fitRun returns the fewest arcs, in strips that are evenly good, between the places a and b.
-func (w *walk) fitRun(a, b, tolerance float64) (Chain, error) {
+func (w *walk) fitRun(a, b, tolerance float64) (chain, error) {
 	for n := 2; n <= maxArcs; {
 		strips, worst := w.spread(a, b, n, tolerance)
 		// Measured only where the samples say that it can hold.
 		if worst <= tolerance {
-			var ch Chain
+			var ch chain
 			for _, x := range strips {
 				ch.Pieces = append(ch.Pieces, x.pieces...)
 			}
@@ -145,7 +154,7 @@ func (w *walk) fitRun(a, b, tolerance float64) (Chain, error) {
 		// The deviation falls with the cube of the number; 0.7 keeps the step from overshooting.
 		n = max(n+1, int(0.7*float64(n)*math.Cbrt(worst/tolerance)))
 	}
-	return Chain{}, fmt.Errorf("%d arcs do not bring the curve within %g mm: the tolerance is too fine for it", maxArcs, tolerance)
+	return chain{}, fmt.Errorf("%d arcs do not bring the curve within %g mm: the tolerance is too fine for it", maxArcs, tolerance)
 }
 
 // reach is the length a strip of 2 or 3 arcs covers at deviation ε on a curve

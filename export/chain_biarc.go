@@ -9,7 +9,7 @@ import (
 // A strip is a few arcs that take up point and direction of the curve at both
 // ends of a stretch of it: a biarc or a triarc.
 type strip struct {
-	pieces []Piece
+	pieces []piece
 	cost   float64 // what joints are judged by: see chargedDeviation
 }
 
@@ -40,12 +40,12 @@ func (w *walk) samples(a, b float64) []involute.Vec {
 //
 // and the joint divides the line between them in d : e. d may run from 0 to
 // c²/(2 c·u), where e vanishes. Both u and v must lean forward along c.
-func newBiarc(p, u, q, v involute.Vec, d float64) [2]Piece {
+func newBiarc(p, u, q, v involute.Vec, d float64) [2]piece {
 	c := q.Sub(p)
 	e := (c.Dot(c)/2 - d*c.Dot(u)) / (c.Dot(v) + d*(1-u.Dot(v)))
 	first, last := p.Add(u.Scale(d)), q.Sub(v.Scale(e))
 	joint := first.Scale(e / (d + e)).Add(last.Scale(d / (d + e)))
-	return [2]Piece{pieceLeaving(p, u, joint), pieceArriving(joint, q, v)}
+	return [2]piece{pieceLeaving(p, u, joint), pieceArriving(joint, q, v)}
 }
 
 // bestBiarc returns the biarc between the places a and b whose two arcs deviate alike.
@@ -55,10 +55,10 @@ func (w *walk) bestBiarc(a, b, tolerance float64) strip {
 	q, v := w.pointAndDirection(b)
 	c := q.Sub(p)
 	if c.Dot(u) <= 0 || c.Dot(v) <= 0 {
-		return strip{[]Piece{{From: p, To: q}}, hopeless * tolerance}
+		return strip{[]piece{{From: p, To: q}}, hopeless * tolerance}
 	}
 	longest := c.Dot(c) / (2 * c.Dot(u))
-	best, bestCost := [2]Piece{}, math.Inf(1)
+	best, bestCost := [2]piece{}, math.Inf(1)
 	low, high := 0.0, 1.0 // the share of longest that the first tangent takes
 	for range 16 {
 		share := (low + high) / 2
@@ -81,7 +81,7 @@ func (w *walk) bestBiarc(a, b, tolerance float64) strip {
 // and, in off, that from each. A piece that turns too far is charged as if it
 // deviated by more than the tolerance, in proportion to the cube of its sweep
 // as deviations are, so that joints move to where both hold.
-func chargedDeviation(pieces []Piece, samples []involute.Vec, off []float64, tolerance float64) (cost float64) {
+func chargedDeviation(pieces []piece, samples []involute.Vec, off []float64, tolerance float64) (cost float64) {
 	next := 0 // the first sample not yet past a joint
 	for i, p := range pieces {
 		g := newGauge(p)
@@ -91,7 +91,7 @@ func chargedDeviation(pieces []Piece, samples []involute.Vec, off []float64, tol
 			next++
 		}
 		cost = max(cost, off[i])
-		if s := math.Abs(p.Sweep()) / maxSweep; s > 1 {
+		if s := math.Abs(p.sweep()) / maxSweep; s > 1 {
 			cost = max(cost, 1.01*tolerance*s*s*s)
 		}
 	}

@@ -13,9 +13,9 @@ type gauge struct {
 }
 
 // newGauge returns the gauge of a piece.
-func newGauge(p Piece) gauge {
+func newGauge(p piece) gauge {
 	start, _ := p.directions()
-	return gauge{from: p.From, normal: start.Left(), curvature: p.Curvature()}
+	return gauge{from: p.From, normal: start.Left(), curvature: p.curvature()}
 }
 
 // offset returns the signed distance in mm of a point from the circle, positive
@@ -61,7 +61,7 @@ const pieceSamples = 48
 // difference between the curvatures, at most about |dκ/ds| H, while no arc at all
 // comes closer to such a curve than |dκ/ds| H³/192: a peak that the samples did
 // not show would be less than 192/(8·48²) = 1 % of what was found beside it.
-func (w *walk) deviation(pieces []Piece, a, b float64) float64 {
+func (w *walk) deviation(pieces []piece, a, b float64) float64 {
 	worst := max(w.point(a).Sub(pieces[0].From).Norm(), w.point(b).Sub(pieces[len(pieces)-1].To).Norm())
 	low := a
 	for i, p := range pieces {
@@ -80,7 +80,7 @@ func (w *walk) deviation(pieces []Piece, a, b float64) float64 {
 
 // crossing returns the first place between low and high where the curve crosses
 // the normal at the piece's end.
-func (w *walk) crossing(p Piece, low, high float64) (place float64, ok bool) {
+func (w *walk) crossing(p piece, low, high float64) (place float64, ok bool) {
 	_, dir := p.directions()
 	past := func(place float64) float64 { return w.point(place).Sub(p.To).Dot(dir) }
 	if past(low) >= 0 {
@@ -101,7 +101,7 @@ func (w *walk) crossing(p Piece, low, high float64) (place float64, ok bool) {
 
 // pieceDeviation returns the greatest |offset| of the curve between the places a
 // and b from the piece, +Inf if the curve turns back on it.
-func (w *walk) pieceDeviation(p Piece, a, b float64) float64 {
+func (w *walk) pieceDeviation(p piece, a, b float64) float64 {
 	g := newGauge(p)
 	place := func(i int) float64 { return a + (b-a)*float64(i)/pieceSamples }
 	off := func(u float64) float64 { return math.Abs(g.offset(w.point(u))) }
@@ -118,7 +118,7 @@ func (w *walk) pieceDeviation(p Piece, a, b float64) float64 {
 		// An end that tops its only neighbor may hide a peak between the two.
 		before, after := max(i-1, 0), min(i+1, pieceSamples)
 		if at[i] >= at[before] && at[i] >= at[after] {
-			_, peak := goldenMax(off, place(before), place(after))
+			_, peak := findMaximum(off, place(before), place(after))
 			worst = max(worst, at[i], peak)
 		}
 	}

@@ -32,11 +32,11 @@ const (
 	negligible = 4 * minPiece
 )
 
-// ClosedPath turns one pitch of an outline into a closed path of count pitches.
+// closedPath turns one pitch of an outline into a closed path of count pitches.
 //
 // Each curve of pitch must start where the one before it ends, and the last
 // must end where the first starts, turned about the origin by 2π/count. Each is
-// fitted by FitArcs; one that mirrors an earlier one (a tooth's second flank)
+// fitted by fitArcs; one that mirrors an earlier one (a tooth's second flank)
 // takes that one's chain, mirrored, so that teeth come out exactly symmetric.
 // Pitch k is the first one turned by 2πk/count, not the one before turned once
 // more, and joints are shared, so the path closes without gap.
@@ -45,7 +45,7 @@ const (
 // starts in the middle of the first curve if that is an arc or a line, and at
 // its start otherwise: give the pitch from its root land on and the path starts
 // in the center of a root, where a lead-in does no harm.
-func ClosedPath(pitch []involute.Curve, count int, tolerance float64) (Path, FitReport, error) {
+func closedPath(pitch []involute.Curve, count int, tolerance float64) (Path, FitReport, error) {
 	if count < 1 {
 		return Path{}, FitReport{}, fmt.Errorf("closed path: %d pitches: must be at least 1", count)
 	}
@@ -82,16 +82,16 @@ func ClosedPath(pitch []involute.Curve, count int, tolerance float64) (Path, Fit
 
 // plain takes the role off a curve.
 func plain(c involute.Curve) involute.Curve {
-	if piece, ok := c.(involute.Piece); ok {
-		return piece.Curve
+	if p, ok := c.(involute.Piece); ok {
+		return p.Curve
 	}
 	return c
 }
 
 // fitPitch returns a chain for each curve that is long enough to keep, and the
 // deviation and chord count of one pitch.
-func fitPitch(pitch []involute.Curve, tolerance float64) ([]Chain, FitReport, error) {
-	var chains []Chain
+func fitPitch(pitch []involute.Curve, tolerance float64) ([]chain, FitReport, error) {
+	var chains []chain
 	var walks []*walk
 	var report FitReport
 	chords := 0
@@ -105,7 +105,7 @@ func fitPitch(pitch []involute.Curve, tolerance float64) ([]Chain, FitReport, er
 		}
 		ch, ok := mirrorOfEarlier(w, walks, chains)
 		if !ok {
-			if ch, err = FitArcs(c, tolerance); err != nil {
+			if ch, err = fitArcs(c, tolerance); err != nil {
 				return nil, report, fmt.Errorf("curve %d of the pitch: %w", i+1, err)
 			}
 		}
@@ -137,7 +137,7 @@ func roughLength(c involute.Curve) float64 {
 // mirrorOfEarlier returns the chain of an earlier curve of which w is the mirror
 // image in a line through the origin. It is taken as one only if the mirrored
 // chain, measured on w, deviates exactly as it does on its own curve.
-func mirrorOfEarlier(w *walk, walks []*walk, chains []Chain) (Chain, bool) {
+func mirrorOfEarlier(w *walk, walks []*walk, chains []chain) (chain, bool) {
 	const alike = 1e-9 // mm or radians: rounding of a curve and its mirror image
 	first, firstDir := w.pointAndDirection(0)
 	last, lastDir := w.pointAndDirection(1)
@@ -154,15 +154,15 @@ func mirrorOfEarlier(w *walk, walks []*walk, chains []Chain) (Chain, bool) {
 			continue
 		}
 		if d := w.deviation(pieces, 0, 1); math.Abs(d-chains[i].MaxDeviation) <= alike*w.size {
-			return Chain{pieces, max(d, chains[i].MaxDeviation)}, true
+			return chain{pieces, max(d, chains[i].MaxDeviation)}, true
 		}
 	}
-	return Chain{}, false
+	return chain{}, false
 }
 
 // joinChains moves each chain's end onto the start of the next one, and returns
 // the greatest such move.
-func joinChains(chains []Chain, step float64) (gap float64, err error) {
+func joinChains(chains []chain, step float64) (gap float64, err error) {
 	for i := range chains {
 		pieces := chains[i].Pieces
 		end := &pieces[len(pieces)-1].To
@@ -188,7 +188,7 @@ func startInMiddle(p Path, n int) Path {
 	vs := append([]Vertex(nil), p.Vertices...)
 	if n%2 == 1 {
 		from, to, b := p.ends(m)
-		one, two := Piece{from, to, b}.halves()
+		one, two := piece{from, to, b}.halves()
 		vs[m].Bulge = one.Bulge
 		m++
 		vs = append(vs[:m], append([]Vertex{{two.From, two.Bulge}}, vs[m:]...)...)
@@ -197,11 +197,11 @@ func startInMiddle(p Path, n int) Path {
 }
 
 // judgeJoints notes corners and the sharpest break at the joints of one pitch.
-func (r *FitReport) judgeJoints(chains []Chain, step float64) {
+func (r *FitReport) judgeJoints(chains []chain, step float64) {
 	for i, ch := range chains {
 		for j, p := range ch.Pieces {
 			inside := j+1 < len(ch.Pieces)
-			var next Piece
+			var next piece
 			switch {
 			case inside:
 				next = ch.Pieces[j+1]
@@ -232,8 +232,8 @@ func (r *FitReport) countPieces(path Path) {
 			r.Lines++
 			continue
 		}
-		p := Piece{from, to, b}
-		length, radius := p.Length(), 1/math.Abs(p.Curvature())
+		p := piece{from, to, b}
+		length, radius := p.length(), 1/math.Abs(p.curvature())
 		if r.Arcs == 0 {
 			r.ShortestArc, r.MinRadius = length, radius
 		}

@@ -49,11 +49,11 @@ func sectorArea(c involute.Curve) float64 {
 // starting point, the symmetry and the report it must have.
 func checkGearPath(t rapid.TB, pitch []involute.Curve, z int, tol float64) (Path, FitReport) {
 	t.Helper()
-	path, r, err := ClosedPath(pitch, z, tol)
+	path, r, err := closedPath(pitch, z, tol)
 	if err != nil {
 		t.Fatal(err)
 	}
-	if err := path.Check(); err != nil {
+	if err := path.check(); err != nil {
 		t.Fatal(err)
 	}
 	if r.MaxDeviation > tol || r.Arcs+r.Lines != r.Segments || r.Segments != len(path.Vertices) {
@@ -64,8 +64,8 @@ func checkGearPath(t rapid.TB, pitch []involute.Curve, z int, tol float64) (Path
 		want += float64(z) * sectorArea(c)
 	}
 	// The path lies in a band of the deviation on both sides of the outline.
-	if d := math.Abs(path.Area() - want); d > r.MaxDeviation*path.Length()+1e-10*want {
-		t.Errorf("area off by %g mm² of %g, deviation %g over %g mm", d, want, r.MaxDeviation, path.Length())
+	if d := math.Abs(path.area() - want); d > r.MaxDeviation*path.length()+1e-10*want {
+		t.Errorf("area off by %g mm² of %g, deviation %g over %g mm", d, want, r.MaxDeviation, path.length())
 	}
 	// Turned by any pitch, and mirrored in the first root's center line, the path is itself.
 	start := path.Vertices[0].P
@@ -76,7 +76,7 @@ func checkGearPath(t rapid.TB, pitch []involute.Curve, z int, tol float64) (Path
 	n := len(path.Vertices)
 	for i := range path.Vertices {
 		from, to, b := path.ends(i)
-		back := mirrored([]Piece{{from, to, b}}, axis)[0]
+		back := mirrored([]piece{{from, to, b}}, axis)[0]
 		mFrom, mTo, mB := path.ends(n - 1 - i)
 		if d := max(back.From.Sub(mFrom).Norm(), back.To.Sub(mTo).Norm()); d > 1e-9*start.Norm() || math.Abs(back.Bulge-mB) > 1e-9 {
 			t.Fatalf("piece %d and its mirror image differ by %g mm, bulges %g and %g", i, d, b, mB)
@@ -135,7 +135,7 @@ func TestRoundedSquare(t *testing.T) {
 		involute.Line{From: involute.Vec{X: 5, Y: -4}, To: involute.Vec{X: 5, Y: 4}},
 		involute.Arc{Center: involute.Vec{X: 4, Y: 4}, Radius: 1, Sweep: math.Pi / 2},
 	}
-	path, r, err := ClosedPath(pitch, 4, 0.001)
+	path, r, err := closedPath(pitch, 4, 0.001)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -147,8 +147,8 @@ func TestRoundedSquare(t *testing.T) {
 	if want := 4 * (1 + 18); r.LinesNeeded != want {
 		t.Errorf("%d chords, want %d", r.LinesNeeded, want)
 	}
-	if want := 100 - 4 + math.Pi; math.Abs(path.Area()-want) > 1e-10 {
-		t.Errorf("area %.12f, want %.12f", path.Area(), want)
+	if want := 100 - 4 + math.Pi; math.Abs(path.area()-want) > 1e-10 {
+		t.Errorf("area %.12f, want %.12f", path.area(), want)
 	}
 	if p := path.Vertices[0].P; p != (involute.Vec{X: 5}) {
 		t.Errorf("starts at %v, want the middle of the first side", p)
@@ -157,7 +157,7 @@ func TestRoundedSquare(t *testing.T) {
 
 func TestClosedPathLeavesOutLandsWithoutLength(t *testing.T) {
 	pitch := pitchOf(t, involute.Spec{Teeth: 24, Module: 2, Rack: involute.Rack{TipRadius: 0.38}})
-	_, want, err := ClosedPath(pitch, 24, 0.001)
+	_, want, err := closedPath(pitch, 24, 0.001)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -165,7 +165,7 @@ func TestClosedPathLeavesOutLandsWithoutLength(t *testing.T) {
 	corner, _ := pitch[3].At(0)
 	end.Start, end.Radius = corner.Angle(), corner.Norm()
 	with := append(append(append([]involute.Curve(nil), pitch[:3]...), end), pitch[3:]...)
-	if _, r, err := ClosedPath(with, 24, 0.001); err != nil || r.Segments != want.Segments {
+	if _, r, err := closedPath(with, 24, 0.001); err != nil || r.Segments != want.Segments {
 		t.Errorf("%d pieces, %v; want %d", r.Segments, err, want.Segments)
 	}
 }
@@ -183,7 +183,7 @@ func TestClosedPathRefuses(t *testing.T) {
 		"curve missed": {append(append([]involute.Curve(nil), pitch[:2]...), pitch[3:]...), 24, "curve 2 of the pitch ends at"},
 		"not a number": {[]involute.Curve{involute.Arc{Radius: math.NaN(), Sweep: 1}}, 24, "curve 1"},
 	} {
-		if p, _, err := ClosedPath(tt.pitch, tt.count, 0.001); err == nil || !strings.Contains(err.Error(), tt.say) {
+		if p, _, err := closedPath(tt.pitch, tt.count, 0.001); err == nil || !strings.Contains(err.Error(), tt.say) {
 			t.Errorf("%s: %d vertices, %v; want an error with %q", name, len(p.Vertices), err, tt.say)
 		}
 	}
@@ -204,7 +204,7 @@ func BenchmarkClosedPath(b *testing.B) {
 		pitch = append(pitch, p)
 	}
 	for b.Loop() {
-		if _, _, err := ClosedPath(pitch, 24, 0.0025); err != nil {
+		if _, _, err := closedPath(pitch, 24, 0.0025); err != nil {
 			b.Fatal(err)
 		}
 	}

@@ -6,23 +6,23 @@ import (
 	"flankwright/involute"
 )
 
-// A Piece is a straight line or an arc from one point to another.
-type Piece struct {
+// A piece is a straight line or an arc from one point to another.
+type piece struct {
 	From, To involute.Vec // mm
 	Bulge    float64      // tan(sweep/4), positive counter-clockwise; 0 is a line
 }
 
 // pieceLeaving returns the arc that leaves from in the unit direction dir and ends at to.
-func pieceLeaving(from, dir, to involute.Vec) Piece {
+func pieceLeaving(from, dir, to involute.Vec) piece {
 	chord := to.Sub(from)
 	// The sweep is twice the angle from direction to chord; tan(x/2) = sin x/(1 + cos x).
-	return Piece{from, to, straighten(dir.Cross(chord) / (chord.Norm() + dir.Dot(chord)))}
+	return piece{from, to, straighten(dir.Cross(chord) / (chord.Norm() + dir.Dot(chord)))}
 }
 
 // pieceArriving returns the arc that starts at from and reaches to in the unit direction dir.
-func pieceArriving(from, to, dir involute.Vec) Piece {
+func pieceArriving(from, to, dir involute.Vec) piece {
 	chord := to.Sub(from)
-	return Piece{from, to, straighten(chord.Cross(dir) / (chord.Norm() + dir.Dot(chord)))}
+	return piece{from, to, straighten(chord.Cross(dir) / (chord.Norm() + dir.Dot(chord)))}
 }
 
 // straighten turns a bulge too small to matter into that of a line.
@@ -33,29 +33,29 @@ func straighten(bulge float64) float64 {
 	return bulge
 }
 
-// Sweep returns the angle in radians by which the piece turns, positive counter-clockwise.
-func (p Piece) Sweep() float64 { return 4 * math.Atan(p.Bulge) }
+// sweep returns the angle in radians by which the piece turns, positive counter-clockwise.
+func (p piece) sweep() float64 { return 4 * math.Atan(p.Bulge) }
 
-// Length returns the length along the piece, in mm.
-func (p Piece) Length() float64 {
+// length returns the length along the piece, in mm.
+func (p piece) length() float64 {
 	chord := p.To.Sub(p.From).Norm()
-	half := p.Sweep() / 2
+	half := p.sweep() / 2
 	if math.Abs(half) < 1e-8 { // half/sin(half) is 1 to the last digit
 		return chord
 	}
 	return chord * half / math.Sin(half)
 }
 
-// Curvature returns 1/radius in 1/mm, positive where the piece turns to the
+// curvature returns 1/radius in 1/mm, positive where the piece turns to the
 // left and 0 for a line: 2 sin(sweep/2)/chord with sin(sweep/2) = 2b/(1 + b²).
-func (p Piece) Curvature() float64 {
+func (p piece) curvature() float64 {
 	b := p.Bulge
 	return 4 * b / ((1 + b*b) * p.To.Sub(p.From).Norm())
 }
 
 // directions returns the unit directions in which the piece starts and ends:
 // the chord's, turned by half the sweep backward and forward.
-func (p Piece) directions() (start, end involute.Vec) {
+func (p piece) directions() (start, end involute.Vec) {
 	chord := p.To.Sub(p.From)
 	u := chord.Scale(1 / chord.Norm())
 	b := p.Bulge
@@ -66,30 +66,30 @@ func (p Piece) directions() (start, end involute.Vec) {
 }
 
 // halves cuts the piece in the middle of its length.
-func (p Piece) halves() (Piece, Piece) {
+func (p piece) halves() (piece, piece) {
 	chord := p.To.Sub(p.From)
 	// An arc's rise over its chord is bulge·chord/2, to the right of the chord where it turns left.
 	middle := p.From.Add(chord.Scale(0.5)).Sub(chord.Left().Scale(p.Bulge / 2))
 	b := p.Bulge / (1 + math.Hypot(1, p.Bulge)) // tan(x/2) from tan x
-	return Piece{p.From, middle, b}, Piece{middle, p.To, b}
+	return piece{p.From, middle, b}, piece{middle, p.To, b}
 }
 
 // rotated returns the piece turned about the origin by theta radians.
-func (p Piece) rotated(theta float64) Piece {
-	return Piece{p.From.Rotate(theta), p.To.Rotate(theta), p.Bulge}
+func (p piece) rotated(theta float64) piece {
+	return piece{p.From.Rotate(theta), p.To.Rotate(theta), p.Bulge}
 }
 
 // mirrored returns the pieces reflected in the line through the origin at polar
 // angle axis, and walked the other way. Reflection and reversal each change the
 // sign of a bulge, so bulges stay.
-func mirrored(pieces []Piece, axis float64) []Piece {
+func mirrored(pieces []piece, axis float64) []piece {
 	reflect := func(v involute.Vec) involute.Vec {
 		s, c := math.Sincos(2 * axis)
 		return involute.Vec{X: c*v.X + s*v.Y, Y: s*v.X - c*v.Y}
 	}
-	out := make([]Piece, len(pieces))
+	out := make([]piece, len(pieces))
 	for i, p := range pieces {
-		out[len(pieces)-1-i] = Piece{reflect(p.To), reflect(p.From), p.Bulge}
+		out[len(pieces)-1-i] = piece{reflect(p.To), reflect(p.From), p.Bulge}
 	}
 	return out
 }

@@ -10,9 +10,9 @@ import (
 
 // distanceToPiece is the distance from q to an arc or line by its center: to the
 // circle inside the sector, else to the nearer end.
-func distanceToPiece(p Piece, q involute.Vec) float64 {
+func distanceToPiece(p piece, q involute.Vec) float64 {
 	ends := min(q.Sub(p.From).Norm(), q.Sub(p.To).Norm())
-	switch c := (Path{Vertices: []Vertex{{p.From, p.Bulge}, {p.To, 0}}}).Piece(0).(type) {
+	switch c := (Path{Vertices: []Vertex{{p.From, p.Bulge}, {p.To, 0}}}).Curve(0).(type) {
 	case involute.Arc:
 		turned := q.Sub(c.Center).Angle() - c.Start
 		turned = math.Mod(math.Copysign(1, c.Sweep)*turned+4*math.Pi, 2*math.Pi)
@@ -35,7 +35,7 @@ func distanceToChord(a, b, q involute.Vec) float64 {
 // bruteDistance is the Hausdorff distance of chain and curve by dense points of
 // each against all of the other. Curve points are even in the parameter and, by
 // a square, dense toward both ends.
-func bruteDistance(c involute.Curve, pieces []Piece) float64 {
+func bruteDistance(c involute.Curve, pieces []piece) float64 {
 	const n = 3000
 	t0, t1 := c.Domain()
 	curve := make([]involute.Vec, n+1)
@@ -68,7 +68,7 @@ func bruteDistance(c involute.Curve, pieces []Piece) float64 {
 // with the one found point against point. The chords between curve points lie
 // off the curve by at most slack.
 func checkAgainstBruteForce(t *rapid.T, c involute.Curve, tol, slack float64) {
-	ch, err := FitArcs(c, tol)
+	ch, err := fitArcs(c, tol)
 	if err != nil {
 		t.Fatalf("%+v: %v", c, err)
 	}
@@ -125,7 +125,7 @@ func TestInvolutesKeepTheirTolerance(t *testing.T) {
 		tol := drawTolerance(t, m)
 		checkAgainstBruteForce(t, c, tol, chordSlack(c))
 		if t0 > 0.01 {
-			ch, _ := FitArcs(c, tol)
+			ch, _ := fitArcs(c, tol)
 			checkChain(t, c, ch)
 		}
 	})

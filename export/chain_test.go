@@ -62,15 +62,15 @@ func flankOf(m, z float64) involute.Flank {
 }
 
 // pieceAt returns the point a share s of the way along a piece, by center and
-// radius: a route of its own beside gauge and Piece.halves.
-func pieceAt(p Piece, s float64) involute.Vec {
-	point, _ := Path{Vertices: []Vertex{{p.From, p.Bulge}, {p.To, 0}}}.Piece(0).At(s)
+// radius: a route of its own beside gauge and piece.halves.
+func pieceAt(p piece, s float64) involute.Vec {
+	point, _ := Path{Vertices: []Vertex{{p.From, p.Bulge}, {p.To, 0}}}.Curve(0).At(s)
 	return point
 }
 
 // checkChain fails unless the chain joins, is tangent within 0.01° at its
 // joints and at both ends to the curve, and no arc turns over 90°.
-func checkChain(t rapid.TB, c involute.Curve, ch Chain) {
+func checkChain(t rapid.TB, c involute.Curve, ch chain) {
 	t.Helper()
 	t0, t1 := c.Domain()
 	first, _ := c.At(t0)
@@ -89,7 +89,7 @@ func checkChain(t rapid.TB, c involute.Curve, ch Chain) {
 	}
 	dir := ahead(t0, h).Scale(2).Sub(ahead(t0, 2*h))
 	for i, p := range ch.Pieces {
-		if sweep := math.Abs(p.Sweep()); sweep > math.Pi/2 {
+		if sweep := math.Abs(p.sweep()); sweep > math.Pi/2 {
 			t.Errorf("piece %d turns by %.1f°", i, sweep*180/math.Pi)
 		}
 		if i > 0 && p.From != ch.Pieces[i-1].To {
@@ -122,7 +122,7 @@ func TestFlankTakesNoMoreArcsThanOptimalBiarcs(t *testing.T) {
 	} {
 		c := flankOf(tt.m, tt.z)
 		for i, tol := range tolerances {
-			ch, err := FitArcs(c, tol)
+			ch, err := fitArcs(c, tol)
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -155,7 +155,7 @@ func TestMeasuredDeviationAgreesWithInvoluteInClosedForm(t *testing.T) {
 			for _, share := range []float64{0.0001, 0.001, 0.01} {
 				c := flankOf(m, z)
 				c.BaseAngle = 0.7
-				ch, err := FitArcs(c, share*m)
+				ch, err := fitArcs(c, share*m)
 				if err != nil {
 					t.Fatal(err)
 				}
@@ -194,7 +194,7 @@ func TestDeviationFollowsTheCubeLaw(t *testing.T) {
 		reach float64 // of all strips together
 	}{{2, 6.868}, {3, 11.86}, {4, 2 * 6.868}, {5, 11.86 + 6.868}, {9, 3 * 11.86}} {
 		strips, _ := w.spread(0, 1, tt.arcs, 1e-6)
-		var pieces []Piece
+		var pieces []piece
 		for _, s := range strips {
 			pieces = append(pieces, s.pieces...)
 		}
@@ -211,7 +211,7 @@ func TestDeviationFollowsTheCubeLaw(t *testing.T) {
 func TestEllipse(t *testing.T) {
 	for _, tol := range []float64{0.05, 0.001, 1e-5} {
 		c := ellipse{a: 2, b: 1, t1: 2 * math.Pi}
-		ch, err := FitArcs(c, tol)
+		ch, err := fitArcs(c, tol)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -219,10 +219,10 @@ func TestEllipse(t *testing.T) {
 		length := 0.0
 		var path Path
 		for _, p := range ch.Pieces {
-			length += p.Length()
+			length += p.length()
 			path.Vertices = append(path.Vertices, Vertex{p.From, p.Bulge})
 			// A biarc on a spiral keeps between the curvatures at its ends.
-			if k := p.Curvature(); k < 0.25*(1-1e-9) || k > 2*(1+1e-9) {
+			if k := p.curvature(); k < 0.25*(1-1e-9) || k > 2*(1+1e-9) {
 				t.Errorf("±%g: an arc of curvature %.9f, the ellipse's lie in [0.25, 2]", tol, k)
 			}
 		}
@@ -230,7 +230,7 @@ func TestEllipse(t *testing.T) {
 		if d := math.Abs(length - 9.688448220547676); d > 2*math.Pi*ch.MaxDeviation {
 			t.Errorf("±%g: length off by %g", tol, d)
 		}
-		if d := math.Abs(path.Area() - 2*math.Pi); d > 9.7*ch.MaxDeviation {
+		if d := math.Abs(path.area() - 2*math.Pi); d > 9.7*ch.MaxDeviation {
 			t.Errorf("±%g: area off by %g", tol, d)
 		}
 	}
@@ -251,8 +251,8 @@ func TestEllipse(t *testing.T) {
 
 func TestLinesAndArcsPassAsTheyAre(t *testing.T) {
 	l := involute.Line{From: involute.Vec{X: 1, Y: 2}, To: involute.Vec{X: 4, Y: 6}}
-	ch, err := FitArcs(involute.Piece{Curve: l}, 0.001)
-	if err != nil || len(ch.Pieces) != 1 || ch.Pieces[0] != (Piece{l.From, l.To, 0}) || ch.MaxDeviation != 0 {
+	ch, err := fitArcs(involute.Piece{Curve: l}, 0.001)
+	if err != nil || len(ch.Pieces) != 1 || ch.Pieces[0] != (piece{l.From, l.To, 0}) || ch.MaxDeviation != 0 {
 		t.Errorf("line: %+v, %v", ch, err)
 	}
 	for _, tt := range []struct {
@@ -260,14 +260,14 @@ func TestLinesAndArcsPassAsTheyAre(t *testing.T) {
 		parts   int
 	}{{10, 1}, {-85, 1}, {86, 2}, {170, 2}, {-180, 3}, {360, 5}} {
 		a := involute.Arc{Center: involute.Vec{X: 3, Y: -1}, Radius: 5, Start: 0.4, Sweep: tt.degrees * math.Pi / 180}
-		ch, err := FitArcs(a, 0.001)
+		ch, err := fitArcs(a, 0.001)
 		if err != nil || len(ch.Pieces) != tt.parts {
 			t.Errorf("arc of %g°: %d parts, %v; want %d", tt.degrees, len(ch.Pieces), err, tt.parts)
 			continue
 		}
 		checkChain(t, a, ch)
 		for _, p := range ch.Pieces {
-			if k := p.Curvature() * math.Copysign(1, tt.degrees); math.Abs(k-0.2) > 1e-14 {
+			if k := p.curvature() * math.Copysign(1, tt.degrees); math.Abs(k-0.2) > 1e-14 {
 				t.Errorf("arc of %g°: a part of curvature %.16f, want 0.2", tt.degrees, k)
 			}
 		}
@@ -278,7 +278,7 @@ func TestLinesAndArcsPassAsTheyAre(t *testing.T) {
 // stretch of it, which is then a line.
 func TestNearlyStraightBecomesLines(t *testing.T) {
 	c := involute.Flank{BaseRadius: 1e6, T0: 0.4, T1: 0.4000001}
-	ch, err := FitArcs(c, 0.001)
+	ch, err := fitArcs(c, 0.001)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -308,7 +308,7 @@ func TestFitArcsRefuses(t *testing.T) {
 		"not finite":   {involute.Flank{BaseRadius: math.Inf(1), T0: 0, T1: 1}, 0.001, "finite"},
 		"a point":      {ellipse{t1: 1}, 0.001, "not a finite number"},
 	} {
-		if ch, err := FitArcs(tt.c, tt.tol); err == nil || !strings.Contains(err.Error(), tt.say) {
+		if ch, err := fitArcs(tt.c, tt.tol); err == nil || !strings.Contains(err.Error(), tt.say) {
 			t.Errorf("%s: %v, %v; want an error with %q", name, ch, err, tt.say)
 		}
 	}
@@ -317,7 +317,7 @@ func TestFitArcsRefuses(t *testing.T) {
 func BenchmarkFitFlank(b *testing.B) {
 	c := flankOf(2, 24)
 	for b.Loop() {
-		if _, err := FitArcs(c, 0.0025); err != nil {
+		if _, err := fitArcs(c, 0.0025); err != nil {
 			b.Fatal(err)
 		}
 	}

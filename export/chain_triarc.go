@@ -15,7 +15,7 @@ import (
 //	a = (2 w·n − k w²) / (2 (k w·u − n·u)),
 //
 // and the same for the last arc, walked backward. ok is false where there is none.
-func newTriarc(p, u, q, v, m, d involute.Vec, k float64) (pieces [3]Piece, ok bool) {
+func newTriarc(p, u, q, v, m, d involute.Vec, k float64) (pieces [3]piece, ok bool) {
 	n := d.Left()
 	tangent := func(end, dir involute.Vec) float64 {
 		w := end.Sub(m)
@@ -33,7 +33,7 @@ func newTriarc(p, u, q, v, m, d involute.Vec, k float64) (pieces [3]Piece, ok bo
 	_, dir := first.directions()
 	pieces[0] = first
 	pieces[1] = pieceLeaving(first.To, dir, last.To)
-	pieces[2] = Piece{last.To, q, -last.Bulge}
+	pieces[2] = piece{last.To, q, -last.Bulge}
 	return pieces, true
 }
 
@@ -49,7 +49,7 @@ func (w *walk) bestTriarc(a, b, tolerance float64) strip {
 	p, u := w.pointAndDirection(a)
 	q, v := w.pointAndDirection(b)
 	c := q.Sub(p)
-	best := strip{pieces: []Piece{{From: p, To: q}}, cost: hopeless * tolerance}
+	best := strip{pieces: []piece{{From: p, To: q}}, cost: hopeless * tolerance}
 	skew := widest * (turn(c, v) - turn(u, c))
 	if c.Dot(u) <= 0 || c.Dot(v) <= 0 {
 		return best
@@ -71,7 +71,7 @@ func (w *walk) bestTriarc(a, b, tolerance float64) strip {
 			}
 			off = [3]float64{}
 			if cost := chargedDeviation(pieces[:], samples, off[:], tolerance); cost < best.cost {
-				best = strip{append([]Piece(nil), pieces[:]...), cost}
+				best = strip{append([]piece(nil), pieces[:]...), cost}
 			}
 			// The steeper the crossing, the more the middle arc deviates and the less the others.
 			if off[1] > max(off[0], off[2]) {
@@ -87,7 +87,7 @@ func (w *walk) bestTriarc(a, b, tolerance float64) strip {
 		}
 	}
 	if math.IsInf(best.cost, 1) {
-		return strip{pieces: []Piece{{From: p, To: q}}, cost: hopeless * tolerance}
+		return strip{pieces: []piece{{From: p, To: q}}, cost: hopeless * tolerance}
 	}
 	return best
 }

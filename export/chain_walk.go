@@ -21,7 +21,7 @@ type walk struct {
 	chords   float64   // ∫ sqrt(|κ|/8) ds: over sqrt(tolerance) the chords that would be needed
 }
 
-// A knot of the walk is added wherever a step turns by more than finestTurn or
+// A knot of the walk is added wherever a step turns by more than walkTurn or
 // is longer than 1/walkSteps of the whole.
 const (
 	walkSteps  = 96
@@ -32,7 +32,7 @@ const (
 // newWalk measures the curve out.
 func newWalk(c involute.Curve) (*walk, error) {
 	t0, t1 := c.Domain()
-	if !(t0 < t1) || math.IsInf(t0, 0) || math.IsInf(t1, 0) {
+	if !(t0 < t1) || !finite(t0, t1) {
 		return nil, fmt.Errorf("a curve over the parameters %g to %g: must be finite and rising", t0, t1)
 	}
 	w := &walk{curve: c, t: []float64{t0}}
@@ -66,7 +66,7 @@ func (w *walk) measure() error {
 	for i, t := range w.t {
 		p, _ := w.curve.At(t)
 		dir := w.direction(t)
-		if sum := p.X + p.Y + dir.X + dir.Y; math.IsNaN(sum) || math.IsInf(sum, 0) {
+		if !finite(p.X + p.Y + dir.X + dir.Y) {
 			return fmt.Errorf("a curve whose point or direction at parameter %g is not a finite number", t)
 		}
 		if i > 0 {
@@ -169,35 +169,11 @@ func (w *walk) extremes() []float64 {
 			top = i
 		case sense != 0 && math.Abs(change) > 1e-6*greatest:
 			if top > 0 {
-				peak, _ := goldenMax(func(u float64) float64 { return sense * at(u) }, w.place[top-1], w.place[top+1])
+				peak, _ := findMaximum(func(u float64) float64 { return sense * at(u) }, w.place[top-1], w.place[top+1])
 				out = append(out, peak)
 			}
 			sense, top = -sense, i
 		}
 	}
 	return out
-}
-
-// goldenMax returns the place of a maximum of f between a and b, and its value,
-// by golden section down to 1e-7 of the bracket, where a smooth maximum is
-// flat to the last digit.
-func goldenMax(f func(float64) float64, a, b float64) (place, value float64) {
-	const g = 0.6180339887498949
-	x, y := b-g*(b-a), a+g*(b-a)
-	fx, fy := f(x), f(y)
-	for range 34 {
-		if fx > fy {
-			b, y, fy = y, x, fx
-			x = b - g*(b-a)
-			fx = f(x)
-		} else {
-			a, x, fx = x, y, fy
-			y = a + g*(b-a)
-			fy = f(y)
-		}
-	}
-	if fx > fy {
-		return x, fx
-	}
-	return y, fy
 }

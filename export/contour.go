@@ -1,8 +1,6 @@
 package export
 
 import (
-	"bytes"
-	"fmt"
 	"math"
 
 	"flankwright/inspect"
@@ -25,11 +23,11 @@ type ContourSpec struct {
 // base, form and root circles for reference. The first tooth points along +x.
 func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	o := Outline{Unit: s.Unit, Title: s.Title}
-	var pieces []involute.Curve
+	var pitch []involute.Curve
 	for _, p := range s.Tooth.Outline().Pieces {
-		pieces = append(pieces, p)
+		pitch = append(pitch, p)
 	}
-	path, report, err := ClosedPath(pieces, s.Tooth.Teeth(), s.Tolerance)
+	path, report, err := closedPath(pitch, s.Tooth.Teeth(), s.Tolerance)
 	if err != nil {
 		return o, report, err
 	}
@@ -67,10 +65,10 @@ func referenceDiameters(t involute.Tooth) []float64 {
 // points along +x, its floor at bore/2 + depth. Without a keyway it is the
 // circle in two halves.
 func BorePath(s ContourSpec) Path {
-	r := s.Bore / 2
 	if s.KeyWidth <= 0 {
-		return Path{Vertices: []Vertex{{involute.Vec{X: r}, 1}, {involute.Vec{X: -r}, 1}}}
+		return circlePath(involute.Vec{}, s.Bore)
 	}
+	r := s.Bore / 2
 	half := s.KeyWidth / 2
 	wall := math.Sqrt(r*r - half*half)
 	floor := r + s.KeyDepth
@@ -81,60 +79,5 @@ func BorePath(s ContourSpec) Path {
 		{involute.Vec{X: floor, Y: -half}, 0},
 		{involute.Vec{X: floor, Y: half}, 0},
 		{involute.Vec{X: wall, Y: half}, b},
-	}}.SplitArcs()
-}
-
-// A Format is a kind of outline file.
-type Format int
-
-// The formats.
-const (
-	FormatDXF Format = iota // R2000
-	FormatDXFR12
-	FormatSVG
-)
-
-// Ending returns the file name's ending, with its dot.
-func (f Format) Ending() string {
-	if f == FormatSVG {
-		return ".svg"
-	}
-	return ".dxf"
-}
-
-// Encode writes an outline as a file's bytes.
-func (f Format) Encode(o Outline) ([]byte, error) {
-	var b bytes.Buffer
-	var err error
-	switch f {
-	case FormatDXF:
-		err = WriteDXF(&b, o, R2000)
-	case FormatDXFR12:
-		err = WriteDXF(&b, o, R12)
-	case FormatSVG:
-		err = WriteSVG(&b, o)
-	}
-	return b.Bytes(), err
-}
-
-// Decode reads an outline back from a file's bytes.
-func (f Format) Decode(data []byte) (Outline, error) {
-	if f == FormatSVG {
-		return ReadSVG(bytes.NewReader(data))
-	}
-	return ReadDXF(bytes.NewReader(data))
-}
-
-// Cut returns the one closed contour on the cut layer.
-func (o Outline) Cut() (Path, error) {
-	var found []Path
-	for _, c := range o.Contours {
-		if c.Layer == LayerCut {
-			found = append(found, c.Path)
-		}
-	}
-	if len(found) != 1 {
-		return Path{}, fmt.Errorf("%d closed contours on layer %s, not 1", len(found), LayerCut)
-	}
-	return found[0], nil
+	}}.splitArcs()
 }

@@ -17,8 +17,8 @@ const (
 	beyond       = 1.5 // how far an extension line goes past its dimension line
 )
 
-func dimensionLetters() lettering { return lettering{Size: 9.5 * pt, Bold: true, Tone: Black} }
-func leaderLetters() lettering    { return lettering{Size: 8 * pt, Tone: Black} }
+func dimensionLetters() lettering { return lettering{Size: 9.5 * pt, Bold: true, Tone: black} }
+func leaderLetters() lettering    { return lettering{Size: 8 * pt, Tone: black} }
 
 // dimension draws a dimension line from one point to another, with arrows at both ends and its
 // words upright in the middle. Where they do not fit between the arrows, the arrows point
@@ -46,11 +46,11 @@ func (b *board) dimension(from, to involute.Vec, words string, l lettering) {
 	b.arrow(to, dir.Scale(-1), inside)
 	middle := from.Add(along.Scale(0.5))
 	if level && !inside {
-		b.say(middle.X, middle.Y+beyond+0.8, words, l, AlignCenter)
+		b.say(middle.X, middle.Y+beyond+0.8, words, l, alignCenter)
 		return
 	}
-	b.fill(box{middle.X - width/2, middle.Y - height/2, middle.X + width/2, middle.Y + height/2}.outline(), Paper)
-	b.say(middle.X, middle.Y-0.36*l.Size, words, l, AlignCenter)
+	b.fill(box{middle.X - width/2, middle.Y - height/2, middle.X + width/2, middle.Y + height/2}.outline(), paper)
+	b.say(middle.X, middle.Y-0.36*l.Size, words, l, alignCenter)
 }
 
 // arrow draws an arrowhead with its point at tip; it lies on the side of inward where inside
@@ -63,7 +63,7 @@ func (b *board) arrow(tip, inward involute.Vec, inside bool) {
 	side := inward.Left().Scale(arrowWidth / 2)
 	head := straight(tip, tip.Add(back).Add(side), tip.Add(back).Sub(side))
 	head.Closed = true
-	b.fill(head, Black)
+	b.fill(head, black)
 }
 
 // leader draws a thin line to a point, with a dot on it.
@@ -75,5 +75,5 @@ func (b *board) leader(from, to involute.Vec) {
 // dot draws a small filled circle.
 func (b *board) dot(at involute.Vec) {
 	const dot = 1.0
-	b.fill(circleLine(at, dot), Black)
+	b.fill(circlePath(at, dot).line(), black)
 }

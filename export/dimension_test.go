@@ -25,15 +25,15 @@ func TestDimensionArrows(t *testing.T) {
 		b := &board{typeface: fonts}
 		b.dimension(c.from, c.to, "M 12.345 mm", dimensionLetters())
 		var tips, backs []involute.Vec
-		var words Text
+		var words textLine
 		for _, e := range b.elements {
 			switch e := e.(type) {
-			case Shape:
-				if v := e.Outline.Vertices; len(v) == 3 && e.Style.Fill == Black {
+			case shape:
+				if v := e.Outline.Vertices; len(v) == 3 && e.Style.Fill == black {
 					tips = append(tips, v[0].P)
 					backs = append(backs, v[1].P.Add(v[2].P).Scale(0.5))
 				}
-			case Text:
+			case textLine:
 				words = e
 			}
 		}

@@ -28,11 +28,11 @@ const flatBulge = 1e-9
 // render draws the elements of a page. Where the format should not carry fonts,
 // words become outlines.
 func render(d Drawing, to canvas.Renderer, fonts typeface, words wordsAs) error {
-	for _, e := range d.Elements {
+	for _, e := range d.elements {
 		switch e := e.(type) {
-		case Shape:
+		case shape:
 			to.RenderPath(canvasPath(e.Outline), canvasStyle(e.Style), canvas.Identity)
-		case Text:
+		case textLine:
 			if err := renderText(e, to, fonts, words); err != nil {
 				return err
 			}
@@ -49,17 +49,17 @@ const (
 	wordsAsOutlines
 )
 
-func renderText(t Text, to canvas.Renderer, fonts typeface, words wordsAs) error {
-	if t.Tone == Clear || t.Words == "" {
+func renderText(t textLine, to canvas.Renderer, fonts typeface, words wordsAs) error {
+	if t.Tone == noInk || t.Words == "" {
 		return nil
 	}
 	face := fonts.face(t.Size, t.Bold, t.Tone)
 	s := fonts.printable(t.Words)
 	shift := 0.0
 	switch t.Align {
-	case AlignCenter:
+	case alignCenter:
 		shift = -fonts.width(s, lettering{Size: t.Size, Bold: t.Bold}) / 2
-	case AlignRight:
+	case alignRight:
 		shift = -fonts.width(s, lettering{Size: t.Size, Bold: t.Bold})
 	}
 	place := canvas.Identity.Translate(onGrid(t.At.X), onGrid(t.At.Y)).
@@ -79,22 +79,22 @@ func renderText(t Text, to canvas.Renderer, fonts typeface, words wordsAs) error
 }
 
 // ink returns the color of a tone.
-func ink(t Tone) color.RGBA {
-	gray := func(y uint8) color.RGBA { return color.RGBA{R: y, G: y, B: y, A: 255} }
+func ink(t tone) color.RGBA {
+	shade := func(y uint8) color.RGBA { return color.RGBA{R: y, G: y, B: y, A: 255} }
 	switch t {
-	case Black:
-		return gray(0)
-	case Gray:
-		return gray(88)
-	case Tint:
-		return gray(236)
-	case Paper:
-		return gray(255)
+	case black:
+		return shade(0)
+	case gray:
+		return shade(88)
+	case tint:
+		return shade(236)
+	case paper:
+		return shade(255)
 	}
 	return color.RGBA{}
 }
 
-func canvasStyle(s Style) canvas.Style {
+func canvasStyle(s shapeStyle) canvas.Style {
 	style := canvas.DefaultStyle // fills by the non-zero rule: the other one makes invalid PDF strokes
 	style.Fill = canvas.Paint{Color: ink(s.Fill)}
 	style.Stroke = canvas.Paint{Color: ink(s.Line)}
@@ -109,17 +109,17 @@ func canvasStyle(s Style) canvas.Style {
 }
 
 // dashPattern returns the lengths of a pattern, line and gap in turn, mm; nil for a solid line.
-func dashPattern(d Dash) []float64 {
+func dashPattern(d linePattern) []float64 {
 	switch d {
-	case Dashed:
+	case dashed:
 		return []float64{2, 1}
-	case DashDot:
+	case dashDot:
 		return []float64{6, 1, 0.6, 1}
 	}
 	return nil
 }
 
-func canvasPath(line Polyline) *canvas.Path {
+func canvasPath(line polyline) *canvas.Path {
 	p := &canvas.Path{}
 	n := len(line.Vertices)
 	first := snapped(line.Vertices[0].P)
@@ -139,7 +139,7 @@ func canvasPath(line Polyline) *canvas.Path {
 // addPiece appends the line or arc from a vertex to the point to.
 func addPiece(p *canvas.Path, v Vertex, to involute.Vec) {
 	end := snapped(to)
-	arc, bent := Path{Vertices: []Vertex{v, {P: to}}}.Piece(0).(involute.Arc)
+	arc, bent := Path{Vertices: []Vertex{v, {P: to}}}.Curve(0).(involute.Arc)
 	if !bent || math.Abs(v.Bulge) < flatBulge {
 		p.LineTo(end.X, end.Y)
 		return

@@ -21,7 +21,7 @@ const maxDXFProblems = 50
 const extentSlack = 1e-9
 
 // CheckDXF returns what is wrong with the structure of a DXF file of ours, or
-// nothing. It is stricter than ReadDXF and asks for what WriteDXF promises:
+// nothing. It is stricter than readDXF and asks for what writeDXF promises:
 // pairs well formed; each section there, ended, in order; handles unique and below
 // $HANDSEED; owners, layers and line types defined; vertex and record counts
 // true; numbers finite and plain; a bulge on every vertex; polylines closed,
@@ -174,7 +174,7 @@ func (c *dxfChecker) header() {
 
 // drawing reads the file as an outline and checks what is drawn.
 func (c *dxfChecker) drawing(data []byte) {
-	o, err := ReadDXF(bytes.NewReader(data))
+	o, err := readDXF(bytes.NewReader(data))
 	if err != nil {
 		c.problems = append(c.problems, err.Error())
 		return
@@ -183,7 +183,7 @@ func (c *dxfChecker) drawing(data []byte) {
 		c.report(s.Line, "an outline has no place for %s", s.Kind)
 	}
 	for i, k := range o.Contours {
-		if k.Path.Area() < 0 {
+		if k.Path.area() < 0 {
 			c.report(1, "contour %d runs clockwise", i+1)
 		}
 		for j, v := range k.Path.Vertices {
@@ -192,7 +192,7 @@ func (c *dxfChecker) drawing(data []byte) {
 			}
 		}
 	}
-	lo, hi := o.Bounds()
+	lo, hi := o.bounds()
 	lo, hi = lo.Scale(1/o.Unit.MM()), hi.Scale(1/o.Unit.MM())
 	slack := max(extentSlack, 1e-12*hi.Sub(lo).Norm())
 	c.extent("$EXTMIN", lo, slack)

@@ -10,8 +10,8 @@ import (
 // CheckDXF finds each of these damages. The first five are ones that a general
 // library's audit lets pass.
 func TestCheckDXFFindsDamage(t *testing.T) {
-	r2000 := string(dxfBytes(t, cam(inspect.Millimeter), R2000))
-	r12 := string(dxfBytes(t, cam(inspect.Millimeter), R12))
+	r2000 := string(dxfBytes(t, cam(inspect.Millimeter), FormatDXF))
+	r12 := string(dxfBytes(t, cam(inspect.Millimeter), FormatDXFR12))
 	for _, test := range []struct{ name, file, old, new, want string }{
 		{"vertex count", r2000, " 90\r\n7\r\n", " 90\r\n8\r\n", "group 90 says 8 vertices, there are 7"},
 		{"undefined layer", r2000, "  8\r\nBORE\r\n", "  8\r\nDRILL\r\n", `layer "DRILL" is not defined`},

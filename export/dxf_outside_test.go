@@ -34,9 +34,9 @@ func outsideOutlines() map[string]Outline {
 }
 
 // forEachDXF writes each outline in both versions and hands on what the file holds, in its unit.
-func forEachDXF(t *testing.T, check func(t *testing.T, path string, version DXFVersion, o Outline)) {
+func forEachDXF(t *testing.T, check func(t *testing.T, path string, version Format, o Outline)) {
 	for name, o := range outsideOutlines() {
-		for _, v := range []DXFVersion{R2000, R12} {
+		for _, v := range []Format{FormatDXF, FormatDXFR12} {
 			t.Run(name+"_"+v.String(), func(t *testing.T) {
 				f, err := o.fileForm()
 				if err != nil {
@@ -69,7 +69,7 @@ func near(slack float64, pairs ...float64) bool {
 // nothing to report and nothing to mend.
 func TestEzdxfReadsDXF(t *testing.T) {
 	python := outsidePython(t, "ezdxf", "python3-ezdxf")
-	forEachDXF(t, func(t *testing.T, path string, version DXFVersion, o Outline) {
+	forEachDXF(t, func(t *testing.T, path string, version Format, o Outline) {
 		var got struct {
 			Version       string
 			Errors, Fixes []string
@@ -91,7 +91,7 @@ func TestEzdxfReadsDXF(t *testing.T) {
 		if err := json.Unmarshal(outsideRun(t, python, "testdata/read_ezdxf.py", path), &got); err != nil {
 			t.Fatal(err)
 		}
-		wantVersion, wantUnits := map[DXFVersion]string{R2000: "AC1015", R12: "AC1009"}[version], 4
+		wantVersion, wantUnits := map[Format]string{FormatDXF: "AC1015", FormatDXFR12: "AC1009"}[version], 4
 		if o.Unit == inspect.Inch {
 			wantUnits = 1
 		}
@@ -120,7 +120,7 @@ func TestEzdxfReadsDXF(t *testing.T) {
 				t.Errorf("circle %d: %v, want %v", i, g, c)
 			}
 		}
-		lo, hi := o.Bounds()
+		lo, hi := o.bounds()
 		for i, corner := range []involute.Vec{lo, hi} {
 			if !near(written, got.Header[i][0], corner.X, got.Header[i][1], corner.Y) || !near(extentSlack, got.Box[i][0], corner.X, got.Box[i][1], corner.Y) {
 				t.Errorf("extents %v, ezdxf's %v, want %v", got.Header[i], got.Box[i], corner)
@@ -135,7 +135,7 @@ func TestGDALReadsDXF(t *testing.T) {
 	ogrinfo := outsideProgram(t, "ogrinfo", "gdal-bin")
 	line := regexp.MustCompile(`LINESTRING(?: Z)? \(([^,]*),.*,([^,)]*)\)`)
 	extent := regexp.MustCompile(`Extent: \((\S+), (\S+)\) - \((\S+), (\S+)\)`)
-	forEachDXF(t, func(t *testing.T, path string, _ DXFVersion, o Outline) {
+	forEachDXF(t, func(t *testing.T, path string, _ Format, o Outline) {
 		out := string(outsideRun(t, ogrinfo, "-ro", "-al", path))
 		lines := line.FindAllStringSubmatch(out, -1)
 		if len(lines) != len(o.Contours)+len(o.Circles) {
@@ -154,7 +154,7 @@ func TestGDALReadsDXF(t *testing.T) {
 		if m == nil {
 			t.Fatalf("no extent in\n%.600s", out)
 		}
-		lo, hi := o.Bounds()
+		lo, hi := o.bounds()
 		inside := hi.Sub(lo).Norm() / 2 * (1 - math.Cos(2*math.Pi/180))
 		for i, want := range []float64{lo.X, lo.Y, hi.X, hi.Y} {
 			got, err := strconv.ParseFloat(m[i+1], 64)
@@ -178,7 +178,7 @@ func TestDxflibReadsDXF(t *testing.T) {
 		outsideMissing(t, "library dxflib", "libdxflib-dev")
 	}
 	outsideRun(t, compiler, "-o", reader, "testdata/read_dxflib.cpp", "-ldxflib")
-	forEachDXF(t, func(t *testing.T, path string, _ DXFVersion, o Outline) {
+	forEachDXF(t, func(t *testing.T, path string, _ Format, o Outline) {
 		var got []string
 		units := ""
 		for l := range strings.Lines(string(outsideRun(t, reader, path))) {

@@ -90,7 +90,7 @@ func (d *dxfWriter) record(kind, handle, table, class string, name any) {
 
 // viewports writes the one view a drawing opens with: the whole outline.
 func (d *dxfWriter) viewports(f Outline) {
-	lo, hi := f.Bounds()
+	lo, hi := f.bounds()
 	mid, size := lo.Add(hi).Scale(0.5), hi.Sub(lo)
 	d.table("VPORT", hViewports, 1)
 	d.record("VPORT", "22", hViewports, "AcDbViewportTableRecord", "*Active")

@@ -11,17 +11,17 @@ import (
 	"flankwright/inspect"
 )
 
-// ReadDXF reads the closed polylines and the circles of an ASCII DXF file, of any
+// readDXF reads the closed polylines and the circles of an ASCII DXF file, of any
 // release from R12 on, as they stand: paths keep their sense and first vertex.
 //
 // It takes LWPOLYLINE, POLYLINE with VERTEX, and CIRCLE in model space, seen from
 // above; a polyline counts as closed by its flag or by repeating its first vertex at the end.
 // All other entities are listed in Skipped. An error names the line. These are
 // errors: $INSUNITS missing or other than 1 (inch) or 4 (mm); an open polyline; a
-// wrong vertex count; a number that is none; a path that fails Path.Check; a
+// wrong vertex count; a number that is none; a path that fails Path.check; a
 // file without its EOF, over 16 MB or over 262144 vertices, or without any
 // closed outline in it.
-func ReadDXF(r io.Reader) (Outline, error) {
+func readDXF(r io.Reader) (Outline, error) {
 	d := &dxfReader{scan: newDXFScanner(r)}
 	if err := d.file(); err != nil {
 		return Outline{}, err
@@ -144,7 +144,7 @@ func (d *dxfReader) finish() error {
 	}
 	d.out.scale(func(x float64) float64 { return x * d.out.Unit.MM() })
 	for i, c := range d.out.Contours {
-		if err := c.Path.Check(); err != nil {
+		if err := c.Path.check(); err != nil {
 			return d.contours[i].errorf("%w", err)
 		}
 	}

@@ -28,7 +28,7 @@ func TestReadDXFVariants(t *testing.T) {
 		"with more":  minimal(4, "0\nLINE\n10\n0\n20\nx\n0\nLWPOLYLINE\n67\n1\n0\nLWPOLYLINE\n90\n4\n70\n1\n10\n0\n20\n0\n42\n.25\n10\n1\n20\n0\n10\n1\n20\n1\n10\n0\n20\n1\n0\nLINE\n"),
 		"no newline": strings.TrimSuffix(minimal(4, "0\nLWPOLYLINE\n90\n4\n70\n1\n10\n0\n20\n0\n42\n.25\n10\n1\n20\n0\n10\n1\n20\n1\n10\n0\n20\n1\n"), "\n"),
 	} {
-		got, err := ReadDXF(strings.NewReader(text))
+		got, err := readDXF(strings.NewReader(text))
 		if err != nil {
 			t.Errorf("%s: %v", name, err)
 			continue
@@ -38,7 +38,7 @@ func TestReadDXFVariants(t *testing.T) {
 		}
 		sameOutline(t, got, want, nil)
 	}
-	got, err := ReadDXF(strings.NewReader(minimal(1, "0\nCIRCLE\n8\nHOLES\n10\n1\n20\n-2\n40\n.5\n")))
+	got, err := readDXF(strings.NewReader(minimal(1, "0\nCIRCLE\n8\nHOLES\n10\n1\n20\n-2\n40\n.5\n")))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -84,7 +84,7 @@ func TestReadDXFErrors(t *testing.T) {
 		{"long line", minimal(4, "0\n"+strings.Repeat("x", 5000)+"\n"), "longer than 4096"},
 		{"zero byte", minimal(4, "0\nLI\x00NE\n"), "zero byte"},
 	} {
-		_, err := ReadDXF(strings.NewReader(test.text))
+		_, err := readDXF(strings.NewReader(test.text))
 		if err == nil || !strings.Contains(err.Error(), test.want) {
 			t.Errorf("%s: %v, want %q", test.name, err, test.want)
 		}
@@ -115,17 +115,17 @@ func TestReadDXFIsBounded(t *testing.T) {
 		{"", "x", "longer than 4096"},
 		{"999\n", "x", "longer than 4096"},
 	} {
-		_, err := ReadDXF(&endless{test.start, test.again})
+		_, err := readDXF(&endless{test.start, test.again})
 		if err == nil || !strings.Contains(err.Error(), test.want) {
 			t.Errorf("%q: %v, want %q", test.start, err, test.want)
 		}
 	}
 }
 
-// Whatever comes in, ReadDXF and CheckDXF return; what ReadDXF takes is a sound outline.
+// Whatever comes in, readDXF and CheckDXF return; what readDXF takes is a sound outline.
 func FuzzReadDXF(f *testing.F) {
 	// Short seeds: the tool that shrinks finds takes minutes over whole files.
-	whole := string(dxfBytes(f, cam(inspect.Millimeter), R2000))
+	whole := string(dxfBytes(f, cam(inspect.Millimeter), FormatDXF))
 	_, entities, _ := strings.Cut(whole, "  2\r\nENTITIES\r\n")
 	entities, _, _ = strings.Cut(entities, "  0\r\nENDSEC")
 	for k := range 3 {
@@ -137,7 +137,7 @@ func FuzzReadDXF(f *testing.F) {
 	f.Add([]byte("0\nSECTION\n2\nENTITIES\n0\n"))
 	f.Fuzz(func(t *testing.T, data []byte) {
 		CheckDXF(data)
-		o, err := ReadDXF(bytes.NewReader(data))
+		o, err := readDXF(bytes.NewReader(data))
 		if err == nil {
 			soundOutline(t, o)
 		}
@@ -153,11 +153,11 @@ func soundOutline(t *testing.T, o Outline) {
 	for i := range o.Circles {
 		o.Circles[i].Layer = LayerBore
 	}
-	if err := o.Check(); err != nil {
+	if err := o.check(); err != nil {
 		t.Fatal(err)
 	}
 	var b bytes.Buffer
-	if WriteDXF(&b, o, R2000) != nil {
+	if writeDXF(&b, o, FormatDXF) != nil {
 		t.Fatal("what was read can't be written")
 	}
 }

@@ -6,7 +6,6 @@ import (
 	"errors"
 	"fmt"
 	"io"
-	"math"
 	"strconv"
 	"strings"
 )
@@ -66,7 +65,7 @@ func parsePlain(s string) (float64, error) {
 		return 0, fmt.Errorf("%.40q is not a number", s)
 	}
 	x, err := strconv.ParseFloat(s, 64)
-	if err != nil || math.IsInf(x, 0) {
+	if err != nil || !finite(x) {
 		return 0, fmt.Errorf("%.40q is not a number", s)
 	}
 	return x, nil

@@ -12,9 +12,9 @@ import (
 )
 
 // dxfBytes writes an outline to memory.
-func dxfBytes(t interface{ Fatal(...any) }, o Outline, v DXFVersion) []byte {
+func dxfBytes(t interface{ Fatal(...any) }, o Outline, v Format) []byte {
 	var b bytes.Buffer
-	if err := WriteDXF(&b, o, v); err != nil {
+	if err := writeDXF(&b, o, v); err != nil {
 		t.Fatal(err)
 	}
 	return b.Bytes()
@@ -22,10 +22,10 @@ func dxfBytes(t interface{ Fatal(...any) }, o Outline, v DXFVersion) []byte {
 
 func TestDXFGolden(t *testing.T) {
 	for name, data := range map[string][]byte{
-		"cam_mm_r2000.dxf": dxfBytes(t, cam(inspect.Millimeter), R2000),
-		"cam_mm_r12.dxf":   dxfBytes(t, cam(inspect.Millimeter), R12),
-		"cam_in_r2000.dxf": dxfBytes(t, cam(inspect.Inch), R2000),
-		"cam_in_r12.dxf":   dxfBytes(t, cam(inspect.Inch), R12),
+		"cam_mm_r2000.dxf": dxfBytes(t, cam(inspect.Millimeter), FormatDXF),
+		"cam_mm_r12.dxf":   dxfBytes(t, cam(inspect.Millimeter), FormatDXFR12),
+		"cam_in_r2000.dxf": dxfBytes(t, cam(inspect.Inch), FormatDXF),
+		"cam_in_r12.dxf":   dxfBytes(t, cam(inspect.Inch), FormatDXFR12),
 	} {
 		golden(t, name, data)
 		if p := CheckDXF(data); len(p) > 0 {
@@ -38,7 +38,7 @@ func TestDXFGolden(t *testing.T) {
 func TestDXFForm(t *testing.T) {
 	o := cam(inspect.Inch)
 	o.Contours[0].Path.Vertices[0].P.X = -1e-14
-	for _, v := range []DXFVersion{R2000, R12} {
+	for _, v := range []Format{FormatDXF, FormatDXFR12} {
 		text := string(dxfBytes(t, o, v))
 		lines := strings.Split(text, "\r\n")
 		if strings.Count(text, "\n") != len(lines)-1 || lines[len(lines)-1] != "" {
@@ -62,9 +62,9 @@ func TestDXFRoundTrip(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		o := drawOutline(t)
 		o.Title = rapid.StringMatching(`[ -~°é±Ø]{0,20}`).Draw(t, "title")
-		v := rapid.SampledFrom([]DXFVersion{R2000, R12}).Draw(t, "version")
+		v := rapid.SampledFrom([]Format{FormatDXF, FormatDXFR12}).Draw(t, "version")
 		data := dxfBytes(t, o, v)
-		got, err := ReadDXF(bytes.NewReader(data))
+		got, err := readDXF(bytes.NewReader(data))
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -90,17 +90,17 @@ func TestDXFRoundTrip(t *testing.T) {
 func TestDXFOfAnyPath(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		o := Outline{Contours: []Contour{{LayerCut, drawPath(t, 20)}}}
-		if o.Check() != nil {
+		if o.check() != nil {
 			t.Skip("beyond 100 m")
 		}
-		if p := CheckDXF(dxfBytes(t, o, rapid.SampledFrom([]DXFVersion{R2000, R12}).Draw(t, "version"))); len(p) > 0 {
+		if p := CheckDXF(dxfBytes(t, o, rapid.SampledFrom([]Format{FormatDXF, FormatDXFR12}).Draw(t, "version"))); len(p) > 0 {
 			t.Fatal(strings.Join(p, "\n"))
 		}
 	})
 }
 
 func TestParseDXFVersion(t *testing.T) {
-	for _, v := range []DXFVersion{R2000, R12} {
+	for _, v := range []Format{FormatDXF, FormatDXFR12} {
 		if got, err := ParseDXFVersion(strings.ToUpper(v.String())); got != v || err != nil {
 			t.Errorf("%v: %v, %v", v, got, err)
 		}
@@ -114,15 +114,15 @@ func TestDXFTitle(t *testing.T) {
 	for _, title := range []string{"", "plain", "25° ± Ø α", `back\slash ^ \U+0041`, "😀 beyond the plane"} {
 		o := cam(inspect.Millimeter)
 		o.Title = title
-		got, err := ReadDXF(bytes.NewReader(dxfBytes(t, o, R12)))
+		got, err := readDXF(bytes.NewReader(dxfBytes(t, o, FormatDXFR12)))
 		if err != nil || got.Title != title {
 			t.Errorf("%q: %q, %v", title, got.Title, err)
 		}
 	}
 	o := cam(inspect.Millimeter)
 	o.Title = "two\r\n  0\r\nlines" + strings.Repeat("°", 500)
-	data := dxfBytes(t, o, R2000)
-	if got, err := ReadDXF(bytes.NewReader(data)); err != nil || !strings.HasPrefix(got.Title, "two    0  lines°°") || len(CheckDXF(data)) > 0 {
+	data := dxfBytes(t, o, FormatDXF)
+	if got, err := readDXF(bytes.NewReader(data)); err != nil || !strings.HasPrefix(got.Title, "two    0  lines°°") || len(CheckDXF(data)) > 0 {
 		t.Errorf("a title of two lines: %q, %v", got.Title, err)
 	}
 }
@@ -131,13 +131,13 @@ func TestDXFTitle(t *testing.T) {
 func TestWritersReportErrors(t *testing.T) {
 	full := errors.New("disk full")
 	for room := range 40 {
-		if err := WriteDXF(&limitedWriter{100 * room, full}, cam(inspect.Millimeter), R2000); !errors.Is(err, full) {
-			t.Fatalf("WriteDXF with %d bytes of room: %v", 100*room, err)
+		if err := writeDXF(&limitedWriter{100 * room, full}, cam(inspect.Millimeter), FormatDXF); !errors.Is(err, full) {
+			t.Fatalf("writeDXF with %d bytes of room: %v", 100*room, err)
 		}
 	}
 	for room := range 15 {
-		if err := WriteSVG(&limitedWriter{100 * room, full}, cam(inspect.Millimeter)); !errors.Is(err, full) {
-			t.Fatalf("WriteSVG with %d bytes of room: %v", 100*room, err)
+		if err := writeSVG(&limitedWriter{100 * room, full}, cam(inspect.Millimeter)); !errors.Is(err, full) {
+			t.Fatalf("writeSVG with %d bytes of room: %v", 100*room, err)
 		}
 	}
 }

@@ -4,7 +4,6 @@ import (
 	"bufio"
 	"fmt"
 	"io"
-	"math"
 	"strconv"
 	"strings"
 	"unicode/utf16"
@@ -13,36 +12,7 @@ import (
 	"flankwright/involute"
 )
 
-// A DXFVersion is a release of the DXF format that we write.
-type DXFVersion int
-
-// The versions we write. R2000 (AC1015) holds a contour as one LWPOLYLINE; R12
-// (AC1009) is for old controls and holds it as POLYLINE, VERTEX and SEQEND.
-const (
-	R2000 DXFVersion = iota
-	R12
-)
-
-// String returns "r2000" or "r12".
-func (v DXFVersion) String() string {
-	if v == R12 {
-		return "r12"
-	}
-	return "r2000"
-}
-
-// ParseDXFVersion returns the version named r2000 or r12, in either case.
-func ParseDXFVersion(s string) (DXFVersion, error) {
-	switch strings.ToLower(s) {
-	case "r2000":
-		return R2000, nil
-	case "r12":
-		return R12, nil
-	}
-	return R2000, fmt.Errorf("DXF version %q is not known; r2000 or r12 would be right", s)
-}
-
-// WriteDXF writes the outline as an ASCII DXF file.
+// writeDXF writes the outline as an ASCII DXF file.
 //
 // Every contour is one closed polyline: counter-clockwise, the last vertex not
 // repeated, a bulge on every vertex, arcs over 90° split on their own circle.
@@ -50,10 +20,11 @@ func ParseDXFVersion(s string) (DXFVersion, error) {
 // mm come back within 1e-12 and inches within 2e-11 mm. Lines end in CR LF, as
 // DXF has always had them: DOS-based controls need it, and every importer has met it.
 // The title goes into a comment (group 999) at the top, cut at 200 bytes; the
-// file holds no date and no random number. An outline that fails Check, or a
-// version that is neither R2000 nor R12, is an error before anything is written.
-func WriteDXF(w io.Writer, o Outline, version DXFVersion) error {
-	if version != R2000 && version != R12 {
+// file holds no date and no random number. An outline that fails check, or a
+// version that is neither FormatDXF nor FormatDXFR12, is an error before
+// anything is written.
+func writeDXF(w io.Writer, o Outline, version Format) error {
+	if version != FormatDXF && version != FormatDXFR12 {
 		return fmt.Errorf("DXF version %d is not known", int(version))
 	}
 	f, err := o.fileForm()
@@ -64,7 +35,7 @@ func WriteDXF(w io.Writer, o Outline, version DXFVersion) error {
 	if title := dxfText(f.Title); title != "" {
 		d.put(999, title)
 	}
-	if version == R12 {
+	if version == FormatDXFR12 {
 		d.r12(f)
 	} else {
 		d.r2000(f)
@@ -123,7 +94,7 @@ func (d *dxfWriter) header(acadver string, f Outline) {
 	if f.Unit == inspect.Inch {
 		units, metric = 1, 0
 	}
-	lo, hi := f.Bounds()
+	lo, hi := f.bounds()
 	d.put(9, "$ACADVER", 1, acadver, 9, "$DWGCODEPAGE", 3, "ANSI_1252")
 	d.put(9, "$INSBASE")
 	d.point(10, involute.Vec{})
@@ -156,7 +127,7 @@ func dashes(u inspect.Unit) (dash, gap float64) { return 2 / u.MM(), 1 / u.MM() 
 
 // plainNumber formats x with twelve decimals, without exponent or negative zero.
 func plainNumber(x float64) (string, error) {
-	if math.IsNaN(x) || math.IsInf(x, 0) {
+	if !finite(x) {
 		return "", fmt.Errorf("%g is not a finite number", x)
 	}
 	s := strconv.FormatFloat(x, 'f', 12, 64)
@@ -174,21 +145,21 @@ const maxDXFTitle = 200
 func dxfText(s string) string {
 	var b strings.Builder
 	for _, r := range strings.TrimSpace(s) {
-		var piece string
+		var coded string
 		switch {
 		case r < ' ' || r == 0x7f:
-			piece = " "
+			coded = " "
 		case r < 0x7f && r != '\\' && r != '^':
-			piece = string(r)
+			coded = string(r)
 		default:
 			for _, u := range utf16.Encode([]rune{r}) {
-				piece += fmt.Sprintf(`\U+%04X`, u)
+				coded += fmt.Sprintf(`\U+%04X`, u)
 			}
 		}
-		if b.Len()+len(piece) > maxDXFTitle {
+		if b.Len()+len(coded) > maxDXFTitle {
 			break
 		}
-		b.WriteString(piece)
+		b.WriteString(coded)
 	}
 	return strings.TrimSpace(b.String())
 }

@@ -32,7 +32,7 @@ type File struct {
 }
 
 // WriteFileAtomic writes a file so that a reader sees it whole or not at all: into
-// a temporary file in the same folder, synced, then renamed. A file that exists is
+// a temporary file in the same folder, synced, read back, then given its name. A file that exists is
 // an *ExistError unless force is set; whatever is no regular file is never
 // replaced. Nothing is left behind on failure.
 func WriteFileAtomic(path string, data []byte, force bool) error {

@@ -43,8 +43,8 @@ func (t typeface) font(bold bool) *canvas.Font {
 }
 
 // face returns the lettering of a size in mm.
-func (t typeface) face(size float64, bold bool, tone Tone) *canvas.FontFace {
-	return t.font(bold).Face(size/pt, ink(tone))
+func (t typeface) face(size float64, bold bool, in tone) *canvas.FontFace {
+	return t.font(bold).Face(size/pt, ink(in))
 }
 
 // width returns how long a line of words is, mm: the sum of its letters' advances, as nothing is kerned.
@@ -77,7 +77,7 @@ func (t typeface) printable(s string) string {
 type lettering struct {
 	Size float64 // mm
 	Bold bool
-	Tone Tone
+	Tone tone
 }
 
 // smallest is how far words may shrink before they are cut: to 70 % of their size.

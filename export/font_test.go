@@ -50,7 +50,7 @@ func TestWidthAgreesWithTheShaper(t *testing.T) {
 	for _, s := range []string{"AV To 11.1 fi ffl", "Ø 2.743 mm ± 0.5° ≤ ≥ − × µ αβΔ", "Räder, naïve"} {
 		for _, bold := range []bool{false, true} {
 			l := lettering{Size: 7, Bold: bold}
-			got, want := fonts.width(s, l), fonts.face(l.Size, bold, Black).TextWidth(s)
+			got, want := fonts.width(s, l), fonts.face(l.Size, bold, black).TextWidth(s)
 			if math.Abs(got-want) > 1e-12*want {
 				t.Errorf("%q, bold %v: %g mm, shaped %g", s, bold, got, want)
 			}

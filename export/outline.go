@@ -83,13 +83,27 @@ func (o *Outline) skip(kind string, line int) {
 	o.Skipped = append(o.Skipped, Skipped{kind, 1, line})
 }
 
-// Bounds returns the lowest and highest coordinates of all that is in the
+// Cut returns the one closed contour on the cut layer.
+func (o Outline) Cut() (Path, error) {
+	var found []Path
+	for _, c := range o.Contours {
+		if c.Layer == LayerCut {
+			found = append(found, c.Path)
+		}
+	}
+	if len(found) != 1 {
+		return Path{}, fmt.Errorf("%d closed contours on layer %s, not 1", len(found), LayerCut)
+	}
+	return found[0], nil
+}
+
+// bounds returns the lowest and highest coordinates of all that is in the
 // outline, reference circles included.
-func (o Outline) Bounds() (lo, hi involute.Vec) {
+func (o Outline) bounds() (lo, hi involute.Vec) {
 	lo = involute.Vec{X: math.Inf(1), Y: math.Inf(1)}
 	hi = lo.Scale(-1)
 	for _, c := range o.Contours {
-		a, b := c.Path.Bounds()
+		a, b := c.Path.bounds()
 		lo, hi = stretch(lo, hi, a)
 		lo, hi = stretch(lo, hi, b)
 	}
@@ -101,8 +115,8 @@ func (o Outline) Bounds() (lo, hi involute.Vec) {
 	return lo, hi
 }
 
-// Check reports why the outline can't be written.
-func (o Outline) Check() error {
+// check reports why the outline can't be written.
+func (o Outline) check() error {
 	if len(o.Contours)+len(o.Circles) == 0 {
 		return errors.New("outline: nothing in it")
 	}
@@ -113,7 +127,7 @@ func (o Outline) Check() error {
 		if c.Layer != LayerCut && c.Layer != LayerBore {
 			return fmt.Errorf("outline: contour %d is on layer %q; %s or %s would be right", i+1, c.Layer, LayerCut, LayerBore)
 		}
-		if err := c.Path.Check(); err != nil {
+		if err := c.Path.check(); err != nil {
 			return fmt.Errorf("outline: contour %d: %w", i+1, err)
 		}
 	}
@@ -142,12 +156,12 @@ func (c Circle) check() error {
 // fileForm checks the outline and returns it as a file holds it: contours
 // counter-clockwise, arcs up to 90°, and numbers in the file's unit.
 func (o Outline) fileForm() (Outline, error) {
-	if err := o.Check(); err != nil {
+	if err := o.check(); err != nil {
 		return Outline{}, err
 	}
 	f := Outline{Unit: o.Unit, Title: o.Title}
 	for _, c := range o.Contours {
-		f.Contours = append(f.Contours, Contour{c.Layer, c.Path.CounterClockwise().SplitArcs()})
+		f.Contours = append(f.Contours, Contour{c.Layer, c.Path.counterClockwise().splitArcs()})
 	}
 	f.Circles = append(f.Circles, o.Circles...)
 	f.scale(func(x float64) float64 { return x / o.Unit.MM() })

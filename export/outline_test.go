@@ -55,7 +55,7 @@ func drawPath(t *rapid.T, limit float64) Path {
 		b := rapid.OneOf(rapid.Just(0.0), rapid.Float64Range(-limit, limit)).Draw(t, "bulge")
 		p.Vertices = append(p.Vertices, Vertex{center.Add(involute.Polar(r, angle)), b})
 	}
-	if p.Check() != nil { // a rare one whose arcs cancel its area
+	if p.check() != nil { // a rare one whose arcs cancel its area
 		t.Skip("no outline")
 	}
 	return p
@@ -67,7 +67,7 @@ func drawOutline(t *rapid.T) Outline {
 	for range rapid.IntRange(1, 3).Draw(t, "paths") {
 		o.Contours = append(o.Contours, Contour{
 			rapid.SampledFrom([]Layer{LayerCut, LayerBore}).Draw(t, "layer"),
-			drawPath(t, quarterBulge).CounterClockwise()})
+			drawPath(t, quarterBulge).counterClockwise()})
 	}
 	for range rapid.IntRange(0, 3).Draw(t, "circles") {
 		o.Circles = append(o.Circles, Circle{
@@ -141,7 +141,7 @@ func TestOutlineCheck(t *testing.T) {
 		{"NaN radius", Outline{Circles: []Circle{{LayerBore, involute.Vec{}, math.NaN()}}}, "radius NaN must be"},
 		{"NaN center", Outline{Circles: []Circle{{LayerBore, involute.Vec{X: math.NaN()}, 1}}}, "center (NaN, 0)"},
 	} {
-		err := test.o.Check()
+		err := test.o.check()
 		if test.want == "" && err != nil || test.want != "" && (err == nil || !strings.Contains(err.Error(), test.want)) {
 			t.Errorf("%s: %v, want %q", test.name, err, test.want)
 		}
@@ -155,15 +155,15 @@ func TestWritersRefuse(t *testing.T) {
 		"NaN":   {Contours: []Contour{{LayerCut, vertices(0, 0, 0, math.NaN(), 0, 0, 1, 1, 0)}}},
 	} {
 		var b strings.Builder
-		if err := WriteDXF(&b, o, R2000); err == nil || b.Len() > 0 {
-			t.Errorf("%s: WriteDXF wrote %d bytes, %v", name, b.Len(), err)
+		if err := writeDXF(&b, o, FormatDXF); err == nil || b.Len() > 0 {
+			t.Errorf("%s: writeDXF wrote %d bytes, %v", name, b.Len(), err)
 		}
-		if err := WriteSVG(&b, o); err == nil || b.Len() > 0 {
-			t.Errorf("%s: WriteSVG wrote %d bytes, %v", name, b.Len(), err)
+		if err := writeSVG(&b, o); err == nil || b.Len() > 0 {
+			t.Errorf("%s: writeSVG wrote %d bytes, %v", name, b.Len(), err)
 		}
 	}
 	var b strings.Builder
-	if err := WriteDXF(&b, cam(inspect.Inch), 9); err == nil || b.Len() > 0 {
+	if err := writeDXF(&b, cam(inspect.Inch), 9); err == nil || b.Len() > 0 {
 		t.Errorf("version 9: %v", err)
 	}
 }
@@ -172,10 +172,10 @@ func TestWritersRefuse(t *testing.T) {
 func TestWritersDoNotChangeTheOutline(t *testing.T) {
 	o := cam(inspect.Inch)
 	var b strings.Builder
-	if err := WriteDXF(&b, o, R12); err != nil {
+	if err := writeDXF(&b, o, FormatDXFR12); err != nil {
 		t.Fatal(err)
 	}
-	if err := WriteSVG(&b, o); err != nil {
+	if err := writeSVG(&b, o); err != nil {
 		t.Fatal(err)
 	}
 	want := cam(inspect.Inch)

@@ -14,3 +14,12 @@ type Vertex struct {
 // A Path is a closed chain of straight lines and arcs: the piece that leaves
 // the last vertex ends on the first, which is not repeated.
 type Path struct{ Vertices []Vertex }
+
+// circlePath returns the circle round c (mm) of diameter d (mm), in two halves.
+func circlePath(c involute.Vec, d float64) Path {
+	r := involute.Vec{X: d / 2}
+	return Path{Vertices: []Vertex{{P: c.Add(r), Bulge: 1}, {P: c.Sub(r), Bulge: 1}}}
+}
+
+// line returns the path as a line to be drawn.
+func (p Path) line() polyline { return polyline{Vertices: p.Vertices, Closed: true} }

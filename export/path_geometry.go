@@ -32,13 +32,13 @@ func (p Path) ends(i int) (from, to involute.Vec, bulge float64) {
 	return v.P, p.Vertices[(i+1)%len(p.Vertices)].P, v.Bulge
 }
 
-// Piece returns the line or arc that leaves vertex i.
+// Curve returns the line or arc that leaves vertex i.
 //
 // An arc from P to Q with chord c and bulge b sweeps 4·atan b about the center
 // (P + Q)/2 + left(Q − P)·(1 − b²)/(4b), at radius c(1 + b²)/(4|b|); these follow
 // from the bulge's definition b = tan(sweep/4) in the DXF reference (LWPOLYLINE,
 // group code 42). Points of the arc are off by some 1e-16 of its radius.
-func (p Path) Piece(i int) involute.Curve {
+func (p Path) Curve(i int) involute.Curve {
 	from, to, b := p.ends(i)
 	if math.Abs(b) < bulgeStep {
 		return involute.Line{From: from, To: to}
@@ -56,8 +56,8 @@ func (p Path) Piece(i int) involute.Curve {
 // arcRadius returns the radius of an arc over a chord of length c with bulge b ≠ 0.
 func arcRadius(c, b float64) float64 { return c * (1 + b*b) / (4 * math.Abs(b)) }
 
-// Length returns the length of the whole path in mm.
-func (p Path) Length() float64 {
+// length returns the length of the whole path in mm.
+func (p Path) length() float64 {
 	sum := 0.0
 	for i := range p.Vertices {
 		from, to, b := p.ends(i)
@@ -70,9 +70,9 @@ func (p Path) Length() float64 {
 	return sum
 }
 
-// Area returns the area the path encloses in mm², positive where the path runs
+// area returns the area the path encloses in mm², positive where the path runs
 // counter-clockwise: the polygon of the chords and the circular segments on them.
-func (p Path) Area() float64 {
+func (p Path) area() float64 {
 	if len(p.Vertices) == 0 {
 		return 0
 	}
@@ -104,9 +104,9 @@ func segmentArea(b float64) float64 {
 	return (1 + b*b) * (1 + b*b) / (32 * b * b) * d
 }
 
-// Bounds returns the lowest and highest coordinates the path reaches, the
+// bounds returns the lowest and highest coordinates the path reaches, the
 // bulging of its arcs included.
-func (p Path) Bounds() (lo, hi involute.Vec) {
+func (p Path) bounds() (lo, hi involute.Vec) {
 	lo = involute.Vec{X: math.Inf(1), Y: math.Inf(1)}
 	hi = lo.Scale(-1)
 	for i := range p.Vertices {
@@ -141,11 +141,11 @@ func stretch(lo, hi, v involute.Vec) (involute.Vec, involute.Vec) {
 		involute.Vec{X: math.Max(hi.X, v.X), Y: math.Max(hi.Y, v.Y)}
 }
 
-// CounterClockwise returns the path running counter-clockwise: itself, or itself
+// counterClockwise returns the path running counter-clockwise: itself, or itself
 // walked backwards from the same first vertex. No number changes but the sign of
 // the bulges.
-func (p Path) CounterClockwise() Path {
-	if p.Area() >= 0 {
+func (p Path) counterClockwise() Path {
+	if p.area() >= 0 {
 		return p
 	}
 	n := len(p.Vertices)
@@ -159,12 +159,12 @@ func (p Path) CounterClockwise() Path {
 	return Path{Vertices: back}
 }
 
-// SplitArcs returns the path with every arc over 90° cut into equal arcs of at
+// splitArcs returns the path with every arc over 90° cut into equal arcs of at
 // most 90° on the same circle. A path without such arcs comes back unchanged.
-func (p Path) SplitArcs() Path {
+func (p Path) splitArcs() Path {
 	var out []Vertex
 	for i, v := range p.Vertices {
-		arc, ok := p.Piece(i).(involute.Arc)
+		arc, ok := p.Curve(i).(involute.Arc)
 		if !ok || math.Abs(v.Bulge) <= quarterBulge+bulgeStep {
 			out = append(out, v)
 			continue
@@ -180,9 +180,9 @@ func (p Path) SplitArcs() Path {
 	return Path{Vertices: out}
 }
 
-// Check reports why the path can't be an outline: too few vertices, a number
+// check reports why the path can't be an outline: too few vertices, a number
 // that is not finite or beyond 100 m, a piece shorter than 1e-6 mm, or no area inside.
-func (p Path) Check() error {
+func (p Path) check() error {
 	n := len(p.Vertices)
 	if n < 2 {
 		return fmt.Errorf("a closed path needs at least 2 vertices, not %d", n)
@@ -191,7 +191,7 @@ func (p Path) Check() error {
 		if !inReach(v.P.X) || !inReach(v.P.Y) {
 			return fmt.Errorf("vertex %d at (%g, %g): coordinates must be within ±%g mm", i+1, v.P.X, v.P.Y, maxCoordinate)
 		}
-		if math.IsNaN(v.Bulge) || math.IsInf(v.Bulge, 0) {
+		if !finite(v.Bulge) {
 			return fmt.Errorf("vertex %d: bulge %g is not a finite number", i+1, v.Bulge)
 		}
 	}
@@ -201,11 +201,11 @@ func (p Path) Check() error {
 			return fmt.Errorf("the piece leaving vertex %d is %.2g mm long; at least %g mm is needed", i+1, c, minPiece)
 		}
 	}
-	lo, hi := p.Bounds()
+	lo, hi := p.bounds()
 	if !inReach(lo.X) || !inReach(lo.Y) || !inReach(hi.X) || !inReach(hi.Y) {
 		return fmt.Errorf("an arc reaches beyond ±%g mm", maxCoordinate)
 	}
-	if math.Abs(p.Area()) < minPiece*p.Length() {
+	if math.Abs(p.area()) < minPiece*p.length() {
 		return fmt.Errorf("the path encloses no area")
 	}
 	return nil

@@ -27,11 +27,11 @@ func TestPathGeometry(t *testing.T) {
 		{"bitten square", vertices(0, 0, 0, 2, 0, -quarter, 4, 2, 0, 0, 2, 0), 4 + 2 - (math.Pi - 2), 2 + math.Pi + 4 + 2, involute.Vec{}, involute.Vec{X: 4, Y: 2}},
 		{"three quarters", vertices(1, 0, math.Tan(3*math.Pi/8), 0, -1, 0, 0, 0, 0), 0.75 * math.Pi, 1.5*math.Pi + 2, involute.Vec{X: -1, Y: -1}, involute.Vec{X: 1, Y: 1}},
 	} {
-		lo, hi := test.p.Bounds()
-		if math.Abs(test.p.Area()-test.area) > 1e-13*math.Abs(test.area) || math.Abs(test.p.Length()-test.length) > 1e-14*test.length ||
+		lo, hi := test.p.bounds()
+		if math.Abs(test.p.area()-test.area) > 1e-13*math.Abs(test.area) || math.Abs(test.p.length()-test.length) > 1e-14*test.length ||
 			lo.Sub(test.lo).Norm() > 1e-14 || hi.Sub(test.hi).Norm() > 1e-14 {
 			t.Errorf("%s: area %.17g, length %.17g, bounds %v %v; want %.17g, %.17g, %v %v",
-				test.name, test.p.Area(), test.p.Length(), lo, hi, test.area, test.length, test.lo, test.hi)
+				test.name, test.p.area(), test.p.length(), lo, hi, test.area, test.length, test.lo, test.hi)
 		}
 	}
 }
@@ -66,7 +66,7 @@ func TestPathGeometryAgainstPolygon(t *testing.T) {
 		off := 0.0
 		for i := range p.Vertices {
 			from, to, _ := p.ends(i)
-			piece := p.Piece(i)
+			piece := p.Curve(i)
 			start, _ := piece.At(0)
 			end, _ := piece.At(1)
 			slack := 1e-9 // a point of an arc is off by some 1e-16 of its radius
@@ -83,8 +83,8 @@ func TestPathGeometryAgainstPolygon(t *testing.T) {
 			off = max(off, slack)
 		}
 		// A chord of 1/n of an arc lies below it by s²/(8r), s = rθ/n; θ ≤ 2π.
-		lo, hi := p.Bounds()
-		polyLo, polyHi := poly.Bounds()
+		lo, hi := p.bounds()
+		polyLo, polyHi := poly.bounds()
 		size := hi.Sub(lo).Norm()
 		gap := size * math.Pi * math.Pi / (2 * n * n)
 		for _, d := range []float64{polyLo.X - lo.X, polyLo.Y - lo.Y, hi.X - polyHi.X, hi.Y - polyHi.Y} {
@@ -92,11 +92,11 @@ func TestPathGeometryAgainstPolygon(t *testing.T) {
 				t.Fatalf("bounds %v %v, of the polygon %v %v", lo, hi, polyLo, polyHi)
 			}
 		}
-		if d := math.Abs(p.Area() - poly.Area()); d > (gap+off)*p.Length() {
-			t.Fatalf("area %g, of the polygon %g", p.Area(), poly.Area())
+		if d := math.Abs(p.area() - poly.area()); d > (gap+off)*p.length() {
+			t.Fatalf("area %g, of the polygon %g", p.area(), poly.area())
 		}
-		if d := p.Length() - poly.Length(); d < -2*n*off || d > p.Length()*math.Pi*math.Pi/(6*n*n)+2*n*off {
-			t.Fatalf("length %g, of the polygon %g", p.Length(), poly.Length())
+		if d := p.length() - poly.length(); d < -2*n*off || d > p.length()*math.Pi*math.Pi/(6*n*n)+2*n*off {
+			t.Fatalf("length %g, of the polygon %g", p.length(), poly.length())
 		}
 	})
 }
@@ -105,12 +105,12 @@ func TestPathGeometryAgainstPolygon(t *testing.T) {
 func TestSplitAndTurnKeepTheShape(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		p := drawPath(t, 20)
-		q := p.CounterClockwise().SplitArcs()
-		if q.Area() < 0 || math.Abs(q.Area()-math.Abs(p.Area())) > 1e-11*p.Length()*p.Length() || math.Abs(q.Length()-p.Length()) > 1e-11*p.Length() {
-			t.Fatalf("area %g, length %g; were %g, %g", q.Area(), q.Length(), p.Area(), p.Length())
+		q := p.counterClockwise().splitArcs()
+		if q.area() < 0 || math.Abs(q.area()-math.Abs(p.area())) > 1e-11*p.length()*p.length() || math.Abs(q.length()-p.length()) > 1e-11*p.length() {
+			t.Fatalf("area %g, length %g; were %g, %g", q.area(), q.length(), p.area(), p.length())
 		}
-		lo, hi := p.Bounds()
-		qlo, qhi := q.Bounds()
+		lo, hi := p.bounds()
+		qlo, qhi := q.bounds()
 		if lo.Sub(qlo).Norm()+hi.Sub(qhi).Norm() > 1e-10*(1+hi.Sub(lo).Norm()) {
 			t.Fatalf("bounds %v %v, were %v %v", qlo, qhi, lo, hi)
 		}
@@ -128,7 +128,7 @@ func TestSplitAndTurnKeepTheShape(t *testing.T) {
 // A flat arc with its center 2.5e9 mm away still has its true top: sagitta = c·b/2.
 func TestBoundsOfFlatArc(t *testing.T) {
 	p := vertices(0, 0, 0, 10, 0, 1e-9, 10, 10, 0, 0, 10, 0)
-	_, hi := p.Bounds()
+	_, hi := p.bounds()
 	if want := 10 + 5e-9; math.Abs(hi.X-want) > 1e-14 {
 		t.Errorf("reaches x %.17g, want %.17g", hi.X, want)
 	}

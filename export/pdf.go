@@ -11,6 +11,7 @@ import (
 // WritePDF writes the pages as one PDF file that measures true in mm, with words that
 // can be searched, the fonts embedded, and the wish to be printed unscaled. The same
 // pages give the same bytes at any time. No page, or a number that is none, is refused.
+// It is no method of Drawing, as WriteSVG and WritePNG are, since a PDF holds many pages.
 func WritePDF(w io.Writer, title string, pages []Drawing) error {
 	if len(pages) == 0 {
 		return fmt.Errorf("pdf: no page to write")

@@ -178,8 +178,8 @@ func TestPDFArcs(t *testing.T) {
 	} {
 		start, sweep := c.start*math.Pi/180, c.sweep*math.Pi/180
 		from, to := center.Add(involute.Polar(radius, start)), center.Add(involute.Polar(radius, start+sweep))
-		line := Polyline{Vertices: []Vertex{{P: from, Bulge: math.Tan(sweep / 4)}, {P: to}}}
-		d := Drawing{Width: 210, Height: 297, Elements: []Element{Shape{line, Style{Width: 0.2, Line: Black}}}}
+		line := polyline{Vertices: []Vertex{{P: from, Bulge: math.Tan(sweep / 4)}, {P: to}}}
+		d := Drawing{Width: 210, Height: 297, elements: []element{shape{line, shapeStyle{Width: 0.2, Line: black}}}}
 		chains := pdfCurves(t, pdfBytes(t, d))
 		if len(chains) != 1 {
 			t.Fatalf("arc %v: %d chains", c, len(chains))
@@ -215,9 +215,9 @@ func TestPDFRefuses(t *testing.T) {
 	}{
 		{"no page", nil, "no page"},
 		{"no size", []Drawing{{Width: 0, Height: 10}}, "0 × 10"},
-		{"NaN", []Drawing{{Width: 10, Height: 10, Elements: []Element{Shape{Outline: straight(involute.Vec{X: math.NaN()}, involute.Vec{})}}}}, "NaN"},
-		{"one point", []Drawing{{Width: 10, Height: 10, Elements: []Element{Shape{Outline: straight(involute.Vec{})}}}}, "1 points"},
-		{"text of no size", []Drawing{{Width: 10, Height: 10, Elements: []Element{Text{Words: "x"}}}}, "size 0"},
+		{"NaN", []Drawing{{Width: 10, Height: 10, elements: []element{shape{Outline: straight(involute.Vec{X: math.NaN()}, involute.Vec{})}}}}, "NaN"},
+		{"one point", []Drawing{{Width: 10, Height: 10, elements: []element{shape{Outline: straight(involute.Vec{})}}}}, "1 points"},
+		{"text of no size", []Drawing{{Width: 10, Height: 10, elements: []element{textLine{Words: "x"}}}}, "size 0"},
 	} {
 		var b bytes.Buffer
 		if err := WritePDF(&b, "", c.pages); err == nil || !strings.Contains(err.Error(), c.want) || b.Len() > 0 {

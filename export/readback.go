@@ -35,7 +35,7 @@ func NewSection(p Path, lead float64) (Section, error) {
 		s.twist = 2 * math.Pi / math.Abs(lead)
 	}
 	for i := range p.Vertices {
-		c := p.Piece(i)
+		c := p.Curve(i)
 		mid, _ := c.At(0.5)
 		s.pieces = append(s.pieces, placed{c, mid.Angle()})
 		for _, t := range []float64{0, 0.5} {
@@ -244,6 +244,6 @@ func (s Section) sweptDistance(p involute.Curve, c involute.Vec) float64 {
 		}
 	}
 	lo, hi := max(0, bestT-1.0/sweptSteps), min(1, bestT+1.0/sweptSteps)
-	_, farthest := goldenMax(func(t float64) float64 { return -at(t) }, lo, hi)
+	_, farthest := findMaximum(func(t float64) float64 { return -at(t) }, lo, hi)
 	return min(best, -farthest)
 }

@@ -7,7 +7,8 @@ import (
 )
 
 // shapeSamples is at how many places each piece read back is held against the
-// exact profile: both ends of it and between.
+// exact profile: its start, and evenly on from there. Its end is where the next
+// piece starts.
 const shapeSamples = 6
 
 // Deviation returns the greatest distance of the contour from the exact profile

@@ -176,7 +176,7 @@ func LayoutSheet(s Sheet, size PageSize) (Drawing, error) {
 			continue
 		}
 		s.views(b, room)
-		d.Elements = b.elements
+		d.elements = b.elements
 		break
 	}
 	return d, nil
@@ -211,7 +211,7 @@ func (s Sheet) check() error {
 			s.Gear, g.Teeth, g.Root, g.Reference, g.Tip)
 	}
 	for _, p := range append([]Path{g.Outline}, g.Bore...) {
-		if err := (Shape{Outline: Polyline{Vertices: p.Vertices, Closed: true}}).check(); err != nil {
+		if err := (shape{Outline: p.line()}).check(); err != nil {
 			return fmt.Errorf("sheet of %q: %w", s.Gear, err)
 		}
 	}

@@ -9,7 +9,7 @@ import (
 // A board is a page while it is being set: it knows the lettering and takes elements.
 type board struct {
 	typeface
-	elements []Element
+	elements []element
 }
 
 // How far below the top of a cell its label's and its value's base lines are, mm.
@@ -19,24 +19,24 @@ const (
 )
 
 // The letterings of a sheet.
-func titleLetters() lettering   { return lettering{Size: 17 * pt, Bold: true, Tone: Black} }
-func headingLetters() lettering { return lettering{Size: 8.5 * pt, Bold: true, Tone: Black} }
-func labelLetters() lettering   { return lettering{Size: 6.8 * pt, Tone: Gray} }
-func bodyLetters() lettering    { return lettering{Size: 8.5 * pt, Tone: Black} }
-func valueLetters() lettering   { return lettering{Size: 9.5 * pt, Tone: Black} }
+func titleLetters() lettering   { return lettering{Size: 17 * pt, Bold: true, Tone: black} }
+func headingLetters() lettering { return lettering{Size: 8.5 * pt, Bold: true, Tone: black} }
+func labelLetters() lettering   { return lettering{Size: 6.8 * pt, Tone: gray} }
+func bodyLetters() lettering    { return lettering{Size: 8.5 * pt, Tone: black} }
+func valueLetters() lettering   { return lettering{Size: 9.5 * pt, Tone: black} }
 
-func (b *board) add(e ...Element) { b.elements = append(b.elements, e...) }
+func (b *board) add(e ...element) { b.elements = append(b.elements, e...) }
 
 // say sets one line of words on a base line.
-func (b *board) say(x, y float64, s string, l lettering, a Align) {
+func (b *board) say(x, y float64, s string, l lettering, a alignment) {
 	if s == "" {
 		return
 	}
-	b.add(Text{At: involute.Vec{X: x, Y: y}, Words: s, Size: l.Size, Bold: l.Bold, Tone: l.Tone, Align: a})
+	b.add(textLine{At: involute.Vec{X: x, Y: y}, Words: s, Size: l.Size, Bold: l.Bold, Tone: l.Tone, Align: a})
 }
 
 // sayIn sets one line of words that keeps to a width: smaller, then cut.
-func (b *board) sayIn(x, y, width float64, s string, l lettering, a Align) {
+func (b *board) sayIn(x, y, width float64, s string, l lettering, a alignment) {
 	s, l = b.fitted(s, l, width)
 	b.say(x, y, s, l, a)
 }
@@ -47,13 +47,13 @@ func (b *board) rule(x0, x1, y, width float64) {
 }
 
 // stroke draws a solid black line.
-func (b *board) stroke(line Polyline, width float64) {
-	b.add(Shape{Outline: line, Style: Style{Width: width, Line: Black}})
+func (b *board) stroke(line polyline, width float64) {
+	b.add(shape{Outline: line, Style: shapeStyle{Width: width, Line: black}})
 }
 
 // fill covers a closed line with a tone.
-func (b *board) fill(line Polyline, tone Tone) {
-	b.add(Shape{Outline: line, Style: Style{Fill: tone}})
+func (b *board) fill(line polyline, with tone) {
+	b.add(shape{Outline: line, Style: shapeStyle{Fill: with}})
 }
 
 // heading sets a section's name under a heavy rule and returns where its content starts.
@@ -65,8 +65,8 @@ func (b *board) heading(x0, x1, top float64, name, aside string) float64 {
 		width *= most
 	}
 	name, l := b.fitted(name, headingLetters(), width)
-	b.say(x0, base, name, l, AlignLeft)
-	b.sayIn(x1, base, x1-x0-b.width(name, l)-gap, aside, labelLetters(), AlignRight)
+	b.say(x0, base, name, l, alignLeft)
+	b.sayIn(x1, base, x1-x0-b.width(name, l)-gap, aside, labelLetters(), alignRight)
 	return top - 6.4
 }
 
@@ -74,7 +74,7 @@ func (b *board) heading(x0, x1, top float64, name, aside string) float64 {
 func (b *board) labelled(c box, f Field) {
 	const gap = 2.0
 	w := c.width() - gap
-	b.sayIn(c.X0, c.Y1-labelDrop, w, f.Label, labelLetters(), AlignLeft)
+	b.sayIn(c.X0, c.Y1-labelDrop, w, f.Label, labelLetters(), alignLeft)
 	value, small := valueLetters(), labelLetters()
 	whole := b.width(f.Value, value)
 	if f.Other != "" {
@@ -88,8 +88,8 @@ func (b *board) labelled(c box, f Field) {
 	shrink := min(1, 0.999*w/whole)
 	value.Size *= shrink
 	small.Size *= shrink
-	b.say(c.X0, base, b.printable(f.Value), value, AlignLeft)
-	b.say(c.X0+b.width(f.Value, value)+gap*shrink, base, b.printable(f.Other), small, AlignLeft)
+	b.say(c.X0, base, b.printable(f.Value), value, alignLeft)
+	b.say(c.X0+b.width(f.Value, value)+gap*shrink, base, b.printable(f.Other), small, alignLeft)
 }
 
 // twoLines sets words too long for one line in two small ones.
@@ -102,7 +102,7 @@ func (b *board) twoLines(x, top, width float64, s string, l lettering) {
 func (b *board) lines(x, top float64, words []string, l lettering) float64 {
 	step := 1.28 * l.Size
 	for i, s := range words {
-		b.say(x, top-float64(i)*step-l.Size, s, l, AlignLeft)
+		b.say(x, top-float64(i)*step-l.Size, s, l, alignLeft)
 	}
 	return top - float64(len(words))*step
 }

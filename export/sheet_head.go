@@ -15,17 +15,17 @@ func (s Sheet) titleBlock(b *board, page box) float64 {
 	small := labelLetters()
 	small.Size = 8 * pt
 	base := page.Y1 - small.Size
-	b.say(page.X0, base, "Gear inspection sheet", small, AlignLeft)
+	b.say(page.X0, base, "Gear inspection sheet", small, alignLeft)
 	top := page.Y1 - 4.4
 	l := titleLetters()
 	width := page.width()
 	y := top - 1.28*l.Size
 	if s.Gear != "" {
 		width -= gearWidth + gap
-		b.say(page.X1, base, "Gear", small, AlignRight)
+		b.say(page.X1, base, "Gear", small, alignRight)
 		words, letters := b.settled(s.Gear, l, gearWidth, 2)
 		for i, line := range words {
-			b.say(page.X1, top-(1+1.28*float64(i))*letters.Size, line, letters, AlignRight)
+			b.say(page.X1, top-(1+1.28*float64(i))*letters.Size, line, letters, alignRight)
 		}
 		y = min(y, top-1.28*float64(len(words))*letters.Size)
 	}

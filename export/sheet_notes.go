@@ -49,7 +49,7 @@ func (s Sheet) method(b *board, x0, x1, top float64, dense density) float64 {
 		if left -= len(words); left < 0 {
 			break
 		}
-		b.say(x0, y-l.Size, fmt.Sprintf("%d", i+1), lettering{Size: l.Size, Bold: true, Tone: Black}, AlignLeft)
+		b.say(x0, y-l.Size, fmt.Sprintf("%d", i+1), lettering{Size: l.Size, Bold: true, Tone: black}, alignLeft)
 		y = b.lines(x0+indent, y, words, l) - 0.25*l.Size
 	}
 	return y
@@ -67,8 +67,8 @@ func (s Sheet) limits(b *board, x0, x1, top float64, dense density) float64 {
 	}
 	for _, f := range shown {
 		y -= l.Size
-		b.sayIn(x0, y, 0.37*(x1-x0)-2, f.Label, l, AlignLeft)
-		b.sayIn(x1, y, 0.63*(x1-x0), f.joined(), values, AlignRight)
+		b.sayIn(x0, y, 0.37*(x1-x0)-2, f.Label, l, alignLeft)
+		b.sayIn(x1, y, 0.63*(x1-x0), f.joined(), values, alignRight)
 		y -= 0.42 * l.Size
 		b.rule(x0, x1, y, hairRule)
 		y -= 0.12 * l.Size
@@ -96,7 +96,7 @@ func (s Sheet) warnings(b *board, page box, top float64, dense density) float64 
 	}
 	head := headingLetters()
 	y := top - 0.4
-	b.say(page.X0+indent, y-head.Size, name, head, AlignLeft)
+	b.say(page.X0+indent, y-head.Size, name, head, alignLeft)
 	y -= 1.5 * head.Size
 	left := dense.lines
 	for i, text := range warnings {
@@ -109,7 +109,7 @@ func (s Sheet) warnings(b *board, page box, top float64, dense density) float64 
 		left -= len(words)
 		y = b.lines(page.X0+indent, y, words, l) - 0.15*l.Size
 	}
-	b.fill(box{X0: page.X0, X1: page.X0 + bar, Y0: y, Y1: top}.outline(), Black)
+	b.fill(box{X0: page.X0, X1: page.X0 + bar, Y0: y, Y1: top}.outline(), black)
 	return y
 }
 
@@ -147,8 +147,8 @@ func (s Sheet) checkBars(b *board, page box, top float64) float64 {
 	bar(b, x, y, inchBar, 8, "2 in")
 	x += inchBar + gap
 	room := page.X1 - x
-	b.sayIn(page.X1, y-0.6, room, "Print at 100 %, then measure these bars.", labelLetters(), AlignRight)
-	b.sayIn(page.X1, top-height+0.6, room, s.Foot, labelLetters(), AlignRight)
+	b.sayIn(page.X1, y-0.6, room, "Print at 100 %, then measure these bars.", labelLetters(), alignRight)
+	b.sayIn(page.X1, top-height+0.6, room, s.Foot, labelLetters(), alignRight)
 	return top - height
 }
 
@@ -163,5 +163,5 @@ func bar(b *board, x, y, length float64, n int, name string) {
 		at := x + length*float64(i)/float64(n)
 		upright(b, at, y-tick, y+tick/2, width)
 	}
-	b.say(x+length/2, y-3.6, name, labelLetters(), AlignCenter)
+	b.say(x+length/2, y-3.6, name, labelLetters(), alignCenter)
 }

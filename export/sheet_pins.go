@@ -137,7 +137,7 @@ func (p pinPicture) drawPins(b *board, at placement, pins []involute.Vec, anvil 
 	left, right := math.Inf(1), math.Inf(-1)
 	for _, q := range pins {
 		c := q.Scale(at.scale).Add(at.origin)
-		b.add(Shape{Outline: circleLine(c, p.view.Diameter*at.scale), Style: Style{Width: outlineWidth, Line: Black, Fill: Paper}})
+		b.add(shape{Outline: circlePath(c, p.view.Diameter*at.scale).line(), Style: shapeStyle{Width: outlineWidth, Line: black, Fill: paper}})
 		cross := min(1.2, 0.3*p.view.Diameter*at.scale)
 		b.stroke(straight(c.Sub(involute.Vec{X: cross}), c.Add(involute.Vec{X: cross})), thinLine)
 		b.stroke(straight(c.Sub(involute.Vec{Y: cross}), c.Add(involute.Vec{Y: cross})), thinLine)

@@ -24,7 +24,7 @@ func sampleGear(z int, m float64, bore float64) GearShape {
 			Vertex{P: involute.Polar(g.Tip/2, at(0.64))})
 	}
 	if bore > 0 {
-		g.Bore = []Path{{Vertices: circleLine(involute.Vec{}, bore).Vertices}}
+		g.Bore = []Path{circlePath(involute.Vec{}, bore)}
 	}
 	return g
 }

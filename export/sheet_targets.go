@@ -33,15 +33,15 @@ func (s Sheet) targetTable(b *board, page box, top float64, dense density) float
 	if len(shown) > 0 {
 		aim := t.cell(0, aimColumn)
 		aim.Y0 = t.bottom()
-		b.fill(aim.outline(), Tint)
+		b.fill(aim.outline(), tint)
 	}
 	for column, name := range []string{"Measure", "Low limit", "Aim", "High limit"} {
 		c := t.cell(0, column)
 		if column == measureColumn {
-			b.say(c.X0, c.Y0+1.4, name, labelLetters(), AlignLeft)
+			b.say(c.X0, c.Y0+1.4, name, labelLetters(), alignLeft)
 			continue
 		}
-		b.say((c.X0+c.X1)/2, c.Y0+1.4, name, labelLetters(), AlignCenter)
+		b.say((c.X0+c.X1)/2, c.Y0+1.4, name, labelLetters(), alignCenter)
 	}
 	for i, target := range shown {
 		s.targetRow(b, t, i+1, target)
@@ -53,7 +53,7 @@ func (s Sheet) targetTable(b *board, page box, top float64, dense density) float
 	y = t.bottom()
 	if left := len(s.Targets) - len(shown); left > 0 {
 		y -= 3.6
-		b.say(page.X0, y+0.8, fmt.Sprintf("… %d more measures are not shown for want of room", left), labelLetters(), AlignLeft)
+		b.say(page.X0, y+0.8, fmt.Sprintf("… %d more measures are not shown for want of room", left), labelLetters(), alignLeft)
 	}
 	return y
 }
@@ -75,7 +75,7 @@ func (s Sheet) targetRow(b *board, t table, row int, target Target) {
 	if target.Unusable != "" {
 		c := t.cell(row, lowColumn)
 		c.X1 = t.right()
-		b.fill(c.outline(), Paper)
+		b.fill(c.outline(), paper)
 		notUsable(b, c, target.Unusable)
 		return
 	}
@@ -84,9 +84,9 @@ func (s Sheet) targetRow(b *board, t table, row int, target Target) {
 		if column == measureColumn {
 			continue
 		}
-		l := lettering{Size: 15 * pt * scale, Tone: Black}
+		l := lettering{Size: 15 * pt * scale, Tone: black}
 		if column == aimColumn {
-			l = lettering{Size: 18 * pt * scale, Bold: true, Tone: Black}
+			l = lettering{Size: 18 * pt * scale, Bold: true, Tone: black}
 		}
 		s.figure(b, t.cell(row, column), f, l, scale)
 	}
@@ -102,36 +102,36 @@ func (s Sheet) figure(b *board, c box, f Figure, large lettering, scale float64)
 		second += unit
 	}
 	x, h := (c.X0+c.X1)/2, c.height()
-	b.sayIn(x, c.Y0+0.46*h, c.width()-2, first, large, AlignCenter)
-	small := lettering{Size: 8.5 * pt * scale, Tone: Gray}
-	b.sayIn(x, c.Y0+0.13*h, c.width()-2, second, small, AlignCenter)
+	b.sayIn(x, c.Y0+0.46*h, c.width()-2, first, large, alignCenter)
+	small := lettering{Size: 8.5 * pt * scale, Tone: gray}
+	b.sayIn(x, c.Y0+0.13*h, c.width()-2, second, small, alignCenter)
 }
 
 // targetName sets what is measured and with what, in up to two lines.
 func (s Sheet) targetName(b *board, c box, target Target) {
 	w, h := c.width()-3, c.height()
-	name := lettering{Size: 10 * pt * min(1, h/8.5), Bold: true, Tone: Black}
+	name := lettering{Size: 10 * pt * min(1, h/8.5), Bold: true, Tone: black}
 	top := c.Y1 - 0.6 - 0.04*h
-	b.sayIn(c.X0, top-0.8*name.Size, w, target.Measure, name, AlignLeft)
+	b.sayIn(c.X0, top-0.8*name.Size, w, target.Measure, name, alignLeft)
 	top -= 1.05 * name.Size
 	room := (top - c.Y0 - 0.6) / 1.28 // for letters
-	small := lettering{Size: min(7.4*pt, room), Tone: Black}
+	small := lettering{Size: min(7.4*pt, room), Tone: black}
 	if with := b.wrapped(target.With, small, w); len(with) <= 1 || 2*small.Size <= room {
 		b.lines(c.X0, top, b.paragraph(target.With, small, w, 2), small)
 		return
 	}
-	b.sayIn(c.X0, top-small.Size, w, target.With, small, AlignLeft)
+	b.sayIn(c.X0, top-small.Size, w, target.With, small, alignLeft)
 }
 
 // notUsable sets the reason why a measure must not be used.
 func notUsable(b *board, c box, reason string) {
 	const pad, most = 2.0, 3
-	bold := lettering{Size: 9 * pt, Bold: true, Tone: Black}
+	bold := lettering{Size: 9 * pt, Bold: true, Tone: black}
 	word := "Do not use"
 	middle := (c.Y0 + c.Y1) / 2
-	b.say(c.X0+pad, middle-0.36*bold.Size, word, bold, AlignLeft)
+	b.say(c.X0+pad, middle-0.36*bold.Size, word, bold, alignLeft)
 	x := c.X0 + pad + b.width(word, bold) + 4
-	l := lettering{Size: 8 * pt, Tone: Black}
+	l := lettering{Size: 8 * pt, Tone: black}
 	n := min(most, int((c.height()-0.6)/(1.28*l.Size)))
 	lines := b.wrapped(reason, l, c.X1-x-1)
 	if len(lines) > n {
@@ -151,19 +151,19 @@ func (s Sheet) readingTable(b *board, page box, top float64, dense density) floa
 	for column, name := range []string{"Measure", "0°", "90°", "180°", "270°", "Mean"} {
 		c := t.cell(0, column)
 		if column == 0 {
-			b.say(c.X0, c.Y0+1.4, name, labelLetters(), AlignLeft)
+			b.say(c.X0, c.Y0+1.4, name, labelLetters(), alignLeft)
 			continue
 		}
-		b.say((c.X0+c.X1)/2, c.Y0+1.4, name, labelLetters(), AlignCenter)
+		b.say((c.X0+c.X1)/2, c.Y0+1.4, name, labelLetters(), alignCenter)
 		upright(b, c.X0, t.bottom(), c.Y0, hairRule)
 	}
 	t.ruleBelow(b, 0, thinRule)
 	for i, r := range s.Readings {
 		c := t.cell(i+1, 0)
 		h := c.height()
-		name := lettering{Size: 8.5 * pt, Bold: true, Tone: Black}
-		b.sayIn(c.X0, c.Y0+0.58*h, c.width()-3, r.Measure, name, AlignLeft)
-		b.sayIn(c.X0, c.Y0+0.17*h, c.width()-3, r.Limits, lettering{Size: 7.5 * pt, Tone: Black}, AlignLeft)
+		name := lettering{Size: 8.5 * pt, Bold: true, Tone: black}
+		b.sayIn(c.X0, c.Y0+0.58*h, c.width()-3, r.Measure, name, alignLeft)
+		b.sayIn(c.X0, c.Y0+0.17*h, c.width()-3, r.Limits, lettering{Size: 7.5 * pt, Tone: black}, alignLeft)
 		t.ruleBelow(b, i+1, hairRule)
 	}
 	return s.signatures(b, page, t.bottom(), dense)
@@ -178,7 +178,7 @@ func (s Sheet) signatures(b *board, page box, top float64, dense density) float6
 			upright(b, c.X0, c.Y0, c.Y1, hairRule)
 			c.X0 += 2
 		}
-		b.say(c.X0, c.Y1-labelDrop, name, labelLetters(), AlignLeft)
+		b.say(c.X0, c.Y1-labelDrop, name, labelLetters(), alignLeft)
 	}
 	t.ruleBelow(b, 0, thinRule)
 	return t.bottom()

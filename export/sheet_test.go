@@ -15,13 +15,13 @@ func sampleSheets() map[string]Sheet {
 }
 
 // textBox returns the box a line of words covers, from its descenders to its capitals.
-func textBox(fonts typeface, t Text) box {
+func textBox(fonts typeface, t textLine) box {
 	w := fonts.width(t.Words, lettering{Size: t.Size, Bold: t.Bold})
 	x := t.At.X
 	switch t.Align {
-	case AlignCenter:
+	case alignCenter:
 		x -= w / 2
-	case AlignRight:
+	case alignRight:
 		x -= w
 	}
 	return box{x, t.At.Y - 0.2*t.Size, x + w, t.At.Y + 0.72*t.Size}
@@ -33,8 +33,8 @@ func checkWords(t rapid.TB, fonts typeface, d Drawing) {
 	const slack = 1e-6 // mm, rounding
 	var boxes []box
 	var words []string
-	for _, e := range d.Elements {
-		text, ok := e.(Text)
+	for _, e := range d.elements {
+		text, ok := e.(textLine)
 		if !ok {
 			continue
 		}
@@ -110,8 +110,8 @@ func TestSheetOfAnyWords(t *testing.T) {
 // said returns all words of a page.
 func said(d Drawing) []string {
 	var words []string
-	for _, e := range d.Elements {
-		if t, ok := e.(Text); ok {
+	for _, e := range d.elements {
+		if t, ok := e.(textLine); ok {
 			words = append(words, t.Words)
 		}
 	}
@@ -150,9 +150,9 @@ func TestSheetTargetFiguresAreLargest(t *testing.T) {
 		if s.InchFirst {
 			want = s.Targets[0].Aim.Inch
 		}
-		largest := Text{}
-		for _, e := range mustLayout(t, s, A4).Elements {
-			if text, ok := e.(Text); ok && text.Words != s.Title && text.Words != s.Gear && text.Size > largest.Size {
+		largest := textLine{}
+		for _, e := range mustLayout(t, s, A4).elements {
+			if text, ok := e.(textLine); ok && text.Words != s.Title && text.Words != s.Gear && text.Size > largest.Size {
 				largest = text
 			}
 		}

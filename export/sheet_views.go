@@ -33,15 +33,15 @@ func (s Sheet) views(b *board, room box) {
 	}
 }
 
-// viewFrame sets a picture's heading with its scale, and its note, and returns the box between.
+// viewFrame returns the box left for a picture between its heading and its note, which viewWords sets.
 func viewFrame(room box) box {
 	return box{X0: room.X0, X1: room.X1, Y0: room.Y0 + noteHeight, Y1: room.Y1 - viewHeading}
 }
 
-// viewWords sets the words round a picture.
+// viewWords sets the words round a picture: its title and scale above, its note below.
 func (b *board) viewWords(room box, title, scale, note string) {
 	b.heading(room.X0, room.X1, room.Y1, title, scale)
-	b.sayIn(room.X0, room.Y0+1, room.width(), note, labelLetters(), AlignLeft)
+	b.sayIn(room.X0, room.Y0+1, room.width(), note, labelLetters(), alignLeft)
 }
 
 func (v *PinView) check() error {

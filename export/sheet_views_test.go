@@ -28,9 +28,9 @@ func scalesSaid(d Drawing) []float64 {
 // circles returns the pins drawn: circles filled like paper, of a diameter.
 func circles(d Drawing, diameter float64) []involute.Vec {
 	var centers []involute.Vec
-	for _, e := range d.Elements {
-		s, ok := e.(Shape)
-		if !ok || s.Style.Fill != Paper || len(s.Outline.Vertices) != 2 || s.Outline.Vertices[0].Bulge != 1 {
+	for _, e := range d.elements {
+		s, ok := e.(shape)
+		if !ok || s.Style.Fill != paper || len(s.Outline.Vertices) != 2 || s.Outline.Vertices[0].Bulge != 1 {
 			continue
 		}
 		a, b := s.Outline.Vertices[0].P, s.Outline.Vertices[1].P
@@ -88,8 +88,8 @@ func TestSheetSpanIsAtTheStatedScale(t *testing.T) {
 		s.Shape, s.Pins, s.Span = g, nil, sampleSpan(g, c.module, c.spanned)
 		d := mustLayout(t, s, Letter)
 		var faces []float64
-		for _, e := range d.Elements {
-			if shape, ok := e.(Shape); ok && shape.Style.Width == faceWidth {
+		for _, e := range d.elements {
+			if shape, ok := e.(shape); ok && shape.Style.Width == faceWidth {
 				faces = append(faces, shape.Outline.Vertices[0].P.X)
 			}
 		}
@@ -121,8 +121,8 @@ func TestSheetPicturesStayOnThePage(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		for _, e := range d.Elements {
-			shape, ok := e.(Shape)
+		for _, e := range d.elements {
+			shape, ok := e.(shape)
 			if !ok {
 				continue
 			}

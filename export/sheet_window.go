@@ -19,8 +19,8 @@ func (p placement) at(g involute.Vec) involute.Vec {
 }
 
 // line carries a polyline; its bulges stay, as angles do.
-func (p placement) line(l Polyline) Polyline {
-	moved := Polyline{Closed: l.Closed, Vertices: make([]Vertex, len(l.Vertices))}
+func (p placement) line(l polyline) polyline {
+	moved := polyline{Closed: l.Closed, Vertices: make([]Vertex, len(l.Vertices))}
 	for i, v := range l.Vertices {
 		moved.Vertices[i] = Vertex{P: p.at(v.P), Bulge: v.Bulge}
 	}
@@ -78,15 +78,15 @@ func (g GearShape) innerRadius() float64 {
 	return inner
 }
 
-// crossing returns the piece of a path that crosses the ray at an angle counter-clockwise, and how far along it, 0 to 1.
-func (p Path) rayCrossing(angle float64) (piece int, share float64, ok bool) {
+// rayCrossing returns which piece of a path crosses the ray at an angle counter-clockwise, and how far along it, 0 to 1.
+func (p Path) rayCrossing(angle float64) (index int, share float64, ok bool) {
 	ray := involute.Polar(1, angle)
 	for i := range p.Vertices {
 		from, to, _ := p.ends(i)
 		if ray.Cross(from) > 0 || ray.Cross(to) <= 0 || ray.Dot(from.Add(to)) <= 0 {
 			continue
 		}
-		curve := p.Piece(i)
+		curve := p.Curve(i)
 		t0, t1 := curve.Domain()
 		lo, hi := t0, t1
 		for range 60 { // halving to the last bit
@@ -103,24 +103,24 @@ func (p Path) rayCrossing(angle float64) (piece int, share float64, ok bool) {
 }
 
 // part returns a share of a piece, from t0 to t1 of its length, as its first vertex and its end.
-func (p Path) part(piece int, t0, t1 float64) (Vertex, involute.Vec) {
-	curve := p.Piece(piece)
+func (p Path) part(index int, t0, t1 float64) (Vertex, involute.Vec) {
+	curve := p.Curve(index)
 	lo, hi := curve.Domain()
 	from, _ := curve.At(lo + t0*(hi-lo))
 	to, _ := curve.At(lo + t1*(hi-lo))
-	return Vertex{P: from, Bulge: math.Tan((t1 - t0) * math.Atan(p.Vertices[piece].Bulge))}, to
+	return Vertex{P: from, Bulge: math.Tan((t1 - t0) * math.Atan(p.Vertices[index].Bulge))}, to
 }
 
 // between returns the open part of a counter-clockwise contour from one ray to another. The
 // rays should run through tooth spaces or teeth at their middle, where they meet the contour once.
-func (p Path) between(from, to float64) (Polyline, bool) {
+func (p Path) between(from, to float64) (polyline, bool) {
 	i, s, ok0 := p.rayCrossing(from)
 	j, t, ok1 := p.rayCrossing(to)
 	if !ok0 || !ok1 || i == j && s <= t {
-		return Polyline{}, false
+		return polyline{}, false
 	}
 	first, _ := p.part(i, s, 1)
-	line := Polyline{Vertices: []Vertex{first}}
+	line := polyline{Vertices: []Vertex{first}}
 	for k := (i + 1) % len(p.Vertices); k != j; k = (k + 1) % len(p.Vertices) {
 		line.Vertices = append(line.Vertices, p.Vertices[k])
 	}
@@ -129,15 +129,15 @@ func (p Path) between(from, to float64) (Polyline, bool) {
 	return line, true
 }
 
-// drawGear draws the whole gear with its reference circle and center.
+// draw draws the whole gear with its reference circle and center.
 func (g GearShape) draw(b *board, p placement) {
-	outline := p.line(Polyline{Vertices: g.Outline.Vertices, Closed: true})
-	b.add(Shape{Outline: outline, Style: Style{Width: outlineWidth, Line: Black, Fill: Tint}})
+	outline := p.line(g.Outline.line())
+	b.add(shape{Outline: outline, Style: shapeStyle{Width: outlineWidth, Line: black, Fill: tint}})
 	for _, bore := range g.Bore {
-		line := p.line(Polyline{Vertices: bore.Vertices, Closed: true})
-		b.add(Shape{Outline: line, Style: Style{Width: outlineWidth, Line: Black, Fill: Paper}})
+		line := p.line(bore.line())
+		b.add(shape{Outline: line, Style: shapeStyle{Width: outlineWidth, Line: black, Fill: paper}})
 	}
-	b.axis(circleLine(p.origin, g.Reference*p.scale))
+	b.axis(circlePath(p.origin, g.Reference*p.scale).line())
 	const mark = 3.0
 	x, y := involute.Vec{X: mark}, involute.Vec{Y: mark}
 	b.stroke(straight(p.origin.Sub(x), p.origin.Add(x)), thinLine)
@@ -152,9 +152,9 @@ func (g GearShape) drawPart(b *board, p placement, c cutting) {
 	}
 	line = p.line(line)
 	inner := arcLine(p, c.Inner, c.To, c.From)
-	metal := Polyline{Closed: true}
+	metal := polyline{Closed: true}
 	metal.Vertices = append(append(metal.Vertices, line.Vertices...), inner.Vertices...)
-	b.fill(metal, Tint)
+	b.fill(metal, tint)
 	first, last := line.Vertices[0].P, line.Vertices[len(line.Vertices)-1].P
 	b.breakLine(last, p.at(involute.Polar(c.Inner, c.To)))
 	b.breakArc(p, c)
@@ -164,15 +164,15 @@ func (g GearShape) drawPart(b *board, p placement, c cutting) {
 }
 
 // arcLine returns the arc about the gear's center from one angle to another, on the page.
-func arcLine(p placement, radius, from, to float64) Polyline {
-	return p.line(Polyline{Vertices: []Vertex{
+func arcLine(p placement, radius, from, to float64) polyline {
+	return p.line(polyline{Vertices: []Vertex{
 		{P: involute.Polar(radius, from), Bulge: math.Tan((to - from) / 4)}, {P: involute.Polar(radius, to)},
 	}})
 }
 
 // axis draws a thin long-dashed dotted line, as pitch circles have.
-func (b *board) axis(line Polyline) {
-	b.add(Shape{Outline: line, Style: Style{Width: thinLine, Line: Black, Dash: DashDot}})
+func (b *board) axis(line polyline) {
+	b.add(shape{Outline: line, Style: shapeStyle{Width: thinLine, Line: black, Dash: dashDot}})
 }
 
 // breakLine draws a wavy line, which says that the part goes on (ISO 128-2:2020, thin freehand line).

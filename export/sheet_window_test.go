@@ -10,7 +10,7 @@ import (
 )
 
 // openLength returns the length of an open polyline, mm.
-func openLength(l Polyline) float64 {
+func openLength(l polyline) float64 {
 	sum := 0.0
 	for i := range len(l.Vertices) - 1 {
 		v, to := l.Vertices[i], l.Vertices[i+1].P
@@ -35,8 +35,8 @@ func TestBetweenCutsWholePitches(t *testing.T) {
 		if !ok {
 			t.Fatal("nothing was cut")
 		}
-		want := g.Outline.Length() * float64(n) / float64(z)
-		if got := openLength(part); math.Abs(got-want) > 1e-9*g.Outline.Length() { // ends found to the last bits of the contour
+		want := g.Outline.length() * float64(n) / float64(z)
+		if got := openLength(part); math.Abs(got-want) > 1e-9*g.Outline.length() { // ends found to the last bits of the contour
 			t.Fatalf("cut is %g mm long, want %g", got, want)
 		}
 		ends := []involute.Vec{part.Vertices[0].P, part.Vertices[len(part.Vertices)-1].P}
@@ -49,7 +49,7 @@ func TestBetweenCutsWholePitches(t *testing.T) {
 }
 
 func TestBetweenNeedsAContourRoundTheCenter(t *testing.T) {
-	far := Path{Vertices: circleLine(involute.Vec{X: 100}, 10).Vertices}
+	far := circlePath(involute.Vec{X: 100}, 10)
 	if _, ok := far.between(1, 2); ok {
 		t.Error("a circle beside the center was cut by rays that miss it")
 	}

@@ -25,11 +25,11 @@ func (d Drawing) WriteSVG(w io.Writer) error {
 		return fmt.Errorf("svg: %w", err)
 	}
 	page := &svgPage{fonts: fonts, height: d.Height, known: map[svgGlyph]string{}}
-	for _, e := range d.Elements {
+	for _, e := range d.elements {
 		switch e := e.(type) {
-		case Shape:
+		case shape:
 			page.shape(e)
-		case Text:
+		case textLine:
 			if err := page.text(e); err != nil {
 				return fmt.Errorf("svg: %w", err)
 			}
@@ -80,17 +80,17 @@ func (p *svgPage) point(v involute.Vec) string {
 }
 
 // svgTone writes a tone as a color.
-func svgTone(t Tone) string {
-	if t == Clear {
+func svgTone(t tone) string {
+	if t == noInk {
 		return "none"
 	}
 	c := ink(t)
 	return fmt.Sprintf("#%02x%02x%02x", c.R, c.G, c.B)
 }
 
-func (p *svgPage) shape(s Shape) {
+func (p *svgPage) shape(s shape) {
 	fmt.Fprintf(&p.body, `<path d="%s" fill="%s"`, p.path(s.Outline), svgTone(s.Style.Fill))
-	if s.Style.Line != Clear && s.Style.Width > 0 {
+	if s.Style.Line != noInk && s.Style.Width > 0 {
 		fmt.Fprintf(&p.body, ` stroke="%s" stroke-width="%s" stroke-linejoin="round"`, svgTone(s.Style.Line), svgNumber(s.Style.Width))
 		if mm := dashPattern(s.Style.Dash); mm != nil {
 			words := make([]string, len(mm))
@@ -105,7 +105,7 @@ func (p *svgPage) shape(s Shape) {
 
 // path writes a polyline as SVG path data. A counter-clockwise arc still turns
 // counter-clockwise to the eye, which SVG calls sweep flag 0.
-func (p *svgPage) path(line Polyline) string {
+func (p *svgPage) path(line polyline) string {
 	n := len(line.Vertices)
 	var b strings.Builder
 	b.WriteString("M" + p.point(line.Vertices[0].P))
@@ -114,7 +114,7 @@ func (p *svgPage) path(line Polyline) string {
 			break
 		}
 		to := line.Vertices[(i+1)%n].P
-		arc, bent := Path{Vertices: []Vertex{v, {P: to}}}.Piece(0).(involute.Arc)
+		arc, bent := Path{Vertices: []Vertex{v, {P: to}}}.Curve(0).(involute.Arc)
 		switch {
 		case !bent || math.Abs(v.Bulge) < flatBulge:
 			if i < n-1 { // Z draws the last one
@@ -142,17 +142,17 @@ func (p *svgPage) path(line Polyline) string {
 const svgEm = 1000.0
 
 // text writes a line of words as a group of letters.
-func (p *svgPage) text(t Text) error {
+func (p *svgPage) text(t textLine) error {
 	words := p.fonts.printable(t.Words)
-	if t.Tone == Clear || strings.TrimSpace(words) == "" {
+	if t.Tone == noInk || strings.TrimSpace(words) == "" {
 		return nil
 	}
 	unit := lettering{Size: svgEm, Bold: t.Bold}
 	x := 0.0
 	switch t.Align {
-	case AlignCenter:
+	case alignCenter:
 		x = -p.fonts.width(words, unit) / 2
-	case AlignRight:
+	case alignRight:
 		x = -p.fonts.width(words, unit)
 	}
 	fmt.Fprintf(&p.body, `<g aria-label="%s" fill="%s" transform="translate(%s)`, svgLabel(words), svgTone(t.Tone), p.point(t.At))
@@ -179,7 +179,7 @@ func (p *svgPage) glyph(g svgGlyph) (string, error) {
 	if id, ok := p.known[g]; ok {
 		return id, nil
 	}
-	outline, _, err := p.fonts.face(svgEm, g.bold, Black).ToPath(string(g.letter))
+	outline, _, err := p.fonts.face(svgEm, g.bold, black).ToPath(string(g.letter))
 	if err != nil {
 		return "", fmt.Errorf("letter %q: %w", g.letter, err)
 	}

@@ -20,15 +20,15 @@ func smallDrawing() Drawing {
 	at := func(x, y float64) involute.Vec { return involute.Vec{X: x, Y: y} }
 	flag := straight(at(5, 5), at(15, 5), at(15, 10))
 	flag.Closed = true
-	return Drawing{Title: `"A" < B & C`, Width: 60, Height: 40, Elements: []Element{
-		Shape{circleLine(at(30, 20), 20), Style{Width: 0.4, Line: Black, Fill: Tint}},
-		Shape{circleLine(at(30, 20), 14), Style{Width: 0.18, Line: Black, Dash: DashDot}},
-		Shape{flag, Style{Fill: Black}},
-		Shape{straight(at(5, 30), at(20, 30)), Style{Width: 0.25, Line: Gray, Dash: Dashed}},
-		Shape{Polyline{Vertices: []Vertex{{P: at(45, 5), Bulge: math.Sqrt2 - 1}, {P: at(50, 10), Bulge: -3}, {P: at(50, 12)}}}, Style{Width: 0.25, Line: Black}},
-		Text{At: at(30, 20), Words: "Ø 20", Size: 4, Align: AlignCenter, Tone: Black},
-		Text{At: at(58, 36), Words: `"5" < 6`, Size: 3, Bold: true, Align: AlignRight, Tone: Gray},
-		Text{At: at(3, 12), Words: "up", Size: 3, Turn: math.Pi / 2, Tone: Black},
+	return Drawing{Title: `"A" < B & C`, Width: 60, Height: 40, elements: []element{
+		shape{circlePath(at(30, 20), 20).line(), shapeStyle{Width: 0.4, Line: black, Fill: tint}},
+		shape{circlePath(at(30, 20), 14).line(), shapeStyle{Width: 0.18, Line: black, Dash: dashDot}},
+		shape{flag, shapeStyle{Fill: black}},
+		shape{straight(at(5, 30), at(20, 30)), shapeStyle{Width: 0.25, Line: gray, Dash: dashed}},
+		shape{polyline{Vertices: []Vertex{{P: at(45, 5), Bulge: math.Sqrt2 - 1}, {P: at(50, 10), Bulge: -3}, {P: at(50, 12)}}}, shapeStyle{Width: 0.25, Line: black}},
+		textLine{At: at(30, 20), Words: "Ø 20", Size: 4, Align: alignCenter, Tone: black},
+		textLine{At: at(58, 36), Words: `"5" < 6`, Size: 3, Bold: true, Align: alignRight, Tone: gray},
+		textLine{At: at(3, 12), Words: "up", Size: 3, Turn: math.Pi / 2, Tone: black},
 	}}
 }
 
@@ -149,8 +149,8 @@ func TestCheckBarPrinted(t *testing.T) {
 // levelLine returns where the only level line of a length starts.
 func levelLine(t *testing.T, d Drawing, length float64) involute.Vec {
 	t.Helper()
-	for _, e := range d.Elements {
-		if s, ok := e.(Shape); ok && len(s.Outline.Vertices) == 2 && !s.Outline.Closed {
+	for _, e := range d.elements {
+		if s, ok := e.(shape); ok && len(s.Outline.Vertices) == 2 && !s.Outline.Closed {
 			from, to := s.Outline.Vertices[0].P, s.Outline.Vertices[1].P
 			if from.Y == to.Y && math.Abs(to.X-from.X-length) < 1e-9 {
 				return from

@@ -12,15 +12,17 @@ import (
 // Lengths in an SVG outline, in mm: room round the drawing so that no line is
 // cut off at the edge, the width of lines, and dash and gap of reference circles.
 const (
-	svgMargin    = 1.0
-	svgCutLine   = 0.1
-	svgThinLine  = 0.05
-	svgDash      = 2.0
-	svgGap       = 1.0
-	svgNamespace = "http://www.w3.org/2000/svg"
+	svgMargin   = 1.0
+	svgCutLine  = 0.1
+	svgThinLine = 0.05
+	svgDash     = 2.0
+	svgGap      = 1.0
 )
 
-// WriteSVG writes the outline as an SVG file at true scale.
+// svgNamespace is the name of SVG among the XML languages.
+const svgNamespace = "http://www.w3.org/2000/svg"
+
+// writeSVG writes the outline as an SVG file at true scale.
 //
 // The page's width and height are in mm or inches, and the viewBox holds the
 // same numbers, so that one user unit is one unit of the file. SVG's y axis
@@ -29,13 +31,13 @@ const (
 // counter-clockwise arc stays counter-clockwise, which SVG calls sweep flag 0.
 // Each contour is one path of M, L, A and Z with absolute, separated numbers of
 // twelve decimals; each layer is a group with the layer's name as id.
-func WriteSVG(w io.Writer, o Outline) error {
+func writeSVG(w io.Writer, o Outline) error {
 	f, err := o.fileForm()
 	if err != nil {
 		return err
 	}
 	s := &svgWriter{w: bufio.NewWriter(w), mm: 1 / o.Unit.MM()}
-	lo, hi := f.Bounds()
+	lo, hi := f.bounds()
 	margin := involute.Vec{X: svgMargin * s.mm, Y: svgMargin * s.mm}
 	lo, hi = lo.Sub(margin), hi.Add(margin)
 	width, height := s.number(hi.X-lo.X), s.number(hi.Y-lo.Y)
@@ -114,7 +116,7 @@ func (s *svgWriter) pathData(p Path) string {
 	b.WriteString("M " + s.point(p.Vertices[0].P))
 	for i := range p.Vertices {
 		_, to, bulge := p.ends(i)
-		arc, ok := p.Piece(i).(involute.Arc)
+		arc, ok := p.Curve(i).(involute.Arc)
 		switch {
 		case ok:
 			sweep := "0"

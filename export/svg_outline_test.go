@@ -15,7 +15,7 @@ import (
 // svgBytes writes an outline to memory.
 func svgBytes(t interface{ Fatal(...any) }, o Outline) []byte {
 	var b bytes.Buffer
-	if err := WriteSVG(&b, o); err != nil {
+	if err := writeSVG(&b, o); err != nil {
 		t.Fatal(err)
 	}
 	return b.Bytes()
@@ -47,7 +47,7 @@ func TestSVGRoundTrip(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		o := drawOutline(t)
 		o.Title = rapid.StringMatching(`[ -~°é±Ø]{0,20}`).Draw(t, "title")
-		got, err := ReadSVG(bytes.NewReader(svgBytes(t, o)))
+		got, err := readSVG(bytes.NewReader(svgBytes(t, o)))
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -105,7 +105,7 @@ func TestReadSVGVariants(t *testing.T) {
 		"skipped": svgOf(`<desc><b>x</b></desc><rect width="3"/><text>hi</text><g><path d="M0 2H1V1A.5.5 0 0 0 0 1Z"/></g>`),
 		"around":  `<?xml version="1.0"?><!-- a --><!DOCTYPE svg>` + svgOf(`<style>g{}</style><path d="M0 2H1V1A.5.5 0 0 0 0 1Z"/>`) + "\n<!-- b -->",
 	} {
-		got, err := ReadSVG(strings.NewReader(text))
+		got, err := readSVG(strings.NewReader(text))
 		if err != nil {
 			t.Errorf("%s: %v", name, err)
 			continue
@@ -118,7 +118,7 @@ func TestReadSVGVariants(t *testing.T) {
 
 	// Two contours in one path, on a layer; large arcs; inches.
 	text := strings.ReplaceAll(svgOf(`<g id="CUT"><path d="M 1 0 A 1 1 0 1 1 0 -1 Z M 5 5 L 6 5 L 5 6 Z"/></g><circle r=".5"/>`), `10mm`, `10in`)
-	got, err := ReadSVG(strings.NewReader(text))
+	got, err := readSVG(strings.NewReader(text))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -165,7 +165,7 @@ func TestReadSVGErrors(t *testing.T) {
 		{"far", svgOf(`<circle cx="1e9" r="1"/>`), "must be within"},
 		{"odd number of numbers", svgOf(`<path d="M0 0L1.2.3.4Z"/>`), "is not a number"},
 	} {
-		_, err := ReadSVG(strings.NewReader(test.text))
+		_, err := readSVG(strings.NewReader(test.text))
 		if err == nil || !strings.Contains(err.Error(), test.want) {
 			t.Errorf("%s: %v, want %q", test.name, err, test.want)
 		}
@@ -175,22 +175,22 @@ func TestReadSVGErrors(t *testing.T) {
 // A page that never ends is given up.
 func TestReadSVGIsBounded(t *testing.T) {
 	start := strings.TrimSuffix(svgOf(`<path d="`), "</svg>")
-	if _, err := ReadSVG(&endless{start, "M 0 0 "}); err == nil || !strings.Contains(err.Error(), "larger than 16 MB") {
+	if _, err := readSVG(&endless{start, "M 0 0 "}); err == nil || !strings.Contains(err.Error(), "larger than 16 MB") {
 		t.Errorf("endless path: %v", err)
 	}
 	data := svgOf(`<path d="M0 0` + strings.Repeat("H1H2", maxOutlineVertices/2+1) + `V1Z"/>`)
-	if _, err := ReadSVG(strings.NewReader(data)); err == nil || !strings.Contains(err.Error(), "more than 262144 vertices") {
+	if _, err := readSVG(strings.NewReader(data)); err == nil || !strings.Contains(err.Error(), "more than 262144 vertices") {
 		t.Errorf("many vertices: %v", err)
 	}
 }
 
-// Whatever comes in, ReadSVG returns; what it takes is a sound outline.
+// Whatever comes in, readSVG returns; what it takes is a sound outline.
 func FuzzReadSVG(f *testing.F) {
 	f.Add(svgBytes(f, cam(inspect.Millimeter)))
 	f.Add(svgBytes(f, cam(inspect.Inch)))
 	f.Add([]byte(svgOf(`<path d="M0,2L1,2,1,1A.5.5,0,000,1z"/><circle r="1"/>`)))
 	f.Fuzz(func(t *testing.T, data []byte) {
-		o, err := ReadSVG(bytes.NewReader(data))
+		o, err := readSVG(bytes.NewReader(data))
 		if err == nil {
 			soundOutline(t, o)
 		}

@@ -41,11 +41,11 @@ func TestSvgelementsReadsSVG(t *testing.T) {
 			if err := json.Unmarshal(outsideRun(t, python, "testdata/read_svgelements.py", svgFile(t, o), fmt.Sprint(ppi)), &got); err != nil {
 				t.Fatal(err)
 			}
-			f, err := ReadSVG(mustOpen(t, svgFile(t, o)))
+			f, err := readSVG(mustOpen(t, svgFile(t, o)))
 			if err != nil {
 				t.Fatal(err)
 			}
-			lo, hi := f.Bounds()
+			lo, hi := f.bounds()
 			f.scale(func(x float64) float64 { return x / o.Unit.MM() })
 			size := hi.Sub(lo).Add(involute.Vec{X: 2 * svgMargin, Y: 2 * svgMargin}).Scale(1 / o.Unit.MM())
 			// The library takes a mm for 0.0393701 in, 5.1e-7 too long; all its numbers are divided by that.
@@ -70,12 +70,12 @@ func TestSvgelementsReadsSVG(t *testing.T) {
 					if place(p[1], p[2]).Sub(from).Norm() > slack || place(p[3], p[4]).Sub(to).Norm() > slack {
 						t.Fatalf("path %d, piece %d: %v, want from %v to %v", i, j, p, from, to)
 					}
-					arc, ok := c.Path.Piece(j).(involute.Arc)
+					arc, ok := c.Path.Curve(j).(involute.Arc)
 					if !ok && p[0] == "A" || ok && (p[0] != "A" || !near(slack, p[5].(float64)/stretch, arc.Radius, p[6].(float64)/stretch, arc.Radius, p[7].(float64), -4*math.Atan(b))) {
-						t.Fatalf("path %d, piece %d: %v, want %+v", i, j, p, c.Path.Piece(j))
+						t.Fatalf("path %d, piece %d: %v, want %+v", i, j, p, c.Path.Curve(j))
 					}
 				}
-				blo, bhi := c.Path.Bounds()
+				blo, bhi := c.Path.bounds()
 				x := got.Paths[i].Box
 				if g, h := place(x[0], x[3]), place(x[2], x[1]); g.Sub(blo).Norm()+h.Sub(bhi).Norm() > 1e-7 {
 					t.Errorf("path %d reaches from %v to %v, want %v to %v", i, g, h, blo, bhi)
@@ -115,7 +115,7 @@ func TestLibrsvgDrawsSVG(t *testing.T) {
 			if err != nil {
 				t.Fatal(err)
 			}
-			lo, hi := o.Bounds()
+			lo, hi := o.bounds()
 			size := hi.Sub(lo).Add(involute.Vec{X: 2 * svgMargin, Y: 2 * svgMargin}).Scale(scale)
 			if b := img.Bounds(); !near(1, float64(b.Dx()), size.X, float64(b.Dy()), size.Y) {
 				t.Fatalf("%d by %d pixels, want %v", b.Dx(), b.Dy(), size)
@@ -137,7 +137,7 @@ func TestLibrsvgDrawsSVG(t *testing.T) {
 			}
 			for _, c := range o.Contours {
 				for i := range c.Path.Vertices {
-					piece := c.Path.Piece(i)
+					piece := c.Path.Curve(i)
 					for k := range 1500 {
 						p, _ := piece.At(float64(k) / 1500)
 						mark(p, true)

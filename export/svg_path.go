@@ -18,7 +18,7 @@ func (s *svgReader) path(data string) error {
 		if err != nil {
 			return fmt.Errorf("path, character %d: %w", scan.at+1, err)
 		}
-		if err := path.Check(); err != nil {
+		if err := path.check(); err != nil {
 			return fmt.Errorf("path ending at character %d: %w", scan.at, err)
 		}
 		s.vertices += len(path.Vertices)

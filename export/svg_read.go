@@ -12,8 +12,8 @@ import (
 	"flankwright/involute"
 )
 
-// ReadSVG reads the closed paths and the circles of an SVG file at true scale:
-// what WriteSVG writes, and plain variants of it.
+// readSVG reads the closed paths and the circles of an SVG file at true scale:
+// what writeSVG writes, and plain variants of it.
 //
 // width and height must be in mm or in, and a viewBox in the same proportions
 // sets the scale. Paths are made of M, L, H, V, A (circular) and Z in absolute
@@ -22,7 +22,7 @@ import (
 // where. The layer is the id of the nearest group around, or "0" without one. Text,
 // other shapes and the like are listed in Skipped. Files over 16 MB or over
 // 262144 vertices are refused.
-func ReadSVG(r io.Reader) (Outline, error) {
+func readSVG(r io.Reader) (Outline, error) {
 	limited := &io.LimitedReader{R: r, N: maxOutlineBytes + 1}
 	s := &svgReader{xml: xml.NewDecoder(limited)}
 	err := s.read()
@@ -158,7 +158,7 @@ func (s *svgReader) page(e xml.StartElement) error {
 	}
 	s.scale = w / v[2] * unit.MM()
 	// The same scale both ways, to the six digits that other programs write.
-	if k := h / v[3] * unit.MM(); !(math.Abs(k/s.scale-1) < 1e-6) || math.IsInf(s.scale, 0) {
+	if k := h / v[3] * unit.MM(); !(math.Abs(k/s.scale-1) < 1e-6) || !finite(s.scale) {
 		return errors.New("the viewBox has not the proportions of width and height")
 	}
 	s.out.Unit = unit

@@ -9,7 +9,7 @@ func (b box) width() float64  { return b.X1 - b.X0 }
 func (b box) height() float64 { return b.Y1 - b.Y0 }
 
 // outline returns the edge of the box.
-func (b box) outline() Polyline {
+func (b box) outline() polyline {
 	line := straight(involute.Vec{X: b.X0, Y: b.Y0}, involute.Vec{X: b.X1, Y: b.Y0},
 		involute.Vec{X: b.X1, Y: b.Y1}, involute.Vec{X: b.X0, Y: b.Y1})
 	line.Closed = true

@@ -48,9 +48,9 @@ func runContour(c *cli.Context) error {
 	}
 	folder := isFolder(out)
 	if folder {
-		opt.format, err = formatByName(c.String("format"), opt.r12)
+		opt.format, err = formatByName(c.String("format"), opt.format)
 	} else {
-		opt.format, err = formatByEnding(out, opt.r12)
+		opt.format, err = formatByEnding(out, opt.format)
 		if f := c.String("format"); err == nil && f != "" && "."+strings.ToLower(f) != opt.format.Ending() {
 			err = wrong("-o %s: and --format %s say different things; the ending decides, leave --format out", out, f)
 		}
@@ -87,25 +87,24 @@ func runContour(c *cli.Context) error {
 	return emitBeside(c, r, func() []byte { return r.text(newPage(c.App.Writer), j.digits(c)) })
 }
 
-func formatByEnding(path string, r12 bool) (export.Format, error) {
+// formatByEnding returns the format that a file name asks for: SVG, or the DXF given.
+func formatByEnding(path string, dxf export.Format) (export.Format, error) {
 	ending := strings.TrimPrefix(strings.ToLower(filepath.Ext(path)), ".")
 	if ending == "" {
 		return 0, wrong("-o %s: the ending decides the format; write .dxf or .svg", path)
 	}
-	f, err := formatByName(ending, r12)
+	f, err := formatByName(ending, dxf)
 	if err != nil {
 		return f, wrong("-o %s: a contour is written as .dxf or .svg, not .%s", path, ending)
 	}
 	return f, nil
 }
 
-func formatByName(name string, r12 bool) (export.Format, error) {
+// formatByName returns SVG, or the DXF given, which is also what no name means.
+func formatByName(name string, dxf export.Format) (export.Format, error) {
 	switch strings.ToLower(name) {
 	case "", "dxf":
-		if r12 {
-			return export.FormatDXFR12, nil
-		}
-		return export.FormatDXF, nil
+		return dxf, nil
 	case "svg":
 		return export.FormatSVG, nil
 	}
@@ -114,10 +113,11 @@ func formatByName(name string, r12 bool) (export.Format, error) {
 
 type contourOptions struct {
 	tolerance float64 // mm
-	r12       bool
 	format    export.Format
 }
 
+// readContourOptions reads the flags that contour and packet share. The format is
+// a DXF, of the version asked for.
 func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
 	o := contourOptions{tolerance: defaultTolerance}
 	if mm, ok, err := flagLength(c, j, "tolerance"); err != nil {
@@ -128,11 +128,10 @@ func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
 		}
 		o.tolerance = mm
 	}
-	v, err := export.ParseDXFVersion(orDefault(c.String("dxf-version"), "r2000"))
-	if err != nil {
+	var err error
+	if o.format, err = export.ParseDXFVersion(orDefault(c.String("dxf-version"), "r2000")); err != nil {
 		return o, wrong("--dxf-version: %v", err)
 	}
-	o.r12 = v == export.R12
 	return o, nil
 }
 

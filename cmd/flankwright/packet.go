@@ -76,9 +76,6 @@ func (j *job) packetFiles(c *cli.Context, gears []*gear, a ask) ([]export.File, 
 	if err != nil {
 		return nil, nil, err
 	}
-	if opt.format, err = formatByName("dxf", opt.r12); err != nil {
-		return nil, nil, err
-	}
 	drawn, files, err := j.draw(gears, opt)
 	if err != nil {
 		return nil, nil, err
