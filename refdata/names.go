@@ -31,9 +31,15 @@ func unknown(kind, name string, known []string, table string) error {
 }
 
 // nearest returns the known name with the fewest letters to insert, delete or
-// change, the first of equals. Known must not be empty.
+// change, the first of equals, or the first that begins with the name. Known
+// must not be empty.
 func nearest(name string, known []string) string {
 	best, least := "", -1
+	for _, k := range known {
+		if p := plain(name); len(p) > 2 && strings.HasPrefix(plain(k), p) {
+			return k
+		}
+	}
 	for _, k := range known {
 		if d := edits(plain(name), plain(k)); least < 0 || d < least {
 			best, least = k, d

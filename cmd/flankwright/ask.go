@@ -58,7 +58,8 @@ func (j *job) checkArbor(a ask, gears []*gear) error {
 	return nil
 }
 
-// readBlank takes a measured outside diameter, which is about one gear.
+// readBlank takes a measured outside diameter, which is about one gear: from
+// then on it is that gear's outside diameter.
 func (j *job) readBlank(c *cli.Context, gears []*gear) error {
 	tip, ok, err := flagLength(c, j, "measured-tip")
 	if err != nil || !ok {
@@ -71,6 +72,14 @@ func (j *job) readBlank(c *cli.Context, gears []*gear) error {
 	if off := math.Abs(tip - g.g.TipDiameter()); off > g.g.Module() || tip <= g.nominal.FormDiameter() {
 		return wrong("--measured-tip: %s is not this gear's blank, which is %s across", j.length(tip), j.length(g.g.TipDiameter()))
 	}
-	g.measured = tip
+	g.measured, g.drawnTip = true, g.g.TipDiameter()
+	if err := j.retip(g, tip); err != nil {
+		return err
+	}
+	if err := j.finishGear(g); err != nil {
+		return err
+	}
+	j.warnings = j.warnings[:j.early]
+	j.warn()
 	return nil
 }

@@ -67,6 +67,7 @@ type gearDims struct {
 	Tip             float64   `json:"tip_diameter_mm"`
 	Root            float64   `json:"root_diameter_mm"`
 	Form            float64   `json:"form_diameter_mm"`
+	FormThinnest    float64   `json:"form_diameter_thinnest_mm"`
 	TipForm         float64   `json:"tip_form_diameter_mm"`
 	Thickness       float64   `json:"tooth_thickness_mm"`
 	TransverseThick float64   `json:"transverse_tooth_thickness_mm"`
@@ -85,6 +86,8 @@ type gearDims struct {
 	VirtualTeeth    float64   `json:"virtual_teeth"`
 	Bore            *span     `json:"bore_mm,omitempty"`
 	Rack            rackDims  `json:"rack"`
+
+	undercutThinnest bool
 }
 
 type rackDims struct {
@@ -144,11 +147,14 @@ func newGearDims(g *gear) gearDims {
 		Rack: rackDims{g.rack, spec.Rack.Addendum, spec.Rack.Dedendum, spec.Rack.TipRadius, g.source},
 	}
 	d.CutDepth = toSpan(g.depthOfCut())
+	if thinnest, err := gg.Tooth(thick.Min); err == nil {
+		d.FormThinnest, d.undercutThinnest = thinnest.FormDiameter(), thinnest.Undercut()
+	}
 	if lead, ok := gg.Lead(); ok {
 		d.Lead, d.Hand = &lead, handWord(spec.Helix)
 	}
-	if g.measured > 0 {
-		d.MeasuredTip = &g.measured
+	if g.measured {
+		d.MeasuredTip = &d.Tip
 	}
 	if g.bore != nil {
 		b := toSpan(g.bore.limits)

@@ -98,6 +98,7 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i].thickness.By) })...)
 	g.row("Angle of index", "deg", d.each(func(_ int, x gearDims) string { return fmt.Sprintf("%.6f", x.Index) })...)
 	g.row("", "", d.each(func(_ int, x gearDims) string { return angleDMS(2 * math.Pi / float64(x.Teeth)) })...)
+	g.row("  turns of a 40:1 dividing head", "", d.each(func(_ int, x gearDims) string { return headTurns(x.Teeth) })...)
 	return g
 }
 
@@ -106,11 +107,11 @@ func (d *dims) blankRow(g *grid, unit string, f func(float64) string) {
 	var cells []string
 	any := false
 	for _, x := range d.list {
-		any = any || x.measured > 0
-		cells = append(cells, f(x.blank()))
+		any = any || x.measured
+		cells = append(cells, f(x.drawnTip))
 	}
 	if any {
-		g.row("  blank as measured", unit, cells...)
+		g.row("  of the drawing; the blank is as measured", unit, cells...)
 	}
 }
 
@@ -141,21 +142,28 @@ func (d *dims) boreRows(g *grid, u inspect.Unit, digits int) {
 	}
 	for _, x := range d.list {
 		if x.keyway != nil {
-			g.row("Keyway, width", u.String(), keywayCells(d.list, u, digits, func(k *keyway, _ float64) float64 { return k.width })...)
-			g.row("  across from the bore's wall", u.String(), keywayCells(d.list, u, digits, func(k *keyway, b float64) float64 { return b + k.depth })...)
+			g.row("Keyway, width", u.String(), keywayCells(d.list, u, digits, func(k *keyway, _ *boreSize) float64 { return k.width })...)
+			low := keywayCells(d.list, u, digits, func(k *keyway, b *boreSize) float64 { return b.limits.Min + k.depth })
+			high := keywayCells(d.list, u, digits, func(k *keyway, b *boreSize) float64 { return b.limits.Max + k.depth })
+			if slices.Equal(low, high) {
+				g.row("  across from the bore's wall", u.String(), low...)
+			} else {
+				g.row("  across from the bore's wall, least bore", u.String(), low...)
+				g.row("  largest bore", u.String(), high...)
+			}
 			break
 		}
 	}
 }
 
-func keywayCells(list []*gear, u inspect.Unit, digits int, pick func(*keyway, float64) float64) []string {
+func keywayCells(list []*gear, u inspect.Unit, digits int, pick func(*keyway, *boreSize) float64) []string {
 	var cells []string
 	for _, x := range list {
 		if x.keyway == nil {
 			cells = append(cells, "-")
 			continue
 		}
-		cells = append(cells, u.Format(pick(x.keyway, x.bore.nominal), digits))
+		cells = append(cells, u.Format(pick(x.keyway, x.bore), digits))
 	}
 	return cells
 }
@@ -173,6 +181,7 @@ func (d *dims) theoryGrid(u inspect.Unit, f func(float64) string, digits int) gr
 	number("Module, normal", "mm", "%.4f", func(x gearDims) float64 { return x.Module })
 	number("Pressure angle, normal", "deg", "%.4f", func(x gearDims) float64 { return x.PressureAngle })
 	if d.helical() {
+		number("Diametral pitch, transverse", "1/in", "%.4f", func(x gearDims) float64 { return x.DP * math.Cos(x.Helix*involute.Degree) })
 		number("  transverse", "deg", "%.4f", func(x gearDims) float64 { return x.TransverseAngle })
 		number("Helix angle", "deg", "%.4f", func(x gearDims) float64 { return x.Helix })
 		g.row("  hand", "", d.each(func(_ int, x gearDims) string { return x.Hand })...)
@@ -188,14 +197,34 @@ func (d *dims) theoryGrid(u inspect.Unit, f func(float64) string, digits int) gr
 	length("  as a length", func(x gearDims) float64 { return x.ShiftLength })
 	length("Pitch (reference) diameter", func(x gearDims) float64 { return x.Reference })
 	length("Base diameter", func(x gearDims) float64 { return x.Base })
-	length("Form diameter (involute begins)", func(x gearDims) float64 { return x.Form })
-	g.row("  undercut", "", d.each(func(_ int, x gearDims) string { return yesNo(x.Undercut) })...)
+	length("Form diameter (involute begins), nominal", func(x gearDims) float64 { return x.Form })
+	length("  thinnest tooth", func(x gearDims) float64 { return x.FormThinnest })
+	g.row("  undercut, thinnest tooth", "", d.each(func(_ int, x gearDims) string { return yesNo(x.undercutThinnest) })...)
 	length("Tooth thickness, nominal, normal", func(x gearDims) float64 { return x.Thickness })
 	length("Tip thickness, normal", func(x gearDims) float64 { return x.TipThickness })
 	length("Circular pitch, normal", func(x gearDims) float64 { return x.NormalPitch })
 	length("Base pitch, normal", func(x gearDims) float64 { return x.BasePitch })
 	g.row("Rack", "", d.each(func(_ int, x gearDims) string { return x.Rack.Name })...)
 	return g
+}
+
+// headTurns returns the turns of the crank of a dividing head with a worm of 40
+// to 1 for one tooth of z: 40/z as a whole number and a fraction in lowest terms
+// (common practice). Any circle of holes that the denominator divides will do.
+func headTurns(z int) string {
+	whole, rest := 40/z, 40%z
+	if rest == 0 {
+		return strconv.Itoa(whole)
+	}
+	a, b := z, rest
+	for b != 0 {
+		a, b = b, a%b
+	}
+	fraction := fmt.Sprintf("%d/%d", rest/a, z/a)
+	if whole == 0 {
+		return fraction
+	}
+	return fmt.Sprintf("%d + %s", whole, fraction)
 }
 
 func (d *dims) helical() bool {
@@ -272,6 +301,8 @@ func (m meshDims) pairGrid(u inspect.Unit, f func(float64) string) grid {
 		tight = f(*m.Tight)
 	}
 	g.row("Center distance without backlash, nominal teeth", u.String(), tight)
+	g.row("Sum of shifts", "", fmt.Sprintf("%+.4f", m.mesh.first.g.Spec().Shift+m.mesh.second.g.Spec().Shift))
+	g.row("  that is tight at the tightest center", "", fmt.Sprintf("%+.4f", m.mesh.tightShift()))
 	return g
 }
 

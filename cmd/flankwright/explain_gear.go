@@ -60,6 +60,8 @@ func explainGear(g *gear) []explanation {
 
 func explainTip(e *explainer, g *gear, d, m, haP, x, da quantity) {
 	switch {
+	case g.measured:
+		e.result("outside (tip) diameter, as measured", "d_a = d_measured", da, "the blank", mm("d_measured", da.Value))
 	case g.shortened:
 		e.result("outside (tip) diameter, shortened for the mate", "d_a = 2 * a - d_f2 - 2 * c", da, srcPair, g.tipInputs()...)
 	case g.settings.has("tip_diameter"):
@@ -115,5 +117,5 @@ func explainLimits(e *explainer, g *gear, an, m, hfP, d quantity) {
 	e.result("generating shift of the thinnest tooth", "x_E = (s_nmin / m_n - pi / 2) / (2 * tan(α_n))", xe, srcGear, mm("s_nmin", low), m, an)
 	dfe := mm("d_fE", g.g.RootDiameterAt(low))
 	e.result("root diameter of the thinnest tooth", "d_fE = d - 2 * m_n * (h_fP - x_E)", dfe, srcGear, d, m, hfP, xe)
-	e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.blank()), dfe)
+	e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.g.TipDiameter()), dfe)
 }

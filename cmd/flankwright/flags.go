@@ -12,7 +12,7 @@ import (
 const (
 	catTooth  = "Tooth (× module means a plain number)"
 	catGear   = "Gear (with a job file: of the gear that --gear names)"
-	catMate   = "Mate, for a pair without a job file"
+	catMate   = "Mate, for a pair without a job file (the gears are then called pinion and wheel)"
 	catMesh   = "Mesh"
 	catOutput = "Output"
 	catHead   = "Head of the sheet"
@@ -56,8 +56,11 @@ func keyFlag(name, usage, category string, k keySpec) cli.Flag {
 	if k.name == "ring" {
 		return &cli.BoolFlag{Name: name, Usage: usage, Category: category, Hidden: k.later, DisableDefaultText: true}
 	}
-	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
+	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later || oneValue(k.name)}
 }
+
+// oneValue reports whether a key has but one value yet; its flag is not worth showing.
+func oneValue(key string) bool { return key == "thinning" || key == "root" }
 
 // commonFlags mean the same in every command that computes.
 func commonFlags() []cli.Flag {
@@ -67,7 +70,7 @@ func commonFlags() []cli.Flag {
 		&cli.IntFlag{Name: "digits", Usage: "decimals of lengths (3 in mm, 4 in inches)", Value: -1, DefaultText: "by unit", Category: catOutput},
 		&cli.BoolFlag{Name: "explain", Usage: "each result with its formula, the numbers put in and the source", Category: catOutput, DisableDefaultText: true},
 		&cli.StringFlag{Name: "gear", Usage: "one gear of the job, by name", Category: catOutput},
-		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured, for chordal heights and the depth of cut", Category: "Measuring"},
+		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured; heights, depth of cut and contact follow", Category: "Measuring"},
 		&cli.StringFlag{Name: "example", Usage: "use an example job that the program carries", Category: catOutput},
 		&cli.StringFlag{Name: "shop", Usage: "what is on hand", Hidden: true},
 	}
@@ -242,7 +245,7 @@ func (r *request) overrideByFlags(c *cli.Context) error {
 		return err
 	}
 	if len(r.meshes) != 1 {
-		return wrong("--center, --backlash and --thin-share need a job with exactly one mesh; this one has %d", len(r.meshes))
+		return wrong("--center, --backlash and --thin-share need a job with exactly one mesh; this one has %d: write them into its [[mesh]]", len(r.meshes))
 	}
 	r.meshes[0] = r.meshes[0].with(mesh)
 	return nil

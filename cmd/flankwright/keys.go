@@ -1,6 +1,9 @@
 package main
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // A scope is where in a job file a key may stand.
 type scope int
@@ -56,8 +59,8 @@ func keys() []keySpec {
 		{"thin", inGear, false, "how much thinner than nominal, normal: 0.04..0.08"},
 		{"over_pins", inGear, true, "limits over pins from a drawing"},
 		{"span", inGear, true, "limits of a span from a drawing"},
-		{"thinning", inGear, false, "infeed: the cutter goes deeper (infeed)"},
-		{"root", inGear, false, "generated (generated)"},
+		{"thinning", inGear, false, "infeed"},
+		{"root", inGear, false, "generated"},
 		{"face_width", inGear, false, "face width"},
 		{"bore", inGear, false, "bore, with an ISO 286 class if wanted: \"12 H7\""},
 		{"keyway", inGear, false, "keyway, width x depth beyond the bore's wall: 4x1.8mm"},
@@ -163,10 +166,23 @@ func otherDrive(name string) (string, bool) {
 	return why, ok
 }
 
+// otherNames are words of the trade for keys that are called otherwise here.
+func otherNames() map[string]string {
+	return map[string]string{
+		"diametral_pitch": "dp", "pitch": "dp", "normal_diametral_pitch": "dp", "mod": "module", "normal_module": "module",
+		"number_of_teeth": "teeth", "z": "teeth", "profile_shift": "shift", "x": "shift", "outside_diameter": "tip_diameter", "od": "tip_diameter",
+		"center_distance": "center", "centre": "center", "width": "face_width", "face": "face_width", "helix": "helix_angle", "angle": "pressure_angle",
+		"play": "backlash", "hole": "bore",
+	}
+}
+
 // nearest returns the name closest to the one given, if it is close enough to
 // be meant: at most a third of its letters differ, or one contains the other as a word.
 func nearest(name string, names []string) (string, bool) {
 	low := strings.ReplaceAll(strings.ToLower(name), "-", "_")
+	if n, ok := otherNames()[low]; ok && slices.Contains(names, n) {
+		return n, true
+	}
 	best, at := "", 1<<30
 	for _, n := range names {
 		if d := editDistance(low, strings.ReplaceAll(n, "-", "_")); d < at {

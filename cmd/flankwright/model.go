@@ -15,6 +15,7 @@ type job struct {
 	gears    []*gear
 	meshes   []*mesh
 	warnings []warning
+	early    int // how many of them came up before the gears were whole
 }
 
 // A gear is one gear of a job.
@@ -34,23 +35,17 @@ type gear struct {
 	shortened bool
 	// handAssumed: neither the gear nor a mate nor the shared values say a hand.
 	handAssumed bool
-	measured    float64 // outside diameter of the blank as measured, mm, 0 for not
+	measured    bool    // the outside diameter is the blank's, as measured
+	drawnTip    float64 // then, what it was to be, mm
 	tipBy       tipDecision
 	settings    settings
-}
-
-// blank returns the outside diameter of the blank: as measured, or nominal.
-func (g *gear) blank() float64 {
-	if g.measured > 0 {
-		return g.measured
-	}
-	return g.g.TipDiameter()
 }
 
 // depthOfCut returns the limits of the depth of cut from the blank's outside, mm.
 func (g *gear) depthOfCut() inspect.Limits {
 	l := g.thickness.Limits
-	return inspect.Limits{Min: (g.blank() - g.g.RootDiameterAt(l.Max)) / 2, Max: (g.blank() - g.g.RootDiameterAt(l.Min)) / 2}
+	tip := g.g.TipDiameter()
+	return inspect.Limits{Min: (tip - g.g.RootDiameterAt(l.Max)) / 2, Max: (tip - g.g.RootDiameterAt(l.Min)) / 2}
 }
 
 // A tipDecision is what decided a shortened tip: the center distance, the
@@ -116,6 +111,7 @@ func resolve(r request) (*job, error) {
 			return nil, err
 		}
 	}
+	j.early = len(j.warnings)
 	j.warn()
 	return j, nil
 }
@@ -349,7 +345,7 @@ func (j *job) readKeyway(g *gear) error {
 // keywaySize reads a keyway's width and depth from a table or from "4x1.8mm".
 func (s settings) keywaySize(v value) (w, d float64, err error) {
 	if text, isText := asText(v); isText {
-		width, depth, ok := strings.Cut(strings.ReplaceAll(text, "×", "x"), "x")
+		width, depth, ok := strings.Cut(strings.NewReplacer("×", "x", "X", "x").Replace(text), "x")
 		unit := inspect.UnitOf(depth, s.bare(v)) // a unit at the end covers both
 		w, err1 := inspect.ParseLength(width, unit)
 		d, err2 := inspect.ParseLength(depth, unit)

@@ -70,6 +70,11 @@ func unknownFlag(c *cli.Context, name string) error {
 	if why, ok := otherDrive(name); ok {
 		return wrong("--%s: %s", name, why)
 	}
+	if key, ok := strings.CutPrefix(name, "mate-"); ok {
+		if _, known := findKey(strings.ReplaceAll(key, "-", "_")); known {
+			return wrong("--%s: no such flag; write a job file to say %s of both gears (flankwright new)", name, key)
+		}
+	}
 	command := strings.TrimSpace(strings.TrimPrefix(c.Command.Name, "flankwright"))
 	if k, ok := findKey(strings.ReplaceAll(name, "-", "_")); ok && command != "" && command != "tables" && command != "new" {
 		if k.usage != "" && k.where&atTop != 0 || k.name == "material" {

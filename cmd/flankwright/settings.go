@@ -247,6 +247,9 @@ func (s settings) bore(key string) (b boreSize, ok bool, err error) {
 	if err != nil || mm <= 0 {
 		return b, true, bad(key, v, "%q is not a bore; write it like 12, 0.5in or \"12 H7\"", text)
 	}
+	if class[0] >= 'a' && class[0] <= 'z' {
+		return b, true, bad(key, v, "%s is a class for shafts; a bore takes a hole's, in capitals: %s", class, strings.ToUpper(class[:1])+class[1:])
+	}
 	low, high, src, err := refdata.ISO286Limits(mm, class)
 	if err != nil {
 		return b, true, bad(key, v, "%v", err)
@@ -254,18 +257,23 @@ func (s settings) bore(key string) (b boreSize, ok bool, err error) {
 	return boreSize{mm, inspect.Limits{Min: mm + low, Max: mm + high}, class, src.String()}, true, nil
 }
 
-// splitClass splits "12 H7" or "12mm H7" into size and class.
+// splitClass splits "12 H7", "12mm H7" or "12H7" into size and class.
 func splitClass(text string) (size, class string, ok bool) {
-	i := strings.LastIndexByte(strings.TrimSpace(text), ' ')
-	if i < 0 {
-		return text, "", false
-	}
 	text = strings.TrimSpace(text)
-	class = text[i+1:]
-	if class == "" || !isLetter(class[0]) || !isDigit(class[len(class)-1]) {
+	head := strings.TrimRight(text, "0123456789")
+	if head == text {
 		return text, "", false
 	}
-	return text[:i], class, true
+	for letters := 1; letters <= 2 && letters < len(head); letters++ {
+		size, class := head[:len(head)-letters], text[len(head)-letters:]
+		if _, err := inspect.ParseLength(size, inspect.Millimeter); err == nil && isLetter(class[0]) {
+			return size, class, true
+		}
+	}
+	if i := strings.LastIndexByte(text, ' '); i > 0 && isLetter(text[i+1]) {
+		return text[:i], text[i+1:], true // no class that is known; the look-up says so
+	}
+	return text, "", false
 }
 
 func isLetter(c byte) bool { return c|0x20 >= 'a' && c|0x20 <= 'z' }
@@ -294,7 +302,7 @@ func (s settings) center(key string) (at, tolerance float64, class string, err e
 	distance, err1 := inspect.ParseLength(base, unit)
 	tolerance, err2 := inspect.ParseLength(tol, unit)
 	if err1 != nil || err2 != nil {
-		return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50 or \"50±0.02\"", text)
+		return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50, \"50±0.02\" (or 50+-0.02) or \"50 js7\"", text)
 	}
 	if distance <= 0 || tolerance < 0 {
 		return 0, 0, "", bad(key, v, "needs a distance above 0 and a tolerance of 0 or more")
@@ -355,6 +363,9 @@ func (s settings) inline(key string, t *table) (settings, error) {
 func unknownKey(at place, key, where string, names []string) error {
 	if why, ok := otherDrive(key); ok {
 		return fault(at, "%s: %s", key, why)
+	}
+	if key == "transverse_pressure_angle" {
+		return fault(at, "%s: no such key; the normal one is wanted: tan(pressure_angle) = tan(transverse) · cos(helix_angle)", key)
 	}
 	if near, ok := nearest(key, names); ok {
 		return fault(at, "%s: no such key in %s; did you mean %s?", key, where, near)

@@ -36,17 +36,31 @@ func (j *job) sheet(g *gear, a ask, head sheetHead) (export.Sheet, error) {
 	}
 	word := func(key string) string { w, _, _ := j.top.word(key); return w }
 	s := export.Sheet{
-		Title: orDefault(word("title"), "Gear inspection"), Gear: g.name,
+		Title: orDefault(word("title"), g.plainTitle()), Gear: g.name,
 		Part: word("part"), DrawingNumber: word("drawing"), Author: word("author"), Date: head.date, Material: head.material,
 		Data: j.sheetData(g), InchFirst: j.display == inspect.Inch,
 		Targets: j.sheetTargets(g, t), Limits: j.sheetLimits(g),
 		Shape: shape, Pins: j.pinView(g, t, tooth), Span: j.spanView(g, t, tooth),
 		Readings: j.sheetReadings(t), Method: sheetMethod(g, t), Cautions: sheetCautions(),
 	}
+	if len(t.OverPins) > 0 {
+		if a := t.OverPins[0].firstAlso(); a != nil && a.bore > 0 {
+			s.Cautions = append([]string{"One pin to the bore's far side: half of what the bore measures more or less than stated goes on or off the reading."}, s.Cautions...)
+		}
+	}
 	for _, w := range j.about([]*gear{g}) {
-		s.Warnings = append(s.Warnings, w.Code+": "+w.Text)
+		s.Warnings = append(s.Warnings, capital(w.Text)+".")
 	}
 	return s, nil
+}
+
+// plainTitle is the title of a gear without one.
+func (g *gear) plainTitle() string {
+	size := "module " + trim("%.4f", g.g.Module())
+	if g.dp != 0 {
+		size = trim("%.4f", g.dp) + " DP"
+	}
+	return fmt.Sprintf("Gear, %d teeth, %s", g.g.Teeth(), size)
 }
 
 // both words a length in the display unit, and in the other.
@@ -100,10 +114,10 @@ func (j *job) sheetData(g *gear) []export.Field {
 	}
 	data = append(data, []export.Field{
 		shiftField(shift, value+" ("+other+")"),
-		j.lengthField(g.tipLabel(), g.blank()),
+		j.lengthField(g.tipLabel(), gg.TipDiameter()),
 		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
 		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),
-		j.lengthField("Depth of cut, aim", (g.blank()-g.middle().RootDiameter())/2),
+		j.lengthField("Depth of cut, aim", (gg.TipDiameter()-g.middle().RootDiameter())/2),
 	}...)
 	if g.bore != nil {
 		data = append(data, j.boreField(g.bore))
@@ -118,7 +132,7 @@ func (j *job) sheetData(g *gear) []export.Field {
 		data = append(data, j.lengthField("Lead", lead))
 	}
 	return append(data,
-		export.Field{Label: "Angle of index", Value: angleDMS(2 * math.Pi / float64(gg.Teeth()))},
+		export.Field{Label: "Angle of index", Value: angleDMS(2 * math.Pi / float64(gg.Teeth())), Other: headTurns(gg.Teeth()) + " of a 40:1 head"},
 		export.Field{Label: "Rack", Value: g.rack})
 }
 
@@ -132,7 +146,7 @@ func shiftField(x float64, length string) export.Field {
 
 // tipLabel names the outside diameter, nominal or as measured.
 func (g *gear) tipLabel() string {
-	if g.measured > 0 {
+	if g.measured {
 		return "Outside diameter, as measured"
 	}
 	return "Outside (tip) diameter"
@@ -140,7 +154,7 @@ func (g *gear) tipLabel() string {
 
 // keywayField words a keyway: its width, and the size across from the bore's wall.
 func (j *job) keywayField(g *gear) export.Field {
-	across := g.bore.nominal + g.keyway.depth
+	across := g.bore.limits.Middle() + g.keyway.depth
 	words := func(u inspect.Unit) string {
 		return u.Format(g.keyway.width, u.Decimals()) + " × " + u.Format(across, u.Decimals()) + " " + u.String()
 	}
@@ -189,7 +203,7 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 		} else {
 			row.Low, row.Aim, row.High = figures(*l, *aim)
 			if why != "" {
-				row.With += "; " + why
+				row.With += ", " + why
 			}
 		}
 		rows = append(rows, row)
@@ -204,7 +218,11 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 	if len(t.OverPins) > 0 {
 		p := t.OverPins[0]
 		if a := p.firstAlso(); a != nil {
-			add(capital(wayText(a.text, p.Kind)), alsoWith(a.Way, p.Kind)+j.pinBoth(p.Pin), a.Measurement, a.Aim, a.Usable, a.Why)
+			with, why := alsoWith(a.Way, p.Kind)+j.pinBoth(p.Pin), a.Why
+			if a.bore > 0 { // the correction stands among the cautions
+				with, why = alsoWith(a.Way, p.Kind)+"Ø "+j.length(p.Pin)+", bore "+j.length(a.bore), ""
+			}
+			add(capital(wayText(a.text, p.Kind)), with, a.Measurement, a.Aim, a.Usable, why)
 		}
 	}
 	if len(t.Span) > 0 {
@@ -246,6 +264,15 @@ func alsoWith(way, kind string) string {
 func (p pinTarget) wires() string {
 	if p.Kind == "pins" {
 		return "pins (wires)"
+	}
+	return p.kindText()
+}
+
+// kindText names what is measured over. On a helical gear with an even number of
+// teeth straight pins in opposite spaces read what balls do.
+func (p pinTarget) kindText() string {
+	if p.Kind == "balls" && p.even {
+		return "balls or pins"
 	}
 	return p.Kind
 }
@@ -379,9 +406,14 @@ func sheetMethod(g *gear, t gearTargets) []string {
 	if g.g.Helical() {
 		place = "Set the two balls in the spaces nearest to opposite, in one plane square to the axis."
 	}
+	if t.firstPin() == nil {
+		place = "No pin or ball of this sheet can be used on this gear."
+	} else {
+		place += " Rock the gear gently and take the largest reading."
+	}
 	return []string{
 		"Deburr, clean gear, pins and anvils; let gear and instrument come to 20 °C. Stop the machine first.",
-		place + " Rock the gear gently and take the largest reading.",
+		place,
 		"Span: touch the flanks, not tips or roots; rock and take the smallest reading.",
 		"Measure at four places round the gear, a quarter turn apart; write down all four.",
 	}

@@ -75,6 +75,7 @@ type pinTarget struct {
 	Usable      bool      `json:"usable"`
 	Why         string    `json:"why"`
 	Also        []alsoWay `json:"also"`
+	even        bool      // number of teeth
 }
 
 type alsoWay struct {
@@ -86,6 +87,7 @@ type alsoWay struct {
 	Usable      bool     `json:"usable"`
 	Why         string   `json:"why"`
 	text        string
+	bore        float64 // of the bore that the reading is for, where it has limits, mm
 }
 
 type spanTarget struct {
@@ -142,8 +144,8 @@ func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	for _, k := range teeth {
 		out.Span = append(out.Span, j.spanTarget(g, k))
 	}
-	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: g.blank()})
-	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: g.blank()})
+	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: g.g.TipDiameter()})
+	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: g.g.TipDiameter()})
 	return out
 }
 
@@ -165,7 +167,7 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
 	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), Also: []alsoWay{}}
 	if g.g.Helical() {
-		out.Kind = "balls"
+		out.Kind, out.even = "balls", g.g.Teeth()%2 == 0
 		out.FaceNeeded = m.FaceNeeded(g.middle())
 	}
 	out.Measurement, out.Aim, out.Contact = measured(t)
@@ -192,7 +194,7 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 			m.Bore = arbor
 			out.Way, out.text = "one pin to the far side of the arbor", "one %s to the arbor's far side"
 		case g.bore != nil:
-			m.Bore = g.bore.nominal
+			m.Bore = g.bore.limits.Middle()
 		default:
 			return out, false
 		}
@@ -203,7 +205,8 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 	}
 	out.Usable, out.Why = t.Usable(), j.why(t.Faults)
 	if w.way == involute.PinToFarSide && out.Why == "" && arbor == 0 && g.bore.limits.Width() > 0 {
-		out.Why = fmt.Sprintf("for a bore of exactly %s; add half of what it measures more", j.length(g.bore.nominal))
+		out.bore = m.Bore
+		out.Why = fmt.Sprintf("for a bore of %s; half of any difference goes on or off", j.length(g.bore.limits.Middle()))
 	}
 	out.Measurement, out.Aim, _ = measured(t)
 	if seat, err := g.middle().Seat(pin); err == nil && g.g.Helical() {
@@ -237,7 +240,7 @@ func (j *job) chordTarget(g *gear, m heighted) chordTarget {
 	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
 	out := chordTarget{
 		Thickness: toSpan(t.Value), Aim: t.Aim, Height: m.Height(g.middle()),
-		Tip: g.blank(), Usable: t.Usable(), Why: j.why(t.Faults),
+		Tip: g.g.TipDiameter(), Usable: t.Usable(), Why: j.why(t.Faults),
 	}
 	for _, f := range t.Faults {
 		if f.Code == inspect.NoReading {

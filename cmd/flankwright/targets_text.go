@@ -77,7 +77,7 @@ func (t *targets) measureGrid(g gearTargets, u inspect.Unit, digits int, more *[
 		out.row(label, unit, text.Low, u.Format(*aim, text.Decimals), text.High, mark(usable, why))
 	}
 	for _, p := range g.OverPins {
-		add(fmt.Sprintf("Over two %s %s", p.Kind, pinText(p.Pin, u)), p.Measurement, p.Aim, p.Usable, p.Why)
+		add(fmt.Sprintf("Over two %s %s", p.kindText(), pinText(p.Pin, u)), p.Measurement, p.Aim, p.Usable, p.Why)
 		for _, a := range p.Also {
 			add("  "+wayText(a.text, p.Kind), a.Measurement, a.Aim, a.Usable, a.Why)
 		}

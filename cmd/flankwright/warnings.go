@@ -84,14 +84,10 @@ func (j *job) warnGear(g *gear) {
 		return
 	}
 	if thinnest.Undercut() {
-		lost := (thinnest.FormDiameter() - g.g.BaseDiameter()) / 2
 		deeper := g.g.Spec().Shift - g.g.GeneratingShift(thinnest.Thickness())
-		above := j.length(lost)
-		if lost < math.Pow10(-j.display.Decimals())*j.display.MM()/2 {
-			above = "just"
-		}
-		j.addWarning("undercut", g.name, "the cutter undercuts the root; the involute begins at %s, %s above the base circle. A shift of %+.4f or more avoids it",
-			j.length(thinnest.FormDiameter()), above, g.g.UndercutLimit()+deeper)
+		form, base := j.apart(thinnest.FormDiameter(), g.g.BaseDiameter())
+		j.addWarning("undercut", g.name, "generated (hobbed, or cut to the contour) the thinnest tooth is undercut: its involute begins at a diameter of %s, the base circle is %s. A shift of %+.4f or more avoids it",
+			form, base, g.g.UndercutLimit()+deeper)
 	}
 	if land := thinnest.TipLand(); land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)

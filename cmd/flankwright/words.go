@@ -109,7 +109,7 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 		if p.Tight > 0 {
 			text += fmt.Sprintf("bring the center toward %s, ", j.length(p.Tight))
 		}
-		return text + "or raise shift"
+		return text + fmt.Sprintf("or raise the sum of the shifts toward %+.4f, at which nominal teeth are tight there", m.tightShift())
 	case inspect.Conflict:
 		name := j.gears[p.Gear].name
 		return text + fmt.Sprintf("cannot be had together with what the other meshes of %s and its mate ask for. Change one of the backlashes or thin_share, or give %s a thin of its own", name, name)
@@ -134,7 +134,7 @@ func (r request) faultText(f inspect.Fault) string {
 	case inspect.AboveTip:
 		return fmt.Sprintf("touches at %s, above the end of the flank at %s", v, l)
 	case inspect.UnderTips:
-		return fmt.Sprintf("stands below the tips: reads %s, the anvils meet the teeth at %s", v, l)
+		return fmt.Sprintf("stands below the tips: reaches %s, the teeth %s; take a larger pin", v, l)
 	case inspect.TouchesRoot:
 		return fmt.Sprintf("rests on the root, %s before the flanks", v)
 	case inspect.FaceTooNarrow:
