@@ -186,8 +186,13 @@ func requestFromFlags(c *cli.Context) (request, error) {
 		r.gears = []gearRequest{{"gear", base.with(own), own}}
 		return r, nil
 	}
+	return r, r.addPair(base, own, mate, mesh)
+}
+
+// addPair makes the request's gears a pinion and a wheel that mesh.
+func (r *request) addPair(base settings, own, mate map[string]value, mesh settings) error {
 	if !has(mate, "teeth") {
-		return r, wrong("a pair needs --mate-teeth")
+		return wrong("a pair needs --mate-teeth")
 	}
 	if face, ok := own["face_width"]; ok && !has(mate, "face_width") {
 		mate["face_width"] = face // one face width given is meant for both
@@ -202,7 +207,7 @@ func requestFromFlags(c *cli.Context) (request, error) {
 	r.gears[1].settings.vals = without(r.gears[1].settings.vals, "hand")
 	mesh.vals["gears"] = value{content: []value{{content: "pinion"}, {content: "wheel"}}}
 	r.meshes = []settings{mesh}
-	return r, nil
+	return nil
 }
 
 func has(vals map[string]value, key string) bool { _, ok := vals[key]; return ok }

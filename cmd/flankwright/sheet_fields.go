@@ -1,0 +1,158 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"flankwright/export"
+	"flankwright/inspect"
+)
+
+// plainTitle is the title of a gear without one.
+func (g *gear) plainTitle() string {
+	size := "module " + trim("%.4f", g.g.Module())
+	if g.dp != 0 {
+		size = trim("%.4f", g.dp) + " DP"
+	}
+	return fmt.Sprintf("Gear, %d teeth, %s", g.g.Teeth(), size)
+}
+
+// both words a length in the display unit, and in the other.
+func (j *job) both(mm float64) (value, other string) {
+	u, o := j.display, j.display.Other()
+	return u.Format(mm, u.Decimals()) + " " + u.String(), o.Format(mm, o.Decimals()) + " " + o.String()
+}
+
+func (j *job) lengthField(label string, mm float64) export.Field {
+	v, o := j.both(mm)
+	return export.Field{Label: label, Value: v, Other: o}
+}
+
+// limitsField words limits in both units, each rounded inward.
+func (j *job) limitsField(label string, l inspect.Limits) export.Field {
+	words := func(u inspect.Unit) string {
+		p := u.FormatLimits(l, u.Decimals())
+		if p.Low == p.High {
+			return p.Low + " " + u.String()
+		}
+		return p.Low + " … " + p.High + " " + u.String()
+	}
+	return export.Field{Label: label, Value: words(j.display), Other: words(j.display.Other())}
+}
+
+// rangeField words a range that comes out, in both units, each rounded to the nearest.
+func (j *job) rangeField(label string, least, most float64) export.Field {
+	words := func(u inspect.Unit) string {
+		return u.Format(least, u.Decimals()) + " … " + u.Format(most, u.Decimals()) + " " + u.String()
+	}
+	return export.Field{Label: label, Value: words(j.display), Other: words(j.display.Other())}
+}
+
+func trim(format string, x float64) string {
+	return strings.TrimSuffix(strings.TrimRight(fmt.Sprintf(format, x), "0"), ".")
+}
+
+func (j *job) sheetData(g *gear) []export.Field {
+	gg := g.g
+	pitch := export.Field{Label: "Module, normal", Value: trim("%.4f", gg.Module()) + " mm", Other: trim("%.4f", 25.4/gg.Module()) + " /in"}
+	if g.dp != 0 {
+		pitch = export.Field{Label: "Diametral pitch, normal", Value: trim("%.4f", 25.4/gg.Module()) + " /in", Other: "module " + trim("%.4f", gg.Module())}
+	}
+	shift := gg.Spec().Shift
+	_, other := j.both(shift * gg.Module())
+	value, _ := j.both(shift * gg.Module())
+	data := []export.Field{{Label: "Teeth, spur", Value: fmt.Sprint(gg.Teeth())}, pitch, {Label: "Pressure angle, normal", Value: degrees(gg.PressureAngle())}}
+	if gg.Helical() {
+		data[0].Label = "Teeth, helical"
+		data = append(data, export.Field{Label: "Helix angle, hand", Value: degrees(math.Abs(gg.Spec().Helix)) + " " + handWord(gg.Spec().Helix)})
+	}
+	data = append(data, []export.Field{
+		shiftField(shift, value+" ("+other+")"),
+		j.lengthField(g.tipLabel(), gg.TipDiameter()),
+		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
+		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),
+		j.lengthField("Depth of cut, aim", (gg.TipDiameter()-g.middle().RootDiameter())/2),
+	}...)
+	if g.bore != nil {
+		data = append(data, j.boreField(g.bore))
+	}
+	if g.keyway != nil {
+		data = append(data, j.keywayField(g))
+	}
+	if g.faceWidth > 0 {
+		data = append(data, j.lengthField("Face width", g.faceWidth))
+	}
+	if lead, ok := gg.Lead(); ok {
+		data = append(data, j.lengthField("Lead", lead))
+	}
+	return append(data,
+		export.Field{Label: "Angle of index", Value: angleDMS(2 * math.Pi / float64(gg.Teeth())), Other: headTurns(gg.Teeth()) + " of a 40:1 head"},
+		export.Field{Label: "Rack", Value: g.rack})
+}
+
+// shiftField words a profile shift, as a coefficient and a length.
+func shiftField(x float64, length string) export.Field {
+	if x == 0 {
+		return export.Field{Label: "Profile shift", Value: "none"}
+	}
+	return export.Field{Label: "Profile shift x", Value: fmt.Sprintf("%+.4f", x), Other: length}
+}
+
+// tipLabel names the outside diameter, nominal or as measured.
+func (g *gear) tipLabel() string {
+	if g.measured {
+		return "Outside diameter, as measured"
+	}
+	return "Outside (tip) diameter"
+}
+
+// keywayField words a keyway: its width, and the size across from the bore's wall.
+func (j *job) keywayField(g *gear) export.Field {
+	across := g.bore.limits.Middle() + g.keyway.depth
+	words := func(u inspect.Unit) string {
+		return u.Format(g.keyway.width, u.Decimals()) + " × " + u.Format(across, u.Decimals()) + " " + u.String()
+	}
+	return export.Field{Label: "Keyway, width × across", Value: words(j.display)}
+}
+
+// boreField words a bore: its size in both units, or with a class its limits in the display unit.
+func (j *job) boreField(b *boreSize) export.Field {
+	if b.class == "" {
+		return j.lengthField("Bore", b.nominal)
+	}
+	f := j.limitsField("Bore "+b.class, b.limits)
+	f.Other = ""
+	return f
+}
+
+func (j *job) sheetLimits(g *gear) []export.Field {
+	fields := []export.Field{j.limitsField("Tooth thickness", g.thickness.Limits)}
+	if g.thickness.By == inspect.ByNothing {
+		fields[0].Label = "Thickness, nominal"
+	}
+	for _, m := range j.meshes {
+		if m.first != g && m.second != g {
+			continue
+		}
+		mate := m.first.name
+		if m.first == g {
+			mate = m.second.name
+		}
+		center := j.limitsField(fmt.Sprintf("Center, %s (%d teeth)", mate, mateTeeth(m, g)), m.plan.Center)
+		center.Other = ""
+		fields = append(fields, center)
+		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
+		if err == nil {
+			fields = append(fields, j.rangeField("Backlash, "+mate, least.Circumferential, most.Circumferential))
+		}
+	}
+	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
+}
+
+func mateTeeth(m *mesh, g *gear) int {
+	if m.first == g {
+		return m.second.g.Teeth()
+	}
+	return m.first.g.Teeth()
+}
