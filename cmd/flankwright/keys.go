@@ -73,7 +73,7 @@ func keys() []keySpec {
 		{"shaft", inGear, true, "shaft name"},
 
 		{"gears", inMesh, false, ""},
-		{"center", inMesh, false, "center distance, 50 or 50±0.02 (tight for nominal teeth)"},
+		{"center", inMesh, false, "center distance: 50, 50±0.02 (or 50+-0.02), 50js7 (tight for nominal teeth)"},
 		{"backlash", inMesh, false, "backlash wanted, circumferential: 0.05..0.15"},
 		{"thin_share", inMesh, false, "equal, or the gear that takes it all (equal)"},
 		{"temperature", inMesh, true, "temperature range"},

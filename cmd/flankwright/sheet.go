@@ -46,7 +46,7 @@ func sheetCommand() *cli.Command {
 	flags = append(flags, targetFlags()...)
 	flags = append(flags, sheetFlags()...)
 	return &cli.Command{
-		Name: "sheet", Usage: "the inspection sheet, PDF or SVG, at true scale",
+		Name: "sheet", Usage: "the inspection sheet, PDF, SVG or PNG, at true scale",
 		UsageText: "flankwright sheet [JOB] -o FILE.pdf [flags]", Flags: flags,
 		Action: runSheet,
 	}
