@@ -1,6 +1,7 @@
 package inspect
 
 import (
+	"cmp"
 	"math"
 	"slices"
 
@@ -35,14 +36,7 @@ func IdealPin(g *involute.Gear, s Limits) (float64, bool) {
 func NearestUsable(g *involute.Gear, s Limits, p Part, ideal float64, candidates []PinCandidate) (PinCandidate, bool) {
 	sorted := slices.Clone(candidates)
 	slices.SortStableFunc(sorted, func(a, b PinCandidate) int {
-		da, db := math.Abs(a.Diameter-ideal), math.Abs(b.Diameter-ideal)
-		switch {
-		case da < db:
-			return -1
-		case da > db:
-			return 1
-		}
-		return 0
+		return cmp.Compare(math.Abs(a.Diameter-ideal), math.Abs(b.Diameter-ideal))
 	})
 	for _, c := range sorted {
 		if NewTarget(g, OverPins{Pin: c.Diameter}, s, p).Usable() {
@@ -68,28 +62,17 @@ func SpanChoices(g *involute.Gear, s Limits, p Part) []int {
 		ideal = float64(g.Teeth()) / 9
 	}
 	nearest := min(max(int(math.Round(ideal)), 1), max(g.Teeth()/2, 1))
-	type choice struct {
-		k int
-		d float64
-	}
-	var usable []choice
+	var usable []int
 	for k := max(2, nearest-2); k <= nearest+2 && k < g.Teeth(); k++ {
 		if NewTarget(g, Span{k}, s, p).Usable() {
-			usable = append(usable, choice{k, math.Abs(float64(k) - ideal)})
+			usable = append(usable, k)
 		}
 	}
 	if len(usable) == 0 {
 		return []int{nearest} // of few teeth perhaps one: its base thickness, which a narrow caliper can take
 	}
-	slices.SortStableFunc(usable, func(a, b choice) int {
-		if a.d < b.d {
-			return -1
-		}
-		return 1
+	slices.SortStableFunc(usable, func(a, b int) int {
+		return cmp.Compare(math.Abs(float64(a)-ideal), math.Abs(float64(b)-ideal))
 	})
-	var ks []int
-	for _, c := range usable[:min(3, len(usable))] {
-		ks = append(ks, c.k)
-	}
-	return ks
+	return usable[:min(3, len(usable))]
 }

@@ -59,7 +59,7 @@ func (m PlanMesh) Nominal() float64 {
 
 func (m PlanMesh) ring() bool { return m.Mesh.LeastCenter() < 0 }
 
-// A PlanGear's thickness is decided by the first of these that applies.
+// A Decider says what decided a gear's thickness: the first of these that applies.
 type Decider int
 
 // The deciders.

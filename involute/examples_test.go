@@ -223,3 +223,22 @@ func TestExampleOverPinsTwoWays(t *testing.T) {
 	s.Helix = 15 * Degree
 	prints(t, "M", reading(t, mustTooth(t, s), TwoPins, 5.5).Value, "72.18125438")
 }
+
+// The published shifted pair backwards: center distance 56.4999 gives a sum of
+// shifts of 0.9600 (widely reprinted metric gear handbook; recalled).
+func TestShiftSum(t *testing.T) {
+	g1, _ := NewGear(Spec{Teeth: 12, Module: 3, Shift: 0.6, Rack: isoA()})
+	g2, _ := NewGear(Spec{Teeth: 24, Module: 3, Shift: 0.36, Rack: isoA()})
+	m, err := NewMesh(g1, g2)
+	if err != nil {
+		t.Fatal(err)
+	}
+	sum, err := m.ShiftSum(56.4999)
+	if err != nil {
+		t.Fatal(err)
+	}
+	near(t, "x1 + x2", sum, 0.9600, 0.51e-4)
+	if _, err := m.ShiftSum(50); err == nil {
+		t.Error("a center under the base circles has a sum of shifts")
+	}
+}

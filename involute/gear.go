@@ -152,8 +152,13 @@ func (g *Gear) NominalThickness() float64 {
 // normal thickness sn by being fed deeper: (s_n/m_n − π/2)/(2 tan α_n)
 // (ISO 21771:2007, clause 4).
 func (g *Gear) GeneratingShift(sn float64) float64 {
-	return (sn/g.spec.Module - math.Pi/2) / (2 * math.Tan(g.PressureAngle()))
+	return (sn/g.spec.Module - math.Pi/2) / g.ThinningPerDepth()
 }
+
+// ThinningPerDepth returns 2 tan α_n: how much normal thickness at the reference
+// cylinder a tooth loses for each unit of length that the rack goes deeper
+// (ISO 21771:2007, clause 4: the shift x m_n turned round).
+func (g *Gear) ThinningPerDepth() float64 { return 2 * math.Tan(g.PressureAngle()) }
 
 // RootDiameterAt returns d_f = d − 2 m_n (h_fP* − x_E) that the rack leaves
 // with a tooth of normal thickness sn, mm (ISO 21771:2007, clause 4).

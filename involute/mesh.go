@@ -81,6 +81,18 @@ func (m Mesh) TightCenter(s1, s2 float64) (float64, error) {
 	return m.sumBase() / 2 / math.Cos(alpha), nil
 }
 
+// ShiftSum returns the sum of the profile shifts x_1 + x_2 with which nominal
+// teeth have no backlash at center distance a:
+// (inv α_wt − inv α_t)(z_1 + z_2)/(2 tan α_n) (ISO 21771:2007, clause 5).
+func (m Mesh) ShiftSum(a float64) (float64, error) {
+	alpha, err := m.WorkingPressureAngle(a)
+	if err != nil {
+		return 0, err
+	}
+	g := m.First
+	return (Inv(alpha) - g.invT) * (g.z + m.Second.z) / (2 * math.Tan(g.PressureAngle())), nil
+}
+
 // A Play is the backlash of a mesh at one center distance and pair of
 // thicknesses, in its several words (ISO 21771:2007, clause 5). Negative where the
 // teeth would have to overlap.

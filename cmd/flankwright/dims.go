@@ -175,29 +175,29 @@ func handWord(helix float64) string {
 }
 
 type meshDims struct {
-	Gears          []string   `json:"gears"`
-	Center         float64    `json:"center_distance_mm"`
-	CenterLimits   span       `json:"center_distance_limits_mm"`
-	Tight          *float64   `json:"tight_center_distance_mm"` // null where no center distance is tight
-	ReferenceCtr   float64    `json:"reference_center_distance_mm"`
-	Ratio          float64    `json:"ratio"`
-	WorkingAngle   float64    `json:"working_pressure_angle_deg"`
-	Contact        float64    `json:"transverse_contact_ratio"`
-	ContactByTips  float64    `json:"transverse_contact_ratio_by_tips"`
-	Overlap        float64    `json:"overlap_ratio"`
-	Circumferental span       `json:"circumferential_backlash_mm"`
-	Normal         span       `json:"normal_backlash_mm"`
-	AngleFirst     span       `json:"angular_backlash_first_deg"`
-	AngleSecond    span       `json:"angular_backlash_second_deg"`
-	CenterPlay     *span      `json:"center_play_mm"` // null where no center distance is tight
-	Dial           dialDims   `json:"dial_backlash"`
-	Clearance      pairDims   `json:"tip_clearance_mm"`
-	Pitch          pairDims   `json:"working_pitch_diameter_mm"`
-	Start          *pairDims  `json:"start_of_active_profile_mm"` // null where the involutes do not meet
-	End            *pairDims  `json:"end_of_active_profile_mm"`
-	SlidingRoot    pairSlides `json:"specific_sliding_at_root"`
-	SlidingTip     pairSlides `json:"specific_sliding_at_tip"`
-	Note           string     `json:"note"`
+	Gears           []string   `json:"gears"`
+	Center          float64    `json:"center_distance_mm"`
+	CenterLimits    span       `json:"center_distance_limits_mm"`
+	Tight           *float64   `json:"tight_center_distance_mm"` // null where no center distance is tight
+	ReferenceCtr    float64    `json:"reference_center_distance_mm"`
+	Ratio           float64    `json:"ratio"`
+	WorkingAngle    float64    `json:"working_pressure_angle_deg"`
+	Contact         float64    `json:"transverse_contact_ratio"`
+	ContactByTips   float64    `json:"transverse_contact_ratio_by_tips"`
+	Overlap         float64    `json:"overlap_ratio"`
+	Circumferential span       `json:"circumferential_backlash_mm"`
+	Normal          span       `json:"normal_backlash_mm"`
+	AngleFirst      span       `json:"angular_backlash_first_deg"`
+	AngleSecond     span       `json:"angular_backlash_second_deg"`
+	CenterPlay      *span      `json:"center_play_mm"` // null where no center distance is tight
+	Dial            dialDims   `json:"dial_backlash"`
+	Clearance       pairDims   `json:"tip_clearance_mm"`
+	Pitch           pairDims   `json:"working_pitch_diameter_mm"`
+	Start           *pairDims  `json:"start_of_active_profile_mm"` // null where the involutes do not meet
+	End             *pairDims  `json:"end_of_active_profile_mm"`
+	SlidingRoot     pairSlides `json:"specific_sliding_at_root"`
+	SlidingTip      pairSlides `json:"specific_sliding_at_tip"`
+	Note            string     `json:"note"`
 
 	mesh *mesh
 }
@@ -251,7 +251,7 @@ func newMeshDims(m *mesh, dial float64) meshDims {
 }
 
 func (d *meshDims) backlash(least, most involute.Play, dial float64) {
-	d.Circumferental = span{least.Circumferential, most.Circumferential}
+	d.Circumferential = span{least.Circumferential, most.Circumferential}
 	d.Normal = span{least.Normal, most.Normal}
 	d.AngleFirst = span{least.AngleFirst / involute.Degree, most.AngleFirst / involute.Degree}
 	d.AngleSecond = span{least.AngleSecond / involute.Degree, most.AngleSecond / involute.Degree}

@@ -255,7 +255,7 @@ func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) g
 	minutes := func(label string, s span) {
 		g.row(label, "arcmin", fmt.Sprintf("%.2f", s.Min*60), fmt.Sprintf("%.2f", s.Max*60))
 	}
-	lengths("Backlash, circumferential, at the working pitch circle", m.Circumferental)
+	lengths("Backlash, circumferential, at the working pitch circle", m.Circumferential)
 	lengths("  normal to the flanks", m.Normal)
 	minutes("  as an angle of "+m.Gears[0], m.AngleFirst)
 	minutes("  as an angle of "+m.Gears[1], m.AngleSecond)

@@ -21,7 +21,6 @@ type job struct {
 // A gear is one gear of a job.
 type gear struct {
 	name      string
-	index     int
 	g         *involute.Gear
 	nominal   involute.Tooth
 	thickness inspect.Thickness
@@ -118,7 +117,7 @@ func resolve(r request) (*job, error) {
 
 func (j *job) addGear(i int, hand float64) error {
 	gr := j.request.gears[i]
-	g := &gear{name: gr.name, index: i, settings: gr.settings}
+	g := &gear{name: gr.name, settings: gr.settings}
 	spec, err := j.spec(g, hand)
 	if err != nil {
 		return err
@@ -289,9 +288,6 @@ func (j *job) rack(g *gear, module float64) (involute.Rack, error) {
 		TipRadius:     table.TipRadius,
 	}
 	g.rack, g.source = table.Name, table.Source.String()
-	if !named {
-		j.warnRackAngle(g, table.PressureAngleDeg)
-	}
 	free := false
 	for _, p := range []struct {
 		key string
@@ -305,8 +301,11 @@ func (j *job) rack(g *gear, module float64) (involute.Rack, error) {
 			*p.to, free = x, true
 		}
 	}
-	if free {
+	switch {
+	case free:
 		g.rack += ", own proportions"
+	case !named:
+		j.warnRackAngle(g, table.PressureAngleDeg)
 	}
 	return out, j.fitTipRadius(g, &out)
 }

@@ -35,7 +35,8 @@ func runPacket(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	files, drawn, err := j.packetFiles(c, gears, a)
+	t := newTargets(j, gears, a)
+	files, drawn, err := j.packetFiles(c, t)
 	if err != nil {
 		return err
 	}
@@ -61,7 +62,7 @@ func runPacket(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	return pinVerdict(c, newTargets(j, gears, a), a)
+	return pinVerdict(c, t)
 }
 
 // packetResult is what the command says, as JSON writes it.
@@ -71,16 +72,17 @@ type packetResult struct {
 }
 
 // packetFiles makes every file of a packet in memory; the contours come first.
-func (j *job) packetFiles(c *cli.Context, gears []*gear, a ask) ([]export.File, []drawnGear, error) {
+func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, []drawnGear, error) {
 	opt, err := readContourOptions(c, j)
 	if err != nil {
 		return nil, nil, err
 	}
-	drawn, files, err := j.draw(gears, opt)
+	drawn, files, err := j.draw(t.list, opt)
 	if err != nil {
 		return nil, nil, err
 	}
-	pages, err := j.sheetPages(c, gears, a)
+	t.Warnings = j.about(t.list) // the drawing may have added some
+	pages, err := t.sheetPages(c)
 	if err != nil {
 		return nil, nil, err
 	}
@@ -89,9 +91,9 @@ func (j *job) packetFiles(c *cli.Context, gears []*gear, a ask) ([]export.File, 
 		return nil, nil, err
 	}
 	files = append(files, export.File{Name: "sheet.pdf", Data: sheet})
-	d, t := newDims(j, gears, 0), newTargets(j, gears, a)
+	d := newDims(j, t.list, 0)
 	if c.Bool("explain") {
-		d.Explain, t.Explain = j.explainDims(gears), j.explainTargets(t)
+		d.Explain, t.Explain = j.explainDims(t.list), j.explainTargets(t)
 	}
 	digits := j.digits(c)
 	for _, r := range []struct {

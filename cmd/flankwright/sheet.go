@@ -73,7 +73,8 @@ func runSheet(c *cli.Context) error {
 	case len(gears) > 1:
 		return wrong("-o %s: a picture holds one page, and the job has %s; give --gear NAME, a folder -o DIR/, or a .pdf", out, quoted(j.gearNames()))
 	}
-	pages, err := j.sheetPages(c, gears, a)
+	t := newTargets(j, gears, a)
+	pages, err := t.sheetPages(c)
 	if err != nil {
 		return err
 	}
@@ -83,7 +84,7 @@ func runSheet(c *cli.Context) error {
 	}
 	r := sheetResult{Files: names, Pages: len(pages), Warnings: j.about(gears)}
 	if c.Bool("explain") {
-		r.Explain = j.explainTargets(newTargets(j, gears, a))
+		r.Explain = j.explainTargets(t)
 	}
 	err = emitBeside(c, r, func() []byte {
 		p := newPage(c.App.Writer)
@@ -98,12 +99,12 @@ func runSheet(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	return pinVerdict(c, newTargets(j, gears, a), a)
+	return pinVerdict(c, t)
 }
 
 // pinVerdict says, of files that are written, that none of the pins asked for can be used.
-func pinVerdict(c *cli.Context, t *targets, a ask) error {
-	err := t.verdict(a)
+func pinVerdict(c *cli.Context, t *targets) error {
+	err := t.verdict()
 	if err != nil {
 		fmt.Fprintln(c.App.ErrWriter, "flankwright: none of the pins asked for can be used; the sheet says why")
 	}
@@ -162,9 +163,9 @@ func sheetBytes(j *job, pages []export.Drawing, ending string) ([]byte, error) {
 }
 
 // sheetPages lays out a page for each gear.
-func (j *job) sheetPages(c *cli.Context, gears []*gear, a ask) ([]export.Drawing, error) {
+func (t *targets) sheetPages(c *cli.Context) ([]export.Drawing, error) {
 	size := export.A4
-	if j.display == inspect.Inch {
+	if t.job.display == inspect.Inch {
 		size = export.Letter
 	}
 	if p := c.String("page"); p != "" {
@@ -175,12 +176,12 @@ func (j *job) sheetPages(c *cli.Context, gears []*gear, a ask) ([]export.Drawing
 	}
 	head := sheetHead{date: c.String("date"), material: c.String("material")}
 	var pages []export.Drawing
-	for i, g := range gears {
-		s, err := j.sheet(g, a, head)
+	for i, g := range t.list {
+		s, err := t.job.sheet(g, t.gears[i], head)
 		if err != nil {
 			return nil, err
 		}
-		s.Foot = footText(g.name, i+1, len(gears))
+		s.Foot = footText(g.name, i+1, len(t.list))
 		page, err := export.LayoutSheet(s, size)
 		if err != nil {
 			return nil, cannot("sheet of %s: %v", g.name, err)

@@ -20,8 +20,7 @@ func footText(name string, page, of int) string {
 const sheetTolerance = 0.002
 
 // sheet gathers what the inspection sheet of one gear says.
-func (j *job) sheet(g *gear, a ask, head sheetHead) (export.Sheet, error) {
-	t := j.gearTargets(g, a)
+func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error) {
 	tooth := g.middle()
 	outline, _, err := export.NewContour(g.contourSpec(j, tooth, sheetTolerance*g.g.Module()))
 	if err != nil {

@@ -2,7 +2,6 @@ package main
 
 import (
 	"fmt"
-	"math"
 
 	"github.com/urfave/cli/v2"
 
@@ -33,7 +32,7 @@ func targetsCommand() *cli.Command {
 			if err := emit(c, t, func() []byte { return t.text(newPage(c.App.Writer), j.digits(c)) }); err != nil {
 				return err
 			}
-			return t.verdict(ask)
+			return t.verdict()
 		},
 	}
 }
@@ -46,6 +45,7 @@ type targets struct {
 
 	job   *job
 	list  []*gear
+	asked bool // the pins were asked for, not chosen
 	gears []gearTargets
 }
 
@@ -110,7 +110,7 @@ type chordTarget struct {
 }
 
 func newTargets(j *job, gears []*gear, a ask) *targets {
-	t := &targets{job: j, list: gears, Warnings: j.about(gears)}
+	t := &targets{job: j, list: gears, asked: a.pins != nil, Warnings: j.about(gears)}
 	for _, g := range gears {
 		one := j.gearTargets(g, a)
 		t.gears = append(t.gears, one)
@@ -173,7 +173,7 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 	out.Measurement, out.Aim, out.Contact = measured(t)
 	if seat, err := g.middle().Seat(p.Diameter); err == nil {
 		bt, bp := g.g.PinSensitivity(involute.TwoPins, seat)
-		bd := 2 * math.Tan(g.g.PressureAngle()) * bt // a tooth loses 2 tan α_n of each unit of depth
+		bd := g.g.ThinningPerDepth() * bt
 		out.ByThickness, out.ByPin, out.ByDepth = &bt, &bp, &bd
 	}
 	for _, w := range otherWays() {
@@ -251,8 +251,8 @@ func (j *job) chordTarget(g *gear, m heighted) chordTarget {
 }
 
 // verdict is errNo where pins were asked for and none of them can be used.
-func (t *targets) verdict(a ask) error {
-	if a.pins != nil && !t.anyPinUsable() {
+func (t *targets) verdict() error {
+	if t.asked && !t.anyPinUsable() {
 		return errNo
 	}
 	return nil

@@ -241,16 +241,14 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 	}
 }
 
-// tightShift returns the sum of the shifts with which nominal teeth are tight
-// at the tightest center: (inv α_wt − inv α_t)(z_1 + z_2)/(2 tan α_n)
-// (ISO 21771:2007, clause 5).
+// tightShift returns the sum of the shifts with which nominal teeth are tight at
+// the tightest center.
 func (m *mesh) tightShift() float64 {
-	g := m.first.g
-	alpha, err := m.plan.Mesh.WorkingPressureAngle(m.plan.Tightest())
+	sum, err := m.plan.Mesh.ShiftSum(m.plan.Tightest())
 	if err != nil {
-		return 0
+		return 0 // the center was found possible when it was read
 	}
-	return (involute.Inv(alpha) - involute.Inv(g.TransversePressureAngle())) * float64(g.Teeth()+m.second.g.Teeth()) / (2 * math.Tan(g.PressureAngle()))
+	return sum
 }
 
 // about returns the warnings that concern any of some gears, never nil.
