@@ -147,6 +147,9 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	if err != nil || !ok {
 		return err
 	}
+	if m.plan.Backlash == nil {
+		return bad("thin_share", s.vals["thin_share"], "shares out the thinning that a backlash asks for; give backlash too")
+	}
 	switch share {
 	case "equal":
 	case m.first.name:
