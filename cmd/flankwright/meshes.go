@@ -147,9 +147,6 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	if err != nil || !ok {
 		return err
 	}
-	if m.plan.Backlash == nil {
-		return bad("thin_share", s.vals["thin_share"], "shares out the thinning that a backlash asks for; give backlash too")
-	}
 	switch share {
 	case "equal":
 	case m.first.name:
@@ -158,6 +155,9 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 		m.plan.Share = inspect.ShareSecond
 	default:
 		return bad("thin_share", s.vals["thin_share"], "%q is neither \"equal\" nor a gear of this mesh (%q, %q)", share, m.first.name, m.second.name)
+	}
+	if m.plan.Backlash == nil {
+		return bad("thin_share", s.vals["thin_share"], "shares out the thinning that a backlash asks for; give backlash too")
 	}
 	return nil
 }
