@@ -15,11 +15,11 @@ const shapeSamples = 6
 // of a tooth, found at points of every piece, mm: roots, fillets, flanks and
 // tips, each at its own place round the gear.
 func (s Section) Deviation(t involute.Tooth) float64 {
-	most := 0.0
+	most, exact := 0.0, t.Profile()
 	for _, p := range s.pieces {
 		for i := range shapeSamples {
 			q, _ := p.At(float64(i) / shapeSamples)
-			most = math.Max(most, t.ProfileOffset(q))
+			most = math.Max(most, math.Abs(exact.Offset(q)))
 		}
 	}
 	return most

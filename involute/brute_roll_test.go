@@ -23,6 +23,9 @@ func newRollingRack(t Tooth) rollingRack {
 	// pitch to each side on its datum line.
 	k.half = (math.Pi*m - t.Thickness()) / 2
 	datum := k.r + (math.Pi*m/4-k.half)/tan
+	if s.Thinning == FlanksOnly { // at the drawing's depth, and as much wider
+		datum = k.r + s.Shift*m
+	}
 	k.bottom = datum - s.Rack.Dedendum*m
 	k.rho = s.Rack.TipRadius * m
 	k.cy = k.bottom + k.rho
@@ -123,6 +126,10 @@ func rolledGears() []rolled {
 		{"helical, undercut", Spec{Teeth: 8, Module: 1.5, Helix: -33 * Degree, Rack: isoA()}, 0},
 		{"thinned", Spec{Teeth: 20, Module: 2, Rack: isoA()}, 0.5},
 		{"thinned, undercut", Spec{Teeth: 14, Module: 2, Rack: isoA()}, 0.2},
+		{"flanks moved", Spec{Teeth: 20, Module: 2, Rack: isoA(), Thinning: FlanksOnly}, 0.5},
+		{"flanks moved, undercut z 8", Spec{Teeth: 8, Module: 2, Rack: isoA(), Thinning: FlanksOnly}, 0.15},
+		{"flanks moved, full radius tool", Spec{Teeth: 30, Module: 1, Rack: fullRadius(20, 1.4), Thinning: FlanksOnly}, 0.1},
+		{"flanks moved, helical", Spec{Teeth: 13, Module: 1.5, Helix: 33 * Degree, Shift: 0.5, Rack: isoA(), Thinning: FlanksOnly}, 0.1},
 		{"stub", Spec{Teeth: 14, Module: 3, Rack: stub}, 0},
 		{"14.5 degrees", Spec{Teeth: 40, Module: 25.4 / 16, Rack: old}, 0.03},
 		{"14.5 degrees, undercut", Spec{Teeth: 16, Module: 25.4 / 16, Rack: old}, 0},

@@ -12,6 +12,7 @@ type Contact struct {
 	RhoE1, RhoE2       float64 // mm
 	TransverseRatio    float64 // ε_α on the involutes that are there; 0 where none meet
 	RatioByTips        float64 // ε_α as the tip circles alone would give it
+	UnrelievedRatio    float64 // ε_α on the flanks without their tip relief: what is left under no load
 	Start1, Start2     float64 // start of active profile diameters, mm
 	End1, End2         float64 // end of active profile diameters, mm
 	SlidingA1          Sliding // specific sliding of the first gear at A
@@ -62,16 +63,18 @@ func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
 	c := Contact{WorkingAngle: alpha}
 	c.Pitch1, c.Pitch2 = m.PitchDiameters(a)
 	line := a * math.Sin(alpha)
-	tip1, tip2 := m.First.rollLength(m.First.daFa), m.Second.rollLength(m.Second.daFa)
+	tip1, tip2 := t1.rollLength(t1.daFa), t2.rollLength(t2.daFa)
 	form1, form2 := m.First.rollLength(t1.innerEnd()), m.Second.rollLength(t2.innerEnd())
 	pitch := m.First.TransverseBasePitch()
 
-	c.RatioByTips = (m.First.rollLength(m.First.da) + m.Second.rollLength(m.Second.da) - line) / pitch
+	c.RatioByTips = (t1.rollLength(t1.da) + t2.rollLength(t2.da) - line) / pitch
 	c.PastForm1, c.PastForm2 = form1-(line-tip2), tip1-(line-form2)
 	c.limitedA, c.limitedE = c.PastForm1 > 0, c.PastForm2 > 0
 	c.RhoA1, c.RhoE1 = max(line-tip2, form1), min(tip1, line-form2)
 	c.RhoA2, c.RhoE2 = line-c.RhoA1, line-c.RhoE1
 	c.TransverseRatio = max(0, (c.RhoE1-c.RhoA1)/pitch)
+	plain1, plain2 := t1.rollLength(t1.InvoluteEndDiameter()), t2.rollLength(t2.InvoluteEndDiameter())
+	c.UnrelievedRatio = max(0, (min(c.RhoE1, plain1)-max(c.RhoA1, line-plain2))/pitch)
 
 	c.Start1, c.End1 = m.First.diameterAt(c.RhoA1), m.First.diameterAt(c.RhoE1)
 	c.Start2, c.End2 = m.Second.diameterAt(c.RhoE2), m.Second.diameterAt(c.RhoA2)
@@ -112,23 +115,22 @@ func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, err
 	if err != nil {
 		return 0, err
 	}
-	f := own.rackTip(0, 1)
 	// The corner is below the fillet's upper end while it stands within reach of the line of centers.
-	tip, top := mate.daFa/2, f.radius(own.tau)
+	tip, top := mate.daFa/2, own.form/2
 	c := (a*a + tip*tip - top*top) / (2 * a * tip)
 	if c >= 1 {
 		return math.Inf(1), nil
 	}
 	reach := math.Acos(c)
 	// Half the play as an angle of the mate brings its flank into contact.
-	corner := mate.HalfAngleAt(mate.daFa) + play.Base/math.Abs(mate.db)
+	corner := mate.RealHalfAngleAt(mate.daFa) + play.Base/math.Abs(mate.db)
 	least := math.Inf(1)
 	for i := range filletSteps + 1 {
 		// The own gear's space and the mate's tooth share the line of centers at turn 0.
 		stands := reach * (2*float64(i)/filletSteps - 1)
 		turn := (corner - stands) * mate.z / own.z
 		p := Vec{a, 0}.Add(Polar(tip, math.Pi+stands)).Rotate(-turn)
-		least = min(least, own.filletGap(f, p))
+		least = min(least, own.filletGap(p))
 	}
 	return least, nil
 }
@@ -136,14 +138,10 @@ func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, err
 // filletGap returns how far the point p (the space's center line is +x; p is
 // no farther out than the fillet) lies from the fillet of its own side, along
 // the circle through p; below the root circle, how far below, negative.
-func (t Tooth) filletGap(f Fillet, p Vec) float64 {
+func (t Tooth) filletGap(p Vec) float64 {
 	r := p.Norm()
-	if r <= f.radius(0) {
-		return r - t.RootDiameter()/2
+	if r <= t.root/2 {
+		return r - t.root/2
 	}
-	psi, err := FindRoot(func(psi float64) float64 { return f.radius(psi) - r }, 0, t.tau)
-	if err != nil {
-		psi = t.tau // the end itself, but for rounding
-	}
-	return r * (f.spaceAngle(psi) - math.Abs(p.Angle()))
+	return r * (t.spaceAngleAt(r) - math.Abs(p.Angle()))
 }

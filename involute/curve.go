@@ -5,7 +5,7 @@ import "math"
 // A Curve is a smooth plane arc in mm; the metal is on its left (outlines run
 // counter-clockwise round an external gear, clockwise inside a ring).
 //
-// The set of curves is closed: Line, Arc, Flank and Fillet. Everything that
+// The set of curves is closed: Line, Arc, Flank, Relief and Fillet. Everything that
 // needs a tooth's shape (drawing, arc fitting, pin contact, the self-check)
 // walks these and nothing else.
 type Curve interface {
@@ -56,3 +56,25 @@ func (a Arc) At(t float64) (p, dp Vec) {
 func (a Arc) Curvature(float64) float64 { return math.Copysign(1/a.Radius, a.Sweep) }
 
 func (Arc) curve() {}
+
+// mirrored returns a curve reflected in the x axis and run the other way, so
+// that the metal stays on its left.
+func mirrored(c Curve) Curve {
+	flip := func(v Vec) Vec { return Vec{v.X, -v.Y} }
+	switch c := c.(type) {
+	case Line:
+		return Line{flip(c.To), flip(c.From)}
+	case Arc:
+		return Arc{flip(c.Center), c.Radius, -c.Start - c.Sweep, c.Sweep}
+	case Flank:
+		c.BaseAngle, c.T0, c.T1 = -c.BaseAngle, -c.T1, -c.T0
+		return c
+	case Relief:
+		c.BaseAngle, c.T0, c.T1 = -c.BaseAngle, -c.T1, -c.T0
+		return c
+	case Fillet:
+		c.Space, c.Side, c.T0, c.T1 = -c.Space, -c.Side, -c.T1, -c.T0
+		return c
+	}
+	return c
+}

@@ -10,8 +10,22 @@ type Spec struct {
 	Shift       float64 // x, profile shift coefficient (× m_n); positive thickens the tooth
 	Rack        Rack
 	TipDiameter float64 // d_a, mm, with the sign of z; 0 for d + 2 m_n (h_aP* + x)
+	Topped      bool    // the cutter cuts the tip too: d_a follows the cutter's depth
 	TipChamfer  float64 // radial height of a 45° chamfer of the tip corner, mm; external gears only
+	TipRound    float64 // radius of a rounding of the tip corner, mm; external gears only
+	Relief      ReliefSpec
+	Thinning    Thinning
+	Mill        MillSpec
 }
+
+// A Thinning is how a tooth is made thinner than nominal.
+type Thinning int
+
+// The ways. A milled root takes its depth from MillSpec, so its flanks alone move.
+const (
+	Infeed     Thinning = iota // the cutter goes deeper, and the root with it
+	FlanksOnly                 // the flanks move, each with its fillet, and the root circle stays
+)
 
 // A Gear is a possible Spec with the dimensions that do not depend on the
 // tooth thickness. It does not change.
@@ -23,13 +37,15 @@ type Gear struct {
 	invT     float64
 	d, db    float64
 	da, daFa float64
+	relief   Relief // of the tooth whose center line is 90° and a half tooth off: BaseAngle 0
 }
 
 // NewGear works a Spec out, or says by an *Impossible why it cannot be.
 func NewGear(s Spec) (*Gear, error) {
 	alpha, beta := s.Rack.PressureAngle, math.Abs(s.Helix)
 	switch {
-	case !finite(s.Module, s.Helix, s.Shift, s.TipDiameter, s.TipChamfer):
+	case !finite(s.Module, s.Helix, s.Shift, s.TipDiameter, s.TipChamfer, s.TipRound,
+		s.Relief.Amount, s.Relief.Start, s.Mill.Diameter, s.Mill.RootDiameter):
 		return nil, impossible(NotFinite, s.Module, 0)
 	case s.Teeth == 0:
 		return nil, impossible(BadTeeth, 0, 1)
@@ -51,8 +67,11 @@ func NewGear(s Spec) (*Gear, error) {
 	if g.da == 0 {
 		g.da = g.d + 2*s.Module*(s.Rack.Addendum+s.Shift)
 	}
-	g.daFa = g.da - 2*s.TipChamfer
-	return g, g.check()
+	g.daFa = g.da
+	if err := g.check(); err != nil {
+		return g, err
+	}
+	return g, g.endFlank()
 }
 
 func (g *Gear) check() error {
@@ -67,10 +86,6 @@ func (g *Gear) check() error {
 		return impossible(TipBelowRoot, math.Abs(g.da), math.Abs(root))
 	case math.Abs(g.da) <= math.Abs(g.db):
 		return impossible(TipBelowBase, math.Abs(g.da), math.Abs(g.db))
-	case g.spec.TipChamfer < 0 || (g.spec.TipChamfer > 0 && !external):
-		return impossible(ChamferTooLarge, g.spec.TipChamfer, 0)
-	case math.Abs(g.daFa) <= math.Abs(g.db):
-		return impossible(ChamferTooLarge, g.spec.TipChamfer, (g.da-g.db)/2)
 	}
 	return nil
 }
@@ -114,7 +129,8 @@ func (g *Gear) BaseDiameter() float64 { return g.db }
 // TipDiameter returns d_a = d + 2 m_n (h_aP* + x), or the one given, mm (ISO 21771:2007, clause 4).
 func (g *Gear) TipDiameter() float64 { return g.da }
 
-// TipFormDiameter returns d_Fa, where the usable flank ends at the tip: d_a less the chamfer on both sides, mm.
+// TipFormDiameter returns d_Fa, where the flank ends at the tip: at the chamfer
+// or the rounding, or at d_a, mm. A relieved flank counts up to its end.
 func (g *Gear) TipFormDiameter() float64 { return g.daFa }
 
 // TransversePitch returns p_t = π m_t, mm (ISO 21771:2007, clause 4).
@@ -150,10 +166,16 @@ func (g *Gear) NominalThickness() float64 {
 
 // GeneratingShift returns x_E, the shift of the rack that cuts a tooth of
 // normal thickness sn by being fed deeper: (s_n/m_n − π/2)/(2 tan α_n)
-// (ISO 21771:2007, clause 4).
+// (ISO 21771:2007, clause 4). Where the flanks alone are moved it is x itself.
 func (g *Gear) GeneratingShift(sn float64) float64 {
+	if !g.fedDeeper() {
+		return g.spec.Shift
+	}
 	return (sn/g.spec.Module - math.Pi/2) / g.ThinningPerDepth()
 }
+
+// fedDeeper reports whether a thinner tooth is one cut deeper.
+func (g *Gear) fedDeeper() bool { return g.spec.Thinning == Infeed && g.spec.Mill.Diameter == 0 }
 
 // ThinningPerDepth returns 2 tan α_n: how much normal thickness at the reference
 // cylinder a tooth loses for each unit of length that the rack goes deeper
@@ -161,8 +183,13 @@ func (g *Gear) GeneratingShift(sn float64) float64 {
 func (g *Gear) ThinningPerDepth() float64 { return 2 * math.Tan(g.PressureAngle()) }
 
 // RootDiameterAt returns d_f = d − 2 m_n (h_fP* − x_E) that the rack leaves
-// with a tooth of normal thickness sn, mm (ISO 21771:2007, clause 4).
+// with a tooth of normal thickness sn, mm (ISO 21771:2007, clause 4), or the
+// depth asked of the end mill. A mill too wide to get there leaves a shallower
+// root: see Tooth.RootDiameter.
 func (g *Gear) RootDiameterAt(sn float64) float64 {
+	if d := g.spec.Mill.RootDiameter; d > 0 {
+		return d
+	}
 	return g.d - 2*g.spec.Module*(g.spec.Rack.Dedendum-g.GeneratingShift(sn))
 }
 

@@ -74,6 +74,15 @@ func outlineSpecs() []Spec {
 		{Teeth: 20, Module: 2, Rack: Rack{20 * Degree, 1, 1.25, 0}},
 		{Teeth: 9, Module: 2, Rack: Rack{20 * Degree, 1, 1.25, 0}},
 		{Teeth: 100, Module: 0.5, Shift: 0.8, Rack: isoA()},
+		{Teeth: 24, Module: 2, Rack: isoA(), TipRound: 0.3},
+		{Teeth: 12, Module: 2, Shift: 0.3, Rack: isoA(), TipRound: 0.2, Thinning: FlanksOnly},
+		{Teeth: 24, Module: 2, Rack: isoA(), Relief: ReliefSpec{Amount: 0.02, Start: 50}},
+		{Teeth: 24, Module: 2, Rack: isoA(), Relief: ReliefSpec{Amount: 0.02, Start: 50, Parabolic: true}, TipChamfer: 0.2},
+		{Teeth: 24, Module: 2, Rack: isoA(), Relief: ReliefSpec{Amount: 0.03, Start: 49, Parabolic: true}, TipRound: 0.2},
+		{Teeth: 45, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 1.5}},
+		{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 1.2}, TipRound: 0.2},
+		{Teeth: 12, Module: 2, Shift: 0.4, Rack: isoA(), Mill: MillSpec{Diameter: 1}},
+		{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 3}},
 		{Teeth: 30, Module: 1, Rack: Rack{20 * Degree, 1, 1.4, (math.Pi/4 - 1.4*math.Tan(20*Degree)) / math.Tan(35*Degree)}},
 	}
 }
@@ -101,7 +110,7 @@ func TestUndercutFormDiameters(t *testing.T) {
 func TestProfileOffset(t *testing.T) {
 	for _, s := range outlineSpecs() {
 		tooth := mustTooth(t, s)
-		o := tooth.Outline()
+		o, exact := tooth.Outline(), tooth.Profile()
 		for turn := range 3 {
 			for _, p := range o.Pieces {
 				t0, t1 := p.Domain()
@@ -109,14 +118,15 @@ func TestProfileOffset(t *testing.T) {
 					u := t0 + (t1-t0)*(float64(k)+0.5)/21
 					q, dq := p.At(u)
 					q = q.Rotate(float64(turn) * o.Pitch())
-					if d := tooth.ProfileOffset(q); d > 1e-9*s.Module {
+					if d := exact.Offset(q); math.Abs(d) > 1e-9*s.Module {
 						t.Errorf("%+v: piece %v at %g is %g off its own profile", s, p.Role, u, d)
 					}
 					if p.Role != ToothFlank {
 						continue
 					}
 					n := dq.Left().Scale(0.001 * s.Module / dq.Norm()).Rotate(float64(turn) * o.Pitch())
-					near(t, "offset", tooth.ProfileOffset(q.Sub(n)), 0.001*s.Module, 2e-5*s.Module)
+					near(t, "offset outside", exact.Offset(q.Sub(n)), 0.001*s.Module, 1e-9*s.Module)
+					near(t, "offset inside", exact.Offset(q.Add(n)), -0.001*s.Module, 1e-9*s.Module)
 				}
 			}
 		}

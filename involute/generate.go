@@ -4,13 +4,16 @@ import "math"
 
 // rackTip returns the generating rack's tip for this tooth as a Fillet curve
 // of one whole side, from the bottom to the end of the tool's tip.
+//
+// Where the flanks alone were moved, by half the thinning each, it is as if the
+// tool's tooth were that much wider at the same depth: e grows and the rest stays.
 func (t Tooth) rackTip(space, side float64) Fillet {
 	m, rack := t.spec.Module, t.spec.Rack
 	f := Fillet{
 		R:       t.d / 2,
 		H:       (rack.Dedendum - rack.TipRadius - t.GeneratingShift(t.sn)) * m,
 		Rho:     rack.TipRadius * m,
-		E:       rack.halfLand() * m,
+		E:       rack.halfLand()*m + t.toolWidening()/2,
 		CosBeta: math.Cos(t.spec.Helix),
 		Space:   space,
 		Side:    side,
@@ -22,6 +25,15 @@ func (t Tooth) rackTip(space, side float64) Fillet {
 		f.T0 = -end
 	}
 	return f
+}
+
+// toolWidening returns by how much the tool's tooth is wider than the rack's, in
+// the normal section, mm.
+func (t Tooth) toolWidening() float64 {
+	if t.fedDeeper() {
+		return 0
+	}
+	return t.NominalThickness() - t.sn
 }
 
 // radius returns the distance of the fillet's point ψ from the gear's center:
@@ -46,8 +58,11 @@ func (f Fillet) spaceAngle(psi float64) float64 {
 // there, tangentially. Where it is negative the tool has cut past the base
 // circle and back through the involute: the two curves cross higher up
 // (ISO 21771:2007, undercut and form diameter).
-func (t Tooth) generate() (Tooth, error) {
+func (t *Tooth) generate() error {
 	f := t.rackTip(0, 1)
+	if f.E < 0 {
+		return impossible(TooThick, t.sn, t.sn+2*f.E)
+	}
 	rb, end := t.db/2, f.T1
 	h := f.H + f.Rho*math.Sin(t.PressureAngle())
 	lever := f.R*math.Sin(t.alphaT) - h/math.Sin(t.alphaT)
@@ -55,16 +70,16 @@ func (t Tooth) generate() (Tooth, error) {
 	if lever < 0 {
 		t.cut = true
 		if err := t.crossing(f, end); err != nil {
-			return t, err
+			return err
 		}
 	}
 	if w := t.neck(f); w <= 0 {
-		return t, impossible(CutOff, w, 0)
+		return impossible(CutOff, w, 0)
 	}
 	if t.form >= t.daFa {
-		return t, impossible(NoInvolute, t.form, t.daFa)
+		return impossible(NoInvolute, t.form, t.daFa)
 	}
-	return t, nil
+	return nil
 }
 
 // crossing finds the point where an undercutting fillet leaves the involute:

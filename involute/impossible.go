@@ -27,6 +27,13 @@ const (
 	NoInvolute                         // Value: d_Ff; Limit: the tip form diameter
 	CutOff                             // Value: the least width of the tooth above its root, mm (negative or 0)
 	ChamferTooLarge                    // Value: the chamfer, mm; Limit: the largest
+	RoundTooLarge                      // Value: the rounding's radius, mm; Limit: the largest
+	ReliefOff                          // Value: where the relief starts, diameter; Limit: the end of the flank that it passes
+	ReliefTooLarge                     // Value: the amount, mm; Limit: the largest
+	TooThick                           // Value: s_n; Limit: the thickest that a tool at this depth leaves
+	MillTooLarge                       // Value: the end mill's diameter; Limit: the largest that passes, 0 where none does
+	MillHelical                        // Value: β; an end mill along the axis cuts no helix
+	MillTooDeep                        // Value: the root diameter asked for; Limit: what it must be below or above
 	CenterTooSmall                     // Value: a; Limit: (d_b1 + d_b2)/2
 	CenterNeverTight                   // Value: inv α_wt wanted, negative; Limit 0
 	MatesDiffer                        // the two gears' base pitches or helices do not fit

@@ -153,7 +153,7 @@ func (m Mesh) ThinningPerBacklash(alphaWt float64) float64 {
 // second's root and the reverse, for the roots that the teeth have, mm
 // (ISO 21771:2007, clause 5).
 func (m Mesh) TipClearances(a float64, t1, t2 Tooth) (first, second float64) {
-	return a - m.First.da/2 - t2.RootDiameter()/2, a - m.Second.da/2 - t1.RootDiameter()/2
+	return a - t1.da/2 - t2.RootDiameter()/2, a - t2.da/2 - t1.RootDiameter()/2
 }
 
 // TipForClearance returns the tip diameter of a gear that leaves the

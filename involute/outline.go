@@ -10,7 +10,9 @@ const (
 	RootLand Role = iota
 	RootFillet
 	ToothFlank
+	ToothRelief
 	Chamfer
+	TipRounding
 	TipLand
 )
 
@@ -22,8 +24,9 @@ type Piece struct {
 
 // An Outline is one pitch of a gear's transverse section about the tooth whose
 // center line is the +x axis: root, fillet, flank, tip, flank, fillet (with
-// chamfers beside the tip where there are any; without root where the fillets
-// of a full-radius tool meet). Its invariants:
+// relieved pieces, chamfers or roundings beside the tip where there are any;
+// without root land where the fillets of a full-radius tool meet, or where one
+// arc of an end mill joins the flanks). Its invariants:
 //
 //	end of piece i              = start of piece i + 1
 //	end of the last piece       = start of the first, turned by 2π/z
@@ -49,34 +52,55 @@ func (t Tooth) Outline() Outline {
 	if t.z < 0 {
 		return Outline{Teeth: t.spec.Teeth}
 	}
-	half := math.Pi / t.z
-	up := t.rackTip(-half, 1)
-	up.T1 = t.tau
-	down := t.rackTip(half, -1)
-	down.T0 = -t.tau
+	ps := t.firstHalf()
+	land := t.landAngle()
+	half := ps
+	if half[0].Role == RootLand {
+		half = half[1:]
+	}
+	n := len(half)
+	ps = append(ps, Piece{Arc{Radius: t.da / 2, Start: -land, Sweep: 2 * land}, TipLand})
+	for i := range n {
+		p := half[n-1-i]
+		ps = append(ps, Piece{mirrored(p.Curve), p.Role})
+	}
+	return Outline{ps, t.spec.Teeth}
+}
 
+// firstHalf returns the outline from the root land to the end of the first flank
+// and its chamfer or rounding.
+func (t Tooth) firstHalf() []Piece {
+	half := math.Pi / t.z
 	var ps []Piece
 	add := func(c Curve, r Role) { ps = append(ps, Piece{c, r}) }
-	// The fillet starts where the tool's tip land ends: e/(r cos β) from the space's center.
-	land := up.E / up.CosBeta / up.R
-	if land > noLand {
-		add(Arc{Radius: t.RootDiameter() / 2, Start: -half - land, Sweep: 2 * land}, RootLand)
-	}
-	add(up, RootFillet)
-	rb, psiB := t.db/2, t.halfBaseAngle()
-	t0, t1 := t.RollAngle(t.form), t.RollAngle(t.daFa)
-	add(Flank{rb, -psiB, t0, t1}, ToothFlank)
-	psiA := t.HalfAngleAt(t.daFa)
-	if t.spec.TipChamfer > 0 {
-		from, to := t.chamferEnd()
-		psiA = to.Angle()
-		add(Line{Vec{from.X, -from.Y}, Vec{to.X, -to.Y}}, Chamfer)
-		add(Arc{Radius: t.da / 2, Start: -psiA, Sweep: 2 * psiA}, TipLand)
-		add(Line{to, from}, Chamfer)
+	if t.spec.Mill.Diameter > 0 {
+		ps = t.mill.curves(t, -half)
 	} else {
-		add(Arc{Radius: t.da / 2, Start: -psiA, Sweep: 2 * psiA}, TipLand)
+		up := t.rackTip(-half, 1)
+		up.T1 = t.tau
+		// The fillet starts where the tool's tip land ends: e/(r cos β) from the space's center.
+		if land := up.E / up.CosBeta / up.R; land > noLand {
+			add(Arc{Radius: t.root / 2, Start: -half - land, Sweep: 2 * land}, RootLand)
+		}
+		add(up, RootFillet)
 	}
-	add(Flank{rb, psiB, -t1, -t0}, ToothFlank)
-	add(down, RootFillet)
-	return Outline{ps, t.spec.Teeth}
+	psi := t.halfBaseAngle()
+	end, _ := t.reliefAt(t.daFa)
+	flank := Flank{t.db / 2, -psi, t.RollAngle(t.form), end}
+	if t.relieved() && end > t.relief.Start {
+		flank.T1 = t.relief.Start
+		add(flank, ToothFlank)
+		f := t.relief
+		f.BaseAngle, f.T1 = -psi, end
+		add(f, ToothRelief)
+	} else {
+		add(flank, ToothFlank)
+	}
+	switch {
+	case t.spec.TipChamfer > 0:
+		add(Line{t.flankEnd(), t.chamferEnd()}, Chamfer)
+	case t.spec.TipRound > 0:
+		add(t.rounding(t.spec.TipRound), TipRounding)
+	}
+	return ps
 }

@@ -242,8 +242,15 @@ func (g *Gear) PinSensitivity(way PinWay, seat PinSeat) (byThickness, byPin floa
 // flanks. The root of a helical gear is a surface that winds about the axis;
 // the nearest of its points is sought along the axis too.
 func (t Tooth) PinRootClearance(seat PinSeat) float64 {
-	f := t.rackTip(0, 1)
 	rK := seat.CenterDiameter / 2
+	if t.spec.Mill.Diameter > 0 {
+		least := rK - t.root/2
+		for _, p := range t.mill.curves(t, 0) {
+			least = min(least, math.Abs(offset(p.Curve, Polar(rK, 0))))
+		}
+		return least - seat.Pin/2
+	}
+	f := t.rackTip(0, 1)
 	twist := math.Tan(math.Abs(t.spec.Helix)) * 2 / t.d
 	least := rK - t.RootDiameter()/2
 	for i := range rootSteps + 1 {
