@@ -14,10 +14,10 @@ func (d *dxfWriter) r12(f Outline) {
 	d.put(0, "LTYPE", 2, "CONTINUOUS", 70, 0, 3, "Solid line", 72, 65, 73, 0, 40, 0.0)
 	d.put(0, "LTYPE", 2, "DASHED", 70, 0, 3, "Dashed __ __ __", 72, 65, 73, 2, 40, dash+gap, 49, dash, 49, -gap)
 	d.put(0, "ENDTAB")
-	styles := layerStyles()
+	styles := f.layerStyles()
 	d.put(0, "TABLE", 2, "LAYER", 70, len(styles))
 	for _, l := range styles {
-		d.put(0, "LAYER", 2, l.name, 70, 0, 62, l.color, 6, l.lineType)
+		d.put(0, "LAYER", 2, l.name, 70, 0, 62, l.color, 6, l.lineType())
 	}
 	d.put(0, "ENDTAB")
 	d.end()

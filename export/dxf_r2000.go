@@ -32,7 +32,7 @@ func (d *dxfWriter) r2000(f Outline) {
 	d.begin("TABLES")
 	d.viewports(f)
 	d.lineTypes(f)
-	d.layers()
+	d.layers(f)
 	d.otherTables()
 	d.end()
 	d.begin("BLOCKS")
@@ -119,12 +119,12 @@ func (d *dxfWriter) lineTypes(f Outline) {
 }
 
 // layers writes the layer table; handles from 30 on.
-func (d *dxfWriter) layers() {
-	styles := layerStyles()
+func (d *dxfWriter) layers(f Outline) {
+	styles := f.layerStyles()
 	d.table("LAYER", hLayers, len(styles))
 	for i, l := range styles {
 		d.record("LAYER", "3"+strconv.Itoa(i), hLayers, "AcDbLayerTableRecord", l.name)
-		d.put(70, 0, 62, l.color, 6, l.lineType)
+		d.put(70, 0, 62, l.color, 6, l.lineType())
 	}
 	d.put(0, "ENDTAB")
 }

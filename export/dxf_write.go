@@ -105,23 +105,6 @@ func (d *dxfWriter) header(acadver string, f Outline) {
 	d.put(9, "$LUNITS", 70, 2, 9, "$INSUNITS", 70, units, 9, "$MEASUREMENT", 70, metric)
 }
 
-// A layerStyle is how a layer looks.
-type layerStyle struct {
-	name     Layer
-	color    int // DXF color index: 7 black or white, 5 blue, 8 gray
-	lineType string
-}
-
-// layerStyles returns the layers of our files. Layer 0 must be in every DXF.
-func layerStyles() [4]layerStyle {
-	return [4]layerStyle{
-		{"0", 7, "CONTINUOUS"},
-		{LayerCut, 7, "CONTINUOUS"},
-		{LayerBore, 5, "CONTINUOUS"},
-		{LayerReference, 8, "DASHED"},
-	}
-}
-
 // dashes returns the dash and the gap of line type DASHED in the file's unit.
 func dashes(u inspect.Unit) (dash, gap float64) { return 2 / u.MM(), 1 / u.MM() }
 

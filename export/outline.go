@@ -9,17 +9,6 @@ import (
 	"flankwright/involute"
 )
 
-// A Layer is the name of a layer in an outline file.
-type Layer string
-
-// The layers of the files we write. Cutting and reference lines never share one,
-// so that CAM can take the first two and leave the third.
-const (
-	LayerCut       Layer = "CUT"       // the gear's contour
-	LayerBore      Layer = "BORE"      // bore, keyway and other holes
-	LayerReference Layer = "REFERENCE" // pitch, base, tip, root and form circles: not to be cut
-)
-
 // A Contour is a closed path to be cut.
 type Contour struct {
 	Layer Layer
@@ -36,8 +25,8 @@ type Circle struct {
 // An Outline is what an outline file holds. Lengths are in mm; Unit is the unit
 // of the numbers in the file.
 //
-// A gear is one Contour on LayerCut. A plain bore is a Circle on LayerBore, a
-// bore with a keyway a Contour there. In a file every contour runs
+// A gear is one Contour on LayerCut, its mate one on LayerMate. A plain bore is a
+// Circle on LayerBore, a bore with a keyway a Contour there. In a file every contour runs
 // counter-clockwise, outer ones and holes alike, whichever way it was given:
 // CAM tells a hole from an outside by nesting or by the layer, and with one
 // sense for all, "tool left of the line" means inside the closed line everywhere.
@@ -84,15 +73,21 @@ func (o *Outline) skip(kind string, line int) {
 }
 
 // Cut returns the one closed contour on the cut layer.
-func (o Outline) Cut() (Path, error) {
+func (o Outline) Cut() (Path, error) { return o.only(LayerCut) }
+
+// Mate returns the one closed contour on the layer of the second gear.
+func (o Outline) Mate() (Path, error) { return o.only(LayerMate) }
+
+// only returns the one closed contour on a layer.
+func (o Outline) only(layer Layer) (Path, error) {
 	var found []Path
 	for _, c := range o.Contours {
-		if c.Layer == LayerCut {
+		if c.Layer == layer {
 			found = append(found, c.Path)
 		}
 	}
 	if len(found) != 1 {
-		return Path{}, fmt.Errorf("%d closed contours on layer %s, not 1", len(found), LayerCut)
+		return Path{}, fmt.Errorf("%d closed contours on layer %s, not 1", len(found), layer)
 	}
 	return found[0], nil
 }
@@ -124,7 +119,7 @@ func (o Outline) check() error {
 		return fmt.Errorf("outline: unit %d is neither mm nor inch", int(o.Unit))
 	}
 	for i, c := range o.Contours {
-		if c.Layer != LayerCut && c.Layer != LayerBore {
+		if l, ok := styleOf(c.Layer); !ok || !l.contours {
 			return fmt.Errorf("outline: contour %d is on layer %q; %s or %s would be right", i+1, c.Layer, LayerCut, LayerBore)
 		}
 		if err := c.Path.check(); err != nil {
@@ -132,8 +127,8 @@ func (o Outline) check() error {
 		}
 	}
 	for i, c := range o.Circles {
-		if c.Layer != LayerCut && c.Layer != LayerBore && c.Layer != LayerReference {
-			return fmt.Errorf("outline: circle %d is on layer %q; %s, %s or %s would be right", i+1, c.Layer, LayerCut, LayerBore, LayerReference)
+		if _, ok := styleOf(c.Layer); !ok {
+			return fmt.Errorf("outline: circle %d is on layer %q; %s or %s would be right", i+1, c.Layer, LayerBore, LayerReference)
 		}
 		if err := c.check(); err != nil {
 			return fmt.Errorf("outline: circle %d: %w", i+1, err)

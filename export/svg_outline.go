@@ -4,6 +4,7 @@ import (
 	"bufio"
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 
 	"flankwright/involute"
@@ -47,9 +48,9 @@ func writeSVG(w io.Writer, o Outline) error {
 	if title := xmlText(f.Title); title != "" {
 		s.printf("<title>%s</title>\n", title)
 	}
-	s.group(f, LayerReference, svgThinLine, "#808080")
-	s.group(f, LayerBore, svgCutLine, "#0000ff")
-	s.group(f, LayerCut, svgCutLine, "#000000")
+	for _, l := range slices.Backward(allLayers()) {
+		s.group(f, l)
+	}
 	s.printf("</svg>\n")
 	if s.err == nil {
 		s.err = s.w.Flush()
@@ -85,15 +86,15 @@ func (s *svgWriter) point(p involute.Vec) string {
 }
 
 // group writes one layer, if there is anything on it.
-func (s *svgWriter) group(f Outline, layer Layer, line float64, color string) {
+func (s *svgWriter) group(f Outline, l layerStyle) {
 	var things []string
 	for _, c := range f.Contours {
-		if c.Layer == layer {
+		if c.Layer == l.name {
 			things = append(things, `<path d="`+s.pathData(c.Path)+`"/>`)
 		}
 	}
 	for _, c := range f.Circles {
-		if c.Layer == layer {
+		if c.Layer == l.name {
 			things = append(things, fmt.Sprintf(`<circle cx="%s" cy="%s" r="%s"/>`,
 				s.number(c.Center.X), s.number(-c.Center.Y), s.number(c.Radius)))
 		}
@@ -102,11 +103,11 @@ func (s *svgWriter) group(f Outline, layer Layer, line float64, color string) {
 		return
 	}
 	dashes := ""
-	if layer == LayerReference {
+	if l.dashed {
 		dashes = fmt.Sprintf(` stroke-dasharray="%s %s"`, s.number(svgDash*s.mm), s.number(svgGap*s.mm))
 	}
 	s.printf(`<g id="%s" fill="none" stroke="%s" stroke-width="%s"%s>`+"\n%s\n</g>\n",
-		layer, color, s.number(line*s.mm), dashes, strings.Join(things, "\n"))
+		l.name, l.stroke, s.number(l.width*s.mm), dashes, strings.Join(things, "\n"))
 }
 
 // pathData writes a path, one piece a line. A last arc ends on the first point
