@@ -23,8 +23,8 @@ func IdealPin(g *involute.Gear, s Limits) (float64, bool) {
 		return 0, false
 	}
 	dc := t.TouchDiameter()
-	if dc <= t.FormDiameter() || dc >= t.TipFormDiameter() {
-		dc = (t.FormDiameter() + t.TipFormDiameter()) / 2
+	if end := t.InvoluteEndDiameter(); dc <= t.FormDiameter() || dc >= end {
+		dc = (t.FormDiameter() + end) / 2
 	}
 	pin, err := t.PinTouchingAt(dc)
 	return pin, err == nil && pin > 0

@@ -31,6 +31,8 @@ const (
 	NoContact     FaultCode = iota // the pin touches no involute; Value: pin, Limit: the least that would
 	BelowForm                      // touches below the form diameter; Value: contact diameter, Limit: form diameter
 	AboveTip                       // touches above the tip (form) diameter; Value: contact diameter, Limit: tip form diameter
+	OnRelief                       // touches the relieved flank; Value: contact diameter, Limit: where the relief starts
+	TipMoves                       // the cutter tops the teeth, and what is measured from the tip moves with it
 	UnderTips                      // the pin stands below the tips; Value: measurement, Limit: what it must exceed
 	TouchesRoot                    // the pin rests on the root first; Value: how deep it would go in, Limit 0
 	FaceTooNarrow                  // Value: face width, Limit: the least needed
@@ -51,6 +53,8 @@ func contactFaults(t involute.Tooth, dc float64) []Fault {
 		return []Fault{{BelowForm, dc, t.FormDiameter()}}
 	case dc > t.TipFormDiameter():
 		return []Fault{{AboveTip, dc, t.TipFormDiameter()}}
+	case dc > t.InvoluteEndDiameter():
+		return []Fault{{OnRelief, dc, t.InvoluteEndDiameter()}}
 	}
 	return nil
 }
@@ -220,12 +224,18 @@ func (m Chordal) Thickness(g *involute.Gear, value float64) (float64, error) {
 
 // Faults says where the reference cylinder lies off the flank.
 func (m Chordal) Faults(t involute.Tooth, _ Part) []Fault {
-	return append(contactFaults(t, t.ReferenceDiameter()), heightFault(m.Height(t))...)
+	return append(contactFaults(t, t.ReferenceDiameter()), heightFaults(t, m.Height(t))...)
 }
 
-func heightFault(h float64) []Fault {
-	if h <= 0 {
+// heightFaults checks a height below the tip. A cutter that tops the teeth takes
+// the tip along with the flanks, so that the chord at a height below it stays the
+// same however deep it cuts.
+func heightFaults(t involute.Tooth, h float64) []Fault {
+	switch {
+	case h <= 0:
 		return []Fault{{NoReading, h, 0}}
+	case t.Spec().Topped && t.Spec().Thinning == involute.Infeed:
+		return []Fault{{Code: TipMoves}}
 	}
 	return nil
 }
@@ -252,7 +262,7 @@ func (m ConstantChord) Thickness(g *involute.Gear, value float64) (float64, erro
 
 // Faults says where the chord's points lie off the flank.
 func (m ConstantChord) Faults(t involute.Tooth, _ Part) []Fault {
-	return append(contactFaults(t, t.ConstantChordDiameter()), heightFault(m.Height(t))...)
+	return append(contactFaults(t, t.ConstantChordDiameter()), heightFaults(t, m.Height(t))...)
 }
 
 func (ConstantChord) measure() {}

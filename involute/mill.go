@@ -169,3 +169,17 @@ func (t Tooth) generatedSpaceAngle(r float64) float64 {
 	}
 	return f.spaceAngle(psi)
 }
+
+// A MillSeat is where the end mill that cuts a root stops.
+type MillSeat struct {
+	Radius float64 // ρ, of the mill, mm
+	Center float64 // r_c, from the gear's axis, mm
+	Single bool    // it rests on both flanks, and leaves one arc
+	Radial bool    // it touches the radial lines below the base circle
+}
+
+// MillSeat returns where the end mill stops, false for a generated root.
+func (t Tooth) MillSeat() (MillSeat, bool) {
+	m := t.mill
+	return MillSeat{m.rho, m.center, m.single, 2*m.foot < t.db}, m.rho > 0
+}

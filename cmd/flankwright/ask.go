@@ -51,7 +51,7 @@ func readAsk(c *cli.Context, j *job, gears []*gear) (ask, error) {
 // checkArbor refuses an arbor that does not go through the gears.
 func (j *job) checkArbor(a ask, gears []*gear) error {
 	for _, g := range gears {
-		if root := g.g.RootDiameterAt(g.thickness.Limits.Min); a.arbor >= root {
+		if root := g.rootLimits().Min; a.arbor >= root {
 			return wrong("--arbor: %s does not go into %s, whose root diameter is %s", j.length(a.arbor), called(g), j.length(root))
 		}
 	}

@@ -86,6 +86,7 @@ type gearDims struct {
 	VirtualTeeth    float64   `json:"virtual_teeth"`
 	Bore            *span     `json:"bore_mm,omitempty"`
 	Rack            rackDims  `json:"rack"`
+	formDims
 
 	undercutThinnest bool
 }
@@ -141,12 +142,13 @@ func newGearDims(g *gear) gearDims {
 		TipThickness: t.TipThickness(), Undercut: t.Undercut(),
 		WholeDepth:  (gg.TipDiameter() - t.RootDiameter()) / 2,
 		Limits:      toSpan(thick),
-		RootLimits:  span{gg.RootDiameterAt(thick.Min), gg.RootDiameterAt(thick.Max)},
+		RootLimits:  toSpan(g.rootLimits()),
 		NormalPitch: gg.NormalPitch(), BasePitch: gg.NormalBasePitch(), TransverseBase: gg.TransverseBasePitch(),
 		Index: 360 / float64(gg.Teeth()), VirtualTeeth: gg.VirtualTeeth(),
 		Rack: rackDims{g.rack, spec.Rack.Addendum, spec.Rack.Dedendum, spec.Rack.TipRadius, g.source},
 	}
 	d.CutDepth = toSpan(g.depthOfCut())
+	d.formDims = newFormDims(g)
 	if thinnest, err := gg.Tooth(thick.Min); err == nil {
 		d.FormThinnest, d.undercutThinnest = thinnest.FormDiameter(), thinnest.Undercut()
 	}
@@ -184,6 +186,7 @@ type meshDims struct {
 	WorkingAngle    float64    `json:"working_pressure_angle_deg"`
 	Contact         float64    `json:"transverse_contact_ratio"`
 	ContactByTips   float64    `json:"transverse_contact_ratio_by_tips"`
+	Unrelieved      float64    `json:"transverse_contact_ratio_without_relief"`
 	Overlap         float64    `json:"overlap_ratio"`
 	Circumferential span       `json:"circumferential_backlash_mm"`
 	Normal          span       `json:"normal_backlash_mm"`
@@ -233,7 +236,7 @@ func newMeshDims(m *mesh, dial float64) meshDims {
 	c, err := mm.Contact(a, m.first.nominal, m.second.nominal)
 	if err == nil {
 		d.WorkingAngle = c.WorkingAngle / involute.Degree
-		d.Contact, d.ContactByTips = c.TransverseRatio, c.RatioByTips
+		d.Contact, d.ContactByTips, d.Unrelieved = c.TransverseRatio, c.RatioByTips, c.UnrelievedRatio
 		d.Pitch = pairDims{c.Pitch1, c.Pitch2}
 		if c.TransverseRatio > 0 {
 			d.Start, d.End = &pairDims{c.Start1, c.Start2}, &pairDims{c.End1, c.End2}

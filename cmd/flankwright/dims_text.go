@@ -89,10 +89,12 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	g.row("Teeth", "", d.each(func(_ int, x gearDims) string { return strconv.Itoa(x.Teeth) })...)
 	length("Outside (tip) diameter", func(x gearDims) float64 { return x.Tip })
 	d.blankRow(&g, unit, f)
+	d.tipRows(&g, u, digits)
 	length("Whole depth, nominal tooth", func(x gearDims) float64 { return x.WholeDepth })
 	limits("Depth of cut from the outside", func(x gearDims) span { return x.CutDepth })
 	length("Root diameter, nominal tooth", func(x gearDims) float64 { return x.Root })
 	limits("Root diameter, thinned tooth", func(x gearDims) span { return x.RootLimits })
+	d.formRows(&g, unit, f)
 	d.boreRows(&g, u, digits)
 	limits("Tooth thickness, normal, thinned", func(x gearDims) span { return x.Limits })
 	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i].thickness.By) })...)
@@ -293,6 +295,9 @@ func (m meshDims) pairGrid(u inspect.Unit, f func(float64) string) grid {
 	g.row("Ratio", "", fmt.Sprintf("%.5f", m.Ratio))
 	g.row("Working pressure angle, transverse", "deg", fmt.Sprintf("%.4f", m.WorkingAngle))
 	g.row("Contact ratio, transverse", "", fmt.Sprintf("%.4f", m.Contact))
+	if m.Unrelieved < m.Contact {
+		g.row("  without the relieved tips (no load)", "", fmt.Sprintf("%.4f", m.Unrelieved))
+	}
 	if m.mesh.first.g.Helical() {
 		g.row("Overlap ratio", "", overlapText(m))
 	}

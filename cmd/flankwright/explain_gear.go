@@ -40,9 +40,14 @@ func explainGear(g *gear) []explanation {
 	e.result("base diameter", "d_b = d * cos(α_t)", db, srcGear, d, at)
 	e.result("tooth thickness, nominal", "s_n = m_n * (pi / 2 + 2 * x * tan(α_n))", sn, srcGear, m, x, an)
 	explainTip(e, g, d, m, haP, x, da)
-	e.result("root diameter, nominal", "d_f = d - 2 * m_n * (h_fP - x)", mm("d_f", t.RootDiameter()), srcGear, d, m, hfP, x)
-	e.result("whole depth", "h = (d_a - d_f) / 2", mm("h", (da.Value-t.RootDiameter())/2), srcGear, da, mm("d_f", t.RootDiameter()))
-	explainForm(e, t, z, x, m, an, at, db, hfP, rho)
+	df := explainRoot(e, g, d, m, hfP, x)
+	e.result("whole depth", "h = (d_a - d_f) / 2", mm("h", (da.Value-df.Value)/2), srcGear, da, df)
+	if seat, milled := t.MillSeat(); milled {
+		explainMilledForm(e, seat, df, db, mm("d_Ff", t.FormDiameter()))
+	} else {
+		explainForm(e, t, z, x, m, an, at, db, hfP, rho)
+	}
+	explainTipEnd(e, g, da, db)
 	ata := deg("α_at", math.Acos(gg.BaseDiameter()/gg.TipDiameter()))
 	e.result("pressure angle at the tip", "α_at = acos(d_b / d_a)", ata, srcGear, db, da)
 	e.result("tip thickness, normal", "s_an = d_a * (s_n / cos(β) / d + inv(α_t) - inv(α_at)) * cos(atan(tan(β) * d_a / d))",
@@ -54,7 +59,7 @@ func explainGear(g *gear) []explanation {
 	}
 	e.result("least shift without undercut", "x_min = h_fP - ρ_fP * (1 - sin(α_n)) - z * sin(α_t) ^ 2 / (2 * cos(β))", num("x_min", gg.UndercutLimit()), srcGear+"; "+srcRack,
 		hfP, rho, an, z, at, b)
-	explainLimits(e, g, an, m, hfP, d)
+	explainLimits(e, g, an, m, hfP, haP, d)
 	return e.list
 }
 
@@ -103,7 +108,7 @@ func explainUndercut(e *explainer, t involute.Tooth, z, at, db, form quantity) {
 	e.result("form diameter (undercut)", "d_Ff = 2 * sqrt(A ^ 2 + Y ^ 2)", form, src, a, y)
 }
 
-func explainLimits(e *explainer, g *gear, an, m, hfP, d quantity) {
+func explainLimits(e *explainer, g *gear, an, m, hfP, haP, d quantity) {
 	low := g.thickness.Limits.Min
 	if low == g.nominal.Thickness() {
 		return
@@ -113,9 +118,18 @@ func explainLimits(e *explainer, g *gear, an, m, hfP, d quantity) {
 		e.result("thickest tooth, from thin", "s_nmax = s_n - t_min", mm("s_nmax", g.thickness.Limits.Max), "the job", sn, mm("t_min", g.thin.Min))
 		e.result("thinnest tooth, from thin", "s_nmin = s_n - t_max", mm("s_nmin", low), "the job", sn, mm("t_max", g.thin.Max))
 	}
+	dfe := mm("d_fE", g.rootLimits().Min)
+	if g.g.GeneratingShift(low) == g.g.Spec().Shift { // the flanks alone are moved
+		e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.g.TipDiameter()), dfe)
+		return
+	}
 	xe := num("x_E", g.g.GeneratingShift(low))
 	e.result("generating shift of the thinnest tooth", "x_E = (s_nmin / m_n - pi / 2) / (2 * tan(α_n))", xe, srcGear, mm("s_nmin", low), m, an)
-	dfe := mm("d_fE", g.g.RootDiameterAt(low))
 	e.result("root diameter of the thinnest tooth", "d_fE = d - 2 * m_n * (h_fP - x_E)", dfe, srcGear, d, m, hfP, xe)
-	e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.g.TipDiameter()), dfe)
+	blank := mm("d_blank", g.g.TipDiameter())
+	if g.g.Spec().Topped {
+		blank = mm("d_blank", g.tipLimits().Min)
+		e.result("outside diameter of the thinnest tooth, topped", "d_blank = d + 2 * m_n * (h_aP + x_E)", blank, srcGear, d, m, haP, xe)
+	}
+	e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, blank, dfe)
 }

@@ -30,6 +30,14 @@ func explained() map[string][]string {
 		"pair, shortened":    {"--module", "3", "--teeth", "12", "--shift", "0.6", "--mate-teeth", "24", "--mate-shift", "0.36", "--tip", "shortened"},
 		"pair, undercut":     {"--module", "2", "--teeth", "10", "--mate-teeth", "40", "--center", "50±0.02", "--backlash", "0.1..0.2"},
 		"helical pair":       {"--module", "2", "--teeth", "21", "--mate-teeth", "40", "--helix-angle", "12°30'", "--face-width", "20", "--backlash", "0.1..0.2"},
+		"milled root":        {"--module", "2", "--teeth", "45", "--root", "end mill 1.5mm", "--thin", "0.05..0.1"},
+		"milled, one arc":    {"--module", "2", "--teeth", "45", "--root", "end mill 3mm"},
+		"milled, radial":     {"--module", "2", "--teeth", "14", "--root", "end mill 1mm", "--shift", "0.4"},
+		"milled, one radial": {"--module", "2", "--teeth", "10", "--root", "end mill 2.6mm", "--shift", "0.5"},
+		"milled pair":        {"--module", "2", "--teeth", "18", "--mate-teeth", "40", "--center", "58.2", "--backlash", "0.3..0.4", "--root", "end mill 1mm"},
+		"rounded":            {"--module", "2", "--teeth", "24", "--tip-round", "0.25mm", "--thinning", "flanks", "--thin", "0.05..0.1"},
+		"relieved":           {"--module", "2", "--teeth", "24", "--relief", "0.02mm from 50mm", "--tip-round", "0.2"},
+		"topped":             {"--module", "2", "--teeth", "24", "--tip", "topped", "--thin", "0.05..0.1"},
 		"asked for":          {"--module", "2", "--teeth", "17", "--measured-tip", "37.9", "--pin", "3.5", "--pin", "4", "--span-teeth", "2", "--arbor", "10"},
 	}
 	for _, name := range exampleNames() {

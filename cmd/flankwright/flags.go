@@ -56,11 +56,8 @@ func keyFlag(name, usage, category string, k keySpec) cli.Flag {
 	if k.name == "ring" {
 		return &cli.BoolFlag{Name: name, Usage: usage, Category: category, Hidden: k.later, DisableDefaultText: true}
 	}
-	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later || oneValue(k.name)}
+	return &cli.StringFlag{Name: name, Usage: usage, Category: category, Hidden: k.later}
 }
-
-// oneValue reports whether a key has but one value yet; its flag is not worth showing.
-func oneValue(key string) bool { return key == "thinning" || key == "root" }
 
 // commonFlags mean the same in every command that computes.
 func commonFlags() []cli.Flag {

@@ -238,15 +238,13 @@ func checkKeys(t *table, where scope, name string) error {
 // refuseLater refuses what the program knows but cannot do yet, by key or by value.
 func refuseLater(spec keySpec, v value, at place) error {
 	text, _ := asText(v)
-	_, isTable := v.content.(*table)
 	_, isFlag := v.content.(flagText)
 	switch {
 	case spec.name == "ring" && (v.content == false || text == "false"):
 		return nil
 	case spec.later:
 		return later(at, spec.name, isFlag)
-	case spec.name == "root" && isTable, spec.name == "thinning" && strings.EqualFold(text, "flanks"),
-		spec.name == "thin_share" && strings.EqualFold(text, "by strength"),
+	case spec.name == "thin_share" && strings.EqualFold(text, "by strength"),
 		spec.name == "keyway" && strings.EqualFold(text, "auto"):
 		return later(at, spec.name+" = "+describe(v), isFlag)
 	}

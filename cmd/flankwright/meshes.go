@@ -201,10 +201,15 @@ func (j *job) shortenTips() error {
 	return nil
 }
 
-// retip makes the gear anew with a tip diameter, and its meshes with it.
+// retip makes the gear anew with a tip diameter.
 func (j *job) retip(g *gear, tip float64) error {
 	spec := g.g.Spec()
-	spec.TipDiameter = tip
+	spec.TipDiameter, spec.Topped = tip, false
+	return j.remake(g, spec)
+}
+
+// remake makes the gear anew, and its meshes with it.
+func (j *job) remake(g *gear, spec involute.Spec) error {
 	var err error
 	if g.g, err = involute.NewGear(spec); err != nil {
 		return j.impossibleGear(g, err)
@@ -250,7 +255,7 @@ func (j *job) finishGear(g *gear) error {
 	if g.bore == nil {
 		return nil
 	}
-	root := g.g.RootDiameterAt(g.thickness.Limits.Min)
+	root := g.rootLimits().Min
 	if g.bore.limits.Max >= root {
 		return bad("bore", g.settings.vals["bore"], "of %s reaches the root circle, %s; it must be smaller", j.length(g.bore.nominal), j.length(root))
 	}

@@ -37,19 +37,44 @@ type gear struct {
 	measured    bool    // the outside diameter is the blank's, as measured
 	drawnTip    float64 // then, what it was to be, mm
 	tipBy       tipDecision
+	rootBy      rootDecision
 	settings    settings
 }
 
 // depthOfCut returns the limits of the depth of cut from the blank's outside, mm.
 func (g *gear) depthOfCut() inspect.Limits {
-	l := g.thickness.Limits
+	root := g.rootLimits()
+	if g.g.Spec().Topped { // root and tip are cut at once
+		depth := (g.nominal.TipDiameter() - g.nominal.RootDiameter()) / 2
+		return inspect.Limits{Min: depth, Max: depth}
+	}
 	tip := g.g.TipDiameter()
-	return inspect.Limits{Min: (tip - g.g.RootDiameterAt(l.Max)) / 2, Max: (tip - g.g.RootDiameterAt(l.Min)) / 2}
+	return inspect.Limits{Min: (tip - root.Max) / 2, Max: (tip - root.Min) / 2}
+}
+
+// rootLimits returns the limits of the root diameter, mm.
+func (g *gear) rootLimits() inspect.Limits {
+	thin, err1 := g.g.Tooth(g.thickness.Limits.Min)
+	thick, err2 := g.g.Tooth(g.thickness.Limits.Max)
+	if err1 != nil || err2 != nil {
+		return inspect.Limits{Min: g.nominal.RootDiameter(), Max: g.nominal.RootDiameter()}
+	}
+	return inspect.Limits{Min: thin.RootDiameter(), Max: thick.RootDiameter()}
+}
+
+// tipLimits returns the limits of the outside diameter, which differ where the cutter tops the teeth, mm.
+func (g *gear) tipLimits() inspect.Limits {
+	l := g.thickness.Limits
+	return inspect.Limits{Min: g.g.TipDiameterAt(l.Min), Max: g.g.TipDiameterAt(l.Max)}
 }
 
 // A tipDecision is what decided a shortened tip: the center distance, the
 // mate's root diameter and the clearance kept, mm.
 type tipDecision struct{ a, mateRoot, clearance float64 }
+
+// A rootDecision is what decided the depth of a milled root: the center
+// distance, the mate's tip diameter and the clearance kept, mm.
+type rootDecision struct{ a, mateTip, clearance float64 }
 
 type keyway struct{ width, depth float64 } // mm; depth beyond the bore
 
@@ -102,6 +127,9 @@ func resolve(r request) (*job, error) {
 	if err := j.shortenTips(); err != nil {
 		return nil, err
 	}
+	if err := j.deepenRoots(); err != nil {
+		return nil, err
+	}
 	if err := j.planThickness(); err != nil {
 		return nil, err
 	}
@@ -109,6 +137,9 @@ func resolve(r request) (*job, error) {
 		if err := j.finishGear(g); err != nil {
 			return nil, err
 		}
+	}
+	if err := j.checkMilled(); err != nil {
+		return nil, err
 	}
 	j.early = len(j.warnings)
 	j.warn()
@@ -147,11 +178,6 @@ func (j *job) addGear(i int, hand float64) error {
 	if err := j.readKeyway(g); err != nil {
 		return err
 	}
-	for _, check := range []struct{ key, only string }{{"thinning", "infeed"}, {"root", "generated"}} {
-		if _, _, err := gr.word(check.key, check.only); err != nil {
-			return err
-		}
-	}
 	j.gears = append(j.gears, g)
 	return nil
 }
@@ -186,20 +212,10 @@ func (j *job) spec(g *gear, hand float64) (involute.Spec, error) {
 	if s.Rack, err = j.rack(g, s.Module); err != nil {
 		return s, err
 	}
-	if s.TipChamfer, _, err = g.settings.length("tip_chamfer"); err != nil {
+	if err := j.form(g, &s); err != nil {
 		return s, err
 	}
-	if s.TipDiameter, _, err = g.settings.positive("tip_diameter"); err != nil {
-		return s, err
-	}
-	word, _, err := g.settings.word("tip", "full", "shortened")
-	if err != nil {
-		return s, err
-	}
-	if g.shortened = word == "shortened"; word != "" && s.TipDiameter != 0 {
-		return s, bad("tip", g.settings.vals["tip"], "%q and tip_diameter say different things; give one of them", word)
-	}
-	return s, nil
+	return s, j.tip(g, &s)
 }
 
 // largestModule and smallestModule bound what the computation is made for.

@@ -7,6 +7,7 @@ import (
 
 	"flankwright/export"
 	"flankwright/inspect"
+	"flankwright/involute"
 )
 
 // plainTitle is the title of a gear without one.
@@ -69,11 +70,12 @@ func (j *job) sheetData(g *gear) []export.Field {
 	}
 	data = append(data, []export.Field{
 		shiftField(shift, value+" ("+other+")"),
-		j.lengthField(g.tipLabel(), gg.TipDiameter()),
+		j.lengthField(g.tipLabel(), g.middle().TipDiameter()),
 		j.lengthField("Pitch (reference) diameter", gg.ReferenceDiameter()),
 		j.lengthField("Root diameter, aim", g.middle().RootDiameter()),
-		j.lengthField("Depth of cut, aim", (gg.TipDiameter()-g.middle().RootDiameter())/2),
+		j.lengthField("Depth of cut, aim", g.depthOfCut().Middle()),
 	}...)
+	data = append(data, j.formFields(g)...)
 	if g.bore != nil {
 		data = append(data, j.boreField(g.bore))
 	}
@@ -104,7 +106,33 @@ func (g *gear) tipLabel() string {
 	if g.measured {
 		return "Outside diameter, as measured"
 	}
+	if g.g.Spec().Topped {
+		return "Outside diameter, topped, aim"
+	}
 	return "Outside (tip) diameter"
+}
+
+// formFields words how root and tip are made, where they are not plain.
+func (j *job) formFields(g *gear) []export.Field {
+	s := g.g.Spec()
+	var fields []export.Field
+	if s.Mill.Diameter > 0 {
+		fields = append(fields, j.lengthField("Root, end mill no larger than", s.Mill.Diameter))
+	} else if s.Thinning == involute.FlanksOnly {
+		fields = append(fields, export.Field{Label: "Thinned by", Value: "the flanks, root stays"})
+	}
+	if s.TipChamfer > 0 {
+		fields = append(fields, j.lengthField("Tip chamfer 45°, height", s.TipChamfer))
+	}
+	if s.TipRound > 0 {
+		fields = append(fields, j.lengthField("Tip rounding, radius", s.TipRound))
+	}
+	if r := s.Relief; r.Amount > 0 {
+		value, _ := j.both(r.Amount)
+		from, _ := j.both(r.Start)
+		fields = append(fields, export.Field{Label: "Tip relief, " + reliefForm(r), Value: value, Other: "from Ø" + from})
+	}
+	return fields
 }
 
 // keywayField words a keyway: its width, and the size across from the bore's wall.

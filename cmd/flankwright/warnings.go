@@ -89,7 +89,11 @@ func (j *job) warnGear(g *gear) {
 		j.addWarning("undercut", g.name, "generated (hobbed, or cut to the contour) the thinnest tooth is undercut: its involute begins at a diameter of %s, the base circle is %s. A shift of %+.4f or more avoids it",
 			form, base, g.g.UndercutLimit()+deeper)
 	}
-	if land := thinnest.TipLand(); land < thinTip*m {
+	land := thinnest.TipLand()
+	if g.g.Spec().TipRound > 0 {
+		land = thinnest.TipThickness() // a rounding may take the whole land
+	}
+	if land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
 	}
 	if g.bore != nil {
@@ -120,7 +124,7 @@ func (j *job) warnFace(g *gear) {
 }
 
 func (j *job) warnRim(g *gear) {
-	root := g.g.RootDiameterAt(g.thickness.Limits.Min)
+	root := g.rootLimits().Min
 	depth := (g.g.TipDiameter() - root) / 2
 	wall, where := (root-g.bore.limits.Max)/2, "bore"
 	if g.keyway != nil {

@@ -133,6 +133,10 @@ func (r request) faultText(f inspect.Fault) string {
 		return fmt.Sprintf("touches at %s, below the form diameter %s where the involute begins", v, l)
 	case inspect.AboveTip:
 		return fmt.Sprintf("touches at %s, above the end of the flank at %s", v, l)
+	case inspect.OnRelief:
+		return fmt.Sprintf("touches at %s, on the relieved flank, which starts at %s", v, l)
+	case inspect.TipMoves:
+		return "the cutter tops the teeth: measured from the tip they read the same however deep it cuts"
 	case inspect.UnderTips:
 		return fmt.Sprintf("stands below the tips: reaches %s, the teeth %s; take a larger pin", v, l)
 	case inspect.TouchesRoot:

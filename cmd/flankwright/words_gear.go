@@ -50,6 +50,7 @@ func (j *job) impossibleThinning(g *gear, err error) error {
 	why := map[involute.Reason]string{
 		involute.Pointed: "comes to a point below its tip", involute.NoInvolute: "has no involute left", involute.CutOff: "is cut off at its root",
 		involute.RootNotPositive: "has no root left", involute.ChamferTooLarge: "has no tip left for its chamfer",
+		involute.RoundTooLarge: "has no tip left for its rounding", involute.ReliefOff: "has no flank left below its relief",
 	}[imp.Reason]
 	if why == "" {
 		why = "has no thickness left"
@@ -93,6 +94,14 @@ func keysOf(r involute.Reason) []string {
 		return []string{"tip_diameter", "addendum", "shift", "teeth"}
 	case involute.ChamferTooLarge:
 		return []string{"tip_chamfer"}
+	case involute.RoundTooLarge:
+		return []string{"tip_round"}
+	case involute.ReliefOff, involute.ReliefTooLarge:
+		return []string{"relief"}
+	case involute.MillTooLarge, involute.MillHelical, involute.MillTooDeep:
+		return []string{"root"}
+	case involute.TooThick:
+		return []string{"thin", "thinning"}
 	case involute.RootNotPositive, involute.NoInvolute, involute.CutOff:
 		return []string{"dedendum", "shift", "teeth"}
 	case involute.ThicknessNotPositive, involute.SpaceClosed:
@@ -162,6 +171,23 @@ func (j *job) gearReason(g *gear, e *involute.Impossible) string {
 			return "a 45° tip chamfer does not fit: the flanks of so few teeth lean as much themselves at the tip. Leave tip_chamfer out"
 		}
 		return fmt.Sprintf("a tip chamfer of %s is too large; it must be from 0 to under %s", v, l)
+	case involute.RoundTooLarge:
+		return fmt.Sprintf("a tip rounding of %s is too large; it must be under %s", v, l)
+	case involute.ReliefOff:
+		return fmt.Sprintf("the relief starts at a diameter of %s, off the flank, which ends at %s; start it between form and outside diameter", v, l)
+	case involute.ReliefTooLarge:
+		return fmt.Sprintf("a tip relief of %s is too much for where it starts; at most %s, or start it lower", v, l)
+	case involute.TooThick:
+		return fmt.Sprintf("teeth %s thick need a cutter narrower than its own rounding; at this depth at most %s", v, l)
+	case involute.MillTooLarge:
+		if e.Limit <= 0 {
+			return fmt.Sprintf("an end mill of %s does not get into the tooth space, nor does any other", v)
+		}
+		return fmt.Sprintf("an end mill of %s does not get into the tooth space. The largest that passes is %s%s", v, j.lengthDown(e.Limit), j.usualMill(e.Limit))
+	case involute.MillHelical:
+		return "the root of a helical gear winds about the axis and cannot be cut by an end mill along the axis; take root = \"generated\""
+	case involute.MillTooDeep:
+		return fmt.Sprintf("the mate's tip needs a root diameter of %s, which is not between 0 and %s", v, l)
 	case involute.BadHelix:
 		return fmt.Sprintf("a helix angle of %s is past the limit of %s", degrees(e.Value), degrees(e.Limit))
 	case involute.BadPressureAngle:
