@@ -12,10 +12,21 @@ import (
 
 // A Section is a gear known by nothing but a closed contour: what was read back
 // from a file. It is measured with the geometry of lines and arcs alone.
+//
+//   - here: over pins
+//   - readback_flank.go: where flanks, teeth and spaces are
+//   - readback_span.go: span over teeth
+//   - readback_limits.go: least and greatest radius, area, joints
+//   - readback_even.go: every tooth against the first
+//   - readback_shape.go: against the exact profile
+//   - roll.go: two sections rolled through a pitch
 type Section struct {
-	pieces []placed
-	spaces []float64 // polar angles of the middles of the tooth spaces, ascending
-	least  float64   // smallest and largest radius, mm
+	path   Path             // counter-clockwise
+	curves []involute.Curve // of the path, in its order
+	pieces []placed         // the same, by polar angle
+	flanks []flank          // in the order of the path: up, down, up, down, …
+	spaces []float64        // polar angles of the middles of the tooth spaces, ascending
+	least  float64          // smallest and largest radius, mm
 	most   float64
 	twist  float64 // turn per mm of face of a helical gear, radians
 }
@@ -30,58 +41,20 @@ type placed struct {
 // crosses the circle halfway between root and tip. lead is a helical gear's
 // lead in mm, 0 for a spur gear.
 func NewSection(p Path, lead float64) (Section, error) {
-	s := Section{least: math.Inf(1)}
+	s := Section{path: p.counterClockwise(), least: math.Inf(1)}
 	if lead != 0 {
 		s.twist = 2 * math.Pi / math.Abs(lead)
 	}
-	for i := range p.Vertices {
-		c := p.Curve(i)
+	for i := range s.path.Vertices {
+		c := s.path.Curve(i)
 		mid, _ := c.At(0.5)
+		s.curves = append(s.curves, c)
 		s.pieces = append(s.pieces, placed{c, mid.Angle()})
-		for _, t := range []float64{0, 0.5} {
-			q, _ := c.At(t)
-			s.least, s.most = min(s.least, q.Norm()), max(s.most, q.Norm())
-		}
+		near, far := reachFrom(involute.Vec{}, c)
+		s.least, s.most = min(s.least, near), max(s.most, far)
 	}
 	slices.SortStableFunc(s.pieces, func(a, b placed) int { return cmp.Compare(a.angle, b.angle) })
-	return s, s.findSpaces()
-}
-
-// findSpaces finds the middles of the tooth spaces between falling and rising flanks.
-func (s *Section) findSpaces() error {
-	half := (s.least + s.most) / 2
-	var falls, rises []float64
-	for _, c := range s.pieces {
-		a, _ := c.At(0)
-		b, _ := c.At(1)
-		if (a.Norm() < half) == (b.Norm() < half) {
-			continue
-		}
-		t, err := involute.FindRoot(func(t float64) float64 { q, _ := c.At(t); return q.Norm() - half }, 0, 1)
-		if err != nil {
-			return fmt.Errorf("contour: a flank does not cross the middle circle: %w", err)
-		}
-		q, _ := c.At(t)
-		if a.Norm() < half {
-			rises = append(rises, q.Angle())
-		} else {
-			falls = append(falls, q.Angle())
-		}
-	}
-	if len(falls) == 0 || len(falls) != len(rises) {
-		return fmt.Errorf("contour: %d flanks up and %d down, which makes no gear", len(rises), len(falls))
-	}
-	slices.Sort(rises)
-	for _, f := range falls {
-		i, _ := slices.BinarySearch(rises, f)
-		next := rises[i%len(rises)]
-		if i == len(rises) {
-			next += 2 * math.Pi
-		}
-		s.spaces = append(s.spaces, math.Remainder((f+next)/2, 2*math.Pi))
-	}
-	slices.Sort(s.spaces)
-	return nil
+	return s, s.findFlanks()
 }
 
 // Teeth returns the number of teeth counted on the contour.
