@@ -14,13 +14,15 @@ type ContourSpec struct {
 	Bore      float64 // diameter, mm, 0 for none
 	KeyWidth  float64 // mm, 0 for no keyway
 	KeyDepth  float64 // beyond the bore's wall, mm
+	Pin       float64 // diameter of the measuring pins drawn where they rest, mm, 0 for none
 	Unit      inspect.Unit
 	Title     string
 }
 
 // NewContour draws a gear: its closed contour as arcs, the bore (with its
 // keyway in line with a tooth, where the rim is thickest), and tip, reference,
-// base, form and root circles for reference. The first tooth points along +x.
+// base, form and root circles for reference, with measuring pins where asked for
+// (see PinCircles). The first tooth points along +x.
 func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	o := Outline{Unit: s.Unit, Title: s.Title}
 	var pitch []involute.Curve
@@ -39,6 +41,13 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	}
 	for _, d := range referenceDiameters(s.Tooth) {
 		o.Circles = append(o.Circles, Circle{Layer: LayerReference, Radius: d / 2})
+	}
+	if s.Pin > 0 {
+		pins, err := PinCircles(s.Tooth, s.Pin, false)
+		if err != nil {
+			return o, report, err
+		}
+		o.Circles = append(o.Circles, pins...)
 	}
 	return o, report, nil
 }
