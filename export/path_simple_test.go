@@ -12,8 +12,8 @@ func TestSimple(t *testing.T) {
 		return Path{[]Vertex{{P: involute.Vec{}}, {P: involute.Vec{X: 4}}, {P: involute.Vec{X: 4, Y: 4}}, {P: last}}}
 	}
 	slot := Path{[]Vertex{{P: involute.Vec{}}, {P: involute.Vec{X: 4}, Bulge: 1}, {P: involute.Vec{X: 4, Y: 2}}, {P: involute.Vec{Y: 2}, Bulge: 1}}}
-	// The arc over the top of a square of side 4 that hangs down by 5 crosses its bottom.
-	deep := Path{[]Vertex{{P: involute.Vec{}}, {P: involute.Vec{X: 4}}, {P: involute.Vec{X: 4, Y: 4}, Bulge: -2.5}, {P: involute.Vec{Y: 4}}}}
+	// The arc over the top of a square of side 4 that hangs down by 3 bulges past its sides.
+	deep := Path{[]Vertex{{P: involute.Vec{}}, {P: involute.Vec{X: 4}}, {P: involute.Vec{X: 4, Y: 4}, Bulge: -1.5}, {P: involute.Vec{Y: 4}}}}
 	for name, tt := range map[string]struct {
 		p      Path
 		simple bool
