@@ -196,12 +196,41 @@ func TestDrawnPairContactRatio(t *testing.T) {
 	off.within(t, "contact ratio", 5e-7)
 }
 
+// corners returns points of the corner between tip land and second flank, with its
+// rounding or chamfer where it has one.
+func (o Outline) corners() []Vec {
+	for i, p := range o.Pieces {
+		if p.Role != TipLand {
+			continue
+		}
+		next := o.Pieces[i+1]
+		t0, t1 := next.Domain()
+		var vs []Vec
+		for j := range 19 { // not the places that FilletClearance looks at
+			v, _ := next.At(t0 + (t1-t0)*float64(j)/18)
+			vs = append(vs, v)
+			if next.Role != Chamfer && next.Role != TipRounding {
+				break
+			}
+		}
+		return vs
+	}
+	return nil
+}
+
 // tipToFillet returns the least gap across, along the circle round the first
 // gear, between the second's tip corner and the first's fillet while the pair rolls with flanks touching;
 // +Inf where the corner never comes down to the fillet.
 func (d drawnPair) tipToFillet() float64 {
-	touching := d.play(0, 0, ToothFlank)
-	corner, _ := d.o2.pieces(ToothFlank)[1].At(func() float64 { t0, _ := d.o2.pieces(ToothFlank)[1].Domain(); return t0 }())
+	touching, least := d.play(0, 0, ToothFlank), math.Inf(1)
+	for _, corner := range d.o2.corners() {
+		least = min(least, d.pointToFillet(corner, touching))
+	}
+	return least
+}
+
+// pointToFillet is tipToFillet of one point, the second gear turned so that flanks touch.
+func (d drawnPair) pointToFillet(corner Vec, touching float64) float64 {
 	ratio := d.o2.Pitch() / d.o1.Pitch()
 	gap := func(turn1 float64) float64 {
 		tooth := touching - turn1*ratio - 0.5*d.o2.Pitch()
@@ -212,7 +241,20 @@ func (d drawnPair) tipToFillet() float64 {
 		}
 		return q.Norm() * (q.Angle() - side)
 	}
-	_, least := lowest(gap, -1.5*d.o1.Pitch(), 1.5*d.o1.Pitch(), 3000)
+	const n = 900
+	_, least := lowest(gap, -1.5*d.o1.Pitch(), 1.5*d.o1.Pitch(), n)
+	// The least may be where the corner passes the fillet's end.
+	at := func(i int) float64 { return 1.5 * d.o1.Pitch() * (2*float64(i)/n - 1) }
+	there := func(turn1 float64) bool { return !math.IsInf(gap(turn1), 1) }
+	for i := range n {
+		if a, b := at(i), at(i+1); there(a) != there(b) {
+			if there(b) {
+				a, b = b, a
+			}
+			edge := bisect(there, a, b)
+			least = min(least, gap(edge-1e-12*(b-a)))
+		}
+	}
 	return least
 }
 

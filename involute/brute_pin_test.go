@@ -116,6 +116,15 @@ func pushedPins() []pushed {
 		{"full radius fillet first", of(Spec{Teeth: 24, Module: 2, Rack: fullRadius(20, 1.25)}, 0), 2.34, RootFillet},
 		{"helical, root first", of(Spec{Teeth: 40, Module: 2, Helix: 20 * Degree, Shift: -0.4, Rack: isoA()}, 0), 2.3, RootFillet},
 		{"inside the undercut", of(Spec{Teeth: 8, Module: 2, Rack: isoA()}, 0), 2.8, RootFillet},
+		{"milled, two arcs", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 1.2}}, 0.1), 3.5, ToothFlank},
+		{"milled, radial line", of(Spec{Teeth: 12, Module: 2, Shift: 0.4, Rack: isoA(), Mill: MillSpec{Diameter: 1}}, 0), 3.8, ToothFlank},
+		{"milled, one arc", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 3}}, 0), 3.5, ToothFlank},
+		{"milled, arc just misses", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 3.45}}, 0), 3.5, ToothFlank},
+		{"milled shallow, root land first", of(Spec{Teeth: 40, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 0.3, RootDiameter: 77.6}}, 0), 3, RootLand},
+		{"milled, one arc too wide for the pin", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Mill: MillSpec{Diameter: 4}}, 0), 3.5, RootFillet},
+		{"rounded", of(Spec{Teeth: 30, Module: 4, Rack: isoA(), TipRound: 0.4}, 0), 7, ToothFlank},
+		{"relieved", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Relief: ReliefSpec{Amount: 0.02, Start: 50}}, 0.05), 3.5, ToothFlank},
+		{"on the relief", of(Spec{Teeth: 24, Module: 2, Rack: isoA(), Relief: ReliefSpec{Amount: 0.02, Start: 49}}, 0), 4.2, ToothRelief},
 		{"tip corner", of(Spec{Teeth: 40, Module: 2, Shift: -0.4, Rack: isoA()}, 0), 5.5, TipLand},
 	}
 }
@@ -133,7 +142,7 @@ func TestPushedBallRestsInSeat(t *testing.T) {
 				t.Fatal(err)
 			}
 			clearance := tooth.PinRootClearance(seat)
-			usable := seat.ContactDiameter > tooth.FormDiameter() && seat.ContactDiameter < tooth.TipFormDiameter() && clearance > 0
+			usable := seat.ContactDiameter > tooth.FormDiameter() && seat.ContactDiameter < tooth.InvoluteEndDiameter() && clearance > 0
 			t.Logf("center %.9f touches role %d at %.6f; seat %.9f at %.6f; off by %.2g; root clearance %.6f",
 				2*radius, role, contact, seat.CenterDiameter, seat.ContactDiameter, 2*radius-seat.CenterDiameter, clearance)
 			corner := min(math.Abs(contact-tooth.FormDiameter()), math.Abs(contact-tooth.TipFormDiameter())) < 1e-6 // either neighbor may be the nearer

@@ -29,6 +29,9 @@ func spannedGears() []spanned {
 		{Spec{Teeth: 20, Module: 1, Rack: isoA()}, 0, 3},
 		{Spec{Teeth: 24, Module: 3, Shift: 0.4, Rack: isoA()}, 0, 4},
 		{Spec{Teeth: 17, Module: 2, Rack: isoA()}, 0.1, 2},
+		{Spec{Teeth: 24, Module: 3, Rack: isoA(), Relief: ReliefSpec{Amount: 0.02, Start: 75.5}}, 0.1, 3},
+		{Spec{Teeth: 24, Module: 3, Rack: isoA(), Mill: MillSpec{Diameter: 2}, TipRound: 0.4}, 0.1, 3},
+		{Spec{Teeth: 24, Module: 3, Rack: isoA(), Thinning: FlanksOnly, TipChamfer: 0.3}, 0.1, 3},
 		{Spec{Teeth: 100, Module: 0.5, Shift: 0.8, Rack: isoA()}, 0, 13},
 		{Spec{Teeth: 40, Module: 25.4 / 16, Rack: Rack{14.5 * Degree, 1, 1.157, 0.209}}, 0.03, 4},
 		{Spec{Teeth: 30, Module: 4, Helix: 25 * Degree, Rack: isoA()}, 0, 5},
@@ -54,7 +57,7 @@ func TestSpanByParallelLines(t *testing.T) {
 			high, rHigh := farthest(flanks[1], direction, last)
 			low, rLow := farthest(flanks[0], direction+math.Pi, 0)
 			inside := func(r float64) bool {
-				return 2*r > tooth.FormDiameter()+1e-4 && 2*r < tooth.TipFormDiameter()-1e-4
+				return 2*r > tooth.FormDiameter()+1e-4 && 2*r < tooth.InvoluteEndDiameter()-1e-4
 			}
 			if !inside(rHigh) || !inside(rLow) {
 				continue

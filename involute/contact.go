@@ -53,8 +53,10 @@ func (g *Gear) diameterAt(rho float64) float64 {
 }
 
 // Contact returns how teeth t1 and t2 touch at center distance a. The active
-// profiles end where the tips (less their chamfers) or the form diameters end
-// them (ISO 21771:2007, clause 5; specific sliding by the ratio of the rolling speeds).
+// profiles end where the tips (less their chamfers and roundings) or the form
+// diameters end them; flanks with tip relief count as if without, as under the load
+// that brings them to touch (ISO 21771:2007, clause 5; specific sliding by the ratio
+// of the rolling speeds).
 func (m Mesh) Contact(a float64, t1, t2 Tooth) (Contact, error) {
 	alpha, err := m.WorkingPressureAngle(a)
 	if err != nil {
@@ -99,10 +101,11 @@ func (t Tooth) innerEnd() float64 {
 const filletSteps = 400
 
 // FilletClearance returns the least gap between the corner of the mate's tip
-// and this tooth's fillet while the mate passes at center distance a with its
-// flank in contact, mm, measured across (along the circle); negative where the
-// tip cuts into the fillet, +Inf where it does not come down to the fillet at
-// all. t is of the first gear where first is true. External pairs only.
+// (with its chamfer or rounding) and this tooth's fillet, generated or milled,
+// while the mate passes at center distance a with its flank in contact, mm,
+// measured across (along the circle); negative where the tip cuts into the fillet,
+// +Inf where it does not come down to the fillet at all. This tooth is t1 where
+// first is true, else t2. External pairs only.
 func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, error) {
 	own, mate := t1, t2
 	if !first {
@@ -115,24 +118,55 @@ func (m Mesh) FilletClearance(a float64, t1, t2 Tooth, first bool) (float64, err
 	if err != nil {
 		return 0, err
 	}
-	// The corner is below the fillet's upper end while it stands within reach of the line of centers.
-	tip, top := mate.daFa/2, own.form/2
-	c := (a*a + tip*tip - top*top) / (2 * a * tip)
-	if c >= 1 {
-		return math.Inf(1), nil
-	}
-	reach := math.Acos(c)
-	// Half the play as an angle of the mate brings its flank into contact.
-	corner := mate.RealHalfAngleAt(mate.daFa) + play.Base/math.Abs(mate.db)
 	least := math.Inf(1)
-	for i := range filletSteps + 1 {
-		// The own gear's space and the mate's tooth share the line of centers at turn 0.
-		stands := reach * (2*float64(i)/filletSteps - 1)
-		turn := (corner - stands) * mate.z / own.z
-		p := Vec{a, 0}.Add(Polar(tip, math.Pi+stands)).Rotate(-turn)
-		least = min(least, own.filletGap(p))
+	for _, corner := range mate.corner() {
+		// Half the play as an angle of the mate brings its flank into contact.
+		beside := -corner.Angle() + play.Base/mate.db
+		least = min(least, own.passing(a, corner.Norm(), beside, mate.z/own.z))
 	}
 	return least, nil
+}
+
+// cornerSteps divides a chamfer or rounding of the mate's tip into points: the
+// least gap is known to a thousandth of the rounding's radius.
+const cornerSteps = 16
+
+// corner returns the points of the corner between the first flank and the tip:
+// one, or those of its chamfer or rounding.
+func (t Tooth) corner() []Vec {
+	half := t.firstHalf()
+	last := half[len(half)-1]
+	if last.Role != Chamfer && last.Role != TipRounding {
+		return []Vec{t.flankEnd()}
+	}
+	var ps []Vec
+	for i := range cornerSteps + 1 { // both have the domain 0 to 1
+		p, _ := last.At(float64(i) / cornerSteps)
+		ps = append(ps, p)
+	}
+	return ps
+}
+
+// passing returns the least gap to the fillet of a point of the mate that passes
+// at center distance a, at the radius tip from the mate's axis and the angle
+// beside from the line of centers when the space lies on that; +Inf where it
+// stays above the fillet.
+func (t Tooth) passing(a, tip, beside, ratio float64) float64 {
+	// The point is below the fillet's upper end while it stands within reach of the line of centers.
+	top := t.form / 2
+	c := (a*a + tip*tip - top*top) / (2 * a * tip)
+	if c >= 1 {
+		return math.Inf(1)
+	}
+	reach := math.Acos(c)
+	least := math.Inf(1)
+	for i := range filletSteps + 1 {
+		stands := reach * (2*float64(i)/filletSteps - 1)
+		turn := (beside - stands) * ratio
+		p := Vec{a, 0}.Add(Polar(tip, math.Pi+stands)).Rotate(-turn)
+		least = min(least, t.filletGap(p))
+	}
+	return least
 }
 
 // filletGap returns how far the point p (the space's center line is +x; p is

@@ -10,7 +10,7 @@ type Spec struct {
 	Shift       float64 // x, profile shift coefficient (× m_n); positive thickens the tooth
 	Rack        Rack
 	TipDiameter float64 // d_a, mm, with the sign of z; 0 for d + 2 m_n (h_aP* + x)
-	Topped      bool    // the cutter cuts the tip too: d_a follows the cutter's depth
+	Topped      bool    // the cutter cuts the tip too: d_a holds at nominal thickness and follows the cutter's depth
 	TipChamfer  float64 // radial height of a 45° chamfer of the tip corner, mm; external gears only
 	TipRound    float64 // radius of a rounding of the tip corner, mm; external gears only
 	Relief      ReliefSpec
@@ -37,7 +37,7 @@ type Gear struct {
 	invT     float64
 	d, db    float64
 	da, daFa float64
-	relief   Relief // of the tooth whose center line is 90° and a half tooth off: BaseAngle 0
+	relief   Relief // on a first flank that leaves the base circle at polar angle 0
 }
 
 // NewGear works a Spec out, or says by an *Impossible why it cannot be.
@@ -65,11 +65,11 @@ func NewGear(s Spec) (*Gear, error) {
 	g.invT = Inv(g.alphaT)
 	g.d = g.z * s.Module / math.Cos(beta)
 	g.db = g.d * math.Cos(g.alphaT)
-	g.da = s.TipDiameter
-	if g.da == 0 {
-		g.da = g.d + 2*s.Module*(s.Rack.Addendum+s.Shift)
-	}
+	g.da = g.drawnTip()
 	g.daFa = g.da
+	if err := g.checkMill(); err != nil {
+		return g, err
+	}
 	if err := g.check(); err != nil {
 		return g, err
 	}
@@ -94,6 +94,14 @@ func (g *Gear) check() error {
 		return impossible(TipBelowBase, math.Abs(g.da), math.Abs(g.db))
 	}
 	return nil
+}
+
+// drawnTip returns the tip diameter that the drawing says, or the rack's.
+func (g *Gear) drawnTip() float64 {
+	if d := g.spec.TipDiameter; d != 0 {
+		return d
+	}
+	return g.d + 2*g.spec.Module*(g.spec.Rack.Addendum+g.spec.Shift)
 }
 
 // Spec returns what the gear was made from.

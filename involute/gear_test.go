@@ -73,6 +73,7 @@ func outlineSpecs() []Spec {
 		{Teeth: 30, Module: 4, Helix: -25 * Degree, Rack: isoA(), TipChamfer: 0.3},
 		{Teeth: 20, Module: 2, Rack: Rack{20 * Degree, 1, 1.25, 0}},
 		{Teeth: 9, Module: 2, Rack: Rack{20 * Degree, 1, 1.25, 0}},
+		{Teeth: 30, Module: 2, Shift: 1, Rack: Rack{20 * Degree, 0.5, 1, 0}}, // no fillet at all
 		{Teeth: 100, Module: 0.5, Shift: 0.8, Rack: isoA()},
 		{Teeth: 24, Module: 2, Rack: isoA(), TipRound: 0.3},
 		{Teeth: 12, Module: 2, Shift: 0.3, Rack: isoA(), TipRound: 0.2, Thinning: FlanksOnly},

@@ -50,6 +50,10 @@ func (f Fillet) spaceAngle(psi float64) float64 {
 	return math.Atan2(a[0], y[0]) - phi[0]
 }
 
+// noWidth is the share of the module by which a tool's tip land may be short of
+// nothing: a thickness found from a reading differs from the nominal one by roundings.
+const noWidth = 1e-12
+
 // generate finds where the fillet ends and the involute begins.
 //
 // The tool's straight flank ends at a depth h below the pitch line, and cuts
@@ -60,7 +64,7 @@ func (f Fillet) spaceAngle(psi float64) float64 {
 // (ISO 21771:2007, undercut and form diameter).
 func (t *Tooth) generate() error {
 	f := t.rackTip(0, 1)
-	if f.E < 0 {
+	if f.E < -noWidth*t.spec.Module {
 		return impossible(TooThick, t.sn, t.sn+2*f.E)
 	}
 	rb, end := t.db/2, f.T1
@@ -131,8 +135,11 @@ type FilletEnd struct {
 	Residual   float64 // what is left of the equation of an undercut tooth: the two curves' difference in angle, radians
 }
 
-// FilletEnd returns where the fillet ends.
+// FilletEnd returns where the generated fillet ends; all zero for a milled root.
 func (t Tooth) FilletEnd() FilletEnd {
+	if t.spec.Mill.Diameter > 0 {
+		return FilletEnd{}
+	}
 	f := t.rackTip(0, 1)
 	a, y, _ := f.motion(t.tau)
 	angle := f.spaceAngle(t.tau)

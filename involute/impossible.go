@@ -32,8 +32,8 @@ const (
 	ReliefTooLarge                     // Value: the amount, mm; Limit: the largest
 	TooThick                           // Value: s_n; Limit: the thickest that a tool at this depth leaves
 	MillTooLarge                       // Value: the end mill's diameter; Limit: the largest that passes, 0 where none does
-	MillHelical                        // Value: β; an end mill along the axis cuts no helix
-	MillTooDeep                        // Value: the root diameter asked for; Limit: what it must be below or above
+	MillHelical                        // Value: β, radians; an end mill along the axis cuts no helix
+	MillTooDeep                        // Value: the root diameter asked for; Limit: 0 or the tip diameter, between which it must lie
 	CenterTooSmall                     // Value: a; Limit: (d_b1 + d_b2)/2
 	CenterNeverTight                   // Value: inv α_wt wanted, negative; Limit 0
 	MatesDiffer                        // the two gears' base pitches or helices do not fit

@@ -2,8 +2,8 @@ package involute
 
 import "math"
 
-// A MillSpec is a root cut by an end mill whose axis is the gear's. The zero
-// value is none: the root is generated.
+// A MillSpec is a root cut by an end mill whose axis is parallel to the gear's,
+// on external spur gears. The zero value is none: the root is generated.
 type MillSpec struct {
 	Diameter     float64 // mm
 	RootDiameter float64 // how deep the root goes, mm; 0 for the rack's d − 2 m_n (h_fP* − x)
@@ -19,7 +19,26 @@ type milledRoot struct {
 	center float64 // distance of the arc's center from the gear's axis, mm
 	gamma  float64 // polar angle of that center from the space's center line; 0 for one arc
 	foot   float64 // distance from the axis at which the arc touches the flank, mm
-	single bool
+}
+
+// checkMill refuses an end mill that cannot cut this gear at all.
+func (g *Gear) checkMill() error {
+	m := g.spec.Mill
+	switch {
+	case m == (MillSpec{}):
+		return nil
+	case m.Diameter <= 0:
+		return impossible(NotFinite, m.Diameter, 0)
+	case g.z < 0:
+		return impossible(NotExternal, g.z, 0)
+	case g.Helical():
+		return impossible(MillHelical, math.Abs(g.spec.Helix), 0)
+	case m.RootDiameter < 0:
+		return impossible(MillTooDeep, m.RootDiameter, 0)
+	case m.RootDiameter >= g.da:
+		return impossible(MillTooDeep, m.RootDiameter, g.da)
+	}
+	return nil
 }
 
 // millRoot lays the end mill into the space of the tooth.
@@ -29,14 +48,15 @@ type milledRoot struct {
 //
 //	γ = π/z − ψ_b + inv α_c − ρ/r_b,  cos α_c = r_b/r_c
 //
-// (the pin that rests on both flanks, ISO/TR 10064-2, has γ = 0) and touches at
-// the roll length √(r_c² − r_b²) − ρ. Where that is negative the mill touches the
-// radial line at √(r_c² − ρ²), and γ = π/z − ψ_b − asin(ρ/r_c). It goes down until it touches the root
-// circle, r_c = r_f + ρ, or both flanks.
+// (the pin that rests on both flanks, ISO/TR 10064-2:1996, has γ = 0) and touches
+// at the roll length √(r_c² − r_b²) − ρ. Where that is not real or negative the mill
+// touches the radial line at √(r_c² − ρ²), and γ = π/z − ψ_b − asin(ρ/r_c). It goes
+// down until it touches the root circle, r_c = r_f + ρ, or both flanks. Plane
+// geometry; no standard gives it.
 func (t *Tooth) millRoot() error {
-	m := milledRoot{rho: t.spec.Mill.Diameter / 2}
-	if err := t.seatMill(&m); err != nil {
-		return err
+	m, ok := t.seatMill(t.spec.Mill.Diameter / 2)
+	if !ok {
+		return impossible(MillTooLarge, t.spec.Mill.Diameter, t.LargestMill())
 	}
 	t.mill = m
 	t.root = 2 * (m.center - m.rho)
@@ -44,24 +64,21 @@ func (t *Tooth) millRoot() error {
 	return nil
 }
 
-// seatMill fills in where the mill stops.
-func (t Tooth) seatMill(m *milledRoot) error {
-	low := t.root/2 + m.rho
-	m.center, m.gamma = low, t.millAngle(low, m.rho)
+// seatMill returns where a mill of radius rho stops; false where that is at the
+// ends of the flanks or not at all.
+func (t Tooth) seatMill(rho float64) (m milledRoot, ok bool) {
+	low := t.RootDiameterAt(t.sn)/2 + rho
+	m = milledRoot{rho: rho, center: low, gamma: t.millAngle(low, rho)}
 	if m.gamma < 0 {
-		m.single = true
-		high := t.da/2 + m.rho
-		c, err := FindRoot(func(c float64) float64 { return t.millAngle(c, m.rho) }, low, high)
+		high := t.da/2 + rho
+		c, err := FindRoot(func(c float64) float64 { return t.millAngle(c, rho) }, low, high)
 		if err != nil {
-			return impossible(MillTooLarge, 2*m.rho, t.largestMill())
+			return m, false
 		}
 		m.center, m.gamma = c, 0
 	}
-	m.foot = t.millFoot(m.center, m.rho)
-	if 2*m.foot >= t.InvoluteEndDiameter() {
-		return impossible(MillTooLarge, 2*m.rho, t.largestMill())
-	}
-	return nil
+	m.foot = t.millFoot(m.center, rho)
+	return m, 2*m.foot < t.InvoluteEndDiameter()
 }
 
 // millAngle returns γ for a mill of radius rho centered c from the axis.
@@ -83,24 +100,24 @@ func (t Tooth) millFoot(c, rho float64) float64 {
 	return math.Sqrt(c*c - rho*rho)
 }
 
-// millFits reports whether an end mill of that diameter finds a seat on the flanks.
-func (t Tooth) millFits(diameter float64) bool {
-	rho := diameter / 2
-	c := math.Hypot(t.db/2, t.rollLength(t.InvoluteEndDiameter())+rho) // touching just at the end of the flank
-	// It must have come to rest below: on both flanks (γ ≥ 0 there), or on the root circle.
-	return t.millAngle(c, rho) > 0 && c > t.root/2+rho
-}
-
-// largestMill returns the largest end mill that touches the flanks below their
-// end, mm, 0 where none does.
-func (t Tooth) largestMill() float64 {
-	high := t.da
-	if !t.millFits(0) {
+// LargestMill returns the largest end mill that gets into the tooth space and
+// touches the flanks below their end, mm; 0 where none does, as on helical gears
+// and rings. On a handful of teeth whose flanks turn away from the space toward the
+// tip none is too large, and the answer is a thousand times d_a. Whether the mate's
+// tips then pass is for the mesh to say.
+func (t Tooth) LargestMill() float64 {
+	if t.z < 0 || t.Helical() {
 		return 0
 	}
-	low := 0.0
+	fits := func(diameter float64) bool { _, ok := t.seatMill(diameter / 2); return ok }
+	low, high := 0.0, t.da
+	for range 10 {
+		if fits(high) {
+			high *= 2
+		}
+	}
 	for range 60 {
-		if mid := (low + high) / 2; t.millFits(mid) {
+		if mid := (low + high) / 2; fits(mid) {
 			low = mid
 		} else {
 			high = mid
@@ -109,17 +126,12 @@ func (t Tooth) largestMill() float64 {
 	return low
 }
 
-// LargestMill returns the largest end mill that gets into the tooth space and
-// touches the flanks below their end, mm; 0 where none does. Whether the mate's
-// tips then pass is for the mesh to say.
-func (t Tooth) LargestMill() float64 { return t.largestMill() }
-
 // curves returns the root from the space's center line to the flank, in a frame
 // whose space is centered on the polar angle space.
 func (m milledRoot) curves(t Tooth, space float64) []Piece {
 	var ps []Piece
 	rf := m.center - m.rho
-	if m.gamma*rf > noLand*rf {
+	if m.gamma > noLand {
 		ps = append(ps, Piece{Arc{Radius: rf, Start: space - m.gamma, Sweep: 2 * m.gamma}, RootLand})
 	}
 	c := Polar(m.center, space+m.gamma)

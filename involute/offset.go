@@ -25,9 +25,8 @@ func (t Tooth) Profile() Profile {
 	return p
 }
 
-// Offset returns how far a point lies from the profile along the normal, mm:
-// positive outside the metal. Exact for points nearer than the profile's radii of
-// curvature. +Inf for an empty profile.
+// Offset returns how far a point lies from the profile, mm: positive outside the
+// metal. +Inf for an empty profile.
 func (p Profile) Offset(v Vec) float64 {
 	best := math.Inf(1)
 	if len(p.half) == 0 {
@@ -78,16 +77,35 @@ func nearest(c Curve, q Vec) float64 {
 		roll := math.Copysign(tanOfCos(2*c.BaseRadius, 2*r), c.T0+c.T1)
 		return clamp(math.Remainder(q.Angle()+math.Atan(roll)-c.BaseAngle, 2*math.Pi))
 	}
+	return nearestBySteps(c, q)
+}
+
+// nearSteps divides a fillet or relief: from a point deep in the metal under a
+// fillet several places are square to it, never two of them within a step.
+const nearSteps = 8
+
+// nearestBySteps is nearest for a curve without a closed solution: between the
+// neighbors of the nearest of some points, where the way to q is square to the curve.
+func nearestBySteps(c Curve, q Vec) float64 {
+	t0, t1 := c.Domain()
+	at := func(i int) float64 { return t0 + (t1-t0)*float64(i)/nearSteps }
+	best, least := 0, math.Inf(1)
+	for i := range nearSteps + 1 {
+		if p, _ := c.At(at(i)); p.Sub(q).Norm() < least {
+			best, least = i, p.Sub(q).Norm()
+		}
+	}
+	low, high := at(max(best-1, 0)), at(min(best+1, nearSteps))
 	along := func(t float64) float64 { p, dp := c.At(t); return p.Sub(q).Dot(dp) }
-	if along(t0) >= 0 {
-		return t0
+	if along(low) >= 0 {
+		return low
 	}
-	if along(t1) <= 0 {
-		return t1
+	if along(high) <= 0 {
+		return high
 	}
-	t, err := FindRoot(along, t0, t1)
+	t, err := FindRoot(along, low, high)
 	if err != nil {
-		return t0
+		return at(best)
 	}
 	return t
 }

@@ -26,7 +26,8 @@ type Piece struct {
 // center line is the +x axis: root, fillet, flank, tip, flank, fillet (with
 // relieved pieces, chamfers or roundings beside the tip where there are any;
 // without root land where the fillets of a full-radius tool meet, or where one
-// arc of an end mill joins the flanks). Its invariants:
+// arc of an end mill joins the flanks; without fillets where a sharp tool's tip ends
+// on the pitch circle). Its invariants:
 //
 //	end of piece i              = start of piece i + 1
 //	end of the last piece       = start of the first, turned by 2π/z
@@ -45,6 +46,10 @@ func (g *Gear) RollAngle(dy float64) float64 { return tanOfCos(g.db, dy) }
 // noLand is the angle up to which a root land is rounding: a full-radius tool
 // leaves none, but its tip's half width comes out as a few 1e-17 of the radius.
 const noLand = 1e-12
+
+// leastRoll is where a flank that begins on the base circle is begun: at 0 an
+// involute has no direction, and up to here it has left its start by 5e-25 of r_b.
+const leastRoll = 1e-12
 
 // Outline returns one pitch of the tooth's transverse section. Only external
 // gears have one yet; a ring's is empty.
@@ -82,11 +87,14 @@ func (t Tooth) firstHalf() []Piece {
 		if land := up.E / up.CosBeta / up.R; land > noLand {
 			add(Arc{Radius: t.root / 2, Start: -half - land, Sweep: 2 * land}, RootLand)
 		}
-		add(up, RootFillet)
+		// A sharp tool whose tip ends on the pitch circle leaves a corner and no fillet.
+		if math.Abs(up.H)+up.Rho > noWidth*t.spec.Module {
+			add(up, RootFillet)
+		}
 	}
 	psi := t.halfBaseAngle()
 	end, _ := t.reliefAt(t.daFa)
-	flank := Flank{t.db / 2, -psi, t.RollAngle(t.form), end}
+	flank := Flank{t.db / 2, -psi, max(t.RollAngle(t.form), leastRoll), end}
 	if t.relieved() && end > t.relief.Start {
 		flank.T1 = t.relief.Start
 		add(flank, ToothFlank)

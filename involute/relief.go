@@ -41,8 +41,9 @@ func (r Relief) taken(s float64) (c, c1, c2 float64) {
 	return q * w * w, 2 * q * w, 2 * q
 }
 
-// inFrame returns the derivative in the directions e and e' of the tangent point
-// (a along e, b along e') and the derivatives of a and b.
+// inFrame returns the curve's derivative by its parts a along e and b along e',
+// the directions from the axis to the tangent point and square to it, and the
+// derivatives of a and b.
 func (r Relief) inFrame(t float64) (a, b, a1, b1 float64) {
 	sign := math.Copysign(1, t)
 	c, c1, c2 := r.taken(math.Abs(t))
@@ -107,8 +108,8 @@ func (g *Gear) startRelief() error {
 }
 
 // mostRelief bounds the amount as a share of the length of roll over which it is
-// taken off. Reliefs are hundredths of a millimeter over millimeters; at a tenth
-// the flank would break by 6°.
+// taken off. Reliefs are hundredths of a millimeter over millimeters; at a tenth a
+// linear one would break the flank by atan(0.1/t_s), some 15°.
 const mostRelief = 0.1
 
 // reliefAt returns the roll angle at which the real flank passes the diameter d,

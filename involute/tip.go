@@ -17,35 +17,40 @@ func (g *Gear) endFlank() error {
 	case s.TipChamfer > 0:
 		g.daFa = g.da - 2*s.TipChamfer
 		if g.daFa <= g.db {
-			return impossible(ChamferTooLarge, s.TipChamfer, (g.da-g.db)/2)
+			return g.nominal().chamferTooLarge()
 		}
 	case s.TipRound > 0:
 		if g.da-2*s.TipRound <= g.db {
-			return impossible(RoundTooLarge, s.TipRound, (g.da-g.db)/2)
+			return g.nominal().roundTooLarge()
 		}
 		g.daFa = g.roundStart(s.TipRound)
 	}
 	return nil
 }
 
+// nominal returns the tooth of nominal thickness, unchecked and without its root.
+func (g *Gear) nominal() Tooth { return Tooth{Gear: g, sn: g.NominalThickness()} }
+
 // roundStart returns the diameter at which a rounding of radius rho touches the
 // flank. Its center lies on the circle r_a − ρ and ρ inside the flank: on the
-// involute at the roll length √((r_a − ρ)² − r_b²) + ρ; on a relieved flank,
-// whose normal leans, that is where to look from.
+// involute at the roll length √((r_a − ρ)² − r_b²) + ρ. On a tooth with tip relief
+// the circle may meet the relieved flank instead; the one that holds it farther
+// inside the tooth is met first.
 func (g *Gear) roundStart(rho float64) float64 {
 	rb, rc := g.db/2, g.da/2-rho
-	plain := 2 * math.Hypot(rb, math.Sqrt(rc*rc-rb*rb)+rho)
-	if !g.relieved() || plain <= g.spec.Relief.Start {
+	side := math.Sqrt(rc*rc - rb*rb)
+	plain := 2 * math.Hypot(rb, side+rho)
+	if !g.relieved() {
 		return plain
 	}
 	f := g.relief
-	off := func(t float64) float64 {
+	center := func(t float64) Vec {
 		p, dp := f.At(t)
-		return p.Add(dp.Left().Scale(rho/dp.Norm())).Norm() - rc
+		return p.Add(dp.Left().Scale(rho / dp.Norm()))
 	}
-	t, err := FindRoot(off, f.Start, f.End)
-	if err != nil { // it touches just at the start, where the flank breaks
-		return g.spec.Relief.Start
+	t, err := FindRoot(func(t float64) float64 { return center(t).Norm() - rc }, f.Start, f.End)
+	if inside := (side+rho)/rb - math.Atan(side/rb); err != nil || center(t).Angle() < inside {
+		return plain
 	}
 	p, _ := f.At(t)
 	return 2 * p.Norm()
@@ -55,16 +60,29 @@ func (g *Gear) roundStart(rho float64) float64 {
 func (t Tooth) endTip() error {
 	s := t.spec
 	switch {
-	case t.da*t.RealHalfAngleAt(t.da) <= 0:
+	case t.da*t.HalfAngleAt(t.da) <= 0:
 		return impossible(Pointed, math.Abs(t.da), math.Abs(t.PointedDiameter()))
+	case t.RealHalfAngleAt(t.da) <= 0 && t.relieved(): // half the land is what there is to take off
+		return impossible(ReliefTooLarge, s.Relief.Amount, t.HalfAngleAt(t.da)*t.db/2)
 	case s.TipChamfer > 0 && !t.chamferFits():
-		return impossible(ChamferTooLarge, s.TipChamfer, largestShare(s.TipChamfer, func(h float64) bool {
-			return t.withEnd(t.da - 2*h).chamferFits()
-		}))
+		return t.chamferTooLarge()
 	case s.TipRound > 0 && !t.roundFits(s.TipRound):
-		return impossible(RoundTooLarge, s.TipRound, largestShare(s.TipRound, t.roundFits))
+		return t.roundTooLarge()
 	}
 	return nil
+}
+
+// chamferTooLarge refuses the tooth's chamfer and says the largest that fits.
+func (t Tooth) chamferTooLarge() error {
+	asked := t.spec.TipChamfer
+	return impossible(ChamferTooLarge, asked, t.largestTip(asked, func(h float64) bool {
+		return t.withEnd(t.da - 2*h).chamferFits()
+	}))
+}
+
+// roundTooLarge refuses the tooth's rounding and says the largest that fits.
+func (t Tooth) roundTooLarge() error {
+	return impossible(RoundTooLarge, t.spec.TipRound, t.largestTip(t.spec.TipRound, t.roundFits))
 }
 
 // withEnd returns the tooth with its flank ending at the diameter dFa.
@@ -75,12 +93,24 @@ func (t Tooth) withEnd(dFa float64) Tooth {
 	return t
 }
 
-// largestShare returns the largest part of a size that fits, to a thousandth of
-// it, 0 where none does.
-func largestShare(size float64, fits func(float64) bool) float64 {
-	for share := 0.999; share > 0; share -= 0.001 {
-		if fits(share * size) {
-			return share * size
+// largestTip returns the largest chamfer or rounding below the one asked that
+// fits, 0 where none does. It seeks by steps of a thousandth from above, for small
+// ones may not fit either (see chamferFits), and no farther up than where the base
+// circle ends every flank.
+func (t Tooth) largestTip(asked float64, fits func(float64) bool) float64 {
+	const steps = 1000
+	size := min(asked, (t.da-t.db)/2)
+	for i := steps - 1; i > 0; i-- {
+		if low := size * float64(i) / steps; fits(low) {
+			high := size * float64(i+1) / steps
+			for range 40 {
+				if mid := (low + high) / 2; fits(mid) {
+					low = mid
+				} else {
+					high = mid
+				}
+			}
+			return low
 		}
 	}
 	return 0
@@ -155,13 +185,15 @@ func (t Tooth) TipLand() float64 {
 	return t.da * t.landAngle() * math.Cos(t.HelixAt(t.da))
 }
 
-// TipDiameterAt returns the tip diameter of the tooth of normal thickness sn:
-// d + 2 m_n (h_aP* + x_E) where the cutter tops it, mm.
+// TipDiameterAt returns the tip diameter of the tooth of normal thickness sn, mm:
+// where the cutter tops it, as much smaller than at nominal thickness as the root
+// diameter is, d_a + 2 m_n (x_E − x), which without a d_a of the drawing's own is
+// d + 2 m_n (h_aP* + x_E).
 func (g *Gear) TipDiameterAt(sn float64) float64 {
 	if !g.spec.Topped {
 		return g.da
 	}
-	return g.d + 2*g.spec.Module*(g.spec.Rack.Addendum+g.GeneratingShift(sn))
+	return g.drawnTip() + 2*g.spec.Module*(g.GeneratingShift(sn)-g.spec.Shift)
 }
 
 // toppedAt returns the gear with the tip that the cutter leaves at thickness sn.
