@@ -53,8 +53,6 @@ func NewGear(s Spec) (*Gear, error) {
 		return nil, impossible(BadModule, s.Module, 0)
 	case beta > 80*Degree:
 		return nil, impossible(BadHelix, beta, 80*Degree)
-	case s.Mill.Diameter > 0 && beta > 0:
-		return nil, impossible(MillHelical, beta, 0)
 	}
 	if err := s.Rack.validate(); err != nil {
 		return nil, err
@@ -82,10 +80,6 @@ func (g *Gear) check() error {
 	switch {
 	case !finite(g.d, g.db, g.da, root):
 		return impossible(NotFinite, g.spec.Module, 0)
-	case g.spec.Mill.Diameter < 0 || (g.spec.Mill.Diameter > 0 && !external):
-		return impossible(MillTooLarge, g.spec.Mill.Diameter, 0)
-	case g.spec.Mill.RootDiameter != 0 && !(root > 0 && root < g.da):
-		return impossible(MillTooDeep, root, g.da)
 	case external && root <= 0:
 		return impossible(RootNotPositive, root, 0)
 	case g.da <= root:

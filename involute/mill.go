@@ -193,5 +193,5 @@ type MillSeat struct {
 // MillSeat returns where the end mill stops, false for a generated root.
 func (t Tooth) MillSeat() (MillSeat, bool) {
 	m := t.mill
-	return MillSeat{m.rho, m.center, m.single, 2*m.foot < t.db}, m.rho > 0
+	return MillSeat{m.rho, m.center, m.gamma == 0, 2*m.foot < t.db}, m.rho > 0
 }
