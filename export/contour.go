@@ -15,14 +15,16 @@ type ContourSpec struct {
 	KeyWidth  float64 // mm, 0 for no keyway
 	KeyDepth  float64 // beyond the bore's wall, mm
 	Pin       float64 // diameter of the measuring pins drawn where they rest, mm, 0 for none
+	Bolts     BoltCircle
+	Hub       float64 // the hub's outside diameter, mm, 0 for none
 	Unit      inspect.Unit
 	Title     string
 }
 
 // NewContour draws a gear: its closed contour as arcs, the bore (with its
-// keyway in line with a tooth, where the rim is thickest), and tip, reference,
-// base, form and root circles for reference, with measuring pins where asked for
-// (see PinCircles). The first tooth points along +x.
+// keyway in line with a tooth, where the rim is thickest), bolt circle and hub, and
+// tip, reference, base, form and root circles for reference, with measuring pins
+// where asked for (see PinCircles). The first tooth points along +x.
 func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	o := Outline{Unit: s.Unit, Title: s.Title}
 	var pitch []involute.Curve
@@ -34,11 +36,7 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 		return o, report, err
 	}
 	o.Contours = append(o.Contours, Contour{LayerCut, path})
-	if s.Bore > 0 && s.KeyWidth > 0 {
-		o.Contours = append(o.Contours, Contour{LayerBore, BorePath(s)})
-	} else if s.Bore > 0 {
-		o.Circles = append(o.Circles, Circle{Layer: LayerBore, Radius: s.Bore / 2})
-	}
+	o.openings(s)
 	for _, d := range referenceDiameters(s.Tooth) {
 		o.Circles = append(o.Circles, Circle{Layer: LayerReference, Radius: d / 2})
 	}

@@ -62,8 +62,9 @@ type Reading struct {
 
 // A GearShape is an external gear in its transverse section: mm, the center at the origin.
 type GearShape struct {
-	Outline   Path   // the whole contour, counter-clockwise
-	Bore      []Path // bore and keyway; may be empty
+	Outline   Path    // the whole contour, counter-clockwise
+	Bore      []Path  // bore with keyway, and holes; may be empty
+	Hub       float64 // outside diameter of the hub, mm, 0 for none
 	Teeth     int
 	Reference float64 // reference diameter, mm
 	Root      float64 // root diameter, mm

@@ -137,6 +137,9 @@ func (g GearShape) draw(b *board, p placement) {
 		line := p.line(bore.line())
 		b.add(shape{Outline: line, Style: shapeStyle{Width: outlineWidth, Line: black, Fill: paper}})
 	}
+	if g.Hub > 0 {
+		b.stroke(circlePath(p.origin, g.Hub*p.scale).line(), thinLine)
+	}
 	b.axis(circlePath(p.origin, g.Reference*p.scale).line())
 	const mark = 3.0
 	x, y := involute.Vec{X: mark}, involute.Vec{Y: mark}

@@ -223,15 +223,17 @@ func (j *job) drawOne(g *gear, o contourOptions) (drawnGear, []byte, error) {
 	return d, data, err
 }
 
-// contourSpec says what to draw of a gear. The bore is drawn at the middle of its limits.
+// contourSpec says what to draw of a gear. The bore is drawn at the middle of its limits,
+// a keyway at its nominal size.
 func (g *gear) contourSpec(j *job, tooth involute.Tooth, tolerance float64) export.ContourSpec {
 	title, _, _ := j.top.word("title")
 	s := export.ContourSpec{Tooth: tooth, Tolerance: tolerance, Unit: j.display, Title: strings.TrimPrefix(title+", "+g.name, ", ")}
+	s.Bolts, s.Hub = g.bolts.layout(), g.hub
 	if g.bore != nil {
 		s.Bore = g.bore.limits.Middle()
 	}
 	if g.keyway != nil {
-		s.KeyWidth, s.KeyDepth = g.keyway.width, g.keyway.depth
+		s.KeyWidth, s.KeyDepth = g.keyway.width, g.keyway.drawn
 	}
 	return s
 }

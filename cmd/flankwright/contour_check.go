@@ -78,6 +78,9 @@ func (j *job) readBack(g *gear, data []byte, o contourOptions) (export.Section, 
 	if err != nil {
 		return none, cannot("%s: the file written cannot be read back: %v", called(g), err)
 	}
+	if err := j.measureOpenings(g, back); err != nil {
+		return none, err
+	}
 	path, err := back.Cut()
 	if err != nil {
 		return none, cannot("%s: the file written holds no contour: %v", called(g), err)

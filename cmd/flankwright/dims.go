@@ -87,6 +87,7 @@ type gearDims struct {
 	Bore            *span     `json:"bore_mm,omitempty"`
 	Rack            rackDims  `json:"rack"`
 	formDims
+	openingDims
 
 	undercutThinnest bool
 }
@@ -162,6 +163,7 @@ func newGearDims(g *gear) gearDims {
 		b := toSpan(g.bore.limits)
 		d.Bore = &b
 	}
+	d.openingDims = newOpeningDims(g)
 	return d
 }
 

@@ -142,32 +142,7 @@ func (d *dims) boreRows(g *grid, u inspect.Unit, digits int) {
 			break
 		}
 	}
-	for _, x := range d.list {
-		if x.keyway != nil {
-			g.row("Keyway, width", u.String(), keywayCells(d.list, u, digits, func(k *keyway, _ *boreSize) float64 { return k.width })...)
-			low := keywayCells(d.list, u, digits, func(k *keyway, b *boreSize) float64 { return b.limits.Min + k.depth })
-			high := keywayCells(d.list, u, digits, func(k *keyway, b *boreSize) float64 { return b.limits.Max + k.depth })
-			if slices.Equal(low, high) {
-				g.row("  across from the bore's wall", u.String(), low...)
-			} else {
-				g.row("  across from the bore's wall, least bore", u.String(), low...)
-				g.row("  largest bore", u.String(), high...)
-			}
-			break
-		}
-	}
-}
-
-func keywayCells(list []*gear, u inspect.Unit, digits int, pick func(*keyway, *boreSize) float64) []string {
-	var cells []string
-	for _, x := range list {
-		if x.keyway == nil {
-			cells = append(cells, "-")
-			continue
-		}
-		cells = append(cells, u.Format(pick(x.keyway, x.bore), digits))
-	}
-	return cells
+	d.openingRows(g, u, digits)
 }
 
 func (d *dims) theoryGrid(u inspect.Unit, f func(float64) string, digits int) grid {

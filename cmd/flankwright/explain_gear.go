@@ -60,6 +60,7 @@ func explainGear(g *gear) []explanation {
 	e.result("least shift without undercut", "x_min = h_fP - ρ_fP * (1 - sin(α_n)) - z * sin(α_t) ^ 2 / (2 * cos(β))", num("x_min", gg.UndercutLimit()), srcGear+"; "+srcRack,
 		hfP, rho, an, z, at, b)
 	explainLimits(e, g, an, m, hfP, haP, d)
+	explainOpenings(e, g)
 	return e.list
 }
 

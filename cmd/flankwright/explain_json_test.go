@@ -77,6 +77,7 @@ func dimsGearFields() map[string][]any {
 		"m_n": {"module_mm"}, "d": {"reference_diameter_mm"}, "α_t": {"transverse_pressure_angle_deg"}, "d_b": {"base_diameter_mm"},
 		"d_a": {"tip_diameter_mm"}, "d_f": {"root_diameter_mm"}, "d_Ff": {"form_diameter_mm"}, "h": {"whole_depth_mm"},
 		"s_n": {"tooth_thickness_mm"}, "s_an": {"tip_thickness_mm"}, "p_bn": {"normal_base_pitch_mm"}, "d_fE": {"root_diameter_limits_mm", "min"},
+		"T": {"keyway_mm", "across", "min"}, "T_max": {"keyway_mm", "across", "max"}, "t": {"keyway_mm", "depth"}, "c_H": {"bolt_circle", "chord_mm"},
 	}
 }
 

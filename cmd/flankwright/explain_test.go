@@ -38,6 +38,9 @@ func explained() map[string][]string {
 		"rounded":            {"--module", "2", "--teeth", "24", "--tip-round", "0.25mm", "--thinning", "flanks", "--thin", "0.05..0.1"},
 		"relieved":           {"--module", "2", "--teeth", "24", "--relief", "0.02mm from 50mm", "--tip-round", "0.2"},
 		"topped":             {"--module", "2", "--teeth", "24", "--tip", "topped", "--thin", "0.05..0.1"},
+		"metric keyway":      {"--module", "2", "--teeth", "40", "--bore", "25 H7", "--keyway", "auto", "--bolt-circle", "5x6 on 50", "--hub", "40"},
+		"inch keyway":        {"--dp", "10", "--teeth", "40", "--bore", "1-1/8", "--keyway", "auto", "--bolt-circle", "8x1/4 on 2.5"},
+		"keyway by size":     {"--module", "2", "--teeth", "8", "--bore", "6 H8", "--keyway", "2x1"},
 		"asked for":          {"--module", "2", "--teeth", "17", "--measured-tip", "37.9", "--pin", "3.5", "--pin", "4", "--span-teeth", "2", "--arbor", "10"},
 	}
 	for _, name := range exampleNames() {

@@ -22,6 +22,7 @@ func badJobs(f *testing.F) []string {
 	const pair = "units = \"mm\"\n[tooth]\nmodule = 2\n[gear.a]\nteeth = 20\n[gear.b]\nteeth = 30\n[[mesh]]\ngears = [\"a\", \"b\"]\n"
 	return append(jobs,
 		"", "units = \"mm\"", gear, pair, gear+"shift = nan", gear+"shift = 1.3", gear+"thin = \"3..4\"", gear+"tip_diameter = 36",
+		gear+"bore = \"10 H7\"\nkeyway = \"auto\"\nhub = 20\nbolt_circle = \"3x2 on 25 at 12°30'\"", gear+"bolt_circle = { diameter = 20, holes = 4, hole = \"1/8in\", start = -3 }",
 		gear+"bore = \"10 H7\"\nkeyway = { width = 3, depth = 1.4 }", gear+"helix_angle = \"12°30'\"\nhand = \"left\"", gear+"rack = \"ISO 53 D\"",
 		gear+"addendum = 0.8\ndedendum = 1.0\ntip_radius = 0.3", gear+"tip_chamfer = 0.2", gear+"[gear.a.b]\nx = 1", gear+"gear.b.teeth = 3",
 		pair+"center = { at = 50.2, tolerance = 0.02 }\nbacklash = \"0.2..0.4\"\nthin_share = \"a\"", pair+"center = \"50±0.01\"", pair+"center = 1e300", gear+"face_width = 1e308\nhelix_angle = 20",

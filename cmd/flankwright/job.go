@@ -244,8 +244,7 @@ func refuseLater(spec keySpec, v value, at place) error {
 		return nil
 	case spec.later:
 		return later(at, spec.name, isFlag)
-	case spec.name == "thin_share" && strings.EqualFold(text, "by strength"),
-		spec.name == "keyway" && strings.EqualFold(text, "auto"):
+	case spec.name == "thin_share" && strings.EqualFold(text, "by strength"):
 		return later(at, spec.name+" = "+describe(v), isFlag)
 	}
 	return nil

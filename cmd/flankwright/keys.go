@@ -63,9 +63,9 @@ func keys() []keySpec {
 		{"root", inGear, false, "generated, or cut by an end mill: \"end mill 2mm\" (generated)"},
 		{"face_width", inGear, false, "face width"},
 		{"bore", inGear, false, "bore, with an ISO 286 class if wanted: \"12 H7\""},
-		{"keyway", inGear, false, "keyway, width x depth beyond the bore's wall: 4x1.8mm"},
-		{"hub", inGear, true, "hub diameter"},
-		{"bolt_circle", inGear, true, "bolt circle"},
+		{"keyway", inGear, false, "keyway, auto (from the bore), or width x depth beyond the bore's wall: 4x1.8mm"},
+		{"hub", inGear, false, "outside diameter of the hub, on one face"},
+		{"bolt_circle", inGear, false, "bolt circle: \"6x5.5mm on 40mm\", or with the first hole's angle, \"6x5.5mm on 40mm at 30\""},
 		{"material", inGear, true, ""},
 		{"hardness", inGear, true, "hardness"},
 		{"accuracy", inGear, true, "accuracy class"},
@@ -90,10 +90,11 @@ func keys() []keySpec {
 // inlineKeys are the keys of the tables that stand for one value.
 func inlineKeys() map[string][]string {
 	return map[string][]string{
-		"center": {"at", "tolerance", "class"},
-		"keyway": {"width", "depth"},
-		"root":   {"end_mill"},
-		"relief": {"amount", "start", "form"},
+		"center":      {"at", "tolerance", "class"},
+		"keyway":      {"width", "depth"},
+		"bolt_circle": {"diameter", "holes", "hole", "start"},
+		"root":        {"end_mill"},
+		"relief":      {"amount", "start", "form"},
 	}
 }
 
@@ -173,7 +174,7 @@ func otherNames() map[string]string {
 		"diametral_pitch": "dp", "pitch": "dp", "normal_diametral_pitch": "dp", "mod": "module", "normal_module": "module",
 		"number_of_teeth": "teeth", "z": "teeth", "profile_shift": "shift", "x": "shift", "outside_diameter": "tip_diameter", "od": "tip_diameter",
 		"center_distance": "center", "centre": "center", "width": "face_width", "face": "face_width", "helix": "helix_angle", "angle": "pressure_angle",
-		"play": "backlash", "hole": "bore",
+		"play": "backlash", "hole": "bore", "holes": "bolt_circle", "bolts": "bolt_circle", "pcd": "bolt_circle", "key": "keyway", "boss": "hub",
 	}
 }
 

@@ -245,22 +245,12 @@ func (j *job) planThickness() error {
 	return nil
 }
 
-// finishGear checks what depends on the thickness: the teeth at both limits, and the bore under the root.
+// finishGear checks what depends on the thickness: the teeth at both limits, and what is under the root.
 func (j *job) finishGear(g *gear) error {
 	for _, s := range []float64{g.thickness.Limits.Min, g.thickness.Limits.Max} {
 		if _, err := g.g.Tooth(s); err != nil {
 			return j.impossibleThinning(g, err)
 		}
 	}
-	if g.bore == nil {
-		return nil
-	}
-	root := g.rootLimits().Min
-	if g.bore.limits.Max >= root {
-		return bad("bore", g.settings.vals["bore"], "of %s reaches the root circle, %s; it must be smaller", j.length(g.bore.nominal), j.length(root))
-	}
-	if k := g.keyway; k != nil && 2*k.reach(g.bore.limits.Max) >= root {
-		return bad("keyway", g.settings.vals["keyway"], "has corners %s from the axis, past the root circle's radius %s", j.length(k.reach(g.bore.limits.Max)), j.length(root/2))
-	}
-	return nil
+	return j.checkOpenings(g)
 }

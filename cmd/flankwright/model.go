@@ -28,6 +28,8 @@ type gear struct {
 	faceWidth float64 // mm, 0 for not given
 	bore      *boreSize
 	keyway    *keyway
+	bolts     *boltCircle
+	hub       float64 // outside diameter, mm, 0 for none
 	dp        float64 // normal diametral pitch as given, 0 where a module was
 	rack      string  // name for people
 	source    string  // of the rack
@@ -75,11 +77,6 @@ type tipDecision struct{ a, mateRoot, clearance float64 }
 // A rootDecision is what decided the depth of a milled root: the center
 // distance, the mate's tip diameter and the clearance kept, mm.
 type rootDecision struct{ a, mateTip, clearance float64 }
-
-type keyway struct{ width, depth float64 } // mm; depth beyond the bore
-
-// reach returns how far the keyway's corners lie from the axis of a bore, mm.
-func (k keyway) reach(bore float64) float64 { return math.Hypot(bore/2+k.depth, k.width/2) }
 
 // part returns what a measuring hand needs to know of the gear.
 func (g *gear) part() inspect.Part { return inspect.Part{FaceWidth: g.faceWidth} }
@@ -175,7 +172,7 @@ func (j *job) addGear(i int, hand float64) error {
 	} else if ok {
 		g.bore = &b
 	}
-	if err := j.readKeyway(g); err != nil {
+	if err := j.readOpenings(g); err != nil {
 		return err
 	}
 	j.gears = append(j.gears, g)
@@ -336,54 +333,4 @@ func (j *job) fitTipRadius(g *gear, r *involute.Rack) error {
 	j.warnRackRadius(g, r.TipRadius, largest)
 	r.TipRadius = largest
 	return nil
-}
-
-func (j *job) readKeyway(g *gear) error {
-	v, ok := g.settings.vals["keyway"]
-	if !ok {
-		return nil
-	}
-	w, d, err := g.settings.keywaySize(v)
-	if err != nil {
-		return err
-	}
-	if g.bore == nil {
-		return bad("keyway", v, "needs a bore to be cut into")
-	}
-	if w >= g.bore.limits.Min {
-		return bad("keyway", v, "is %s wide, and the bore only %s", j.length(w), j.length(g.bore.limits.Min))
-	}
-	g.keyway = &keyway{w, d}
-	return nil
-}
-
-// keywaySize reads a keyway's width and depth from a table or from "4x1.8mm".
-func (s settings) keywaySize(v value) (w, d float64, err error) {
-	if text, isText := asText(v); isText {
-		width, depth, ok := strings.Cut(strings.NewReplacer("×", "x", "X", "x").Replace(text), "x")
-		unit := inspect.UnitOf(depth, s.bare(v)) // a unit at the end covers both
-		w, err1 := inspect.ParseLength(width, unit)
-		d, err2 := inspect.ParseLength(depth, unit)
-		if !ok || err1 != nil || err2 != nil || w <= 0 || d <= 0 {
-			return 0, 0, bad("keyway", v, "%q is not a keyway; write width x depth, such as 4x1.8mm", text)
-		}
-		return w, d, nil
-	}
-	t, isTable := v.content.(*table)
-	if !isTable {
-		return 0, 0, bad("keyway", v, "needs { width = …, depth = … }")
-	}
-	sub, err := s.inline("keyway", t)
-	if err != nil {
-		return 0, 0, err
-	}
-	w, hasW, err := sub.positive("width")
-	if err != nil {
-		return 0, 0, err
-	}
-	d, hasD, err := sub.positive("depth")
-	if err == nil && !(hasW && hasD) {
-		err = bad("keyway", v, "needs both width and depth (depth beyond the bore's wall)")
-	}
-	return w, d, err
 }

@@ -33,6 +33,7 @@ func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error
 	if g.bore != nil {
 		shape.Bore = []export.Path{export.BorePath(g.contourSpec(j, tooth, 0))}
 	}
+	shape.Bore, shape.Hub = append(shape.Bore, g.bolts.layout().Paths()...), g.hub
 	word := func(key string) string { w, _, _ := j.top.word(key); return w }
 	s := export.Sheet{
 		Title: orDefault(word("title"), g.plainTitle()), Gear: g.name,

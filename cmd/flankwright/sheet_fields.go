@@ -79,9 +79,7 @@ func (j *job) sheetData(g *gear) []export.Field {
 	if g.bore != nil {
 		data = append(data, j.boreField(g.bore))
 	}
-	if g.keyway != nil {
-		data = append(data, j.keywayField(g))
-	}
+	data = append(data, j.openingFields(g)...)
 	if g.faceWidth > 0 {
 		data = append(data, j.lengthField("Face width", g.faceWidth))
 	}
@@ -133,15 +131,6 @@ func (j *job) formFields(g *gear) []export.Field {
 		fields = append(fields, export.Field{Label: "Tip relief, " + reliefForm(r), Value: value, Other: "from Ø" + from})
 	}
 	return fields
-}
-
-// keywayField words a keyway: its width, and the size across from the bore's wall.
-func (j *job) keywayField(g *gear) export.Field {
-	across := g.bore.limits.Middle() + g.keyway.depth
-	words := func(u inspect.Unit) string {
-		return u.Format(g.keyway.width, u.Decimals()) + " × " + u.Format(across, u.Decimals()) + " " + u.String()
-	}
-	return export.Field{Label: "Keyway, width × across", Value: words(j.display)}
 }
 
 // boreField words a bore: its size in both units, or with a class its limits in the display unit.

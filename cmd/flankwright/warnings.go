@@ -96,9 +96,7 @@ func (j *job) warnGear(g *gear) {
 	if land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
 	}
-	if g.bore != nil {
-		j.warnRim(g)
-	}
+	j.warnOpenings(g)
 	if g.g.Helical() && g.faceWidth == 0 {
 		j.warnFace(g)
 	}
@@ -121,18 +119,6 @@ func (j *job) warnFace(g *gear) {
 		text += fmt.Sprintf("; a span over %s needs over %s", teethText(ks[0]), j.length(g.g.SpanFaceWidth(g.middle().Span(ks[0]))))
 	}
 	j.addWarning("no-face-width", g.name, "no face_width is given, and a helical gear needs some face to be measured%s", text)
-}
-
-func (j *job) warnRim(g *gear) {
-	root := g.rootLimits().Min
-	depth := (g.g.TipDiameter() - root) / 2
-	wall, where := (root-g.bore.limits.Max)/2, "bore"
-	if g.keyway != nil {
-		wall, where = root/2-g.keyway.reach(g.bore.limits.Max), "keyway"
-	}
-	if wall < thinRim*depth {
-		j.addWarning("thin-rim", g.name, "only %s of metal is left between root and %s, under %.1f whole depths; the rim bends under load", j.length(wall), where, thinRim)
-	}
 }
 
 // warnMesh judges the teeth that will be cut: clearance and interference of the
