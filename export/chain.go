@@ -10,27 +10,36 @@ import (
 // From a tooth's exact curves to the arcs that a machine runs. Read, in this order:
 //
 //   - chain_piece.go: one line or arc between two points, told by its bulge
-//   - chain_walk.go: the curve to be fitted (a flank, a fillet), walked at an even pace
-//   - chain_biarc.go and chain_triarc.go: two or three arcs over a stretch of it, a strip
+//   - chain_pattern.go: how far arcs reach on a flank, and why their joints lie where they do
+//   - chain_walk.go and chain_run.go: the curves between two corners or exact arcs, walked at an even pace
+//   - chain_fit.go: the chain of a given number of arcs that comes nearest to them
+//   - chain_minimax.go: the numerical search it uses
 //   - chain_deviation.go: how far arcs and curve lie apart, and why that is certain
-//   - chain.go, here: strips dealt out over the whole curve, with the fewest arcs
+//   - chain_count.go: the fewest arcs that keep the tolerance, and what is done if the search finds none
+//   - chain_lines.go: straight lines instead of arcs
+//   - chain_pitch.go: one pitch cut into runs and exact pieces
 //   - chain_path.go: the chains of one pitch, repeated round the gear to its contour
 
-// A chain is a curve written as arcs and lines that meet end to end without a
-// corner: piece i+1 starts where piece i ends, in the same direction.
-type chain struct {
-	Pieces []piece
-	// MaxDeviation is the greatest distance in mm between chain and curve, both
-	// ways: no point of the one is farther than this from the other. It is
-	// measured on the finished chain (see walk.deviation), not assumed.
-	MaxDeviation float64
+// A Side says to which side of the exact outline a fitted one may lie.
+type Side int
+
+// The sides: both, or one of them. The metal is on the inside.
+const (
+	Both    Side = iota
+	Outside      // the drawn tooth never lacks metal
+	Inside       // the drawn tooth never has metal to spare
+)
+
+// FitOptions say how a curve is turned into arcs.
+type FitOptions struct {
+	Tolerance float64 // how far the arcs may leave the exact curves, mm
+	Side      Side    // to which side
+	MinArc    float64 // no arc shorter than this as far as the tolerance allows, mm; 0 for none
+	MaxSweep  float64 // no arc turns by more, radians; 0 for a quarter turn
+	Lines     bool    // straight lines instead of arcs
 }
 
 const (
-	// maxSweep is the most one arc turns: 85°, so that no rounding lifts an arc
-	// over the quarter turn at which old controls divide circles.
-	maxSweep = 85 * math.Pi / 180
-
 	// straightBulge is the bulge below which an arc is written as its chord:
 	// tan(sweep/4) of an arc 10 000 times as large in radius as long. The chord
 	// turns off the arc's ends by half the sweep, 0.003°, so that even two
@@ -38,80 +47,105 @@ const (
 	// and curve is measured like any other.
 	straightBulge = 0.25e-4
 
-	// maxArcs bounds the search: a curve that asks for more is refused.
-	maxArcs = 4000
-
 	// finestTolerance is the smallest tolerance taken, as a share of the curve's
 	// size: coordinates carry 2.2e-16 of themselves and the measured deviation
 	// some ten times that, so 1e-10 leaves five digits of the tolerance.
 	finestTolerance = 1e-10
 )
 
-// fitArcs returns a chain of arcs that stays within tolerance (mm, on both
-// sides) of the curve, starts and ends exactly on its ends and in its
-// direction there, and has no corner inside. Lines and arcs pass as they are
-// (an arc over 85° in equal parts).
-//
-// Other curves become strips of two or three arcs that take up point and
-// direction of the curve at both ends of a stretch (biarcs: Meek and Walton, J.
-// Comput. Appl. Math. 59, 1995). Strips deviate with the cube of their length, so
-// their joints are moved until all deviate alike, with the fewest arcs that keep
-// the tolerance. A curve whose curvature has an extreme is tried both in one run
-// and cut there, since arcs follow rising or falling curvature best.
-//
-// An error is returned for a tolerance that is not a positive number or is
-// beyond the precision of coordinates, and for a curve without length or with
-// a point that is not finite.
-func fitArcs(c involute.Curve, tolerance float64) (chain, error) {
-	if !positive(tolerance) {
-		return chain{}, fmt.Errorf("fit arcs: tolerance %g mm: must be a length above 0", tolerance)
+// check refuses options that make no sense and fills in the sweep.
+func (o FitOptions) check() (FitOptions, error) {
+	switch {
+	case !positive(o.Tolerance):
+		return o, fmt.Errorf("tolerance %g mm: must be a length above 0", o.Tolerance)
+	case o.MinArc < 0 || !finite(o.MinArc):
+		return o, fmt.Errorf("shortest arc %g mm: must be a length, or 0 for none", o.MinArc)
+	case o.Side < Both || o.Side > Inside:
+		return o, fmt.Errorf("tolerance side %d: must be both, outside or inside", o.Side)
+	case o.MaxSweep == 0:
+		o.MaxSweep = math.Pi / 2
 	}
-	switch c := plain(c).(type) {
+	if !(o.MaxSweep >= leastSweep && o.MaxSweep <= math.Pi) {
+		return o, fmt.Errorf("greatest sweep %g°: must be from %g° to 180°", o.MaxSweep*180/math.Pi, leastSweep*180/math.Pi)
+	}
+	return o, nil
+}
+
+// leastSweep is the smallest limit for the sweep of an arc, radians: a finer one
+// would cut a gear into tens of thousands of arcs.
+const leastSweep = math.Pi / 180
+
+// band returns the offsets the options allow, a millionth short of the
+// tolerance, so that closing the joints between chains (to the rounding of
+// coordinates) does not exceed it.
+func (o FitOptions) band() band {
+	most := o.Tolerance * (1 - 1e-6)
+	switch o.Side {
+	case Outside:
+		return band{0, most}
+	case Inside:
+		return band{-most, 0}
+	}
+	return band{-most, most}
+}
+
+// A chain is what a stretch of the outline becomes: arcs and lines that meet end
+// to end. Those of a run, and of an exact line or arc, meet without a corner.
+type chain struct {
+	Pieces    []piece
+	Counts    []int   // of the pieces, on each curve
+	Corners   []int   // the pieces that start at a kink of the curves which was kept
+	Low, High float64 // the farthest it lies inside (≤ 0) and outside of the curves, mm: measured, not assumed
+}
+
+// deviation returns the greatest distance between chain and curves, mm: no point
+// of the one is farther than this from the other.
+func (c chain) deviation() float64 { return max(-c.Low, c.High) }
+
+// splitSweeps returns the chain with every arc that turns by more than most cut into equal parts.
+func (c chain) splitSweeps(most float64) chain {
+	out := chain{Low: c.Low, High: c.High}
+	i, corners := 0, c.Corners
+	for _, n := range c.Counts {
+		before := len(out.Pieces)
+		for ; n > 0; n-- {
+			if len(corners) > 0 && corners[0] == i {
+				out.Corners, corners = append(out.Corners, len(out.Pieces)), corners[1:]
+			}
+			parts := int(math.Ceil(math.Abs(c.Pieces[i].sweep())/most - 1e-9))
+			out.Pieces = append(out.Pieces, c.Pieces[i].parts(parts)...)
+			i++
+		}
+		out.Counts = append(out.Counts, len(out.Pieces)-before)
+	}
+	return out
+}
+
+// exactChain returns a line or an arc as itself.
+func exactChain(c involute.Curve) (chain, error) {
+	switch c := c.(type) {
 	case involute.Line:
-		return exactLine(c)
+		if length := c.To.Sub(c.From).Norm(); !positive(length) {
+			return chain{}, fmt.Errorf("a line of length %g mm: must be above 0", length)
+		}
+		return chain{Pieces: []piece{{From: c.From, To: c.To}}, Counts: []int{1}}, nil
 	case involute.Arc:
 		return exactArc(c)
 	}
-	w, err := newWalk(c)
-	if err != nil {
-		return chain{}, fmt.Errorf("fit arcs: %w", err)
-	}
-	if least := finestTolerance * w.size; tolerance < least {
-		return chain{}, fmt.Errorf("fit arcs: tolerance %g mm is finer than coordinates of this size carry: at least %.2g mm", tolerance, least)
-	}
-	best, err := w.fitBetween([]float64{0, 1}, tolerance)
-	if cuts := w.extremes(); len(cuts) > 0 {
-		stops := append(append([]float64{0}, cuts...), 1)
-		cut, cutErr := w.fitBetween(stops, tolerance)
-		if cutErr == nil && (err != nil || len(cut.Pieces) < len(best.Pieces)) {
-			best, err = cut, nil
-		}
-	}
-	if err != nil {
-		return chain{}, fmt.Errorf("fit arcs: %w", err)
-	}
-	return best, nil
+	return chain{}, fmt.Errorf("a %T is neither a line nor an arc", c)
 }
 
-// exactLine returns a line as the chain of one piece that it is.
-func exactLine(l involute.Line) (chain, error) {
-	if length := l.To.Sub(l.From).Norm(); !positive(length) {
-		return chain{}, fmt.Errorf("fit arcs: a line of length %g mm: must be above 0", length)
-	}
-	return chain{Pieces: []piece{{From: l.From, To: l.To}}}, nil
-}
-
-// exactArc returns an arc as itself, in equal parts if it turns by more than maxSweep.
+// exactArc returns an arc as itself, over 90° in equal parts.
 func exactArc(a involute.Arc) (chain, error) {
 	if length := a.Radius * math.Abs(a.Sweep); !positive(length) {
-		return chain{}, fmt.Errorf("fit arcs: an arc of radius %g mm and sweep %g rad: both must be numbers other than 0", a.Radius, a.Sweep)
+		return chain{}, fmt.Errorf("an arc of radius %g mm and sweep %g rad: both must be numbers other than 0", a.Radius, a.Sweep)
 	}
 	if turns := math.Abs(a.Sweep) / (2 * math.Pi); turns > 1+1e-12 {
-		return chain{}, fmt.Errorf("fit arcs: an arc of %.3g turns: at most one", turns)
+		return chain{}, fmt.Errorf("an arc of %.3g turns: at most one", turns)
 	}
-	parts := int(math.Ceil(math.Abs(a.Sweep) / maxSweep))
+	parts := int(math.Ceil(math.Abs(a.Sweep)/(math.Pi/2) - 1e-9))
 	bulge := math.Tan(a.Sweep / float64(parts) / 4)
-	var ch chain
+	ch := chain{Counts: []int{parts}}
 	from, _ := a.At(0)
 	for i := 1; i <= parts; i++ {
 		to, _ := a.At(float64(i) / float64(parts))
@@ -121,132 +155,17 @@ func exactArc(a involute.Arc) (chain, error) {
 	return ch, nil
 }
 
-// fitBetween returns a chain of strips that passes through every stop (places
-// on the walk, from 0 to 1) with the curve's direction there.
-func (w *walk) fitBetween(stops []float64, tolerance float64) (chain, error) {
-	var all chain
-	for i := 1; i < len(stops); i++ {
-		ch, err := w.fitRun(stops[i-1], stops[i], tolerance)
-		if err != nil {
-			return chain{}, err
-		}
-		all.Pieces = append(all.Pieces, ch.Pieces...)
-		all.MaxDeviation = max(all.MaxDeviation, ch.MaxDeviation)
-	}
-	return all, nil
-}
+// String returns "both", "outside" or "inside".
+func (s Side) String() string { return [...]string{"both", "outside", "inside"}[s] }
 
-// fitRun returns the fewest arcs, in strips that are evenly good, between the places a and b.
-func (w *walk) fitRun(a, b, tolerance float64) (chain, error) {
-	for n := 2; n <= maxArcs; {
-		strips, worst := w.spread(a, b, n, tolerance)
-		// Measured only where the samples say that it can hold.
-		if worst <= tolerance {
-			var ch chain
-			for _, x := range strips {
-				ch.Pieces = append(ch.Pieces, x.pieces...)
-			}
-			ch.MaxDeviation = w.deviation(ch.Pieces, a, b)
-			if ch.MaxDeviation <= tolerance {
-				return ch, nil
-			}
-		}
-		// The deviation falls with the cube of the number; 0.7 keeps the step from overshooting.
-		n = max(n+1, int(0.7*float64(n)*math.Cbrt(worst/tolerance)))
+// Band returns how far inside (≤ 0) and outside of the exact curves the options
+// let the fitted ones lie, mm.
+func (o FitOptions) Band() (inside, outside float64) {
+	switch o.Side {
+	case Outside:
+		return 0, o.Tolerance
+	case Inside:
+		return -o.Tolerance, 0
 	}
-	return chain{}, fmt.Errorf("%d arcs do not bring the curve within %g mm: the tolerance is too fine for it", maxArcs, tolerance)
-}
-
-// reach is the length a strip of 2 or 3 arcs covers at deviation ε on a curve
-// whose curvature changes by κ' per mm, in units of (ε/|κ'|)^(1/3): the cube
-// roots of the 324 of a biarc and of 1668, both worked out by hand from the
-// cubic by which curve and chain then differ.
-func reach(arcs int) float64 {
-	if arcs == 2 {
-		return 6.868
-	}
-	return 11.86
-}
-
-// spread returns strips of n arcs in all between a and b, as many as can be of
-// three arcs (which reach farther than one and a half biarcs) and the rest of
-// two, with deviations made as even as can be, and the worst deviation. A
-// strip's deviation grows with the cube of its length, so cbrt(deviation)·reach
-// is the work its stretch holds, and new joints deal the work out by reach.
-func (w *walk) spread(a, b float64, n int, tolerance float64) ([]strip, float64) {
-	const rounds = 8
-	arcs := stripArcs(n)
-	shares := make([]float64, len(arcs))
-	joints := []float64{a}
-	total := 0.0
-	for i := range arcs {
-		shares[i] = reach(arcs[i])
-		total += shares[i]
-	}
-	for i := range shares {
-		shares[i] /= total
-		joints = append(joints, joints[i]+shares[i]*(b-a))
-	}
-	joints[len(arcs)] = b
-	var best []strip
-	worst := math.Inf(1)
-	for range rounds {
-		strips := make([]strip, len(arcs))
-		work := make([]float64, len(arcs))
-		top, least := 0.0, math.Inf(1)
-		for i := range strips {
-			if arcs[i] == 2 {
-				strips[i] = w.bestBiarc(joints[i], joints[i+1], tolerance)
-			} else {
-				strips[i] = w.bestTriarc(joints[i], joints[i+1], tolerance)
-			}
-			top, least = max(top, strips[i].cost), min(least, strips[i].cost)
-		}
-		if top < worst {
-			best, worst = strips, top
-		}
-		if least >= 0.97*top {
-			break
-		}
-		for i := range work {
-			// A stretch that is a circle costs nothing, but no stretch may shrink to nothing.
-			work[i] = shares[i] * math.Cbrt(max(strips[i].cost, 1e-6*top))
-		}
-		joints = dealOut(joints, work, shares)
-	}
-	return best, worst
-}
-
-// stripArcs divides n ≥ 2 arcs into strips of three and, where that does not go up, of two.
-func stripArcs(n int) []int {
-	var arcs []int
-	for ; n > 4 || n == 3; n -= 3 {
-		arcs = append(arcs, 3)
-	}
-	for ; n > 0; n -= 2 {
-		arcs = append(arcs, 2)
-	}
-	return arcs
-}
-
-// dealOut returns joints between which stretch i holds its share of all the
-// work, which is taken to lie evenly within each old stretch.
-func dealOut(old, work, shares []float64) []float64 {
-	n := len(work)
-	total := 0.0
-	for _, x := range work {
-		total += x
-	}
-	joints := append([]float64(nil), old...)
-	k, below, goal := 0, 0.0, 0.0 // old stretch k begins after the work below
-	for i := 1; i < n; i++ {
-		goal += shares[i-1] * total
-		for k < n-1 && below+work[k] < goal {
-			below += work[k]
-			k++
-		}
-		part := min(1, (goal-below)/work[k])
-		joints[i] = old[k] + part*(old[k+1]-old[k])
-	}
-	return joints
+	return -o.Tolerance, o.Tolerance
 }

@@ -40,9 +40,10 @@ func (g gauge) along(p, dir involute.Vec) bool {
 // pieceSamples is the number of steps at which each piece is measured.
 const pieceSamples = 48
 
-// deviation returns the greatest distance in mm between the pieces and the
-// stretch of the curve between the places a and b, both ways; +Inf if the
-// pieces do not run along the curve at all.
+// deviation returns how far the pieces lie off the curves of the run, in mm: low
+// is the farthest to the left of the way (inside the metal, negative) and high
+// the farthest to the right (outside). ok is false if the pieces do not run along
+// the curves at all.
 //
 // Why it can be trusted. Cut the curve where it crosses the normals of the
 // chain at its joints. The part of the curve between two cuts starts and ends
@@ -61,28 +62,60 @@ const pieceSamples = 48
 // difference between the curvatures, at most about |dκ/ds| H, while no arc at all
 // comes closer to such a curve than |dκ/ds| H³/192: a peak that the samples did
 // not show would be less than 192/(8·48²) = 1 % of what was found beside it.
-func (w *walk) deviation(pieces []piece, a, b float64) float64 {
-	worst := max(w.point(a).Sub(pieces[0].From).Norm(), w.point(b).Sub(pieces[len(pieces)-1].To).Norm())
-	low := a
+// Where a piece spans the joint of two curves, each is sampled by itself.
+func (r *run) deviation(pieces []piece) (low, high float64, ok bool) {
+	from := 0.0
 	for i, p := range pieces {
-		high := b
+		to := r.last()
 		if i+1 < len(pieces) {
-			var ok bool
-			if high, ok = w.crossing(p, low, b); !ok {
-				return math.Inf(1)
+			if to, ok = r.crossing(p, from); !ok {
+				return 0, 0, false
 			}
 		}
-		worst = max(worst, w.pieceDeviation(p, low, high))
-		low = high
+		l, h, ok := r.offsets(newGauge(p), from, to)
+		if !ok {
+			return 0, 0, false
+		}
+		low, high = min(low, l), max(high, h)
+		from = to
 	}
-	return worst
+	return low, high, true
 }
 
-// crossing returns the first place between low and high where the curve crosses
-// the normal at the piece's end.
-func (w *walk) crossing(p piece, low, high float64) (place float64, ok bool) {
+// offsets returns the least and the greatest offset from a gauge of the run
+// between two places, and 0 where neither is beyond it.
+func (r *run) offsets(g gauge, from, to float64) (low, high float64, ok bool) {
+	for a := from; a < to; {
+		b := min(to, math.Floor(a)+1)
+		l, h, ok := r.curveOffsets(g, a, b)
+		if !ok {
+			return 0, 0, false
+		}
+		low, high = min(low, l), max(high, h)
+		a = b
+	}
+	return low, high, true
+}
+
+// certify measures a chain and reports whether it keeps the band.
+func (r *run) certify(ch chain, b band) (chain, bool) {
+	var ok bool
+	ch.Low, ch.High, ok = r.deviation(ch.Pieces)
+	return ch, ok && ch.keeps(b, r.size)
+}
+
+// keeps reports whether a measured chain keeps the band, up to the rounding of
+// coordinates of the given size.
+func (c chain) keeps(b band, size float64) bool {
+	slack := 1e-14 * size
+	return c.Low >= b.low-slack && c.High <= b.high+slack
+}
+
+// crossing returns the first place after low where the curve crosses the
+// normal at the piece's end.
+func (r *run) crossing(p piece, low float64) (place float64, ok bool) {
 	_, dir := p.directions()
-	past := func(place float64) float64 { return w.point(place).Sub(p.To).Dot(dir) }
+	past := func(place float64) float64 { return r.point(place).Sub(p.To).Dot(dir) }
 	if past(low) >= 0 {
 		return 0, false
 	}
@@ -90,37 +123,42 @@ func (w *walk) crossing(p piece, low, high float64) (place float64, ok bool) {
 	const step = 1.0 / 256
 	next := low
 	for past(next) < 0 {
-		if next >= high {
+		if next >= r.last() {
 			return 0, false
 		}
-		low, next = next, min(next+step, high)
+		low, next = next, min(next+step, r.last())
 	}
 	place, err := involute.FindRoot(past, low, next)
 	return place, err == nil
 }
 
-// pieceDeviation returns the greatest |offset| of the curve between the places a
-// and b from the piece, +Inf if the curve turns back on it.
-func (w *walk) pieceDeviation(p piece, a, b float64) float64 {
-	g := newGauge(p)
+// curveOffsets is offsets between two places on one curve of the run; ok is false where it
+// turns back.
+func (r *run) curveOffsets(g gauge, a, b float64) (low, high float64, ok bool) {
+	w := r.walks[int(a)]
+	a, b = a-math.Floor(a), b-math.Floor(a)
 	place := func(i int) float64 { return a + (b-a)*float64(i)/pieceSamples }
-	off := func(u float64) float64 { return math.Abs(g.offset(w.point(u))) }
+	off := func(u float64) float64 { return g.offset(w.point(u)) }
 	var at [pieceSamples + 1]float64
 	for i := range at {
 		point, dir := w.pointAndDirection(place(i))
 		if !g.along(point, dir) {
-			return math.Inf(1)
+			return 0, 0, false
 		}
-		at[i] = math.Abs(g.offset(point))
+		at[i] = g.offset(point)
+		low, high = min(low, at[i]), max(high, at[i])
 	}
-	worst := 0.0
 	for i := range at {
 		// An end that tops its only neighbor may hide a peak between the two.
 		before, after := max(i-1, 0), min(i+1, pieceSamples)
 		if at[i] >= at[before] && at[i] >= at[after] {
 			_, peak := findMaximum(off, place(before), place(after))
-			worst = max(worst, at[i], peak)
+			high = max(high, peak)
+		}
+		if at[i] <= at[before] && at[i] <= at[after] {
+			_, peak := findMaximum(func(u float64) float64 { return -off(u) }, place(before), place(after))
+			low = min(low, -peak)
 		}
 	}
-	return worst
+	return low, high, true
 }

@@ -47,9 +47,10 @@ func sectorArea(c involute.Curve) float64 {
 
 // checkGearPath fails unless the path is a closed outline with the area, the
 // starting point, the symmetry and the report it must have.
-func checkGearPath(t rapid.TB, pitch []involute.Curve, z int, tol float64) (Path, FitReport) {
+func checkGearPath(t rapid.TB, pitch []involute.Curve, z int, o FitOptions) (Path, FitReport) {
 	t.Helper()
-	path, r, err := closedPath(pitch, z, tol)
+	tol := o.Tolerance
+	path, r, err := closedPath(pitch, z, o)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -101,7 +102,7 @@ func TestGearPaths(t *testing.T) {
 	} {
 		t.Run(name, func(t *testing.T) {
 			for _, share := range []float64{0.0001, 0.001, 0.01} {
-				_, r := checkGearPath(t, pitchOf(t, tt.spec), tt.spec.Teeth, share*tt.spec.Module)
+				_, r := checkGearPath(t, pitchOf(t, tt.spec), tt.spec.Teeth, FitOptions{Tolerance: share * tt.spec.Module})
 				if r.Corners != tt.corners*tt.spec.Teeth {
 					t.Errorf("%d corners, want %d a pitch", r.Corners, tt.corners)
 				}
@@ -124,27 +125,33 @@ func TestGearPathsOfAnySpec(t *testing.T) {
 			Shift:  rapid.Float64Range(0, 0.3).Draw(t, "x"),
 			Rack:   involute.Rack{TipRadius: rapid.Float64Range(0, 0.38).Draw(t, "rho")},
 		}
-		checkGearPath(t, pitchOf(t, s), s.Teeth, drawTolerance(t, s.Module))
+		checkGearPath(t, pitchOf(t, s), s.Teeth, FitOptions{
+			Tolerance: drawTolerance(t, s.Module), Side: drawSide(t), Lines: rapid.Bool().Draw(t, "lines"),
+		})
 	})
 }
 
 // A square with rounded corners, turned four times a quarter: side 10, radius 1.
-// Each quarter arc takes two arcs of 45°, each side stays a line.
+// Each quarter arc stays an arc, each side a line.
 func TestRoundedSquare(t *testing.T) {
 	pitch := []involute.Curve{
 		involute.Line{From: involute.Vec{X: 5, Y: -4}, To: involute.Vec{X: 5, Y: 4}},
 		involute.Arc{Center: involute.Vec{X: 4, Y: 4}, Radius: 1, Sweep: math.Pi / 2},
 	}
-	path, r, err := closedPath(pitch, 4, 0.001)
+	path, r, err := closedPath(pitch, 4, FitOptions{Tolerance: 0.001})
 	if err != nil {
 		t.Fatal(err)
 	}
-	if r.Segments != 13 || r.Arcs != 8 || r.Lines != 5 || r.Corners != 0 || math.Abs(r.MinRadius-1) > 1e-12 ||
-		math.Abs(r.MaxRadius-1) > 1e-12 || math.Abs(r.ShortestArc-math.Pi/4) > 1e-12 || r.MaxTangentBreakDeg > 1e-10 {
+	if r.Segments != 9 || r.Arcs != 4 || r.Lines != 5 || r.Corners != 0 || math.Abs(r.MinRadius-1) > 1e-12 ||
+		math.Abs(r.MaxRadius-1) > 1e-12 || math.Abs(r.ShortestArc-math.Pi/2) > 1e-12 || r.MaxTangentBreakDeg > 1e-10 {
 		t.Errorf("%+v", r)
 	}
-	// A chord of an arc of radius 1 may sweep 2·acos(1 − 0.001) = 5.12°: 18 for a quarter.
-	if want := 4 * (1 + 18); r.LinesNeeded != want {
+	// Between vertices 0.001 outside of an arc of radius 1 a line that dips 0.001 inside
+	// sweeps 2·acos(0.999/1.001), from a vertex on the arc half of that and acos 0.999.
+	// The first side is halved, since the path starts in its middle.
+	whole := 2 * math.Acos(0.999/1.001)
+	first := whole/2 + math.Acos(0.999)
+	if want := 4*(1+2+int(math.Ceil((math.Pi/2-2*first)/whole))) + 1; r.LinesNeeded != want {
 		t.Errorf("%d chords, want %d", r.LinesNeeded, want)
 	}
 	if want := 100 - 4 + math.Pi; math.Abs(path.area()-want) > 1e-10 {
@@ -157,7 +164,7 @@ func TestRoundedSquare(t *testing.T) {
 
 func TestClosedPathLeavesOutLandsWithoutLength(t *testing.T) {
 	pitch := pitchOf(t, involute.Spec{Teeth: 24, Module: 2, Rack: involute.Rack{TipRadius: 0.38}})
-	_, want, err := closedPath(pitch, 24, 0.001)
+	_, want, err := closedPath(pitch, 24, FitOptions{Tolerance: 0.001})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -165,7 +172,7 @@ func TestClosedPathLeavesOutLandsWithoutLength(t *testing.T) {
 	corner, _ := pitch[3].At(0)
 	end.Start, end.Radius = corner.Angle(), corner.Norm()
 	with := append(append(append([]involute.Curve(nil), pitch[:3]...), end), pitch[3:]...)
-	if _, r, err := closedPath(with, 24, 0.001); err != nil || r.Segments != want.Segments {
+	if _, r, err := closedPath(with, 24, FitOptions{Tolerance: 0.001}); err != nil || r.Segments != want.Segments {
 		t.Errorf("%d pieces, %v; want %d", r.Segments, err, want.Segments)
 	}
 }
@@ -183,13 +190,13 @@ func TestClosedPathRefuses(t *testing.T) {
 		"curve missed": {append(append([]involute.Curve(nil), pitch[:2]...), pitch[3:]...), 24, "curve 2 of the pitch ends at"},
 		"not a number": {[]involute.Curve{involute.Arc{Radius: math.NaN(), Sweep: 1}}, 24, "curve 1"},
 	} {
-		if p, _, err := closedPath(tt.pitch, tt.count, 0.001); err == nil || !strings.Contains(err.Error(), tt.say) {
+		if p, _, err := closedPath(tt.pitch, tt.count, FitOptions{Tolerance: 0.001}); err == nil || !strings.Contains(err.Error(), tt.say) {
 			t.Errorf("%s: %d vertices, %v; want an error with %q", name, len(p.Vertices), err, tt.say)
 		}
 	}
 }
 
-func BenchmarkClosedPath(b *testing.B) {
+func BenchmarkFit(b *testing.B) {
 	s := involute.Spec{Teeth: 24, Module: 2, Rack: involute.Rack{PressureAngle: 20 * math.Pi / 180, Addendum: 1, Dedendum: 1.25, TipRadius: 0.38}}
 	g, err := involute.NewGear(s)
 	if err != nil {
@@ -203,9 +210,13 @@ func BenchmarkClosedPath(b *testing.B) {
 	for _, p := range tooth.Outline().Pieces {
 		pitch = append(pitch, p)
 	}
+	var r FitReport
 	for b.Loop() {
-		if _, _, err := closedPath(pitch, 24, 0.0025); err != nil {
+		if _, r, err = closedPath(pitch, 24, FitOptions{Tolerance: 0.0025}); err != nil {
 			b.Fatal(err)
 		}
 	}
+	b.ReportMetric(float64(r.ArcsPerFlank), "arcs/flank")
+	b.ReportMetric(float64(r.Segments), "pieces")
+	b.ReportMetric(float64(r.LinesNeeded)/float64(r.Segments), "lines/piece")
 }

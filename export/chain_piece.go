@@ -12,17 +12,17 @@ type piece struct {
 	Bulge    float64      // tan(sweep/4), positive counter-clockwise; 0 is a line
 }
 
-// pieceLeaving returns the arc that leaves from in the unit direction dir and ends at to.
-func pieceLeaving(from, dir, to involute.Vec) piece {
+// arcLeaving returns the arc that leaves from in the unit direction dir and ends at to.
+func arcLeaving(from, dir, to involute.Vec) piece {
 	chord := to.Sub(from)
 	// The sweep is twice the angle from direction to chord; tan(x/2) = sin x/(1 + cos x).
-	return piece{from, to, straighten(dir.Cross(chord) / (chord.Norm() + dir.Dot(chord)))}
+	return piece{from, to, dir.Cross(chord) / (chord.Norm() + dir.Dot(chord))}
 }
 
-// pieceArriving returns the arc that starts at from and reaches to in the unit direction dir.
-func pieceArriving(from, to, dir involute.Vec) piece {
+// arcArriving returns the arc that starts at from and reaches to in the unit direction dir.
+func arcArriving(from, to, dir involute.Vec) piece {
 	chord := to.Sub(from)
-	return piece{from, to, straighten(chord.Cross(dir) / (chord.Norm() + dir.Dot(chord)))}
+	return piece{from, to, chord.Cross(dir) / (chord.Norm() + dir.Dot(chord))}
 }
 
 // straighten turns a bulge too small to matter into that of a line.
@@ -74,6 +74,30 @@ func (p piece) halves() (piece, piece) {
 	return piece{p.From, middle, b}, piece{middle, p.To, b}
 }
 
+// parts cuts the piece into n of equal length.
+func (p piece) parts(n int) []piece {
+	if n < 2 {
+		return []piece{p}
+	}
+	start, _ := p.directions()
+	each := p.sweep() / float64(n)
+	bulge := math.Tan(each / 4)
+	out := make([]piece, n)
+	from := p.From
+	for i := range out {
+		// The chord to the end of part i turns off the start by half of what was swept.
+		half := each * float64(i+1) / 2
+		chord := p.To.Sub(p.From).Norm() * math.Sin(half) / math.Sin(p.sweep()/2)
+		to := p.From.Add(start.Rotate(half).Scale(chord))
+		if i == n-1 {
+			to = p.To
+		}
+		out[i] = piece{from, to, bulge}
+		from = to
+	}
+	return out
+}
+
 // rotated returns the piece turned about the origin by theta radians.
 func (p piece) rotated(theta float64) piece {
 	return piece{p.From.Rotate(theta), p.To.Rotate(theta), p.Bulge}
@@ -83,15 +107,17 @@ func (p piece) rotated(theta float64) piece {
 // angle axis, and walked the other way. Reflection and reversal each change the
 // sign of a bulge, so bulges stay.
 func mirrored(pieces []piece, axis float64) []piece {
-	reflect := func(v involute.Vec) involute.Vec {
-		s, c := math.Sincos(2 * axis)
-		return involute.Vec{X: c*v.X + s*v.Y, Y: s*v.X - c*v.Y}
-	}
 	out := make([]piece, len(pieces))
 	for i, p := range pieces {
-		out[len(pieces)-1-i] = piece{reflect(p.To), reflect(p.From), p.Bulge}
+		out[len(pieces)-1-i] = piece{reflected(p.To, axis), reflected(p.From, axis), p.Bulge}
 	}
 	return out
+}
+
+// reflected returns v reflected in the line through the origin at polar angle axis.
+func reflected(v involute.Vec, axis float64) involute.Vec {
+	s, c := math.Sincos(2 * axis)
+	return involute.Vec{X: c*v.X + s*v.Y, Y: s*v.X - c*v.Y}
 }
 
 // turn returns the angle in radians from direction a to direction b, in (−π, π].

@@ -68,16 +68,16 @@ func bruteDistance(c involute.Curve, pieces []piece) float64 {
 // with the one found point against point. The chords between curve points lie
 // off the curve by at most slack.
 func checkAgainstBruteForce(t *rapid.T, c involute.Curve, tol, slack float64) {
-	ch, err := fitArcs(c, tol)
+	ch, err := runOf(t, false, c).fit(both(tol), 0)
 	if err != nil {
 		t.Fatalf("%+v: %v", c, err)
 	}
-	if ch.MaxDeviation > tol {
-		t.Fatalf("%+v: reported %.9f over the tolerance %.9f", c, ch.MaxDeviation, tol)
+	if ch.deviation() > tol {
+		t.Fatalf("%+v: reported %.9f over the tolerance %.9f", c, ch.deviation(), tol)
 	}
 	brute := bruteDistance(c, ch.Pieces)
-	if brute > ch.MaxDeviation+slack || brute < 0.98*ch.MaxDeviation-slack {
-		t.Fatalf("%+v: reported %.12f, by points %.12f (%d pieces, slack %g)", c, ch.MaxDeviation, brute, len(ch.Pieces), slack)
+	if brute > ch.deviation()+slack || brute < 0.98*ch.deviation()-slack {
+		t.Fatalf("%+v: reported %.12f, by points %.12f (%d pieces, slack %g)", c, ch.deviation(), brute, len(ch.Pieces), slack)
 	}
 }
 
@@ -125,7 +125,7 @@ func TestInvolutesKeepTheirTolerance(t *testing.T) {
 		tol := drawTolerance(t, m)
 		checkAgainstBruteForce(t, c, tol, chordSlack(c))
 		if t0 > 0.01 {
-			ch, _ := fitArcs(c, tol)
+			ch, _ := runOf(t, false, c).fit(both(tol), 0)
 			checkChain(t, c, ch)
 		}
 	})

@@ -9,16 +9,17 @@ import (
 )
 
 // A walk is a curve with an even pace: places run from 0 to 1, and equal steps
-// of the place make about equal progress, half of it counted in length and
-// half in turning. Whatever parameter a curve is given in, samples at equal
-// steps then neither rush through its tight parts nor linger at one end.
+// of the place hold about as much of what makes a curve hard to follow. Half of
+// the pace is the work ∫|κ'|^(1/3) ds, by which arcs are dealt out (see
+// chain_pattern.go); a quarter each are length and turning, so that the walk does
+// not stall where the curvature has an extreme.
 type walk struct {
 	curve    involute.Curve
 	t, place []float64 // knots; t is taken as linear in the place between them
+	works    []float64 // work up to each knot, mm^(1/3)
 	length   float64   // mm
 	turning  float64   // sum of the absolute turning, radians
 	size     float64   // greatest coordinate, mm
-	chords   float64   // ∫ sqrt(|κ|/8) ds: over sqrt(tolerance) the chords that would be needed
 }
 
 // A knot of the walk is added wherever a step turns by more than walkTurn or
@@ -58,7 +59,7 @@ func (w *walk) refine(a, b float64, depth int) {
 	w.t = append(w.t, b)
 }
 
-// measure sums length and turning from knot to knot and sets the places.
+// measure sums length, turning and work from knot to knot and sets the places.
 func (w *walk) measure() error {
 	n := len(w.t)
 	steps, turns := make([]float64, n), make([]float64, n)
@@ -72,7 +73,6 @@ func (w *walk) measure() error {
 		if i > 0 {
 			steps[i] = p.Sub(before).Norm()
 			turns[i] = math.Abs(turn(dirBefore, dir))
-			w.chords += math.Sqrt(steps[i] * turns[i] / 8)
 		}
 		w.length += steps[i]
 		w.turning += turns[i]
@@ -82,11 +82,15 @@ func (w *walk) measure() error {
 	if !(w.length > 1e-12*w.size) {
 		return fmt.Errorf("a curve of length %g mm: too short to fit", w.length)
 	}
+	w.measureWork(steps, turns)
 	w.place = make([]float64, n)
 	for i := 1; i < n; i++ {
 		w.place[i] = w.place[i-1] + steps[i]/w.length
 		if w.turning > 0 {
 			w.place[i] += turns[i] / w.turning
+		}
+		if all := w.work(); all > 0 {
+			w.place[i] += 2 * (w.works[i] - w.works[i-1]) / all
 		}
 	}
 	for i, end := 0, w.place[n-1]; i < n; i++ {
@@ -94,6 +98,24 @@ func (w *walk) measure() error {
 	}
 	return nil
 }
+
+// measureWork sums |κ'|^(1/3) ds = |Δκ|^(1/3) Δs^(2/3) over the knots. Where an
+// involute leaves its base circle the curvature is not finite; there the change is
+// taken as twice the mean curvature of the step, which gives the involute's work
+// r_b^(1/3) Δt exactly.
+func (w *walk) measureWork(steps, turns []float64) {
+	w.works = make([]float64, len(w.t))
+	for i := 1; i < len(w.t); i++ {
+		change := math.Abs(w.curve.Curvature(w.t[i]) - w.curve.Curvature(w.t[i-1]))
+		if most := 2 * turns[i] / steps[i]; !(change < most) {
+			change = most
+		}
+		w.works[i] = w.works[i-1] + math.Cbrt(change*steps[i]*steps[i])
+	}
+}
+
+// work returns ∫|κ'|^(1/3) ds over the whole curve, mm^(1/3).
+func (w *walk) work() float64 { return w.works[len(w.works)-1] }
 
 // direction returns the curve's unit direction at parameter t. Where the
 // derivative vanishes (an involute at its base circle) it is the limit from
@@ -118,18 +140,21 @@ func (w *walk) direction(t float64) involute.Vec {
 	return d.Scale(1 / d.Norm())
 }
 
-// parameter returns the curve's parameter at a place.
-func (w *walk) parameter(place float64) float64 {
-	i := sort.SearchFloat64s(w.place, place)
+// between returns the value of ys where xs (rising) comes to x, linear between knots.
+func between(xs, ys []float64, x float64) float64 {
+	i := sort.SearchFloat64s(xs, x)
 	if i == 0 {
-		return w.t[0]
+		return ys[0]
 	}
-	if i == len(w.place) {
-		return w.t[len(w.t)-1]
+	if i == len(xs) {
+		return ys[len(ys)-1]
 	}
-	share := (place - w.place[i-1]) / (w.place[i] - w.place[i-1])
-	return w.t[i-1]*(1-share) + w.t[i]*share
+	share := (x - xs[i-1]) / (xs[i] - xs[i-1])
+	return ys[i-1]*(1-share) + ys[i]*share
 }
+
+// parameter returns the curve's parameter at a place.
+func (w *walk) parameter(place float64) float64 { return between(w.place, w.t, place) }
 
 // point returns the curve's point at a place.
 func (w *walk) point(place float64) involute.Vec {
@@ -144,36 +169,10 @@ func (w *walk) pointAndDirection(place float64) (p, dir involute.Vec) {
 	return p, w.direction(t)
 }
 
-// extremes returns the places inside the walk where the curvature has a
-// maximum or minimum. Ripples below a millionth of the greatest curvature are
-// taken for rounding.
-func (w *walk) extremes() []float64 {
-	at := func(place float64) float64 { return w.curve.Curvature(w.parameter(place)) }
-	ks := make([]float64, len(w.place))
-	greatest := 0.0
-	for i, t := range w.t {
-		ks[i] = w.curve.Curvature(t)
-		if a := math.Abs(ks[i]); a > greatest && !math.IsInf(a, 0) {
-			greatest = a
-		}
+// placeAtWork returns the place up to which the curve holds the given share of its work.
+func (w *walk) placeAtWork(share float64) float64 {
+	if !(w.work() > 0) {
+		return share
 	}
-	var out []float64
-	top, sense := 0, 0.0 // the latest extreme knot and whether curvature rises (+1) or falls to it
-	for i := 1; i < len(ks); i++ {
-		change := ks[i] - ks[top]
-		switch {
-		case change*sense > 0 || sense == 0 && math.Abs(change) > 1e-6*greatest:
-			if sense == 0 {
-				sense = math.Copysign(1, change)
-			}
-			top = i
-		case sense != 0 && math.Abs(change) > 1e-6*greatest:
-			if top > 0 {
-				peak, _ := findMaximum(func(u float64) float64 { return sense * at(u) }, w.place[top-1], w.place[top+1])
-				out = append(out, peak)
-			}
-			sense, top = -sense, i
-		}
-	}
-	return out
+	return between(w.works, w.place, share*w.work())
 }

@@ -9,16 +9,17 @@ import (
 
 // A ContourSpec is a gear's section to be drawn.
 type ContourSpec struct {
-	Tooth     involute.Tooth
-	Tolerance float64 // how far the arcs may leave the exact curves, mm
-	Bore      float64 // diameter, mm, 0 for none
-	KeyWidth  float64 // mm, 0 for no keyway
-	KeyDepth  float64 // beyond the bore's wall, mm
-	Pin       float64 // diameter of the measuring pins drawn where they rest, mm, 0 for none
-	Bolts     BoltCircle
-	Hub       float64 // the hub's outside diameter, mm, 0 for none
-	Unit      inspect.Unit
-	Title     string
+	Tooth    involute.Tooth
+	Fit      FitOptions
+	Stock    float64 // left on all round for roughing, mm, 0 for none
+	Bore     float64 // diameter, mm, 0 for none
+	KeyWidth float64 // mm, 0 for no keyway
+	KeyDepth float64 // beyond the bore's wall, mm
+	Pin      float64 // diameter of the measuring pins drawn where they rest, mm, 0 for none
+	Bolts    BoltCircle
+	Hub      float64 // the hub's outside diameter, mm, 0 for none
+	Unit     inspect.Unit
+	Title    string
 }
 
 // NewContour draws a gear: its closed contour as arcs, the bore (with its
@@ -31,9 +32,15 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	for _, p := range s.Tooth.Outline().Pieces {
 		pitch = append(pitch, p)
 	}
-	path, report, err := closedPath(pitch, s.Tooth.Teeth(), s.Tolerance)
+	path, report, err := closedPath(pitch, s.Tooth.Teeth(), s.Fit)
 	if err != nil {
 		return o, report, err
+	}
+	if s.Stock > 0 {
+		if path, err = path.offsetOutward(s.Stock); err != nil {
+			return o, report, err
+		}
+		report.recount(path)
 	}
 	o.Contours = append(o.Contours, Contour{LayerCut, path})
 	o.openings(s)

@@ -64,8 +64,8 @@ func (c drawnMesh) make(t testing.TB, tolerance float64) (MeshSpec, involute.Mes
 		t.Fatal(c.name, err)
 	}
 	return MeshSpec{
-		First:  ContourSpec{Tooth: t1, Tolerance: tolerance, Bore: 6, KeyWidth: 2, KeyDepth: 1},
-		Second: ContourSpec{Tooth: t2, Tolerance: tolerance, Bore: 6},
+		First:  ContourSpec{Tooth: t1, Fit: FitOptions{Tolerance: tolerance}, Bore: 6, KeyWidth: 2, KeyDepth: 1},
+		Second: ContourSpec{Tooth: t2, Fit: FitOptions{Tolerance: tolerance}, Bore: 6},
 		Center: a + c.wider, Title: c.name,
 	}, m
 }
@@ -257,7 +257,7 @@ func TestMeshContourRefuses(t *testing.T) {
 		"other module": change(func(s *MeshSpec) { s.Second.Tooth = large }),
 		"ring":         change(func(s *MeshSpec) { s.Second.Tooth = ring }),
 		"small pin":    change(func(s *MeshSpec) { s.Second.Pin = 0.1 }),
-		"no tolerance": change(func(s *MeshSpec) { s.First.Tolerance = 0 }),
+		"no tolerance": change(func(s *MeshSpec) { s.First.Fit.Tolerance = 0 }),
 	} {
 		if _, _, err := NewMeshContour(s); err == nil {
 			t.Errorf("%s: drawn", name)

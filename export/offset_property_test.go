@@ -19,16 +19,16 @@ func gearContour(s involute.Spec, tolerance float64) (Path, error) {
 	if err != nil {
 		return Path{}, err
 	}
-	o, _, err := NewContour(ContourSpec{Tooth: tooth, Tolerance: tolerance})
+	o, _, err := NewContour(ContourSpec{Tooth: tooth, Fit: FitOptions{Tolerance: tolerance}})
 	if err != nil {
 		return Path{}, err
 	}
 	return o.Cut()
 }
 
-// drawGear draws a gear's contour and its module. With few teeth and little shift
+// drawContour draws a gear's contour and its module. With few teeth and little shift
 // it is undercut, so that spaces are narrower at their mouth than inside.
-func drawGear(t *rapid.T) (Path, float64) {
+func drawContour(t *rapid.T) (Path, float64) {
 	m := math.Pow(10, rapid.Float64Range(-0.3, 1).Draw(t, "log m"))
 	s := involute.Spec{
 		Teeth: rapid.IntRange(6, 60).Draw(t, "z"), Module: m,
@@ -73,7 +73,7 @@ func checkCovers(t *rapid.T, p, out Path, d float64) {
 
 func TestOffsetOfGears(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		p, m := drawGear(t)
+		p, m := drawContour(t)
 		d := max(leastOffset, m*rapid.Float64Range(0.01, 0.4).Draw(t, "d/m"))
 		checkCovers(t, p, offsetOf(t, p, d), d)
 	})
@@ -83,7 +83,7 @@ func TestOffsetOfGears(t *testing.T) {
 // d₁ lies within d₁ + d₂ (Minkowski sums are associative), and filled pockets stay filled.
 func TestOffsetTwice(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		p, m := drawGear(t)
+		p, m := drawContour(t)
 		sum := m * math.Pow(10, rapid.Float64Range(-1.5, 1).Draw(t, "log d/m"))
 		first := sum * rapid.Float64Range(0.1, 0.9).Draw(t, "share")
 		once := offsetOf(t, p, sum)

@@ -49,6 +49,10 @@ type joint struct {
 	corner     []span       // arcs from the one to the other, at a convex corner
 }
 
+// cornerSweep is the most one arc about a corner turns: 85°, so that no rounding
+// lifts it over the quarter turn at which old controls divide circles.
+const cornerSweep = 85 * involute.Degree
+
 // moveJoint returns the joint between two spans, moved to the right by distance.
 //
 // Where they are tangent, or so nearly that it makes no difference, the moved ones
@@ -75,7 +79,7 @@ func moveJoint(before, after span, distance float64) joint {
 	if delta < 0 {
 		return j
 	}
-	parts := int(math.Ceil(delta / maxSweep))
+	parts := int(math.Ceil(delta / cornerSweep))
 	from := j.end
 	for i := 1; i <= parts; i++ {
 		to := j.start

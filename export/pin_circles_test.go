@@ -39,7 +39,7 @@ func TestPinsTouchTheContour(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		o, report, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.002, Pin: pin})
+		o, report, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: 0.002}, Pin: pin})
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -75,7 +75,7 @@ func TestPinsAreTheOnesMeasured(t *testing.T) {
 		{involute.Spec{Teeth: 17, Module: 1.5, Helix: 15 * involute.Degree, Rack: isoA(), Shift: 0.3}, 2.75},
 	} {
 		tt := tooth(t, c.spec, 0.05)
-		o, report, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.0005, Pin: c.pin})
+		o, report, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: 0.0005}, Pin: c.pin})
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -111,7 +111,7 @@ func TestPinsInEverySpace(t *testing.T) {
 			t.Fatal(err)
 		}
 		seen := map[string]bool{}
-		o, report, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.002})
+		o, report, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: 0.002}})
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -135,7 +135,7 @@ func TestPinsThatDoNotRest(t *testing.T) {
 			t.Errorf("pin %g: %v", pin, err)
 		}
 	}
-	if _, _, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.002, Pin: 0.5}); err == nil {
+	if _, _, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: 0.002}, Pin: 0.5}); err == nil {
 		t.Error("a pin that falls through is drawn")
 	}
 }

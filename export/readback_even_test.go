@@ -20,7 +20,7 @@ func evenGears(t testing.TB) []Path {
 		{Teeth: 30, Module: 1, Rack: fullRadius()},
 		{Teeth: 45, Module: 1, Rack: isoA(), TipChamfer: 0.1},
 	} {
-		o, _, err := NewContour(ContourSpec{Tooth: tooth(t, spec, 0.02), Tolerance: 0.0025})
+		o, _, err := NewContour(ContourSpec{Tooth: tooth(t, spec, 0.02), Fit: FitOptions{Tolerance: 0.0025}})
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -68,7 +68,7 @@ func TestReachAgainstPoints(t *testing.T) {
 // corners are where the outline has them.
 func TestJointsOfAFile(t *testing.T) {
 	tt := tooth(t, involute.Spec{Teeth: 24, Module: 2, Rack: isoA()}, 0)
-	o, report, err := NewContour(ContourSpec{Tooth: tt, Tolerance: 0.0025})
+	o, report, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: 0.0025}})
 	if err != nil {
 		t.Fatal(err)
 	}

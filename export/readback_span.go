@@ -77,8 +77,8 @@ func (s Section) spanFrom(i, k int) (float64, error) {
 type face struct {
 	touches  []touch
 	low, top float64 // the directions square to the flank's two ends, radians
-	// Least and greatest dH/dν at the ends of its pieces, mm: the levers of the
-	// normals about the axis.
+	// Least and greatest dH/dν on its pieces, mm: the levers of the normals about
+	// the axis.
 	flattest, steepest float64
 }
 
@@ -107,6 +107,13 @@ func newFace(pieces []involute.Curve, ref float64) face {
 		f.steepest = max(f.steepest, from.Dot(start), to.Dot(end))
 		if arc, ok := c.(involute.Arc); ok && arc.Sweep > 0 {
 			add(arc.Center, arc.Radius, away(start), away(end))
+			// The lever of an arc's normal is center·direction, and greatest where the two are in line.
+			for _, side := range []float64{1, -1} {
+				if v := away(arc.Center.Scale(side)); v > away(start) && v < away(end) {
+					f.flattest = min(f.flattest, side*arc.Center.Norm())
+					f.steepest = max(f.steepest, side*arc.Center.Norm())
+				}
+			}
 		}
 	}
 	to, _ := pieces[len(pieces)-1].At(1)

@@ -67,7 +67,7 @@ func readied(cs []involute.Curve, mirror bool) []rollPiece {
 	var out []rollPiece
 	for _, c := range cs {
 		if mirror {
-			c = reflected(c)
+			c = involute.Mirrored(c)
 		}
 		out = append(out, newRollPiece(c).measured())
 	}

@@ -43,18 +43,6 @@ func newRollPiece(c involute.Curve) rollPiece {
 	return p
 }
 
-// reflected returns the curve reflected in the x axis, with the metal on its left again.
-func reflected(c involute.Curve) involute.Curve {
-	flip := func(v involute.Vec) involute.Vec { return involute.Vec{X: v.X, Y: -v.Y} }
-	switch c := c.(type) {
-	case involute.Arc:
-		return involute.Arc{Center: flip(c.Center), Radius: c.Radius, Start: -c.Start - c.Sweep, Sweep: c.Sweep}
-	case involute.Line:
-		return involute.Line{From: flip(c.To), To: flip(c.From)}
-	}
-	return c
-}
-
 // A motion turns by an angle and then shifts.
 type motion struct {
 	sin, cos float64

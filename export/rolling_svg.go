@@ -87,7 +87,7 @@ func RollingSVG(s MeshSpec) ([]byte, error) {
 // rollingGear returns a gear's contour and plain bore as SVG path data, turned
 // and about its own center.
 func rollingGear(s ContourSpec, turn float64) (string, error) {
-	o, _, err := NewContour(ContourSpec{Tooth: s.Tooth, Tolerance: s.Tolerance, Bore: s.Bore})
+	o, _, err := NewContour(ContourSpec{Tooth: s.Tooth, Fit: s.Fit, Bore: s.Bore})
 	if err != nil {
 		return "", err
 	}

@@ -57,9 +57,9 @@ func (a Arc) Curvature(float64) float64 { return math.Copysign(1/a.Radius, a.Swe
 
 func (Arc) curve() {}
 
-// mirrored returns a curve reflected in the x axis and run the other way, so
+// Mirrored returns a curve reflected in the x axis and run the other way, so
 // that the metal stays on its left.
-func mirrored(c Curve) Curve {
+func Mirrored(c Curve) Curve {
 	flip := func(v Vec) Vec { return Vec{v.X, -v.Y} }
 	switch c := c.(type) {
 	case Line:

@@ -67,7 +67,7 @@ func (t Tooth) Outline() Outline {
 	ps = append(ps, Piece{Arc{Radius: t.da / 2, Start: -land, Sweep: 2 * land}, TipLand})
 	for i := range n {
 		p := half[n-1-i]
-		ps = append(ps, Piece{mirrored(p.Curve), p.Role})
+		ps = append(ps, Piece{Mirrored(p.Curve), p.Role})
 	}
 	return Outline{ps, t.spec.Teeth}
 }

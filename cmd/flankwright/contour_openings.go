@@ -2,11 +2,11 @@ package main
 
 import "flankwright/export"
 
-// measureOpenings holds bore, keyway, holes and hub of a file that was read back
-// against what they should be, and refuses a file where one is not in its place.
-func (j *job) measureOpenings(g *gear, back export.Outline) error {
-	if _, err := g.contourSpec(j, g.middle(), 0).CheckOpenings(back); err != nil {
-		return cannot("%s: in the file written there are %v; it is not delivered", called(g), err)
+// openingFaults holds bore, keyway, holes and hub of a file that was read back
+// against what they should be. It is for a gear alone: in a mesh they stand turned.
+func openingFaults(spec export.ContourSpec, back export.Outline) []string {
+	if _, err := spec.CheckOpenings(back); err != nil {
+		return []string{"has " + err.Error()}
 	}
 	return nil
 }

@@ -1,10 +1,15 @@
 package main
 
-import "fmt"
+import (
+	"fmt"
+
+	"flankwright/export"
+)
 
 // contours is the result of the command, as JSON writes it.
 type contours struct {
 	Gears    ordered       `json:"gears"`
+	Meshes   []rolledMesh  `json:"meshes"`
 	Warnings []warning     `json:"warnings"`
 	Explain  []explanation `json:"explain,omitempty"`
 	job      *job
@@ -23,23 +28,45 @@ func (r *contours) text(p *page, digits int) []byte {
 		}
 		g.row(label, unit, cells...)
 	}
+	last := ""
 	for _, d := range r.gears {
 		g.heads = append(g.heads, d.name)
-		p.line("%s", d.File)
+		if file := d.File; file != last {
+			p.line("%s", file)
+			last = file
+		}
 	}
 	p.blank()
-	each("Pieces", "", func(d drawnGear) string { return fmt.Sprint(d.Segments) })
-	each("  arcs", "", func(d drawnGear) string { return fmt.Sprint(d.Arcs) })
-	each("  lines", "", func(d drawnGear) string { return fmt.Sprint(d.Lines) })
-	each("  straight lines would need", "", func(d drawnGear) string { return fmt.Sprint(d.LinesNeeded) })
-	each("Greatest deviation from the exact curve", u.String(), func(d drawnGear) string { return fine(d.MaxDeviation) })
+	number := func(label string, pick func(d drawnGear) int) {
+		each(label, "", func(d drawnGear) string { return fmt.Sprint(pick(d)) })
+	}
+	length := func(label string, pick func(d drawnGear) float64) {
+		each(label, u.String(), func(d drawnGear) string { return fine(pick(d)) })
+	}
+	number("Pieces", func(d drawnGear) int { return d.Segments })
+	number("  arcs", func(d drawnGear) int { return d.Arcs })
+	number("  lines", func(d drawnGear) int { return d.Lines })
+	number("  on one flank", func(d drawnGear) int { return d.ArcsPerFlank })
+	number("  straight lines would need", func(d drawnGear) int { return d.LinesNeeded })
+	length("Greatest deviation from the exact curve", func(d drawnGear) float64 { return d.MaxDeviation })
 	each("  allowed", u.String(), func(d drawnGear) string { return fine(d.Tolerance) })
+	if r.oneSided() {
+		each("  to the side", "", func(d drawnGear) string { return d.Side })
+	}
 	each("Largest tangent break", "deg", func(d drawnGear) string { return fmt.Sprintf("%.4f", d.TangentBreak) })
-	each("Shortest arc", u.String(), func(d drawnGear) string { return fine(d.ShortestArc) })
-	each("Smallest radius", u.String(), func(d drawnGear) string { return fine(d.Radius.Min) })
-	each("Tooth thickness drawn, normal", u.String(), func(d drawnGear) string { return fine(d.Thickness) })
+	length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
+	length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
+	length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
+	if r.rough() {
+		length("Stock left on", func(d drawnGear) float64 { return d.Stock })
+	}
+	length("Tooth thickness drawn, normal", func(d drawnGear) float64 { return d.Thickness })
 	r.measured(&g, each, u.String(), fine)
 	p.grid(g)
+	for _, m := range r.Meshes {
+		p.blank()
+		p.grid(m.grid(u.String(), fine))
+	}
 	for _, d := range r.gears {
 		if d.Section == "transverse" {
 			p.blank()
@@ -51,8 +78,44 @@ func (r *contours) text(p *page, digits int) []byte {
 	return []byte(p.b.String())
 }
 
-// measured adds what was measured on the files: the shape, and over pins.
+// oneSided reports whether a tolerance was to one side.
+func (r *contours) oneSided() bool {
+	for _, d := range r.gears {
+		if d.Side != export.Both.String() {
+			return true
+		}
+	}
+	return false
+}
+
+// rough reports whether stock was left on.
+func (r *contours) rough() bool {
+	for _, d := range r.gears {
+		if d.Stock > 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// grid shows what the two contours of a mesh do when they roll together.
+func (m rolledMesh) grid(unit string, fine func(float64) string) grid {
+	g := grid{heads: []string{"as drawn", "exact teeth"}}
+	g.section(m.Gears[0] + " and " + m.Gears[1] + ", rolled through one pitch at center distance " + fine(m.Center))
+	w, t := m.AsWritten, m.Target
+	g.row("Backlash, circumferential, least", unit, fine(w.Backlash.Min), fine(t.Backlash))
+	g.row("  most", unit, fine(w.Backlash.Max), fine(t.Backlash))
+	g.row("Transmission error by the arcs, peak to peak", unit, fine(w.Transmission), fine(0))
+	g.row("Least clearance between flanks, teeth centered", unit, fine(w.Flank), "")
+	g.row("Tip clearance of "+m.Gears[0], unit, fine(w.Tip.First), fine(t.Tip.First))
+	g.row("  of "+m.Gears[1], unit, fine(w.Tip.Second), fine(t.Tip.Second))
+	g.row("The teeth overlap", "", yesNo(w.Interferes), yesNo(t.Backlash < 0))
+	return g
+}
+
+// measured adds what was measured on the files: the shape, over pins, and over a span.
 func (r *contours) measured(g *grid, each func(label, unit string, cell func(drawnGear) string), unit string, fine func(float64) string) {
+	square := r.job.display.MM() * r.job.display.MM()
 	g.section("Measured on the file")
 	each("Greatest deviation from the exact shape", unit, func(d drawnGear) string { return fine(d.AsWritten.Shape) })
 	number := func(label string, pick func(w *asWritten) *float64) {
@@ -73,6 +136,24 @@ func (r *contours) measured(g *grid, each func(label, unit string, cell func(dra
 		}
 		return yesNo(*d.AsWritten.Within)
 	})
+	each("Span over teeth", "", func(d drawnGear) string {
+		if d.AsWritten.SpanTeeth == nil {
+			return "-"
+		}
+		return fmt.Sprint(*d.AsWritten.SpanTeeth)
+	})
+	number("  target", func(w *asWritten) *float64 { return w.SpanTarget })
+	number("  as written", func(w *asWritten) *float64 { return w.Span })
+	number("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
+	always := func(label, unit string, show func(w *asWritten) string) {
+		each(label, unit, func(d drawnGear) string { return show(d.AsWritten) })
+	}
+	always("Least radius", unit, func(w *asWritten) string { return fine(w.LeastRadius) })
+	always("Greatest radius", unit, func(w *asWritten) string { return fine(w.GreatestRadius) })
+	always("Greatest gap between pieces", unit, func(w *asWritten) string { return fine(w.Gap) })
+	always("Tooth to tooth", unit, func(w *asWritten) string { return fine(w.Unevenness) })
+	always("Area", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.Area/square) })
+	always("  of the exact shape", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.AreaExact/square) })
 }
 
 func kinds(gears []drawnGear) string {
@@ -88,7 +169,7 @@ func kinds(gears []drawnGear) string {
 func explainContours(drawn []drawnGear) []explanation {
 	var all []explanation
 	for _, d := range drawn {
-		if d.AsWritten.OverPins == nil {
+		if d.AsWritten == nil || d.AsWritten.OverPins == nil {
 			continue
 		}
 		e := &explainer{about: d.name}

@@ -22,7 +22,8 @@ const sheetTolerance = 0.002
 // sheet gathers what the inspection sheet of one gear says.
 func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error) {
 	tooth := g.middle()
-	outline, _, err := export.NewContour(g.contourSpec(j, tooth, sheetTolerance*g.g.Module()))
+	spec := j.contourSpec(g, contourOptions{fit: export.FitOptions{Tolerance: sheetTolerance * g.g.Module()}})
+	outline, _, err := export.NewContour(spec)
 	if err != nil {
 		return export.Sheet{}, cannot("sheet of %s: %v", g.name, err)
 	}
@@ -31,7 +32,7 @@ func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error
 		return export.Sheet{}, cannot("sheet of %s: %v", g.name, err)
 	}
 	if g.bore != nil {
-		shape.Bore = []export.Path{export.BorePath(g.contourSpec(j, tooth, 0))}
+		shape.Bore = []export.Path{export.BorePath(spec)}
 	}
 	shape.Bore, shape.Hub = append(shape.Bore, g.bolts.layout().Paths()...), g.hub
 	word := func(key string) string { w, _, _ := j.top.word(key); return w }
