@@ -10,8 +10,8 @@ import (
 	"flankwright/involute"
 )
 
-// sampled returns points of a path, chords within error of its arcs, and their ends.
-func sampled(p Path, err float64) [][2]float64 {
+// flattened returns points of a path, chords within error of its arcs, and their ends.
+func flattened(p Path, err float64) [][2]float64 {
 	var out [][2]float64
 	for i := range p.Vertices {
 		from, to, b := p.ends(i)
@@ -60,7 +60,7 @@ func TestShapelyBuffersGears(t *testing.T) {
 			d := share * s.Module
 			out := offsetOf(t, p, d)
 			e := chordError * s.Module
-			cases = append(cases, buffered{sampled(p, e), d, sampled(out, e)})
+			cases = append(cases, buffered{flattened(p, e), d, flattened(out, e)})
 			paths = append(paths, out)
 			// Both polygons and the buffer's arcs, d(1 − cos(π/256)) inside of their circles.
 			slack = append(slack, out.length()*(2*e+d*math.Pi*math.Pi/(2*256*256)))

@@ -27,7 +27,7 @@ func svgFile(t *testing.T, o Outline) string {
 // The Python library svgelements finds the pieces, radii and senses of every arc.
 func TestSvgelementsReadsSVG(t *testing.T) {
 	python := outsidePython(t, "svgelements", "python3-svgelements")
-	for name, o := range outsideOutlines() {
+	for name, o := range plates() {
 		t.Run(name, func(t *testing.T) {
 			var got struct {
 				Width, Height float64
@@ -107,7 +107,7 @@ func TestLibrsvgDrawsSVG(t *testing.T) {
 	convert := outsideProgram(t, "rsvg-convert", "librsvg2-bin")
 	const dpi = 508 // 20 pixels to the mm
 	const scale = dpi / 25.4
-	for name, o := range outsideOutlines() {
+	for name, o := range plates() {
 		t.Run(name, func(t *testing.T) {
 			picture := filepath.Join(t.TempDir(), "outline.png")
 			outsideRun(t, convert, "--dpi-x", fmt.Sprint(dpi), "--dpi-y", fmt.Sprint(dpi), "--background-color", "white", "-o", picture, svgFile(t, o))
