@@ -86,8 +86,13 @@ func (s Section) joints() []involute.Vec {
 	return out
 }
 
-// sameCurve reports whether two pieces lie on one circle.
+// sameCurve reports whether two pieces that follow each other lie on one circle or line.
 func sameCurve(a, b involute.Curve) bool {
+	if l, ok := a.(involute.Line); ok {
+		m, also := b.(involute.Line)
+		d, e := l.To.Sub(l.From), m.To.Sub(m.From)
+		return also && math.Abs(d.Cross(e)) < oneCircle*d.Norm()*e.Norm()
+	}
 	p, ok := a.(involute.Arc)
 	q, also := b.(involute.Arc)
 	return ok && also && p.Sweep*q.Sweep > 0 &&

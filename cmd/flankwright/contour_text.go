@@ -54,9 +54,11 @@ func (r *contours) text(p *page, digits int) []byte {
 		each("  to the side", "", func(d drawnGear) string { return d.Side })
 	}
 	each("Largest tangent break", "deg", func(d drawnGear) string { return fmt.Sprintf("%.4f", d.TangentBreak) })
-	length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
-	length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
-	length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
+	if r.arcs() {
+		length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
+		length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
+		length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
+	}
 	if r.rough() {
 		length("Stock left on", func(d drawnGear) float64 { return d.Stock })
 	}
@@ -82,6 +84,16 @@ func (r *contours) text(p *page, digits int) []byte {
 func (r *contours) oneSided() bool {
 	for _, d := range r.gears {
 		if d.Side != export.Both.String() {
+			return true
+		}
+	}
+	return false
+}
+
+// arcs reports whether there are arcs at all.
+func (r *contours) arcs() bool {
+	for _, d := range r.gears {
+		if d.Arcs > 0 {
 			return true
 		}
 	}
@@ -126,25 +138,29 @@ func (r *contours) measured(g *grid, each func(label, unit string, cell func(dra
 			return "-"
 		})
 	}
-	number("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
-	number("  target", func(w *asWritten) *float64 { return w.Target })
-	number("  as written", func(w *asWritten) *float64 { return w.OverPins })
-	number("  difference", func(w *asWritten) *float64 { return w.Difference })
-	each("  within the limits", "", func(d drawnGear) string {
-		if d.AsWritten.Within == nil {
-			return "no limits"
-		}
-		return yesNo(*d.AsWritten.Within)
-	})
-	each("Span over teeth", "", func(d drawnGear) string {
-		if d.AsWritten.SpanTeeth == nil {
-			return "-"
-		}
-		return fmt.Sprint(*d.AsWritten.SpanTeeth)
-	})
-	number("  target", func(w *asWritten) *float64 { return w.SpanTarget })
-	number("  as written", func(w *asWritten) *float64 { return w.Span })
-	number("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
+	if r.any(func(w *asWritten) bool { return w.Pin != nil }) {
+		number("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
+		number("  target", func(w *asWritten) *float64 { return w.Target })
+		number("  as written", func(w *asWritten) *float64 { return w.OverPins })
+		number("  difference", func(w *asWritten) *float64 { return w.Difference })
+		each("  within the limits", "", func(d drawnGear) string {
+			if d.AsWritten.Within == nil {
+				return "no limits"
+			}
+			return yesNo(*d.AsWritten.Within)
+		})
+	}
+	if r.any(func(w *asWritten) bool { return w.SpanTeeth != nil }) {
+		each("Span over teeth", "", func(d drawnGear) string {
+			if d.AsWritten.SpanTeeth == nil {
+				return "-"
+			}
+			return fmt.Sprint(*d.AsWritten.SpanTeeth)
+		})
+		number("  target", func(w *asWritten) *float64 { return w.SpanTarget })
+		number("  as written", func(w *asWritten) *float64 { return w.Span })
+		number("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
+	}
 	always := func(label, unit string, show func(w *asWritten) string) {
 		each(label, unit, func(d drawnGear) string { return show(d.AsWritten) })
 	}
@@ -154,6 +170,16 @@ func (r *contours) measured(g *grid, each func(label, unit string, cell func(dra
 	always("Tooth to tooth", unit, func(w *asWritten) string { return fine(w.Unevenness) })
 	always("Area", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.Area/square) })
 	always("  of the exact shape", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.AreaExact/square) })
+}
+
+// any reports whether something was measured on one of the files.
+func (r *contours) any(has func(w *asWritten) bool) bool {
+	for _, d := range r.gears {
+		if has(d.AsWritten) {
+			return true
+		}
+	}
+	return false
 }
 
 func kinds(gears []drawnGear) string {

@@ -1,6 +1,8 @@
 package main
 
 import (
+	"errors"
+	"io/fs"
 	"os"
 
 	"github.com/urfave/cli/v2"
@@ -50,8 +52,11 @@ func (j *job) runCheck(c *cli.Context, gears []*gear, o contourOptions) error {
 // readOutline reads an outline file.
 func readOutline(path string, format export.Format) (export.Outline, error) {
 	data, err := os.ReadFile(path)
-	if err != nil {
-		return export.Outline{}, fileError(path, err)
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		return export.Outline{}, cannot("--check %s: there is no such file", path)
+	case err != nil:
+		return export.Outline{}, cannot("--check %s: %v", path, err)
 	}
 	back, err := decode(data, format)
 	if err != nil {
