@@ -12,13 +12,14 @@ import (
 //   - chain_piece.go: one line or arc between two points, told by its bulge
 //   - chain_pattern.go: how far arcs reach on a flank, and why their joints lie where they do
 //   - chain_walk.go and chain_run.go: the curves between two corners or exact arcs, walked at an even pace
-//   - chain_fit.go: the chain of a given number of arcs that comes nearest to them
-//   - chain_minimax.go: the numerical search it uses
+//   - chain_fit.go and chain_biarc.go: a chain of a given number of arcs, told by a few numbers
+//   - chain_search.go and chain_minimax.go: the numbers for which it comes nearest to the curves
 //   - chain_deviation.go: how far arcs and curve lie apart, and why that is certain
-//   - chain_count.go: the fewest arcs that keep the tolerance, and what is done if the search finds none
+//   - chain_count.go: the fewest arcs that keep the tolerance
+//   - chain_strips.go: what is done if the search finds none
 //   - chain_lines.go: straight lines instead of arcs
 //   - chain_pitch.go: one pitch cut into runs and exact pieces
-//   - chain_path.go: the chains of one pitch, repeated round the gear to its contour
+//   - chain_path.go and chain_report.go: the chains of one pitch, repeated round the gear, and what became of it
 
 // A Side says to which side of the exact outline a fitted one may lie.
 type Side int
@@ -29,6 +30,9 @@ const (
 	Outside      // the drawn tooth never lacks metal
 	Inside       // the drawn tooth never has metal to spare
 )
+
+// String returns "both", "outside" or "inside".
+func (s Side) String() string { return [...]string{"both", "outside", "inside"}[s] }
 
 // FitOptions say how a curve is turned into arcs.
 type FitOptions struct {
@@ -75,6 +79,18 @@ func (o FitOptions) check() (FitOptions, error) {
 // would cut a gear into tens of thousands of arcs.
 const leastSweep = math.Pi / 180
 
+// Band returns how far inside (≤ 0) and outside of the exact curves the options
+// let the fitted ones lie, mm.
+func (o FitOptions) Band() (inside, outside float64) {
+	switch o.Side {
+	case Outside:
+		return 0, o.Tolerance
+	case Inside:
+		return -o.Tolerance, 0
+	}
+	return -o.Tolerance, o.Tolerance
+}
+
 // band returns the offsets the options allow, a millionth short of the
 // tolerance, so that closing the joints between chains (to the rounding of
 // coordinates) does not exceed it.
@@ -112,7 +128,7 @@ func (c chain) splitSweeps(most float64) chain {
 			if len(corners) > 0 && corners[0] == i {
 				out.Corners, corners = append(out.Corners, len(out.Pieces)), corners[1:]
 			}
-			parts := int(math.Ceil(math.Abs(c.Pieces[i].sweep())/most - 1e-9))
+			parts := int(math.Ceil(math.Abs(c.Pieces[i].sweep())/most - 1e-13))
 			out.Pieces = append(out.Pieces, c.Pieces[i].parts(parts)...)
 			i++
 		}
@@ -143,7 +159,7 @@ func exactArc(a involute.Arc) (chain, error) {
 	if turns := math.Abs(a.Sweep) / (2 * math.Pi); turns > 1+1e-12 {
 		return chain{}, fmt.Errorf("an arc of %.3g turns: at most one", turns)
 	}
-	parts := int(math.Ceil(math.Abs(a.Sweep)/(math.Pi/2) - 1e-9))
+	parts := int(math.Ceil(math.Abs(a.Sweep)/(math.Pi/2) - 1e-13))
 	bulge := math.Tan(a.Sweep / float64(parts) / 4)
 	ch := chain{Counts: []int{parts}}
 	from, _ := a.At(0)
@@ -153,19 +169,4 @@ func exactArc(a involute.Arc) (chain, error) {
 		from = to
 	}
 	return ch, nil
-}
-
-// String returns "both", "outside" or "inside".
-func (s Side) String() string { return [...]string{"both", "outside", "inside"}[s] }
-
-// Band returns how far inside (≤ 0) and outside of the exact curves the options
-// let the fitted ones lie, mm.
-func (o FitOptions) Band() (inside, outside float64) {
-	switch o.Side {
-	case Outside:
-		return 0, o.Tolerance
-	case Inside:
-		return -o.Tolerance, 0
-	}
-	return -o.Tolerance, o.Tolerance
 }

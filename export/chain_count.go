@@ -16,10 +16,11 @@ const (
 
 // fit returns the chain of fewest arcs that keeps the band.
 func (r *run) fit(b band, minArc float64) (chain, error) {
-	if least := finestTolerance * r.size; b.half() < least/2 {
-		return chain{}, fmt.Errorf("tolerance %g mm is finer than coordinates of this size carry: at least %.2g mm", b.half(), least)
+	tolerance := max(b.high, -b.low)
+	if least := finestTolerance * r.size; tolerance < least {
+		return chain{}, fmt.Errorf("tolerance %.3g mm is finer than coordinates of this size carry: at least %.2g mm", tolerance, least)
 	}
-	tooFine := fmt.Errorf("%d arcs do not bring the curve within %g mm: the tolerance is too fine for it", maxArcs, b.high-b.middle())
+	tooFine := fmt.Errorf("%d arcs do not bring the curve within %.3g mm: the tolerance is too fine for it", maxArcs, tolerance)
 	if r.work()*chainReach > maxArcs*math.Cbrt(b.half()) {
 		return chain{}, tooFine
 	}

@@ -87,11 +87,27 @@ func (r *run) lineFits(from, to float64, b band, margin float64) bool {
 		if math.Abs(rise) >= 1.2*math.Abs(bend) || math.Abs(bend) < slack {
 			continue // its vertex lies well beyond the three
 		}
-		if top := at[i-1] - rise*rise/(2*bend); top < b.low+margin || top > b.high-margin {
+		if i == 2 && r.startsLevel(from) || i == lineSamples && r.startsLevel(to) {
+			continue
+		}
+		top := at[i-1] - rise*rise/(2*bend)
+		if top < b.low+margin || top > b.high-margin {
 			return false
 		}
 	}
 	return true
+}
+
+// startsLevel reports whether a place is an end of the run at which the curve
+// starts out of a point of boundless curvature, as an involute does on its base
+// circle: its offset from a line starts level there, which is no peak.
+func (r *run) startsLevel(place float64) bool {
+	if place > 0 && place < r.last() {
+		return false
+	}
+	const boundless = 1e6
+	w, u := r.at(place)
+	return math.Abs(w.curve.Curvature(w.parameter(u)))*w.length > boundless
 }
 
 // farthest returns the farthest place from at, toward goal, to which one line
@@ -134,7 +150,7 @@ func (r *run) reachLines(b band, margin float64) ([]float64, error) {
 	for last > 0 {
 		to := r.farthest(at, end, step, forward)
 		if to == at || len(places) > maxLines {
-			return nil, fmt.Errorf("%d straight lines do not bring the curve within %g mm: the tolerance is too fine for it", len(places), b.high-b.low)
+			return nil, fmt.Errorf("%d straight lines do not bring the curve within %.3g mm: the tolerance is too fine for it", len(places), max(b.high, -b.low))
 		}
 		if to >= end {
 			break
@@ -153,19 +169,23 @@ func (r *run) reachLines(b band, margin float64) ([]float64, error) {
 }
 
 // lines returns lines that keep the band. Where they do not quite, since peaks
-// were not quite parabolas, they are sought again with more margin.
+// were not quite parabolas, they are sought again with more margin; where the
+// tolerance is so coarse that lines no longer run along the curve, with half of it.
 func (r *run) lines(b band) (chain, error) {
-	for share := 0.001; share < 0.5; share *= 2 {
-		places, err := r.reachLines(b, share*b.half())
-		if err != nil {
-			return chain{}, err
-		}
-		r.evenOut(places)
-		if ch, ok := r.lineChain(places, b); ok && ch.keeps(b, r.size) {
-			return ch, nil
+	for wide := 1.0; wide > 1e-3; wide /= 2 {
+		b := band{wide * b.low, wide * b.high}
+		for share := 0.001; share < 0.5; share *= 2 {
+			places, err := r.reachLines(b, share*b.half())
+			if err != nil {
+				return chain{}, err
+			}
+			r.evenOut(places)
+			if ch, ok := r.lineChain(places, b); ok && ch.keeps(b, r.size) {
+				return ch, nil
+			}
 		}
 	}
-	return chain{}, fmt.Errorf("straight lines do not keep along the curve: the tolerance of %g mm is too coarse for it", b.high-b.low)
+	return chain{}, fmt.Errorf("straight lines do not keep along the curve within %.3g mm", max(b.high, -b.low))
 }
 
 // evenOut makes the places symmetric where the run is its own mirror image, as the lands are.
@@ -219,19 +239,20 @@ func (r *run) lineChain(places []float64, b band) (chain, bool) {
 	return ch, true
 }
 
-// linesNeeded returns how many straight lines the whole path takes.
-func (p *pitch) linesNeeded(sections []section, b band) (int, error) {
+// linesNeeded returns how many straight lines the whole path takes, 0 where they
+// cannot keep the band.
+func (p *pitch) linesNeeded(sections []section, b band) int {
 	chains, err := p.chains(sections, func(_ section, r *run) (chain, error) { return r.lines(b) })
 	if err != nil {
-		return 0, err
+		return 0
 	}
 	sum := 0
 	for _, ch := range chains {
 		sum += len(ch.Pieces)
 	}
 	halved := 0
-	if p.startsInMiddle(sections) {
+	if p.startsInMiddle(sections, 0) {
 		halved = len(chains[0].Pieces) % 2 // the path starts in the middle of one
 	}
-	return p.count*sum + halved, nil
+	return p.count*sum + halved
 }

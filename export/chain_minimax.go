@@ -22,15 +22,6 @@ type peaks interface {
 // A reach is two ranges of residuals, from ≤ j < to, either of which may be empty.
 type reach [2]struct{ from, to int }
 
-// common returns what two reaches have in common, and whether that is anything.
-func (a reach) common(b reach) (c reach, any bool) {
-	for i := range c {
-		c[i].from, c[i].to = max(a[i].from, b[i].from), min(a[i].to, b[i].to)
-		any = any || c[i].from < c[i].to
-	}
-	return c, any
-}
-
 const (
 	// highestNorm is where the search ends: the 2048-norm of some hundred
 	// residuals is within 0.3 % of the greatest.
@@ -52,21 +43,25 @@ const (
 // A minimizer holds the numbers x of a problem, where it has come to.
 type minimizer struct {
 	peaks
-	x, step  []float64 // step: of the differences from which slopes are taken
-	r, trial []float64 // residuals
-	slopes   [][]float64
-	damping  float64
+	x, step []float64 // step: of the differences from which slopes are taken
+	damping float64
+
+	r, trial, ahead []float64 // residuals: at x, and at other x that are tried
+	slopes          []slope
+}
+
+// A slope is how residuals change with one number: those it reaches.
+type slope struct {
+	reach
+	d [2][]float64
 }
 
 // solve lowers the greatest of count residuals until accept agrees, and reports
 // whether it did. It minimizes Σ|r|^p for p = 2, 4, 8 …, each from where the
 // one before ended.
 func (m *minimizer) solve(count int) bool {
-	m.r, m.trial = make([]float64, count), make([]float64, count)
-	m.slopes = make([][]float64, len(m.x))
-	for i := range m.slopes {
-		m.slopes[i] = make([]float64, count)
-	}
+	m.r, m.trial, m.ahead = make([]float64, count), make([]float64, count), make([]float64, count)
+	m.slopes = make([]slope, len(m.x))
 	if !m.residuals(m.x, m.r) {
 		return false
 	}
@@ -130,19 +125,22 @@ func (m *minimizer) findSlopes() bool {
 	if !m.residuals(m.x, m.r) {
 		return false
 	}
-	for i, d := range m.slopes {
+	for i := range m.slopes {
 		x, h := m.x[i], m.step[i]
 		m.x[i] = x - h
 		ok := m.changed(m.x, i, m.trial)
 		m.x[i] = x + h
-		ok = m.changed(m.x, i, d) && ok
+		ok = m.changed(m.x, i, m.ahead) && ok
 		m.x[i] = x
 		if !ok {
 			return false
 		}
-		for _, in := range m.reach(i) {
+		s := &m.slopes[i]
+		s.reach = m.reach(i)
+		for k, in := range s.reach {
+			s.d[k] = s.d[k][:0]
 			for j := in.from; j < in.to; j++ {
-				d[j] = (d[j] - m.trial[j]) / (2 * h)
+				s.d[k] = append(s.d[k], (m.ahead[j]-m.trial[j])/(2*h))
 			}
 		}
 	}
@@ -162,28 +160,34 @@ func (m *minimizer) equations(p float64) (bandMatrix, []float64) {
 	}
 	a, b := make(bandMatrix, len(m.x)), make([]float64, len(m.x))
 	for i := range a {
-		d, reach := m.slopes[i], m.reach(i)
-		for _, in := range reach {
+		s := &m.slopes[i]
+		for k, in := range s.reach {
 			for j := in.from; j < in.to; j++ {
-				b[i] -= d[j] * weight[j] * m.r[j]
+				b[i] -= s.d[k][j-in.from] * weight[j] * m.r[j]
 			}
 		}
 		for k := i; k >= 0; k-- {
-			shared, any := reach.common(m.reach(k))
+			sum, any := s.product(&m.slopes[k], weight)
 			if !any {
 				break
-			}
-			sum := 0.0
-			other := m.slopes[k]
-			for _, in := range shared {
-				for j := in.from; j < in.to; j++ {
-					sum += d[j] * other[j] * (weight[j] + quietWeight)
-				}
 			}
 			a[i] = append(a[i], (p-1)*sum)
 		}
 	}
 	return a, b
+}
+
+// product returns the weighted scalar product of two slopes, and whether they
+// have any residuals in common.
+func (s *slope) product(other *slope, weight []float64) (sum float64, any bool) {
+	for k := range s.reach {
+		from, to := max(s.reach[k].from, other.reach[k].from), min(s.reach[k].to, other.reach[k].to)
+		for j := from; j < to; j++ {
+			sum += s.d[k][j-s.reach[k].from] * other.d[k][j-other.reach[k].from] * (weight[j] + quietWeight)
+		}
+		any = any || from < to
+	}
+	return sum, any
 }
 
 // highest returns the greatest |r|.

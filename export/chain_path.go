@@ -41,6 +41,7 @@ func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitRepo
 	return path, report, nil
 }
 
+// fitPath is closedPath without the name of the job in its errors.
 func fitPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport, error) {
 	o, err := o.check()
 	if err != nil {
@@ -70,13 +71,11 @@ func fitPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport,
 			}
 		}
 	}
-	if p.startsInMiddle(sections) {
+	if p.startsInMiddle(sections, o.MinArc) {
 		path = startInMiddle(path, len(chains[0].Pieces))
 	}
 	report := p.report(sections, chains, gap, path)
-	if report.LinesNeeded, err = p.linesNeeded(sections, o.band()); err != nil {
-		return Path{}, FitReport{}, err
-	}
+	report.LinesNeeded = p.linesNeeded(sections, o.band())
 	return path, report, nil
 }
 

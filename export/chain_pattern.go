@@ -38,25 +38,30 @@ const (
 )
 
 // patternTurn returns the angle by which the pattern turns off the curve at the
-// joint at a place, where each arc does the given work.
+// joint at place u, where each arc does the given work: −κ' h²/12, with κ' from the
+// curvatures at the ends of one arc's length about the joint. Where the curvature
+// is endless at one of them (an involute on its base circle) the same angle is had
+// from the radii of curvature ρ: D by the angle of the normal is ρ' h²/12 there.
 func (w *walk) patternTurn(u, work float64) float64 {
-	h := 0.5 / walkSteps
-	from, to := max(0, u-h), min(1, u+h)
-	for {
-		k0, k1 := w.curve.Curvature(w.parameter(from)), w.curve.Curvature(w.parameter(to))
-		change := (k1 - k0) / w.point(to).Sub(w.point(from)).Norm()
-		if !finite(change) && from == 0 {
-			from = to / 2 // an involute on its base circle
-			continue
-		}
-		if !finite(change) && to == 1 {
-			to = (1 + from) / 2
-			continue
-		}
-		turn := -math.Copysign(math.Cbrt(math.Abs(change)), change) * work * work / 12
-		const most = 0.3 // rad; what the search can do without a better start
-		return max(-most, min(most, turn))
+	if !(w.work() > 0) {
+		return 0
 	}
+	at := between(w.place, w.works, u)
+	first := max(0, min(at-work/2, w.work()-work))
+	from, to := w.placeAtWork(first/w.work()), w.placeAtWork((first+work)/w.work())
+	p, u0 := w.pointAndDirection(from)
+	q, u1 := w.pointAndDirection(to)
+	length, normal := q.Sub(p).Norm(), turn(u0, u1)
+	k0, k1 := w.curve.Curvature(w.parameter(from)), w.curve.Curvature(w.parameter(to))
+	byCurvature := -(k1 - k0) * length / 12
+	byRadius := (1/k1 - 1/k0) * normal * normal / (12 * length)
+	if !(math.Abs(byCurvature) < math.Abs(byRadius)) {
+		byCurvature = byRadius
+	}
+	if !finite(byCurvature) {
+		return 0
+	}
+	return byCurvature
 }
 
 // joints returns the places where the pattern has its joints, both ends of the

@@ -93,13 +93,13 @@ func (p *pitch) sections() []section {
 }
 
 // startsInMiddle reports whether the path starts in the middle of the first
-// section: where that is exact. (A first curve that was left out for its length has
-// its end there.)
-func (p *pitch) startsInMiddle(sections []section) bool {
-	return sections[0].exact && p.numbers[0] == 1
+// section: where that is exact, and its halves are no shorter than an arc may be.
+// (A first curve that was left out for its length has its end there.)
+func (p *pitch) startsInMiddle(sections []section, minArc float64) bool {
+	return sections[0].exact && p.numbers[0] == 1 && (minArc == 0 || roughLength(p.curves[0]) >= 2*minArc)
 }
 
-// run returns the run over the curves of a stretch that starts and stops at
+// run returns the run over the curves of a section that starts and stops at
 // corners where told so, and else in the direction of the exact neighbor; where
 // two runs meet at the ends of the pitch, half way between their directions.
 func (p *pitch) run(s section) *run {

@@ -11,11 +11,28 @@ type fittingSearch struct {
 }
 
 func (s *fittingSearch) residuals(x, out []float64) bool {
-	return s.measure(x, 0, len(s.shares), out)
+	next := 0
+	for k := range s.shares {
+		s.starts[k] = next
+		var ok bool
+		if next, ok = s.measure(x, k, next, len(s.samples), k == len(s.shares)-1, out); !ok {
+			return false
+		}
+	}
+	s.starts[len(s.shares)] = next
+	return true
 }
 
 func (s *fittingSearch) changed(x []float64, i int, out []float64) bool {
-	return s.measure(x, s.numbers[i].from, s.numbers[i].to, out)
+	n := s.numbers[i]
+	next := s.starts[n.from]
+	for k := n.from; k < n.to; k++ {
+		var ok bool
+		if next, ok = s.measure(x, k, next, s.starts[n.to], k == n.to-1, out); !ok {
+			return false
+		}
+	}
+	return true
 }
 
 func (s *fittingSearch) reach(i int) reach {
@@ -75,44 +92,29 @@ func (s *fittingSearch) good(r []float64) bool {
 	return true
 }
 
-// measure fills in the residuals of the spans from ≤ s < to. Over all spans it
-// notes which samples belong to which; over some it keeps to that.
-func (s *fittingSearch) measure(x []float64, from, to int, out []float64) bool {
-	all := from == 0 && to == len(s.shares)
-	next, end := s.starts[from], len(s.samples)
-	if all {
-		next = 0
-	} else {
-		end = s.starts[to]
+// measure fills in the residuals of a span whose first sample is next, and returns
+// the first sample beyond it: beyond the normal at its end, or end where it takes all the rest.
+func (s *fittingSearch) measure(x []float64, span, next, end int, rest bool, out []float64) (int, bool) {
+	pieces, n, ok := s.span(x, span)
+	if !ok {
+		return next, false
 	}
 	aim := s.band.inset()
 	middle, scale := aim.middle(), 1/aim.half()
-	for k := from; k < to; k++ {
-		pieces, n, ok := s.span(x, k)
-		if !ok {
-			return false
+	for i, p := range pieces[:n] {
+		if s.minArc > 0 {
+			out[s.lengthAt(span)+i] = s.minArc / p.length()
 		}
-		if all {
-			s.starts[k] = next
-		}
-		for i, p := range pieces[:n] {
-			if s.minArc > 0 {
-				out[s.lengthAt(k)+i] = s.minArc / p.length()
+		g := newGauge(p)
+		_, dir := p.directions()
+		all := rest && i == n-1
+		for next < end && (all || s.samples[next].Sub(p.To).Dot(dir) < 0) {
+			out[next] = (g.offset(s.samples[next]) - middle) * scale
+			if math.IsNaN(out[next]) {
+				return next, false
 			}
-			last := k == to-1 && i == n-1
-			g := newGauge(p)
-			_, dir := p.directions()
-			for next < end && (last || s.samples[next].Sub(p.To).Dot(dir) < 0) {
-				out[next] = (g.offset(s.samples[next]) - middle) * scale
-				if math.IsNaN(out[next]) {
-					return false
-				}
-				next++
-			}
+			next++
 		}
 	}
-	if all {
-		s.starts[to] = end
-	}
-	return true
+	return next, true
 }

@@ -1,10 +1,6 @@
 package export
 
-import (
-	"math"
-
-	"flankwright/involute"
-)
+import "flankwright/involute"
 
 // strips is the last resort where the search for fewest arcs finds none: biarcs
 // that take up point and direction at even places, doubled in number until they
@@ -40,32 +36,38 @@ func (r *run) strips(b band) (chain, bool) {
 	return chain{}, false
 }
 
-// guide returns the point and direction that strips take up a share along a curve of the run.
+// guide returns the point and direction that strips take up a share along a curve
+// of the run: those of C − c n, where n is the normal to the left and c the way
+// into the band, whose derivative is C′(1 + κc) − c′n.
 func (r *run) guide(curve int, share float64, b band) (p, dir involute.Vec) {
-	all := float64(len(r.walks))
-	place := (float64(curve) + share) / all
-	p, dir = r.walks[curve].pointAndDirection(share)
-	switch {
-	case place == 0:
+	w := r.walks[curve]
+	p, dir = w.pointAndDirection(share)
+	switch last := len(r.walks) - 1; {
+	case share == 0 && curve == 0:
 		return r.start.point, r.start.direction(dir)
-	case place == 1:
+	case share == 1 && curve == last:
 		return r.stop.point, r.stop.direction(dir)
 	case b.middle() == 0:
-		return p, dir
+		return p, dir // a kink between curves stays
+	case share == 0:
+		_, before := r.walks[curve-1].pointAndDirection(1)
+		dir = halfway(before, dir)
+	case share == 1:
+		_, after := r.walks[curve+1].pointAndDirection(0)
+		dir = halfway(dir, after)
 	}
-	rise := func(x float64) float64 { // from 0 to 1 over a quarter, flat at both ends
-		x = min(1, 4*x)
-		return x * x * (3 - 2*x)
-	}
-	offset := func(place float64) involute.Vec {
-		w, u := r.at(place * all)
-		q, d := w.pointAndDirection(u)
-		// The metal is on the left, so the outside of the band is to the right.
-		return q.Sub(d.Left().Scale(b.middle() * rise(min(place, 1-place))))
+	into := func(share float64) float64 {
+		place := (float64(curve) + share) / float64(len(r.walks))
+		x := min(1, 4*min(place, 1-place)) // from 0 to 1 over a quarter of the run, flat at both ends
+		return b.middle() * x * x * (3 - 2*x)
 	}
 	const h = 1e-6
-	d := offset(place + h).Sub(offset(place - h))
-	return offset(place), d.Scale(1 / math.Max(d.Norm(), math.SmallestNonzeroFloat64))
+	from, to := max(0, share-h), min(1, share+h)
+	speed := w.point(to).Sub(w.point(from)).Norm() / (to - from)
+	rise := (into(share+h) - into(share-h)) / (2 * h)
+	c := into(share)
+	d := dir.Scale(speed * (1 + w.curve.Curvature(w.parameter(share))*c)).Sub(dir.Left().Scale(rise))
+	return p.Sub(dir.Left().Scale(c)), d.Scale(1 / d.Norm())
 }
 
 // direction returns the direction the chain has at the end, given the curve's.

@@ -3,11 +3,14 @@ package export
 import (
 	"errors"
 	"fmt"
+	"maps"
 	"math"
 	"math/rand/v2"
 	"os"
+	"runtime"
 	"slices"
 	"strconv"
+	"sync"
 	"testing"
 
 	"flankwright/involute"
@@ -72,6 +75,15 @@ type tally struct {
 	shape, pins, brk              float64 // the worst share of the tolerance, of a pin's allowance, and break, degrees
 }
 
+// add adds what became of others.
+func (s *tally) add(o tally) {
+	s.gears, s.refused, s.drawn, s.pinned = s.gears+o.gears, s.refused+o.refused, s.drawn+o.drawn, s.pinned+o.pinned
+	s.shape, s.pins, s.brk = max(s.shape, o.shape), max(s.pins, o.pins), max(s.brk, o.brk)
+	for r, n := range o.reasons {
+		s.reasons[r] += n
+	}
+}
+
 // Twenty thousand (here three hundred) random gears go the whole way: tooth,
 // outline, arcs, file, read back, measured. Each is refused with a reason or gives
 // a closed, simple contour within its tolerance, whose pins read what the closed
@@ -86,21 +98,28 @@ func TestRandomGearsGoTheWholeWay(t *testing.T) {
 		}
 	}
 	sum := tally{reasons: map[involute.Reason]int{}}
-	for i := range n {
-		j := randomJourney(rand.New(rand.NewPCG(7, uint64(i))))
-		if err := j.travel(&sum); err != nil {
-			t.Errorf("gear %d, %+v: %v", i, j, err)
-		}
+	var mu sync.Mutex
+	var wg sync.WaitGroup
+	workers := runtime.GOMAXPROCS(0)
+	for k := range workers {
+		wg.Go(func() {
+			for i := k; i < n; i += workers {
+				j := randomJourney(rand.New(rand.NewPCG(7, uint64(i))))
+				one := tally{reasons: map[involute.Reason]int{}}
+				err := j.travel(&one)
+				mu.Lock()
+				sum.add(one)
+				mu.Unlock()
+				if err != nil {
+					t.Errorf("gear %d, %+v: %v", i, j, err)
+				}
+			}
+		})
 	}
+	wg.Wait()
 	t.Logf("%d gears: %d refused, %d drawn, %d of them measured over pins; worst shape %.4f of the tolerance, worst pin %.3f of its allowance, largest break %.4f°",
 		sum.gears, sum.refused, sum.drawn, sum.pinned, sum.shape, sum.pins, sum.brk)
-	for _, r := range slices.Sorted(func(yield func(involute.Reason) bool) {
-		for r := range sum.reasons {
-			if !yield(r) {
-				return
-			}
-		}
-	}) {
+	for _, r := range slices.Sorted(maps.Keys(sum.reasons)) {
 		t.Logf("  reason %d: %d", r, sum.reasons[r])
 	}
 	if sum.drawn < n/4 || sum.pinned < n/8 || sum.refused < n/20 {

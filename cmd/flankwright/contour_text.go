@@ -47,7 +47,12 @@ func (r *contours) text(p *page, digits int) []byte {
 	number("  arcs", func(d drawnGear) int { return d.Arcs })
 	number("  lines", func(d drawnGear) int { return d.Lines })
 	number("  on one flank", func(d drawnGear) int { return d.ArcsPerFlank })
-	number("  straight lines would need", func(d drawnGear) int { return d.LinesNeeded })
+	each("  straight lines would need", "", func(d drawnGear) string {
+		if d.LinesNeeded == 0 {
+			return "-" // the tolerance is too coarse for any
+		}
+		return fmt.Sprint(d.LinesNeeded)
+	})
 	length("Greatest deviation from the exact curve", func(d drawnGear) float64 { return d.MaxDeviation })
 	each("  allowed", u.String(), func(d drawnGear) string { return fine(d.Tolerance) })
 	if r.oneSided() {
