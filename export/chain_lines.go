@@ -91,7 +91,7 @@ func (r *run) lineFits(from, to float64, b band, margin float64) bool {
 			continue
 		}
 		top := at[i-1] - rise*rise/(2*bend)
-		if top < b.low+margin || top > b.high-margin {
+		if bend > 0 && top < b.low+margin || bend < 0 && top > b.high-margin {
 			return false
 		}
 	}

@@ -67,7 +67,7 @@ func TestGearsKeepTheirSideByBruteForce(t *testing.T) {
 		}
 		// Arcs come as far off as reported, but for peaks between the points. (Lines do so at
 		// their vertices, which no curve point need be opposite.)
-		if !o.Lines && max(-low, high) < 0.98*r.MaxDeviation-slack {
+		if !o.Lines && max(-low, high) < 0.95*r.MaxDeviation-slack {
 			t.Errorf("%v: by points %.10f to %.10f mm, reported %.10f", o, low, high, r.MaxDeviation)
 		}
 	})
@@ -280,6 +280,25 @@ func TestFitOptionsRefuse(t *testing.T) {
 		}
 		if err == nil || !strings.Contains(err.Error(), tt.say) {
 			t.Errorf("%s: %v; want an error with %q", name, err, tt.say)
+		}
+	}
+}
+
+// Where a linear relief starts the flank breaks by up to some degrees. The chain
+// goes round it within the band and breaks nowhere; corners are at the tips alone.
+func TestChainGoesRoundTheStartOfARelief(t *testing.T) {
+	for _, amount := range []float64{0.002, 0.01, 0.02, 0.05} { // on 1.1 mm: up to 2.6°
+		tt := tooth(t, involute.Spec{Teeth: 24, Module: 2, Rack: isoA(), Relief: involute.ReliefSpec{Amount: amount, Start: 50}}, 0)
+		for _, side := range []Side{Both, Outside, Inside} {
+			for _, tol := range []float64{0.001, 0.0025, 0.01} {
+				_, r, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: tol, Side: side}})
+				if err != nil {
+					t.Fatal(err)
+				}
+				if r.MaxTangentBreakDeg > 0.01 || r.Corners != 2*24 || r.MaxDeviation > tol {
+					t.Errorf("relief %g, %v ±%g: %+v", amount, side, tol, r)
+				}
+			}
 		}
 	}
 }

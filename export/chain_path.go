@@ -33,8 +33,21 @@ const (
 // starts in the middle of the first curve if that is an arc or a line, and at
 // its start otherwise: give the pitch from its root land on and the path starts
 // in the center of a root, where a lead-in does no harm.
+//
+// A chain may by chance hold a piece too short for a file; then one within a
+// little less of the tolerance is taken.
 func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport, error) {
 	path, report, err := fitPath(curves, count, o)
+	for _, share := range []float64{0.97, 0.9, 0.8} {
+		if err != nil || path.check() == nil {
+			break
+		}
+		closer := o
+		closer.Tolerance *= share
+		if again, other, err := fitPath(curves, count, closer); err == nil {
+			path, report = again, other
+		}
+	}
 	if err != nil {
 		return Path{}, FitReport{}, fmt.Errorf("closed path: %w", err)
 	}
@@ -54,6 +67,7 @@ func fitPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport,
 	if err != nil {
 		return Path{}, FitReport{}, err
 	}
+	p.oneSided = o.Side != Both
 	sections := p.sections()
 	chains, err := p.chains(sections, func(s section, r *run) (chain, error) { return p.fit(s, r, o) })
 	if err != nil {

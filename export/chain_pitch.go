@@ -20,6 +20,8 @@ type pitch struct {
 	numbers []int   // of the curves in the outline they came from, from 1
 	count   int     // pitches round the gear
 	step    float64 // by which the pitch repeats, radians
+
+	oneSided bool // the band lies to one side of the curves
 }
 
 // newPitch measures the curves that are long enough to keep.
@@ -49,10 +51,15 @@ func plain(c involute.Curve) involute.Curve {
 	return c
 }
 
-// exact reports whether curve i is a line or an arc.
+// exact reports whether curve i is a line or an arc that passes as it is. The
+// radial line below the base circle does not where the band lies to one side: the
+// involute leaves it with boundless curvature, which no tangent arc can follow
+// on the inside, so the line has to give way too.
 func (p *pitch) exact(i int) bool {
 	switch plain(p.curves[i]).(type) {
-	case involute.Line, involute.Arc:
+	case involute.Line:
+		return !p.oneSided || role(p.curves[i]) != involute.RootFillet
+	case involute.Arc:
 		return true
 	}
 	return false
@@ -72,10 +79,26 @@ func (p *pitch) directionsAt(i int) (before, after involute.Vec) {
 	return before, after
 }
 
-// corner reports whether the outline turns at the start of curve i.
+// corner reports whether the outline has a corner at the start of curve i. Where a
+// flank breaks into its relief none is meant: the chain goes round the break.
 func (p *pitch) corner(i int) bool {
 	before, after := p.directionsAt(i)
-	return math.Abs(turn(before, after)) > cornerAngle
+	angle := math.Abs(turn(before, after))
+	if p.reliefStarts(i) {
+		return angle > reliefBreak
+	}
+	return angle > cornerAngle
+}
+
+// reliefBreak is the break at the start of a relief up to which the chain goes
+// round it. The largest that a gear may have is some 15°; usual ones are 0.1° to 2°.
+const reliefBreak = 5 * math.Pi / 180
+
+// reliefStarts reports whether curve i and the one before are a flank and its relief.
+func (p *pitch) reliefStarts(i int) bool {
+	n := len(p.curves)
+	a, b := role(p.curves[(i+n-1)%n]), role(p.curves[i%n])
+	return a == involute.ToothFlank && b == involute.ToothRelief || a == involute.ToothRelief && b == involute.ToothFlank
 }
 
 // sections cuts the pitch up.

@@ -120,12 +120,22 @@ func directions(c involute.Curve) (start, end involute.Vec) {
 const flankCorner = 5 * involute.Degree
 
 // flankRun returns the pieces of flank i from end to end in the order of the
-// path: on both sides of the middle circle up to a corner or a hollow piece.
+// path: on both sides of the middle circle up to a corner, a hollow piece, or one
+// that no longer runs outward (inward) as the flank does.
 func (s Section) flankRun(i int) []involute.Curve {
 	n := len(s.curves)
 	at := func(j int) involute.Curve { return s.curves[((j%n)+n)%n] }
+	rise := func(c involute.Curve) float64 {
+		a, _ := c.At(0)
+		b, _ := c.At(1)
+		return b.Norm() - a.Norm()
+	}
+	sense := math.Copysign(1, rise(at(s.flankAt(i).piece)))
 	belongs := func(before, after, next involute.Curve) bool {
 		arc, ok := next.(involute.Arc)
+		if sense*rise(next) < minPiece {
+			return false
+		}
 		_, end := directions(before)
 		start, _ := directions(after)
 		return (!ok || arc.Sweep > 0) && math.Abs(turn(end, start)) < flankCorner
@@ -143,4 +153,42 @@ func (s Section) flankRun(i int) []involute.Curve {
 		out = append(out, at(j))
 	}
 	return out
+}
+
+// within returns what of a flank's pieces lies between two distances from the
+// axis, mm; all of it where nothing does. Along a flank the distance rises or falls.
+func within(pieces []involute.Curve, inner, outer float64) []involute.Curve {
+	var out []involute.Curve
+	for _, c := range pieces {
+		from, to := 0.0, 1.0
+		for _, limit := range []float64{inner, outer} {
+			t, err := involute.FindRoot(func(t float64) float64 { q, _ := c.At(t); return q.Norm() - limit }, from, to)
+			if err != nil {
+				continue // it does not cross the limit
+			}
+			if q, _ := c.At((from + t) / 2); q.Norm() >= inner && q.Norm() <= outer {
+				to = t
+			} else {
+				from = t
+			}
+		}
+		if q, _ := c.At((from + to) / 2); q.Norm() >= inner && q.Norm() <= outer && to > from {
+			out = append(out, part(c, from, to))
+		}
+	}
+	if len(out) == 0 {
+		return pieces
+	}
+	return out
+}
+
+// part returns the part of a line or an arc between two shares of it.
+func part(c involute.Curve, from, to float64) involute.Curve {
+	if arc, ok := c.(involute.Arc); ok {
+		arc.Start, arc.Sweep = arc.Start+from*arc.Sweep, (to-from)*arc.Sweep
+		return arc
+	}
+	a, _ := c.At(from)
+	b, _ := c.At(to)
+	return involute.Line{From: a, To: b}
 }

@@ -26,14 +26,17 @@ import (
 // apart, whichever way the gear is turned; the least over τ is the span, normal
 // to the flanks like involute.Tooth.Span. An error says that the faces, set
 // opposite each other, do not find flanks to lie on.
-func (s Section) Span(k int) (least, greatest float64, err error) {
+//
+// A flank counts between two distances from the axis (mm; 0 and +Inf for all of it):
+// radial lines below, a relief or a rounding above run on without a corner.
+func (s Section) Span(k int, from, to float64) (least, greatest float64, err error) {
 	z := s.Teeth()
 	if k < 1 || k >= z {
 		return 0, 0, fmt.Errorf("contour: a span is measured over 1 to %d of %d teeth, not over %d", z-1, z, k)
 	}
 	least = math.Inf(1)
 	for i := range z {
-		w, err := s.spanFrom(i, k)
+		w, err := s.spanFrom(i, k, from, to)
 		if err != nil {
 			return 0, 0, err
 		}
@@ -43,13 +46,13 @@ func (s Section) Span(k int) (least, greatest float64, err error) {
 }
 
 // spanFrom returns the reading over k teeth from tooth i on.
-func (s Section) spanFrom(i, k int) (float64, error) {
+func (s Section) spanFrom(i, k int, inner, outer float64) (float64, error) {
 	last := s.flankAt(2*(i+k-1) + 1)
 	first := s.flankAt(2 * i)
 	// Straight across the middle of the group.
 	across := first.angle + ahead(first.angle, last.angle)/2 + math.Pi/2
-	far := newFace(s.flankRun(2*(i+k-1)+1), across)
-	near := newFace(s.flankRun(2*i), across-math.Pi)
+	far := newFace(within(s.flankRun(2*(i+k-1)+1), inner, outer), across)
+	near := newFace(within(s.flankRun(2*i), inner, outer), across-math.Pi)
 	if far.low > far.top || near.low > near.top { // more than half a turn from facing each other
 		return 0, fmt.Errorf("contour: over %d teeth the faces would touch no flanks: measure over fewer teeth", k)
 	}

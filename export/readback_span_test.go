@@ -48,7 +48,7 @@ func TestSpanOfContour(t *testing.T) {
 		tt := tooth(t, c.spec, 0)
 		for _, tolerance := range []float64{1e-5, 0.001, 0.0025} {
 			s, report := drawn(t, tt, tolerance)
-			least, greatest, err := s.Span(c.teeth)
+			least, greatest, err := s.Span(c.teeth, 0, math.Inf(1))
 			if err != nil {
 				t.Errorf("%s: %v", c.name, err)
 				continue
@@ -81,7 +81,7 @@ func TestSpanWithoutContact(t *testing.T) {
 		{helical, 1, "more"}, {helical, 8, "fewer"}, {helical, 16, "fewer"}, {helical, 22, "fewer"}, {helical, 23, "fewer"},
 	} {
 		s, _ := drawn(t, c.tooth, 1e-5) // a coarse chain's own ends lie a little off
-		_, _, err := s.Span(c.teeth)
+		_, _, err := s.Span(c.teeth, 0, math.Inf(1))
 		if (err == nil) != (c.want == "") || (err != nil && !strings.Contains(err.Error(), c.want)) {
 			t.Errorf("%d of %d teeth: %v, want %q", c.teeth, c.tooth.Teeth(), err, c.want)
 		}
@@ -123,7 +123,7 @@ func TestSpanByBruteForce(t *testing.T) {
 	} {
 		tt := tooth(t, c.spec, 0.02)
 		s, _ := drawn(t, tt, 0.01)
-		got, _, err := s.Span(c.teeth)
+		got, _, err := s.Span(c.teeth, 0, math.Inf(1))
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -198,7 +198,7 @@ func (j *job) measureSpan(d *drawnGear) []string {
 	if err != nil || len(m.Faults(d.tooth, inspect.Part{})) > 0 {
 		return nil
 	}
-	least, most, err := d.read.Span(m.Teeth)
+	least, most, err := d.read.Span(m.Teeth, d.tooth.FormDiameter()/2, d.tooth.InvoluteEndDiameter()/2)
 	if err != nil {
 		return nil // the faces rest on a corner of the drawing; the shape is judged already
 	}
