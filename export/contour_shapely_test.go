@@ -89,6 +89,9 @@ func TestShapelyMeasuresContours(t *testing.T) {
 		{"full radius", involute.Spec{Teeth: 30, Module: 1, Rack: fullRadius()}, 0.05, 0.0025, 8, 0, FormatDXFR12},
 		{"big", involute.Spec{Teeth: 60, Module: 10, Rack: isoA()}, 0.2, 0.01, 80, 22, FormatDXF},
 		{"shifted, chamfered", involute.Spec{Teeth: 13, Module: 3, Shift: 0.5, TipChamfer: 0.2, Rack: isoA()}, 0.05, 0.005, 10, 3, FormatDXFR12},
+		{"milled, rounded", involute.Spec{Teeth: 16, Module: 2, Shift: 0.3, TipRound: 0.2, Mill: involute.MillSpec{Diameter: 1.2}, Rack: isoA()}, 0.04, 0.0025, 12, 4, FormatDXF},
+		{"one milled arc", involute.Spec{Teeth: 45, Module: 2, Mill: involute.MillSpec{Diameter: 3}, Rack: isoA()}, 0.04, 0.0025, 12, 4, FormatDXF},
+		{"relieved, flanks moved", involute.Spec{Teeth: 24, Module: 2, Relief: involute.ReliefSpec{Amount: 0.02, Start: 50}, Thinning: involute.FlanksOnly, Rack: isoA()}, 0.1, 0.0025, 12, 4, FormatDXFR12},
 		{"helical", involute.Spec{Teeth: 20, Module: 2, Helix: 30 * involute.Degree, Rack: isoA()}, 0.05, 0.0025, 10, 0, FormatDXF},
 	} {
 		t.Run(c.name, func(t *testing.T) {

@@ -51,10 +51,23 @@ func outsideOutlines(t *testing.T) map[string]Outline {
 		"tiny":     {Tooth: tooth(t, involute.Spec{Teeth: 20, Module: 0.1, Rack: isoA()}, 0.003), Fit: FitOptions{Tolerance: 0.0002}, Bore: 0.6},
 		"inch": {Tooth: tooth(t, involute.Spec{Teeth: 18, Module: 25.4 / 8, TipChamfer: 0.2, Rack: fullRadius()}, 0.1), Fit: FitOptions{Tolerance: 0.0025},
 			Bore: 25.4, KeyWidth: 6.35, KeyDepth: 3.2, Unit: inspect.Inch},
+		"rough": {Tooth: tooth(t, involute.Spec{Teeth: 20, Module: 2, Rack: isoA()}, 0), Fit: FitOptions{Tolerance: 0.0025}, Stock: 0.4},
+		"lines": {Tooth: tooth(t, involute.Spec{Teeth: 15, Module: 2, Shift: 0.2, Rack: isoA()}, 0), Fit: FitOptions{Tolerance: 0.01, Lines: true}},
+		"milled": {Tooth: tooth(t, involute.Spec{Teeth: 16, Module: 2, Shift: 0.3, Rack: isoA(), TipRound: 0.2, Mill: involute.MillSpec{Diameter: 1.2}}, 0.04),
+			Fit: FitOptions{Tolerance: 0.0025, Side: Outside}, Bore: 12, KeyWidth: 4, KeyDepth: 1.8, Pin: 3.5},
+		"relieved": {Tooth: tooth(t, involute.Spec{Teeth: 40, Module: 2, Rack: isoA(), Relief: involute.ReliefSpec{Amount: 0.02, Start: 82}}, 0.04),
+			Fit: FitOptions{Tolerance: 0.0025, Side: Inside}, Bore: 25, Bolts: BoltCircle{Diameter: 50, Holes: 5, Hole: 6, Start: 0.1}, Hub: 40},
 	} {
 		s.Title = name
 		all[name], _ = fitted(t, s)
 	}
+	pair, _, err := NewMeshContour(MeshSpec{Center: 35,
+		First:  ContourSpec{Tooth: tooth(t, involute.Spec{Teeth: 14, Module: 2, Rack: isoA()}, 0.05), Fit: FitOptions{Tolerance: 0.0025}, Bore: 8, KeyWidth: 3, KeyDepth: 1.4},
+		Second: ContourSpec{Tooth: tooth(t, involute.Spec{Teeth: 21, Module: 2, Rack: isoA()}, 0.05), Fit: FitOptions{Tolerance: 0.0025}, Bore: 10, Pin: 3.5}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	all["pair"] = pair
 
 	// A plate with holes of any shape, on both layers that are cut, some of them clockwise.
 	slots := Outline{Contours: []Contour{{LayerCut, vertices(-50, -40, 0, 50, -40, 0, 50, 40, 0.3, -50, 40, 0)}}}

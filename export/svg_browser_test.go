@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"math"
+	"slices"
 	"testing"
 
 	"flankwright/inspect"
@@ -87,7 +88,8 @@ func checkBrowser(t *testing.T, got browserReading, o Outline) {
 		}
 		return s.Length
 	}
-	for _, layer := range []Layer{LayerReference, LayerBore, LayerCut} { // as the file has them
+	for _, l := range slices.Backward(allLayers()) { // as the file has them
+		layer := l.name
 		for _, c := range f.Contours {
 			if c.Layer != layer {
 				continue
