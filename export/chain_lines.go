@@ -179,6 +179,7 @@ func (r *run) lines(b band) (chain, error) {
 			if err != nil {
 				return chain{}, err
 			}
+			places = r.apart(places, b)
 			r.evenOut(places)
 			if ch, ok := r.lineChain(places, b); ok && ch.keeps(b, r.size) {
 				return ch, nil
@@ -186,6 +187,20 @@ func (r *run) lines(b band) (chain, error) {
 		}
 	}
 	return chain{}, fmt.Errorf("straight lines do not keep along the curve within %.3g mm", max(b.high, -b.low))
+}
+
+// apart leaves out places whose vertices lie closer together than a curve that is kept.
+func (r *run) apart(places []float64, b band) []float64 {
+	out := places[:1]
+	for _, place := range places[1:] {
+		last := len(out) - 1
+		if r.vertex(place, b).Sub(r.vertex(out[last], b)).Norm() >= negligible {
+			out = append(out, place)
+		} else if last > 0 && place >= r.last() {
+			out[last] = place // the end stays
+		}
+	}
+	return out
 }
 
 // evenOut makes the places symmetric where the run is its own mirror image, as the lands are.
