@@ -2,8 +2,10 @@ package main
 
 import (
 	"fmt"
+	"slices"
 
 	"flankwright/export"
+	"flankwright/inspect"
 )
 
 // contours is the result of the command, as JSON writes it.
@@ -18,61 +20,22 @@ type contours struct {
 
 // text prints the contours: file, pieces, deviation, measured against target.
 func (r *contours) text(p *page, digits int) []byte {
-	u := r.job.display
-	fine := func(mm float64) string { return u.Format(mm, digits+2) }
-	g := grid{}
-	each := func(label, unit string, cell func(d drawnGear) string) {
-		var cells []string
-		for _, d := range r.gears {
-			cells = append(cells, cell(d))
-		}
-		g.row(label, unit, cells...)
-	}
+	t := &contourTable{gears: r.gears, unit: r.job.display, digits: digits + 2}
 	last := ""
 	for _, d := range r.gears {
-		g.heads = append(g.heads, d.name)
-		if file := d.File; file != last {
-			p.line("%s", file)
-			last = file
+		t.heads = append(t.heads, d.name)
+		if d.File != last {
+			p.line("%s", d.File)
+			last = d.File
 		}
 	}
 	p.blank()
-	number := func(label string, pick func(d drawnGear) int) {
-		each(label, "", func(d drawnGear) string { return fmt.Sprint(pick(d)) })
-	}
-	length := func(label string, pick func(d drawnGear) float64) {
-		each(label, u.String(), func(d drawnGear) string { return fine(pick(d)) })
-	}
-	number("Pieces", func(d drawnGear) int { return d.Segments })
-	number("  arcs", func(d drawnGear) int { return d.Arcs })
-	number("  lines", func(d drawnGear) int { return d.Lines })
-	number("  on one flank", func(d drawnGear) int { return d.ArcsPerFlank })
-	each("  straight lines would need", "", func(d drawnGear) string {
-		if d.LinesNeeded == 0 {
-			return "-" // the tolerance is too coarse for any
-		}
-		return fmt.Sprint(d.LinesNeeded)
-	})
-	length("Greatest deviation from the exact curve", func(d drawnGear) float64 { return d.MaxDeviation })
-	each("  allowed", u.String(), func(d drawnGear) string { return fine(d.Tolerance) })
-	if r.oneSided() {
-		each("  to the side", "", func(d drawnGear) string { return d.Side })
-	}
-	each("Largest tangent break", "deg", func(d drawnGear) string { return fmt.Sprintf("%.4f", d.TangentBreak) })
-	if r.arcs() {
-		length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
-		length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
-		length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
-	}
-	if r.rough() {
-		length("Stock left on", func(d drawnGear) float64 { return d.Stock })
-	}
-	length("Tooth thickness drawn, normal", func(d drawnGear) float64 { return d.Thickness })
-	r.measured(&g, each, u.String(), fine)
-	p.grid(g)
+	r.pieces(t)
+	r.measured(t)
+	p.grid(t.grid)
 	for _, m := range r.Meshes {
 		p.blank()
-		p.grid(m.grid(u.String(), fine))
+		p.grid(m.grid(t))
 	}
 	for _, d := range r.gears {
 		if d.Section == "transverse" {
@@ -85,106 +48,128 @@ func (r *contours) text(p *page, digits int) []byte {
 	return []byte(p.b.String())
 }
 
-// oneSided reports whether a tolerance was to one side.
-func (r *contours) oneSided() bool {
-	for _, d := range r.gears {
-		if d.Side != export.Both.String() {
-			return true
-		}
-	}
-	return false
+// A contourTable is a table with a column for each gear.
+type contourTable struct {
+	grid
+	gears  []drawnGear
+	unit   inspect.Unit
+	digits int
 }
 
-// arcs reports whether there are arcs at all.
-func (r *contours) arcs() bool {
-	for _, d := range r.gears {
-		if d.Arcs > 0 {
-			return true
-		}
+func (t *contourTable) fine(mm float64) string { return t.unit.Format(mm, t.digits) }
+
+// each adds a row.
+func (t *contourTable) each(label, unit string, cell func(d drawnGear) string) {
+	var cells []string
+	for _, d := range t.gears {
+		cells = append(cells, cell(d))
 	}
-	return false
+	t.row(label, unit, cells...)
 }
 
-// rough reports whether stock was left on.
-func (r *contours) rough() bool {
-	for _, d := range r.gears {
-		if d.Stock > 0 {
-			return true
-		}
-	}
-	return false
+func (t *contourTable) count(label string, pick func(d drawnGear) int) {
+	t.each(label, "", func(d drawnGear) string { return fmt.Sprint(pick(d)) })
 }
 
-// grid shows what the two contours of a mesh do when they roll together.
-func (m rolledMesh) grid(unit string, fine func(float64) string) grid {
-	g := grid{heads: []string{"as drawn", "exact teeth"}}
-	g.section(m.Gears[0] + " and " + m.Gears[1] + ", rolled through one pitch at center distance " + fine(m.Center))
-	w, t := m.AsWritten, m.Target
-	g.row("Backlash, circumferential, least", unit, fine(w.Backlash.Min), fine(t.Backlash))
-	g.row("  most", unit, fine(w.Backlash.Max), fine(t.Backlash))
-	g.row("Transmission error by the arcs, peak to peak", unit, fine(w.Transmission), fine(0))
-	g.row("Least clearance between flanks, teeth centered", unit, fine(w.Flank), "")
-	g.row("Tip clearance of "+m.Gears[0], unit, fine(w.Tip.First), fine(t.Tip.First))
-	g.row("  of "+m.Gears[1], unit, fine(w.Tip.Second), fine(t.Tip.Second))
-	g.row("The teeth overlap", "", yesNo(w.Interferes), yesNo(t.Backlash < 0))
-	return g
+func (t *contourTable) length(label string, pick func(d drawnGear) float64) {
+	t.each(label, t.unit.String(), func(d drawnGear) string { return t.fine(pick(d)) })
+}
+
+// maybe adds a row of lengths that not every gear has.
+func (t *contourTable) maybe(label string, pick func(w *asWritten) *float64) {
+	t.each(label, t.unit.String(), func(d drawnGear) string {
+		if v := pick(d.AsWritten); v != nil {
+			return t.fine(*v)
+		}
+		return "-"
+	})
+}
+
+// any reports whether it holds of one of the gears.
+func (t *contourTable) any(holds func(d drawnGear) bool) bool { return slices.ContainsFunc(t.gears, holds) }
+
+// pieces adds what the contours are made of.
+func (r *contours) pieces(t *contourTable) {
+	t.count("Pieces", func(d drawnGear) int { return d.Segments })
+	t.count("  arcs", func(d drawnGear) int { return d.Arcs })
+	t.count("  lines", func(d drawnGear) int { return d.Lines })
+	t.count("  on one flank", func(d drawnGear) int { return d.ArcsPerFlank })
+	t.each("  straight lines would need", "", func(d drawnGear) string {
+		if d.LinesNeeded == 0 {
+			return "-" // the tolerance is too coarse for any
+		}
+		return fmt.Sprint(d.LinesNeeded)
+	})
+	t.length("Greatest deviation from the exact curve", func(d drawnGear) float64 { return d.MaxDeviation })
+	t.length("  allowed", func(d drawnGear) float64 { return d.Tolerance })
+	if t.any(func(d drawnGear) bool { return d.Side != export.Both.String() }) {
+		t.each("  to the side", "", func(d drawnGear) string { return d.Side })
+	}
+	t.each("Largest tangent break", "deg", func(d drawnGear) string { return fmt.Sprintf("%.4f", d.TangentBreak) })
+	if t.any(func(d drawnGear) bool { return d.Arcs > 0 }) {
+		t.length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
+		t.length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
+		t.length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
+	}
+	if t.any(func(d drawnGear) bool { return d.Stock > 0 }) {
+		t.length("Stock left on", func(d drawnGear) float64 { return d.Stock })
+	}
+	t.length("Tooth thickness drawn, normal", func(d drawnGear) float64 { return d.Thickness })
 }
 
 // measured adds what was measured on the files: the shape, over pins, and over a span.
-func (r *contours) measured(g *grid, each func(label, unit string, cell func(drawnGear) string), unit string, fine func(float64) string) {
-	square := r.job.display.MM() * r.job.display.MM()
-	g.section("Measured on the file")
-	each("Greatest deviation from the exact shape", unit, func(d drawnGear) string { return fine(d.AsWritten.Shape) })
-	number := func(label string, pick func(w *asWritten) *float64) {
-		each(label, unit, func(d drawnGear) string {
-			if v := pick(d.AsWritten); v != nil {
-				return fine(*v)
-			}
-			return "-"
-		})
-	}
-	if r.any(func(w *asWritten) bool { return w.Pin != nil }) {
-		number("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
-		number("  target", func(w *asWritten) *float64 { return w.Target })
-		number("  as written", func(w *asWritten) *float64 { return w.OverPins })
-		number("  difference", func(w *asWritten) *float64 { return w.Difference })
-		each("  within the limits", "", func(d drawnGear) string {
+func (r *contours) measured(t *contourTable) {
+	t.section("Measured on the file")
+	t.length("Greatest deviation from the exact shape", func(d drawnGear) float64 { return d.AsWritten.Shape })
+	if t.any(func(d drawnGear) bool { return d.AsWritten.Pin != nil }) {
+		t.maybe("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
+		t.maybe("  target", func(w *asWritten) *float64 { return w.Target })
+		t.maybe("  as written", func(w *asWritten) *float64 { return w.OverPins })
+		t.maybe("  difference", func(w *asWritten) *float64 { return w.Difference })
+		t.each("  within the limits", "", func(d drawnGear) string {
 			if d.AsWritten.Within == nil {
 				return "no limits"
 			}
 			return yesNo(*d.AsWritten.Within)
 		})
 	}
-	if r.any(func(w *asWritten) bool { return w.SpanTeeth != nil }) {
-		each("Span over teeth", "", func(d drawnGear) string {
+	if t.any(func(d drawnGear) bool { return d.AsWritten.SpanTeeth != nil }) {
+		t.each("Span over teeth", "", func(d drawnGear) string {
 			if d.AsWritten.SpanTeeth == nil {
 				return "-"
 			}
 			return fmt.Sprint(*d.AsWritten.SpanTeeth)
 		})
-		number("  target", func(w *asWritten) *float64 { return w.SpanTarget })
-		number("  as written", func(w *asWritten) *float64 { return w.Span })
-		number("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
+		t.maybe("  target", func(w *asWritten) *float64 { return w.SpanTarget })
+		t.maybe("  as written", func(w *asWritten) *float64 { return w.Span })
+		t.maybe("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
 	}
-	always := func(label, unit string, show func(w *asWritten) string) {
-		each(label, unit, func(d drawnGear) string { return show(d.AsWritten) })
+	t.length("Least radius", func(d drawnGear) float64 { return d.AsWritten.LeastRadius })
+	t.length("Greatest radius", func(d drawnGear) float64 { return d.AsWritten.GreatestRadius })
+	t.length("Greatest gap between pieces", func(d drawnGear) float64 { return d.AsWritten.Gap })
+	t.length("Tooth to tooth", func(d drawnGear) float64 { return d.AsWritten.Unevenness })
+	square := t.unit.MM() * t.unit.MM()
+	area := func(label string, pick func(w *asWritten) float64) {
+		t.each(label, t.unit.String()+"²", func(d drawnGear) string { return fmt.Sprintf("%.4f", pick(d.AsWritten)/square) })
 	}
-	always("Least radius", unit, func(w *asWritten) string { return fine(w.LeastRadius) })
-	always("Greatest radius", unit, func(w *asWritten) string { return fine(w.GreatestRadius) })
-	always("Greatest gap between pieces", unit, func(w *asWritten) string { return fine(w.Gap) })
-	always("Tooth to tooth", unit, func(w *asWritten) string { return fine(w.Unevenness) })
-	always("Area", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.Area/square) })
-	always("  of the exact shape", unit+"²", func(w *asWritten) string { return fmt.Sprintf("%.4f", w.AreaExact/square) })
+	area("Area", func(w *asWritten) float64 { return w.Area })
+	area("  of the exact shape", func(w *asWritten) float64 { return w.AreaExact })
 }
 
-// any reports whether something was measured on one of the files.
-func (r *contours) any(has func(w *asWritten) bool) bool {
-	for _, d := range r.gears {
-		if has(d.AsWritten) {
-			return true
-		}
-	}
-	return false
+// grid shows what the two contours of a mesh do when they roll together.
+func (m rolledMesh) grid(t *contourTable) grid {
+	g := grid{heads: []string{"as drawn", "exact teeth"}}
+	unit, fine := t.unit.String(), t.fine
+	g.section(m.Gears[0] + " and " + m.Gears[1] + ", rolled through one pitch at center distance " + fine(m.Center))
+	w, aim := m.AsWritten, m.Target
+	g.row("Backlash, circumferential, least", unit, fine(w.Backlash.Min), fine(aim.Backlash))
+	g.row("  most", unit, fine(w.Backlash.Max), fine(aim.Backlash))
+	g.row("Transmission error by the arcs, peak to peak", unit, fine(w.Transmission), fine(0))
+	g.row("Least clearance between flanks, teeth centered", unit, fine(w.Flank), "")
+	g.row("Tip clearance of "+m.Gears[0], unit, fine(w.Tip.First), fine(aim.Tip.First))
+	g.row("  of "+m.Gears[1], unit, fine(w.Tip.Second), fine(aim.Tip.Second))
+	g.row("The teeth overlap", "", yesNo(w.Interferes), yesNo(aim.Backlash < 0))
+	return g
 }
 
 func kinds(gears []drawnGear) string {
