@@ -156,25 +156,31 @@ func (s Section) flankRun(i int) []involute.Curve {
 }
 
 // within returns what of a flank's pieces lies between two distances from the
-// axis, mm; all of it where nothing does. Along a flank the distance rises or falls.
+// axis, mm; all of it where nothing does. Along a flank the distance rises or
+// falls, so each limit is crossed once; an end nearer to it than the finest length
+// in a file lies on it.
 func within(pieces []involute.Curve, inner, outer float64) []involute.Curve {
 	var out []involute.Curve
 	for _, c := range pieces {
+		radius := func(t float64) float64 { q, _ := c.At(t); return q.Norm() }
 		from, to := 0.0, 1.0
-		for _, limit := range []float64{inner, outer} {
-			t, err := involute.FindRoot(func(t float64) float64 { q, _ := c.At(t); return q.Norm() - limit }, from, to)
-			if err != nil {
-				continue // it does not cross the limit
-			}
-			if q, _ := c.At((from + t) / 2); q.Norm() >= inner && q.Norm() <= outer {
-				to = t
-			} else {
+		if radius(0) > radius(1) {
+			from, to = 1, 0
+		} // from the inner end to the outer one
+		if radius(to) < inner+minPiece || radius(from) > outer-minPiece {
+			continue
+		}
+		if radius(from) < inner-minPiece {
+			if t, err := involute.FindRoot(func(t float64) float64 { return radius(t) - inner }, 0, 1); err == nil {
 				from = t
 			}
 		}
-		if q, _ := c.At((from + to) / 2); q.Norm() >= inner && q.Norm() <= outer && to > from {
-			out = append(out, part(c, from, to))
+		if radius(to) > outer+minPiece {
+			if t, err := involute.FindRoot(func(t float64) float64 { return radius(t) - outer }, 0, 1); err == nil {
+				to = t
+			}
 		}
+		out = append(out, part(c, min(from, to), max(from, to)))
 	}
 	if len(out) == 0 {
 		return pieces

@@ -186,3 +186,23 @@ func bruteTilted(far, near []involute.Vec, across, twist, baseHelix float64) flo
 	}, -baseHelix-0.05, -baseHelix+0.05)
 	return -low
 }
+
+// Told where the flanks end, the faces read the same: on gears of all sizes, whose
+// tip corners lie on the limit to within rounding.
+func TestSpanBetweenTheEndsOfTheFlanks(t *testing.T) {
+	for z := 8; z <= 70; z++ {
+		for _, mill := range []float64{0, 1.5} {
+			spec := involute.Spec{Teeth: z, Module: 2, Shift: 0.2, Rack: isoA(), Mill: involute.MillSpec{Diameter: mill}}
+			if z%3 == 0 {
+				spec.TipRound = 0.2
+			}
+			tt := tooth(t, spec, 0.03)
+			s, report := drawn(t, tt, 0.0025)
+			k := int(math.Round(tt.IdealSpanTeeth()))
+			least, greatest, err := s.Span(k, tt.FormDiameter()/2, tt.InvoluteEndDiameter()/2)
+			if want := tt.Span(k); err != nil || max(want-least, greatest-want) > 2*report.MaxDeviation+1e-6 {
+				t.Errorf("z %d, mill %g: %.6f to %.6f over %d teeth, want %.6f; %v", z, mill, least, greatest, k, want, err)
+			}
+		}
+	}
+}

@@ -86,7 +86,9 @@ func (t *contourTable) maybe(label string, pick func(w *asWritten) *float64) {
 }
 
 // any reports whether it holds of one of the gears.
-func (t *contourTable) any(holds func(d drawnGear) bool) bool { return slices.ContainsFunc(t.gears, holds) }
+func (t *contourTable) any(holds func(d drawnGear) bool) bool {
+	return slices.ContainsFunc(t.gears, holds)
+}
 
 // pieces adds what the contours are made of.
 func (r *contours) pieces(t *contourTable) {
