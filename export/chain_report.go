@@ -18,6 +18,7 @@ type FitReport struct {
 	Corners               int     // joints that stay corners of the outline (tooth tips)
 	ShortestArc           float64 // mm, along it; 0 without arcs
 	MinRadius, MaxRadius  float64 // mm; 0 without arcs
+	MinHollow             float64 // the smallest radius of a hollow arc, which a cutter has to follow, mm; 0 at a hollow corner
 	LinesNeeded           int     // straight lines that the same tolerance would take
 	ArcsPerFlank          int     // pieces on one flank
 	ArcsPerFillet         int     // pieces on one fillet
@@ -80,7 +81,7 @@ func (r *FitReport) judgeJoints(p *pitch, sections []section, chains []chain) {
 
 // countPieces counts and measures the pieces of the whole path.
 func (r *FitReport) countPieces(path Path) {
-	r.Segments = len(path.Vertices)
+	r.Segments, r.MinHollow = len(path.Vertices), path.minHollow()
 	for i := range path.Vertices {
 		from, to, b := path.ends(i)
 		if b == 0 {
@@ -100,7 +101,7 @@ func (r *FitReport) countPieces(path Path) {
 
 // recount counts the pieces of another path made of this one.
 func (r *FitReport) recount(path Path) {
-	r.Segments, r.Arcs, r.Lines, r.ShortestArc, r.MinRadius, r.MaxRadius = 0, 0, 0, 0, 0, 0
+	r.Arcs, r.Lines, r.ShortestArc, r.MinRadius, r.MaxRadius, r.LinesNeeded = 0, 0, 0, 0, 0, 0
 	r.countPieces(path)
 }
 
@@ -109,4 +110,24 @@ func (p Path) Pieces() FitReport {
 	var r FitReport
 	r.countPieces(p)
 	return r
+}
+
+// minHollow returns the smallest radius at which the path turns to the right, away
+// from the metal: 0 where it has a corner of more than 1° there, +Inf where it
+// never does.
+func (p Path) minHollow() float64 {
+	least := math.Inf(1)
+	n := len(p.Vertices)
+	at := func(i int) piece { from, to, b := p.ends(i % n); return piece{from, to, b} }
+	for i := range n {
+		if k := at(i).curvature(); k < 0 {
+			least = min(least, -1/k)
+		}
+		_, end := at(i).directions()
+		start, _ := at(i + 1).directions()
+		if turn(end, start) < -cornerAngle {
+			return 0
+		}
+	}
+	return least
 }

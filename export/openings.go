@@ -76,12 +76,15 @@ func (s ContourSpec) CheckOpenings(o Outline) (float64, error) {
 	} {
 		circles, paths := o.on(check.layer)
 		if len(circles) != check.circles || len(paths) != check.contours {
-			return worst, fmt.Errorf("%d circles and %d closed contours on layer %s, not %d and %d", len(circles), len(paths), check.layer, check.circles, check.contours)
+			return worst, fmt.Errorf("layer %s: circles %d, closed contours %d; %d and %d belong there", check.layer, len(circles), len(paths), check.circles, check.contours)
 		}
 		off := check.measure(circles, paths)
 		worst = max(worst, off)
-		if !(off <= sameOpening) {
-			return worst, fmt.Errorf("a shape on layer %s is %.3g mm off its place; at most %g is allowed", check.layer, off, sameOpening)
+		switch {
+		case math.IsInf(off, 0):
+			return worst, fmt.Errorf("layer %s: a hole is missing from its place, and another is there twice or turned", check.layer)
+		case !(off <= sameOpening):
+			return worst, fmt.Errorf("layer %s: a shape is %.6f mm off its place or size", check.layer, off)
 		}
 	}
 	return worst, nil

@@ -92,6 +92,28 @@ func (o Outline) only(layer Layer) (Path, error) {
 	return found[0], nil
 }
 
+// Strays says what is in the outline that no file of ours holds, and CAM might
+// cut: circles where a gear's contour alone belongs, shapes on layers that are
+// none of ours, and what a reader passed over.
+func (o Outline) Strays() []string {
+	var out []string
+	for _, c := range o.Circles {
+		_, ours := styleOf(c.Layer)
+		if !ours || c.Layer == LayerCut || c.Layer == LayerMate {
+			out = append(out, fmt.Sprintf("a circle of radius %.6g mm on layer %s", c.Radius, c.Layer))
+		}
+	}
+	for _, c := range o.Contours {
+		if l, ours := styleOf(c.Layer); !ours || !l.contours {
+			out = append(out, fmt.Sprintf("a closed contour on layer %s", c.Layer))
+		}
+	}
+	for _, s := range o.Skipped {
+		out = append(out, s.String())
+	}
+	return out
+}
+
 // bounds returns the lowest and highest coordinates of all that is in the
 // outline, reference circles included.
 func (o Outline) bounds() (lo, hi involute.Vec) {

@@ -62,7 +62,7 @@ func runContour(c *cli.Context) error {
 // agree refuses flags that do not go together.
 func agree(c *cli.Context) error {
 	for _, pair := range []struct{ one, other, why string }{
-		{"check", "output", "--check measures a file that is there; leave -o out"},
+		{"check", "output", "measures a file that is there; leave -o out"},
 		{"roll", "check", "a picture that moves is not measured"},
 		{"roll", "stock", "the picture shows the finished teeth; leave --stock out"},
 		{"mesh", "stock", "with stock on, the gears do not mesh; leave one of the two out"},

@@ -26,6 +26,7 @@ type asWritten struct {
 	Shape          float64  `json:"shape_deviation_mm"`
 	ShapeRange     span     `json:"shape_mm"` // inside (≤ 0) and outside of the exact shape, less the stock
 	Unevenness     float64  `json:"tooth_to_tooth_mm"`
+	Joints         float64  `json:"joints_tooth_to_tooth_mm"`
 	LeastRadius    float64  `json:"least_radius_mm"`
 	GreatestRadius float64  `json:"greatest_radius_mm"`
 	Gap            float64  `json:"closure_gap_mm"`
@@ -102,7 +103,7 @@ func (j *job) measure(d *drawnGear, path export.Path, o contourOptions) (faults 
 	w.ShapeRange = span{least - d.Stock, most - d.Stock}
 	w.Shape = math.Max(w.ShapeRange.Max, -w.ShapeRange.Min)
 	uneven, joints := d.read.Unevenness(), d.read.Joints()
-	w.Unevenness = math.Max(uneven.Shape, uneven.Joints)
+	w.Unevenness, w.Joints = uneven.Shape, uneven.Joints
 	w.Gap, w.TangentBreak, w.Corners = joints.Gap, joints.TangentBreakDeg, joints.Corners
 	w.LeastRadius, w.GreatestRadius = d.read.Radii()
 	w.Area, w.AreaExact = d.read.Area(), d.tooth.Outline().Area()
@@ -132,8 +133,11 @@ func (j *job) judgeShape(d *drawnGear, path export.Path, o contourOptions) (faul
 	if w.Gap > mostGap {
 		add("has a gap of %s between two pieces", j.fine(w.Gap))
 	}
-	if d.Stock == 0 && w.Unevenness > mostUneven {
+	switch {
+	case d.Stock == 0 && w.Unevenness > mostUneven:
 		add("has teeth that differ by %s", j.fine(w.Unevenness))
+	case d.Stock == 0 && w.Joints > mostUneven:
+		add("has teeth whose pieces join in different places")
 	}
 	if d.Stock == 0 && !o.fit.Lines {
 		if w.Corners != d.corners {
@@ -232,7 +236,7 @@ func (j *job) judgeDrift(g *gear, m inspect.OverPins, w *asWritten, o contourOpt
 	within := *w.OverPins >= l.Min && *w.OverPins <= l.Max
 	w.Limits, w.Within = &l, &within
 	if drift := math.Abs(*w.Difference); drift > mostDrift*limits.Width() {
-		j.addWarning("coarse-contour", g.name, "the arcs alone take %s of the %s between the limits over pins; draw it finer with --tolerance %.4gmm",
+		j.addWarning("coarse-contour", g.name, "the drawing alone puts the reading over pins off by %s, where the limits are %s apart; draw it finer with --tolerance %.4gmm",
 			j.length(drift), j.length(limits.Width()), o.fit.Tolerance/4)
 	}
 }

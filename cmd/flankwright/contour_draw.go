@@ -1,6 +1,7 @@
 package main
 
 import (
+	"math"
 	"strings"
 
 	"flankwright/export"
@@ -23,6 +24,7 @@ type drawnGear struct {
 	TangentBreak  float64    `json:"max_tangent_break_deg"`
 	ShortestArc   float64    `json:"shortest_arc_mm"`
 	Radius        span       `json:"radius_mm"`
+	Hollow        *float64   `json:"least_hollow_radius_mm"` // null where nothing is hollow, 0 at a hollow corner
 	LinesNeeded   int        `json:"lines_for_the_same_tolerance"`
 	Thickness     float64    `json:"tooth_thickness_mm"`
 	Section       string     `json:"section"`
@@ -68,13 +70,30 @@ func (j *job) drawOne(g *gear, o contourOptions) (drawnGear, []byte, error) {
 		return d, nil, cannot("%s: the file written %v; it is not delivered", called(g), err)
 	}
 	if faults := openingFaults(spec, back); len(faults) > 0 {
-		return d, nil, cannot("%s: the file written %s; it is not delivered", called(g), faults[0])
+		return d, nil, cannot("%s: the file written is wrong, %s; it is not delivered", called(g), faults[0])
 	}
 	path, err := back.Cut()
 	if err != nil {
 		return d, nil, cannot("%s: the file written holds no contour: %v; it is not delivered", called(g), err)
 	}
+	j.warnDrawn(&d, o)
 	return d, data, j.deliverable(&d, path, o)
+}
+
+// warnDrawn says what of the contour may surprise at the machine.
+func (j *job) warnDrawn(d *drawnGear, o contourOptions) {
+	if o.fit.MinArc > 0 && d.ShortestArc < o.fit.MinArc && d.Arcs > 0 {
+		j.addWarning("short-arcs", d.name, "arcs of %s are left, shorter than the %s asked for: the outline's own lands and roundings are that short, or the tolerance needs them",
+			j.length(d.ShortestArc), j.length(o.fit.MinArc))
+	}
+	mill := d.gear.g.Spec().Mill.Diameter
+	switch {
+	case o.stock > 0 && d.Hollow != nil && *d.Hollow == 0:
+		j.addWarning("stock-corners", d.name, "with %s left on, the tooth spaces close toward the root: the contour turns sharp there, and no cutter follows it into the corner", j.length(o.stock))
+	case o.stock > 0 && mill > 0 && d.Hollow != nil && *d.Hollow < mill/2:
+		j.addWarning("stock-corners", d.name, "with %s left on, the roots are hollow by a radius of %s: the end mill of %s does not follow the rough contour, one of %s would",
+			j.length(o.stock), j.length(*d.Hollow), j.length(mill), j.length(2**d.Hollow))
+	}
 }
 
 // cannotDraw words why a contour cannot be drawn.
@@ -98,10 +117,19 @@ func newDrawnGear(g *gear, report export.FitReport, o contourOptions) drawnGear 
 		ShortestArc: report.ShortestArc, Radius: span{report.MinRadius, report.MaxRadius}, LinesNeeded: report.LinesNeeded,
 		Thickness: tooth.Thickness(), Section: "full", name: g.name, kind: "pins", gear: g, tooth: tooth, corners: report.Corners,
 	}
+	d.hollow(report.MinHollow)
 	if g.g.Helical() {
 		d.Section, d.kind = "transverse", "balls"
 	}
 	return d
+}
+
+// hollow notes the smallest hollow radius, where anything is hollow.
+func (d *drawnGear) hollow(radius float64) {
+	d.Hollow = nil
+	if !math.IsInf(radius, 1) {
+		d.Hollow = &radius
+	}
 }
 
 // contourSpec says what to draw of a gear. The bore is drawn at the middle of its

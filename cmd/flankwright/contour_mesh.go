@@ -1,7 +1,6 @@
 package main
 
 import (
-	"math"
 	"path/filepath"
 	"strings"
 
@@ -210,10 +209,20 @@ func (j *job) roll(m *mesh, first, second *drawnGear) (rolledMesh, error) {
 		Backlash:     span{found.Backlash.Least, found.Backlash.Greatest},
 		Transmission: found.TransmissionError, Interferes: found.Interferes,
 	}
-	lost := math.Max(play.Circumferential-found.Backlash.Least, 0)
-	if found.Interferes && play.Circumferential > 0 && first.MaxDeviation+second.MaxDeviation > lost/4 {
-		j.addMeshWarning("coarse-contour", m, "%s and %s as drawn touch where exact teeth would have %s of backlash; draw them finer, or with --tolerance-side inside",
-			m.first.name, m.second.name, j.length(play.Circumferential))
-	}
+	j.warnRolled(m, found, play.Circumferential)
 	return r, nil
+}
+
+// warnRolled says where contours overlap that exact teeth would not, or only just.
+func (j *job) warnRolled(m *mesh, found export.Rolling, backlash float64) {
+	switch {
+	case found.Backlash.Least >= 0 || backlash < -barelyNegative:
+		return // they clear, or bind by their thicknesses, which is said
+	case backlash <= barelyNegative:
+		j.addMeshWarning("drawn-tight", m, "%s and %s are drawn without backlash, and the arcs let their teeth overlap by up to %s. Give backlash or thin",
+			m.first.name, m.second.name, j.fine(-found.Backlash.Least))
+	default:
+		j.addMeshWarning("drawn-tight", m, "%s and %s as drawn overlap by up to %s where exact teeth have %s of backlash; draw them finer, or with --tolerance-side inside",
+			m.first.name, m.second.name, j.fine(-found.Backlash.Least), j.fine(backlash))
+	}
 }

@@ -6,7 +6,7 @@ import "flankwright/export"
 // against what they should be. It is for a gear alone: in a mesh they stand turned.
 func openingFaults(spec export.ContourSpec, back export.Outline) []string {
 	if _, err := spec.CheckOpenings(back); err != nil {
-		return []string{"has " + err.Error()}
+		return []string{err.Error()}
 	}
 	return nil
 }

@@ -11,8 +11,17 @@ import (
 )
 
 // defaultTolerance is how far the arcs may leave the exact curves, mm: well
-// under what a mill holds.
+// under what a mill holds. Teeth under module 1 get less, as they are smaller.
 const defaultTolerance = 0.0025
+
+// usualTolerance returns the tolerance for the smallest of the job's gears.
+func (j *job) usualTolerance() float64 {
+	t := defaultTolerance
+	for _, g := range j.gears {
+		t = min(t, defaultTolerance*g.g.Module())
+	}
+	return max(t, leastTolerance)
+}
 
 // leastTolerance keeps the count of arcs sensible; nothing is cut to a hundredth of a micrometer.
 const leastTolerance = 1e-5
@@ -20,7 +29,7 @@ const leastTolerance = 1e-5
 // contourFlags are what contour and packet share.
 func contourFlags() []cli.Flag {
 	return []cli.Flag{
-		&cli.StringFlag{Name: "tolerance", Usage: "how far the arcs may leave the exact curve, ± (0.0025mm)", Category: "Contour"},
+		&cli.StringFlag{Name: "tolerance", Usage: "how far the arcs may leave the exact curve, ± (0.0025mm, less under module 1)", Category: "Contour"},
 		&cli.StringFlag{Name: "tolerance-side", Usage: "both; outside, to leave metal only; inside, to leave none (both)", Category: "Contour"},
 		&cli.StringFlag{Name: "as", Usage: "arcs, or lines for readers without arcs (arcs)", Category: "Contour"},
 		&cli.StringFlag{Name: "min-arc", Usage: "no arc shorter than this, as far as the tolerance allows", Category: "Contour"},
@@ -40,7 +49,7 @@ type contourOptions struct {
 // readContourOptions reads the flags that contour and packet share. The format is
 // a DXF, of the version asked for.
 func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
-	o := contourOptions{fit: export.FitOptions{Tolerance: defaultTolerance}, pins: c.Bool("pins")}
+	o := contourOptions{fit: export.FitOptions{Tolerance: j.usualTolerance()}, pins: c.Bool("pins")}
 	if mm, ok, err := flagLength(c, j, "tolerance"); err != nil {
 		return o, err
 	} else if ok {

@@ -102,7 +102,7 @@ func (r *contours) pieces(t *contourTable) {
 		}
 		return fmt.Sprint(d.LinesNeeded)
 	})
-	t.length("Greatest deviation from the exact curve", func(d drawnGear) float64 { return d.MaxDeviation })
+	t.length("Greatest deviation of the fit from the exact shape", func(d drawnGear) float64 { return d.MaxDeviation })
 	t.length("  allowed", func(d drawnGear) float64 { return d.Tolerance })
 	if t.any(func(d drawnGear) bool { return d.Side != export.Both.String() }) {
 		t.each("  to the side", "", func(d drawnGear) string { return d.Side })
@@ -112,6 +112,12 @@ func (r *contours) pieces(t *contourTable) {
 		t.length("Shortest arc", func(d drawnGear) float64 { return d.ShortestArc })
 		t.length("Smallest radius", func(d drawnGear) float64 { return d.Radius.Min })
 		t.length("Largest radius", func(d drawnGear) float64 { return d.Radius.Max })
+		t.each("Smallest hollow radius, to be followed by a cutter", t.unit.String(), func(d drawnGear) string {
+			if d.Hollow == nil {
+				return "-"
+			}
+			return t.fine(*d.Hollow)
+		})
 	}
 	if t.any(func(d drawnGear) bool { return d.Stock > 0 }) {
 		t.length("Stock left on", func(d drawnGear) float64 { return d.Stock })
@@ -122,7 +128,7 @@ func (r *contours) pieces(t *contourTable) {
 // measured adds what was measured on the files: the shape, over pins, and over a span.
 func (r *contours) measured(t *contourTable) {
 	t.section("Measured on the file")
-	t.length("Greatest deviation from the exact shape", func(d drawnGear) float64 { return d.AsWritten.Shape })
+	t.length("Greatest deviation found, at points of every piece", func(d drawnGear) float64 { return d.AsWritten.Shape })
 	if t.any(func(d drawnGear) bool { return d.AsWritten.Pin != nil }) {
 		t.maybe("Over two "+kinds(r.gears)+" of diameter", func(w *asWritten) *float64 { return w.Pin })
 		t.maybe("  target", func(w *asWritten) *float64 { return w.Target })
@@ -146,16 +152,18 @@ func (r *contours) measured(t *contourTable) {
 		t.maybe("  as written", func(w *asWritten) *float64 { return w.Span })
 		t.maybe("  difference", func(w *asWritten) *float64 { return w.SpanDifference })
 	}
-	t.length("Least radius", func(d drawnGear) float64 { return d.AsWritten.LeastRadius })
-	t.length("Greatest radius", func(d drawnGear) float64 { return d.AsWritten.GreatestRadius })
+	t.length("Root radius", func(d drawnGear) float64 { return d.AsWritten.LeastRadius })
+	t.length("Tip radius", func(d drawnGear) float64 { return d.AsWritten.GreatestRadius })
 	t.length("Greatest gap between pieces", func(d drawnGear) float64 { return d.AsWritten.Gap })
-	t.length("Tooth to tooth", func(d drawnGear) float64 { return d.AsWritten.Unevenness })
+	t.length("Teeth differ by up to", func(d drawnGear) float64 { return d.AsWritten.Unevenness })
 	square := t.unit.MM() * t.unit.MM()
 	area := func(label string, pick func(w *asWritten) float64) {
 		t.each(label, t.unit.String()+"²", func(d drawnGear) string { return fmt.Sprintf("%.4f", pick(d.AsWritten)/square) })
 	}
 	area("Area", func(w *asWritten) float64 { return w.Area })
-	area("  of the exact shape", func(w *asWritten) float64 { return w.AreaExact })
+	if !t.any(func(d drawnGear) bool { return d.Stock > 0 }) {
+		area("  of the exact shape", func(w *asWritten) float64 { return w.AreaExact })
+	}
 }
 
 // grid shows what the two contours of a mesh do when they roll together.
@@ -170,7 +178,7 @@ func (m rolledMesh) grid(t *contourTable) grid {
 	g.row("Least clearance between flanks, teeth centered", unit, fine(w.Flank), "")
 	g.row("Tip clearance of "+m.Gears[0], unit, fine(w.Tip.First), fine(aim.Tip.First))
 	g.row("  of "+m.Gears[1], unit, fine(w.Tip.Second), fine(aim.Tip.Second))
-	g.row("The teeth overlap", "", yesNo(w.Interferes), yesNo(aim.Backlash < 0))
+	g.row("The teeth overlap", "", yesNo(w.Interferes), yesNo(aim.Backlash < -barelyNegative))
 	return g
 }
 

@@ -2,6 +2,7 @@ package main
 
 import (
 	"errors"
+	"fmt"
 	"io/fs"
 	"os"
 
@@ -15,6 +16,7 @@ type checked struct {
 	contours
 	Sound  bool     `json:"sound"`
 	Faults []string `json:"faults"`
+	Notes  []string `json:"notes"` // of the file's own bookkeeping; the geometry is judged by itself
 	file   string
 }
 
@@ -32,11 +34,15 @@ func (j *job) runCheck(c *cli.Context, gears []*gear, o contourOptions) error {
 	if len(gears) > 1 {
 		return wrong("--check %s: is about one gear, and the job has %s; say which by --gear, or --mesh for a pair", path, quoted(j.gearNames()))
 	}
-	back, err := readOutline(path, o.format)
+	back, notes, err := readOutline(path, o.format)
 	if err != nil {
 		return err
 	}
-	r := &checked{contours: contours{job: j, Meshes: []rolledMesh{}, Warnings: j.about(gears)}, file: path, Faults: []string{}}
+	r := newChecked(j, path, back, notes)
+	if _, err := back.Mate(); err == nil {
+		r.Faults = append(r.Faults, "it holds a pair of gears; add --mesh")
+		return r.show(c)
+	}
 	contour, err := back.Cut()
 	if err != nil {
 		r.Faults = append(r.Faults, err.Error())
@@ -49,20 +55,33 @@ func (j *job) runCheck(c *cli.Context, gears []*gear, o contourOptions) error {
 	return r.show(c)
 }
 
-// readOutline reads an outline file.
-func readOutline(path string, format export.Format) (export.Outline, error) {
+// newChecked starts a check with what the file holds that does not belong there.
+func newChecked(j *job, path string, back export.Outline, notes []string) *checked {
+	r := &checked{contours: contours{job: j, Meshes: []rolledMesh{}}, file: path, Faults: []string{}, Notes: notes}
+	for _, s := range back.Strays() {
+		r.Faults = append(r.Faults, "there is something else in it: "+s)
+	}
+	return r
+}
+
+// readOutline reads an outline file. A DXF that another program has written over
+// may be less tidy than ours: what can be read is measured, and the rest noted.
+func readOutline(path string, format export.Format) (back export.Outline, notes []string, err error) {
 	data, err := os.ReadFile(path)
 	switch {
 	case errors.Is(err, fs.ErrNotExist):
-		return export.Outline{}, cannot("--check %s: there is no such file", path)
+		return back, nil, cannot("--check %s: there is no such file", path)
 	case err != nil:
-		return export.Outline{}, cannot("--check %s: %v", path, err)
+		return back, nil, cannot("--check %s: %v", path, err)
 	}
-	back, err := decode(data, format)
-	if err != nil {
-		return back, cannot("%s %v", path, err)
+	notes = []string{}
+	if format != export.FormatSVG {
+		notes = append(notes, export.CheckDXF(data)...)
 	}
-	return back, nil
+	if back, err = format.Decode(data); err != nil {
+		return back, notes, cannot("%s cannot be read: %v", path, err)
+	}
+	return back, notes, nil
 }
 
 // add measures one contour of the file against the fit that would be drawn now.
@@ -95,6 +114,7 @@ func (d *drawnGear) count(path export.Path) {
 	p := path.Pieces()
 	d.Segments, d.Arcs, d.Lines = p.Segments, p.Arcs, p.Lines
 	d.ShortestArc, d.Radius = p.ShortestArc, span{p.MinRadius, p.MaxRadius}
+	d.hollow(p.MinHollow)
 }
 
 // checkMesh measures both gears of a file that holds a mesh, alone and rolled together.
@@ -107,11 +127,11 @@ func (j *job) checkMesh(c *cli.Context, path string, o contourOptions) error {
 		return wrong("--check %s: a file holds one mesh, and the job has %d; choose one by --gear NAME", path, len(meshes))
 	}
 	m := meshes[0]
-	back, err := readOutline(path, o.format)
+	back, notes, err := readOutline(path, o.format)
 	if err != nil {
 		return err
 	}
-	r := &checked{contours: contours{job: j, Meshes: []rolledMesh{}, Warnings: j.about([]*gear{m.first, m.second})}, file: path, Faults: []string{}}
+	r := newChecked(j, path, back, notes)
 	for i, g := range []*gear{m.first, m.second} {
 		contour, err := gearOf(back, i, m.plan.Nominal())
 		if err != nil {
@@ -137,6 +157,11 @@ func (j *job) checkMesh(c *cli.Context, path string, o contourOptions) error {
 // show prints the verdict, then what was measured; status 3 where the file is not as it should be.
 func (r *checked) show(c *cli.Context) error {
 	r.Sound = len(r.Faults) == 0
+	var gears []*gear
+	for _, d := range r.gears {
+		gears = append(gears, d.gear)
+	}
+	r.Warnings = r.job.about(gears)
 	text := func() []byte {
 		p := newPage(c.App.Writer)
 		if r.Sound {
@@ -146,6 +171,9 @@ func (r *checked) show(c *cli.Context) error {
 			for _, f := range r.Faults {
 				p.wrapped("- "+f, "  ")
 			}
+		}
+		if n := len(r.Notes); n > 0 {
+			p.wrapped(fmt.Sprintf("(not written by this program as it is: %s, the first %s)", plural(n, "remark"), r.Notes[0]), "  ")
 		}
 		if len(r.gears) == 0 {
 			return []byte(p.b.String())

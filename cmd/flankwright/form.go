@@ -87,7 +87,7 @@ func (s settings) endMill(key string) (mm float64, err error) {
 
 // cutWords returns what follows some words at the start of a text.
 func cutWords(text string, words ...string) (rest string, ok bool) {
-	fields := strings.Fields(strings.NewReplacer("_", " ", "-", " ").Replace(text))
+	fields := strings.Fields(strings.NewReplacer("end_mill", "end mill", "end-mill", "end mill").Replace(strings.ToLower(text)))
 	if len(fields) <= len(words) {
 		return "", false
 	}

@@ -73,6 +73,42 @@ func (j *job) checkMilled() error {
 	return nil
 }
 
+// warnShallowRoot says where an end mill is too wide for the root circle, and
+// the largest that gets down to it. A mate's tip is judged by checkMilled.
+func (j *job) warnShallowRoot(g *gear) {
+	spec := g.g.Spec()
+	if spec.Mill.Diameter == 0 {
+		return
+	}
+	want := g.g.RootDiameterAt(g.nominal.Thickness())
+	if high := g.nominal.RootDiameter() - want; high > shallow*g.g.Module() {
+		j.addWarning("shallow-root", g.name, "an end mill of %s rests on the flanks before it reaches the root circle: the root diameter comes out at %s, not %s. The largest that gets down is %s%s",
+			j.length(spec.Mill.Diameter), j.length(g.nominal.RootDiameter()), j.length(want), j.lengthDown(g.millToDepth(want)), j.usualMill(g.millToDepth(want)))
+	}
+}
+
+// shallow is how much higher than wanted a root may be before it is said, × module.
+const shallow = 0.01
+
+// millToDepth returns the largest end mill that reaches the root diameter, mm.
+func (g *gear) millToDepth(root float64) float64 {
+	low, high := 0.0, g.g.Spec().Mill.Diameter
+	for range 40 {
+		spec := g.g.Spec()
+		spec.Mill.Diameter = (low + high) / 2
+		own, err := involute.NewGear(spec)
+		if err != nil {
+			break
+		}
+		if t, err := own.Nominal(); err == nil && t.RootDiameter() <= root*(1+1e-12) {
+			low = spec.Mill.Diameter
+		} else {
+			high = spec.Mill.Diameter
+		}
+	}
+	return low
+}
+
 // touches returns how far the mate's tips cut into the root of g, made as own,
 // in a mesh at its tightest with the thickest teeth, mm; 0 or less where they pass.
 func (m *mesh) touches(g *gear, own *involute.Gear) float64 {

@@ -96,6 +96,7 @@ func (j *job) warnGear(g *gear) {
 	if land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
 	}
+	j.warnShallowRoot(g)
 	j.warnOpenings(g)
 	if g.g.Helical() && g.faceWidth == 0 {
 		j.warnFace(g)
@@ -198,6 +199,12 @@ func (j *job) warnContact(m *mesh, pair string) {
 		j.addMeshWarning("no-drive", m, "%s: contact ratio %.3f is under 1, the next teeth meet after the last have parted: it knocks and wears. Take more teeth, a smaller center distance or longer tips", pair, total)
 	case total < lowContact:
 		j.addMeshWarning("low-contact", m, "%s: contact ratio %.3f is low; under %.1f every error is heard. More teeth, less shift or longer tips raise it", pair, total, lowContact)
+	}
+	if m.first.g.Helical() {
+		overlap = 0
+	}
+	if plain := c.UnrelievedRatio; plain < 1 && total >= 1 && plain < c.TransverseRatio && overlap == 0 {
+		j.addMeshWarning("relief-contact", m, "%s: without load the relieved tips do not touch, and the contact ratio is only %.3f; under 1 the pair knocks when lightly loaded. Start the relief farther out", pair, plain)
 	}
 	if c.LimitedByRoots() && c.RatioByTips-c.TransverseRatio > 0.0005 {
 		j.addMeshWarning("short-contact", m, "%s: the tips alone promise a contact ratio of %.3f, but the involutes that are there give %.3f. Shift the undercut gear outward", pair, c.RatioByTips, c.TransverseRatio)
