@@ -1,6 +1,7 @@
 package export
 
 import (
+	"fmt"
 	"math"
 
 	"flankwright/inspect"
@@ -35,6 +36,9 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	path, report, err := closedPath(pitch, s.Tooth.Teeth(), s.Fit)
 	if err != nil {
 		return o, report, err
+	}
+	if err := path.Simple(); err != nil {
+		return o, report, fmt.Errorf("the teeth are thinner somewhere than the tolerance, and the contour would cross itself: %w", err)
 	}
 	if s.Stock > 0 {
 		if path, err = path.offsetOutward(s.Stock); err != nil {

@@ -3,11 +3,24 @@ package export
 import (
 	"fmt"
 	"math"
+
+	"flankwright/involute"
 )
 
 // crossingSlack is how near to the shared point of two neighbors a meeting is
 // that point itself, mm; nothing nearer could be told from it in a file.
 const crossingSlack = 2 * minPiece
+
+// A CrossingError says where a path meets itself.
+type CrossingError struct {
+	First, Second int          // the pieces, from 1
+	At            involute.Vec // mm
+}
+
+// Error says which pieces meet, and where.
+func (e *CrossingError) Error() string {
+	return fmt.Sprintf("pieces %d and %d meet at (%.6f, %.6f)", e.First, e.Second, e.At.X, e.At.Y)
+}
 
 // Simple reports where the path crosses or touches itself, nil where it does
 // nowhere. Neighbors may meet at the point they share, and run on smoothly there.
@@ -35,7 +48,7 @@ func (p Path) Simple() error {
 				if neighbors && math.Min(math.Min(q.Sub(s.from).Norm(), q.Sub(s.to).Norm()), math.Min(q.Sub(o.from).Norm(), q.Sub(o.to).Norm())) < crossingSlack {
 					continue
 				}
-				err = fmt.Errorf("pieces %d and %d meet at (%.6f, %.6f)", i+1, j+1, q.X, q.Y)
+				err = &CrossingError{i + 1, j + 1, q}
 				return
 			}
 		})

@@ -146,6 +146,12 @@ func (j journey) travel(sum *tally) error {
 	}
 	sum.drawn++
 	o, report, err := NewContour(ContourSpec{Tooth: tooth, Fit: j.fit})
+	var thin *CrossingError
+	if errors.As(err, &thin) {
+		sum.drawn--
+		sum.refused++ // a tooth undercut to less than the tolerance
+		return nil
+	}
 	if err != nil {
 		return err
 	}
