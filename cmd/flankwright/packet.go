@@ -40,21 +40,19 @@ func runPacket(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
+	n := len(drawn.gears)
 	if err := fileError(dir, export.WriteFolder(dir, files, c.Bool("force"))); err != nil {
 		return err
 	}
-	r := packetResult{contours: contours{job: j, gears: drawn, Warnings: j.about(gears)}}
+	r := packetResult{}
 	for _, f := range files {
 		r.Files = append(r.Files, filepath.ToSlash(filepath.Join(dir, f.Name)))
 	}
-	for i := range drawn {
-		drawn[i].File = r.Files[i]
-		r.Gears.add(drawn[i].name, drawn[i])
-	}
+	r.contours = drawn.in(r.Files[:n])
 	err = emitBeside(c, r, func() []byte {
 		p := newPage(c.App.Writer)
-		for _, n := range r.Files[len(drawn):] {
-			p.line("%s", n)
+		for _, name := range r.Files[n:] {
+			p.line("%s", name)
 		}
 		p.b.Write(r.text(newPage(c.App.Writer), j.digits(c)))
 		return []byte(p.b.String())
@@ -71,16 +69,37 @@ type packetResult struct {
 	contours
 }
 
+// in returns the contours as they are named where they are written.
+func (r contours) in(files []string) contours {
+	gears := append([]drawnGear(nil), r.gears...)
+	r.gears, r.Gears = gears, ordered{}
+	for i := range gears {
+		gears[i].File = files[i]
+		r.Gears.add(gears[i].name, gears[i])
+	}
+	return r
+}
+
 // packetFiles makes every file of a packet in memory; the contours come first.
-func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, []drawnGear, error) {
+func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, *contours, error) {
 	opt, err := readContourOptions(c, j)
 	if err != nil {
 		return nil, nil, err
 	}
-	drawn, files, err := j.draw(t.list, opt)
+	gears, files, err := j.draw(t.list, opt)
 	if err != nil {
 		return nil, nil, err
 	}
+	drawn := &contours{job: j, gears: gears}
+	if drawn.Meshes, err = j.rollDrawn(gears, opt); err != nil {
+		return nil, nil, err
+	}
+	drawn.Warnings = j.about(t.list)
+	var names []string
+	for _, f := range files {
+		names = append(names, f.Name)
+	}
+	measured := drawn.in(names)
 	t.Warnings = j.about(t.list) // the drawing may have added some
 	pages, err := t.sheetPages(c)
 	if err != nil {
@@ -103,6 +122,7 @@ func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, []drawnGea
 	}{
 		{"dims", d, func() []byte { return d.text(&page{}, digits) }},
 		{"targets", t, func() []byte { return t.text(&page{}, digits) }},
+		{"contour", measured, func() []byte { return measured.text(&page{}, digits) }},
 	} {
 		data, err := jsonText(r.result)
 		if err != nil {
