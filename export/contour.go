@@ -33,7 +33,11 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	for _, p := range s.Tooth.Outline().Pieces {
 		pitch = append(pitch, p)
 	}
-	path, report, err := closedPath(pitch, s.Tooth.Teeth(), s.Fit)
+	fit := s.Fit
+	if s.Stock > 0 && fit.Lines {
+		fit.Tolerance /= 2 // the other half is for the arcs about the corners
+	}
+	path, report, err := closedPath(pitch, s.Tooth.Teeth(), fit)
 	if err != nil {
 		return o, report, err
 	}
@@ -43,6 +47,10 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	if s.Stock > 0 {
 		if path, err = path.offsetOutward(s.Stock); err != nil {
 			return o, report, err
+		}
+		if fit.Lines {
+			path = path.chords(fit.Tolerance)
+			report.MaxDeviation += fit.Tolerance
 		}
 		report.recount(path)
 	}

@@ -21,7 +21,8 @@ type MeshSpec struct {
 // NewMeshContour draws both gears of a mesh in place, turned until they touch as
 // when the first drives counter-clockwise: its leading flank touches the second
 // gear's at the pitch point (in the middle of the path of contact where that
-// leaves the pitch point out), and all the backlash is on the other flanks.
+// leaves the pitch point out), and all the backlash is on the other flanks. The
+// arcs that are drawn touch, not the exact teeth only.
 // Where the teeth are too thick for the center distance they are drawn
 // overlapping there.
 //
@@ -36,26 +37,56 @@ func NewMeshContour(s MeshSpec) (Outline, [2]FitReport, error) {
 		return o, reports, err
 	}
 	turn1, turn2 := pose.turns(pose.start)
+	var own [2]Outline
+	for i, g := range []ContourSpec{s.First, s.Second} {
+		if own[i], reports[i], err = NewContour(g); err != nil {
+			return o, reports, err
+		}
+	}
+	turn2 += toContact(own, s.Center, turn1, turn2)
 	for i, g := range []struct {
-		spec  ContourSpec
+		tooth involute.Tooth
 		turn  float64
 		at    involute.Vec
 		pitch float64 // d_w, mm
 		layer Layer
 	}{
-		{s.First, turn1, involute.Vec{}, pose.contact.Pitch1, LayerCut},
-		{s.Second, turn2, involute.Vec{X: s.Center}, pose.contact.Pitch2, LayerMate},
+		{s.First.Tooth, turn1, involute.Vec{}, pose.contact.Pitch1, LayerCut},
+		{s.Second.Tooth, turn2, involute.Vec{X: s.Center}, pose.contact.Pitch2, LayerMate},
 	} {
-		var own Outline
-		if own, reports[i], err = NewContour(g.spec); err != nil {
-			return o, reports, err
-		}
-		o.take(own.placed(g.turn, g.at), g.layer)
-		for _, d := range []float64{g.spec.Tooth.TipDiameter(), g.pitch, g.spec.Tooth.BaseDiameter()} {
+		o.take(own[i].placed(g.turn, g.at), g.layer)
+		for _, d := range []float64{g.tooth.TipDiameter(), g.pitch, g.tooth.BaseDiameter()} {
 			o.Circles = append(o.Circles, Circle{LayerReference, g.at, d / 2})
 		}
 	}
 	return o, reports, nil
+}
+
+// toContact returns by how much farther than exact teeth the second gear must be
+// turned until the contours that are drawn touch, radians; 0 where they cannot
+// be rolled.
+func toContact(own [2]Outline, center, turn1, turn2 float64) float64 {
+	var sections [2]Section
+	for i := range own {
+		path, err := own[i].Cut()
+		if err != nil {
+			return 0
+		}
+		if sections[i], err = NewSection(path, 0); err != nil {
+			return 0
+		}
+	}
+	m, err := newRollMesh(sections[0], sections[1], center)
+	if err != nil {
+		return 0
+	}
+	pitch1, pitch2 := 2*math.Pi/float64(m.first.Teeth()), 2*math.Pi/float64(m.second.Teeth())
+	angle := math.Remainder(turn1+m.first.space(0), pitch1)
+	forward := m.stand(angle).forward
+	if !finite(forward) {
+		return 0
+	}
+	return math.Remainder(math.Pi-m.second.tooth(0)-angle*pitch2/pitch1+forward-turn2, pitch2)
 }
 
 // take adds a gear's outline, its contour on the layer given and without its

@@ -70,18 +70,16 @@ func (c drawnMesh) make(t testing.TB, tolerance float64) (MeshSpec, involute.Mes
 	}, m
 }
 
-// A standing gear is a contour in place: pieces near the mesh, and the exact
-// profile that tells inside from outside.
+// A standing gear is a contour in place: its pieces near the mesh.
 type standing struct {
-	pieces  []involute.Curve
-	profile involute.Profile
-	turn    float64
-	at      involute.Vec
+	pieces []involute.Curve
+	turn   float64
+	at     involute.Vec
 }
 
 // standAt takes the pieces of a contour that come within reach of the point near.
-func standAt(p Path, t involute.Tooth, turn float64, at, near involute.Vec, reach float64) standing {
-	s := standing{profile: t.Profile(), turn: turn, at: at}
+func standAt(p Path, turn float64, at, near involute.Vec, reach float64) standing {
+	s := standing{turn: turn, at: at}
 	for i := range p.Vertices {
 		if c := p.Curve(i); pieceDistance(c, near) < reach {
 			s.pieces = append(s.pieces, c)
@@ -90,20 +88,34 @@ func standAt(p Path, t involute.Tooth, turn float64, at, near involute.Vec, reac
 	return s
 }
 
-// closeBy is how near to a contour a point is asked whether it is inside, mm: a
-// contour that reaches into another crosses it, and so has points nearer than this.
-const closeBy = 0.25
-
-// distance returns how far a point is from the contour, negative where it is inside and close by.
+// distance returns how far a point is from the contour, negative where it is inside:
+// to the left of the nearest piece, and at a corner to the left of both.
 func (s standing) distance(q involute.Vec) float64 {
-	least := math.Inf(1)
+	least, right := math.Inf(1), false
 	for _, c := range s.pieces {
-		least = min(least, pieceDistance(c, q))
+		d := pieceDistance(c, q)
+		switch side := toTheRight(c, q); {
+		case d < least-1e-9:
+			least, right = d, side
+		case d < least+1e-9:
+			right = right || side
+		}
 	}
-	if least > closeBy {
+	if right {
 		return least
 	}
-	return math.Copysign(least, s.profile.Offset(q.Sub(s.at).Rotate(-s.turn)))
+	return -least
+}
+
+// toTheRight reports whether a point lies to the right of a line or of an arc's circle.
+func toTheRight(c involute.Curve, q involute.Vec) bool {
+	switch c := c.(type) {
+	case involute.Arc:
+		return (q.Sub(c.Center).Norm() > c.Radius) == (c.Sweep > 0)
+	case involute.Line:
+		return c.To.Sub(c.From).Cross(q.Sub(c.From)) < 0
+	}
+	return false
 }
 
 // leading tells the counter-clockwise half of a tooth from the other.
@@ -167,13 +179,14 @@ func TestMeshContourTouchesOnOneSide(t *testing.T) {
 		}
 		turn1, turn2 := pose.turns(pose.start)
 		near, reach := pose.at(pose.start), 2*s.First.Tooth.TransversePitch()
-		first := standAt(cut, s.First.Tooth, turn1, involute.Vec{}, near, reach)
-		second := standAt(mate, s.Second.Tooth, turn2, involute.Vec{X: s.Center}, near, reach)
+		first := standAt(cut, turn1, involute.Vec{}, near, reach)
+		second := standAt(mate, turn2, involute.Vec{X: s.Center}, near, reach)
 		leading, trailing := leastDistances(first, second, s.First.Tooth)
 		slack := reports[0].MaxDeviation + reports[1].MaxDeviation + 1e-9
 		t.Logf("%s: %.6f before, %.6f behind, j_bt %.6f, deviations %.6f", c.name, leading, trailing, play.Base, slack)
-		if math.Abs(leading) > slack || trailing < play.Base-slack || pose.ratio() > 1.1 && trailing > play.Base+slack {
-			t.Errorf("%s: %.6f before and %.6f behind, want 0 and %.6f ± %.6f", c.name, leading, trailing, play.Base, slack)
+		// The arcs themselves touch; behind them the backlash may be off by both deviations twice.
+		if math.Abs(leading) > 2e-6 || trailing < play.Base-2*slack || pose.ratio() > 1.1 && trailing > play.Base+2*slack {
+			t.Errorf("%s: %.6f before and %.6f behind, want 0 and %.6f ± %.6f", c.name, leading, trailing, play.Base, 2*slack)
 		}
 	}
 }

@@ -180,6 +180,28 @@ func (p Path) splitArcs() Path {
 	return Path{Vertices: out}
 }
 
+// chords returns the path with each arc as equal chords that leave it by no more
+// than tolerance, mm: r(1 − cos(x/2)) over the angle x.
+func (p Path) chords(tolerance float64) Path {
+	var out []Vertex
+	for i, v := range p.Vertices {
+		arc, ok := p.Curve(i).(involute.Arc)
+		if !ok {
+			out = append(out, v)
+			continue
+		}
+		n := int(math.Ceil(math.Abs(arc.Sweep) / (2 * math.Acos(max(0, 1-tolerance/arc.Radius)))))
+		for k := range n {
+			q, _ := arc.At(float64(k) / float64(n))
+			if k == 0 {
+				q = v.P
+			}
+			out = append(out, Vertex{P: q})
+		}
+	}
+	return Path{Vertices: out}
+}
+
 // check reports why the path can't be an outline: too few vertices, a number
 // that is not finite or beyond 100 m, a piece shorter than 1e-6 mm, or no area inside.
 func (p Path) check() error {

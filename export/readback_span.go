@@ -10,7 +10,7 @@ import (
 // Span measures over k teeth with two parallel faces, as a span (disc)
 // micrometer does, over every group of k neighbors, and returns the least and
 // the greatest reading, mm. Each reading is what a careful hand takes: the least
-// over rocking while both faces lie on flanks.
+// over a little rocking while both faces lie on flanks.
 //
 // With H(ν) the greatest reach of a flank in the direction ν, two faces square to
 // ν stand H₁(ν) + H₂(ν + π) apart. On a spur gear the faces rock in the plane, and
@@ -161,10 +161,14 @@ func (f face) overlap(near face, shift float64) (from, to float64) {
 	return max(f.low-shift, near.low+shift), min(f.top-shift, near.top+shift)
 }
 
-// rocked returns the least distance of the two faces over the directions in which both
-// lie on flanks. Between the ends of its arcs it has one minimum at most.
+// rocked returns the least distance of the two faces over the inner half of the directions
+// in which both lie on flanks: toward the ends a face may lean on the arc that a
+// drawing lays round the start of a relief or into a fillet. Between the ends of its arcs it has one minimum at most.
 func (f face) rocked(near face) float64 {
 	from, to := f.overlap(near, 0)
+	if from < 0 && to > 0 { // 0 is straight across, where a hand sets the faces before rocking
+		from, to = from/2, to/2
+	}
 	stops := []float64{from}
 	for _, t := range append(append([]touch(nil), f.touches...), near.touches...) {
 		if t.from > from && t.from < to {

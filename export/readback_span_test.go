@@ -140,16 +140,26 @@ func TestSpanByBruteForce(t *testing.T) {
 }
 
 // bruteRocked returns the least width of the points over the directions near
-// across in which both extremes are inner points of their flanks.
+// across, out to half way to where one of the extremes is no longer an inner point of its flank.
 func bruteRocked(far, near []involute.Vec, across float64) float64 {
-	least := math.Inf(1)
-	for i := range 8001 {
-		e := involute.Polar(1, across+float64(i-4000)*1e-4)
+	const step = 1e-4
+	at := func(i int) (width float64, inner bool) {
+		e := involute.Polar(1, across+float64(i)*step)
 		a, top := extreme(far, e)
 		b, low := extreme(near, e.Scale(-1))
-		if a > 0 && a < len(far)-1 && b > 0 && b < len(near)-1 {
-			least = math.Min(least, top+low)
+		return top + low, a > 0 && a < len(far)-1 && b > 0 && b < len(near)-1
+	}
+	edge := func(sign int) int {
+		for i := 0; ; i += sign {
+			if _, inner := at(i); !inner {
+				return i
+			}
 		}
+	}
+	least := math.Inf(1)
+	for i := edge(-1) / 2; i <= edge(1)/2; i++ {
+		width, _ := at(i)
+		least = math.Min(least, width)
 	}
 	return least
 }

@@ -192,8 +192,8 @@ func TestRollingContactsLieOnBothFlanks(t *testing.T) {
 		middle := pose.at((pose.from + pose.to) / 2)
 		for _, tau := range []float64{0, 0.29, 0.5, 0.83} {
 			turn1, turn2 := f.turns(t, tau)
-			first := standAt(turned(f.first, turn1, involute.Vec{}), s.First.Tooth, start1+turn1, involute.Vec{}, middle, reach)
-			second := standAt(turned(f.second, turn2, center), s.Second.Tooth, start2+turn2, center, middle, reach)
+			first := standAt(turned(f.first, turn1, involute.Vec{}), start1+turn1, involute.Vec{}, middle, reach)
+			second := standAt(turned(f.second, turn2, center), start2+turn2, center, middle, reach)
 			for _, q := range f.dots(t, tau) {
 				d1, d2 := math.Abs(first.distance(q)), math.Abs(second.distance(q))
 				if d1 > reports[0].MaxDeviation+writtenSlack || d2 > reports[1].MaxDeviation+writtenSlack {

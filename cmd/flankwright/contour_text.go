@@ -174,7 +174,7 @@ func (m rolledMesh) grid(t *contourTable) grid {
 	w, aim := m.AsWritten, m.Target
 	g.row("Backlash, circumferential, least", unit, fine(w.Backlash.Min), fine(aim.Backlash))
 	g.row("  most", unit, fine(w.Backlash.Max), fine(aim.Backlash))
-	g.row("Transmission error by the arcs, peak to peak", unit, fine(w.Transmission), fine(0))
+	g.row("Transmission error by the arcs, along the line of action", unit, fine(w.Transmission), fine(0))
 	g.row("Least clearance between flanks, teeth centered", unit, fine(w.Flank), "")
 	g.row("Tip clearance of "+m.Gears[0], unit, fine(w.Tip.First), fine(aim.Tip.First))
 	g.row("  of "+m.Gears[1], unit, fine(w.Tip.Second), fine(aim.Tip.Second))

@@ -16,7 +16,7 @@ type formDims struct {
 	Chamfer   *float64    `json:"tip_chamfer_mm,omitempty"`
 	Round     *float64    `json:"tip_round_mm,omitempty"`
 	Relief    *reliefDims `json:"relief,omitempty"`
-	TipLand   float64     `json:"tip_land_mm"`
+	TipLand   float64     `json:"tip_land_mm"` // of the thinnest tooth
 }
 
 type reliefDims struct {
@@ -28,6 +28,9 @@ type reliefDims struct {
 func newFormDims(g *gear) formDims {
 	s := g.g.Spec()
 	d := formDims{Thinning: "infeed", Root: "generated", Topped: s.Topped, TipLimits: toSpan(g.tipLimits()), TipLand: g.nominal.TipLand()}
+	if thinnest, err := g.g.Tooth(g.thickness.Limits.Min); err == nil {
+		d.TipLand = thinnest.TipLand()
+	}
 	if s.Thinning == involute.FlanksOnly || s.Mill.Diameter > 0 {
 		d.Thinning = "flanks"
 	}
@@ -96,5 +99,5 @@ func (d *dims) formRows(g *grid, unit string, f func(float64) string) {
 	some("  from diameter", unit, relieved, func(x formDims) string { return f(x.Relief.Start) })
 	some("  growing", "", relieved, func(x formDims) string { return x.Relief.Form })
 	shaped := func(x formDims) bool { return x.Chamfer != nil || x.Round != nil || x.Relief != nil }
-	some("Tip land left", unit, shaped, func(x formDims) string { return f(x.TipLand) })
+	some("Tip land left, thinnest tooth", unit, shaped, func(x formDims) string { return f(x.TipLand) })
 }

@@ -66,7 +66,7 @@ func (j *job) checkMilled() error {
 			if overlap <= leastOverlap {
 				continue
 			}
-			return bad("root", g.settings.vals["root"], "an end mill of %s leaves a root that the tip of %s would cut %s into at the tightest center distance. %s",
+			return bad("root", g.settings.vals["root"], "an end mill of %s leaves a root that the tip of %s would cut into at the tightest center distance, by up to %s across the space. %s",
 				j.length(g.g.Spec().Mill.Diameter), mate.name, j.length(overlap), j.millThatPasses(g))
 		}
 	}
@@ -81,9 +81,10 @@ func (j *job) warnShallowRoot(g *gear) {
 		return
 	}
 	want := g.g.RootDiameterAt(g.nominal.Thickness())
-	if high := g.nominal.RootDiameter() - want; high > shallow*g.g.Module() {
+	root := g.rootLimits().Max // of the thickest tooth, whose space is narrowest
+	if root-want > shallow*g.g.Module() {
 		j.addWarning("shallow-root", g.name, "an end mill of %s rests on the flanks before it reaches the root circle: the root diameter comes out at %s, not %s. The largest that gets down is %s%s",
-			j.length(spec.Mill.Diameter), j.length(g.nominal.RootDiameter()), j.length(want), j.lengthDown(g.millToDepth(want)), j.usualMill(g.millToDepth(want)))
+			j.length(spec.Mill.Diameter), j.length(root), j.length(want), j.lengthDown(g.millToDepth(want)), j.usualMill(g.millToDepth(want)))
 	}
 }
 
@@ -100,7 +101,7 @@ func (g *gear) millToDepth(root float64) float64 {
 		if err != nil {
 			break
 		}
-		if t, err := own.Nominal(); err == nil && t.RootDiameter() <= root*(1+1e-12) {
+		if t, err := own.Tooth(g.thickness.Limits.Max); err == nil && t.RootDiameter() <= root*(1+1e-12) {
 			low = spec.Mill.Diameter
 		} else {
 			high = spec.Mill.Diameter

@@ -56,7 +56,7 @@ func (j *job) impossibleThinning(g *gear, err error) error {
 		why = "has no thickness left"
 	}
 	return faultAt(at, "%s makes %s up to %s thinner than nominal, a tooth thickness of %s, and such a tooth %s; at most %s can be taken",
-		what, called(g), j.length(asked), j.length(g.thickness.Limits.Min), why, j.length(mostThinning(g)))
+		what, called(g), j.length(asked), j.length(g.thickness.Limits.Min), why, j.lengthDown(mostThinning(g)))
 }
 
 // mostThinning returns how much thinner than nominal a tooth can be, mm, to a thousandth of itself.
