@@ -97,8 +97,12 @@ func (c chain) shortest() float64 {
 	return least
 }
 
-// extraArcs is how many more arcs than the pattern's are tried on each curve.
-const extraArcs = 2
+// extraArcs is how many more arcs than the pattern's are tried on each curve, and
+// kinkArcs how many more yet where the run has kinks to go round.
+const (
+	extraArcs = 2
+	kinkArcs  = 2
+)
 
 // counts returns the numbers of arcs, for each curve of the run, that may keep
 // the band, in the order in which they are to be tried.
@@ -106,6 +110,10 @@ func (r *run) counts(b band) [][]int {
 	var least []int
 	var want []float64
 	all := [][]int{nil}
+	extra := extraArcs
+	if len(r.brokenAtKinks()) > 1 {
+		extra += kinkArcs
+	}
 	for _, w := range r.walks {
 		share := w.work() / math.Cbrt(b.half())
 		want = append(want, chainReach*share)
@@ -113,7 +121,7 @@ func (r *run) counts(b band) [][]int {
 		least = append(least, max(1, int(math.Ceil(max(0.95*looseReach*share, chainReach*share-0.6)))))
 		var longer [][]int
 		for _, arcs := range all {
-			for n := least[len(least)-1]; n <= int(chainReach*share)+1+extraArcs; n++ {
+			for n := least[len(least)-1]; n <= int(chainReach*share)+1+extra; n++ {
 				longer = append(longer, append(append([]int(nil), arcs...), n))
 			}
 		}

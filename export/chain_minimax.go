@@ -233,6 +233,9 @@ func (a bandMatrix) solve(b []float64, damping float64) ([]float64, bool) {
 		return 0
 	}
 	for i, row := range a {
+		if len(row) == 0 {
+			return nil, false // a number that moves nothing: an arc too short to hold a sample
+		}
 		l[i] = append([]float64(nil), row...)
 		for k := i - len(row) + 1; k <= i; k++ {
 			sum := row[i-k]

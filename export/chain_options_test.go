@@ -287,16 +287,20 @@ func TestFitOptionsRefuse(t *testing.T) {
 // Where a linear relief starts the flank breaks by up to some degrees. The chain
 // goes round it within the band and breaks nowhere; corners are at the tips alone.
 func TestChainGoesRoundTheStartOfARelief(t *testing.T) {
-	for _, amount := range []float64{0.002, 0.01, 0.02, 0.05} { // on 1.1 mm: up to 2.6°
-		tt := tooth(t, involute.Spec{Teeth: 24, Module: 2, Rack: isoA(), Relief: involute.ReliefSpec{Amount: amount, Start: 50}}, 0)
+	for _, c := range []struct {
+		z             int
+		amount, depth float64 // mm, below the tip
+	}{{24, 0.002, 1}, {24, 0.02, 1}, {24, 0.05, 1}, {20, 0.005, 0.8}, {33, 0.02, 0.4}, {33, 0.02, 1.2}, {50, 0.005, 1.2}} {
+		spec := involute.Spec{Teeth: c.z, Module: 2, Rack: isoA(), Relief: involute.ReliefSpec{Amount: c.amount, Start: float64(2*c.z+4) - 2*c.depth}}
+		tt := tooth(t, spec, 0)
 		for _, side := range []Side{Both, Outside, Inside} {
-			for _, tol := range []float64{0.001, 0.0025, 0.01} {
+			for _, tol := range []float64{0.0001, 0.0025, 0.01} {
 				_, r, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: tol, Side: side}})
 				if err != nil {
 					t.Fatal(err)
 				}
-				if r.MaxTangentBreakDeg > 0.01 || r.Corners != 2*24 || r.MaxDeviation > tol {
-					t.Errorf("relief %g, %v ±%g: %+v", amount, side, tol, r)
+				if r.MaxTangentBreakDeg > 0.01 || r.Corners != 2*c.z || r.MaxDeviation > tol {
+					t.Errorf("%+v, %v ±%g: %+v", c, side, tol, r)
 				}
 			}
 		}

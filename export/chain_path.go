@@ -34,12 +34,12 @@ const (
 // its start otherwise: give the pitch from its root land on and the path starts
 // in the center of a root, where a lead-in does no harm.
 //
-// A chain may by chance hold a piece too short for a file; then one within a
-// little less of the tolerance is taken.
+// A chain may by chance hold a piece too short for a file, or find no way round
+// the start of a relief; then one within a little less of the tolerance is taken.
 func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport, error) {
 	path, report, err := fitPath(curves, count, o)
-	for _, share := range []float64{0.97, 0.9, 0.8} {
-		if err != nil || path.check() == nil {
+	for _, share := range []float64{0.97, 0.9, 0.8, 0.6, 0.4} {
+		if err != nil || path.check() == nil && report.kinks == 0 {
 			break
 		}
 		closer := o

@@ -22,6 +22,8 @@ type FitReport struct {
 	LinesNeeded           int     // straight lines that the same tolerance would take
 	ArcsPerFlank          int     // pieces on one flank
 	ArcsPerFillet         int     // pieces on one fillet
+
+	kinks int // joints of Corners that are none of the outline's, but kept since no chain went round them
 }
 
 // report fills in the report on a finished path.
@@ -61,6 +63,7 @@ func (r *FitReport) judgeJoints(p *pitch, sections []section, chains []chain) {
 	var corner []bool // before each piece
 	for i, ch := range chains {
 		pieces = append(pieces, ch.Pieces...)
+		r.kinks += len(ch.Corners)
 		for j := range ch.Pieces {
 			corner = append(corner, j == 0 && p.corner(sections[i].from) || slices.Contains(ch.Corners, j))
 		}
