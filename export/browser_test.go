@@ -45,7 +45,9 @@ SCRIPT
 // 1/96 inch.
 //
 // The browser's clock is its own and runs on as fast as the page lets it.
-// Animations stand still where the script puts them:
+// Animations stand still where the script puts them. (A time that is set before
+// the page is loaded is lost as the clock starts; so the documents are added, and the
+// script is run, only after that.)
 //
 //	svg.pauseAnimations(); svg.setCurrentTime(2.5)
 //	const m = svg.getElementById("driver").getCTM()

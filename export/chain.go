@@ -69,15 +69,15 @@ func (o FitOptions) check() (FitOptions, error) {
 	case o.MaxSweep == 0:
 		o.MaxSweep = math.Pi / 2
 	}
-	if !(o.MaxSweep >= leastSweep && o.MaxSweep <= math.Pi) {
-		return o, fmt.Errorf("greatest sweep %g°: must be from %g° to 180°", o.MaxSweep*180/math.Pi, leastSweep*180/math.Pi)
+	if !(o.MaxSweep >= LeastSweep && o.MaxSweep <= math.Pi) {
+		return o, fmt.Errorf("greatest sweep %g°: must be from %g° to 180°", o.MaxSweep*180/math.Pi, LeastSweep*180/math.Pi)
 	}
 	return o, nil
 }
 
-// leastSweep is the smallest limit for the sweep of an arc, radians: a finer one
+// LeastSweep is the smallest limit for the sweep of an arc, radians: a finer one
 // would cut a gear into tens of thousands of arcs.
-const leastSweep = math.Pi / 180
+const LeastSweep = math.Pi / 180
 
 // Band returns how far inside (≤ 0) and outside of the exact curves the options
 // let the fitted ones lie, mm.
@@ -113,10 +113,6 @@ type chain struct {
 	Corners   []int   // the pieces that start at a kink of the curves which was kept
 	Low, High float64 // the farthest it lies inside (≤ 0) and outside of the curves, mm: measured, not assumed
 }
-
-// deviation returns the greatest distance between chain and curves, mm: no point
-// of the one is farther than this from the other.
-func (c chain) deviation() float64 { return max(-c.Low, c.High) }
 
 // splitSweeps returns the chain with every arc that turns by more than most cut into equal parts.
 func (c chain) splitSweeps(most float64) chain {

@@ -168,7 +168,7 @@ func (m *minimizer) equations(p float64) (bandMatrix, []float64) {
 		}
 		for k := i; k >= 0; k-- {
 			sum, any := s.product(&m.slopes[k], weight)
-			if !any {
+			if !any && k < i { // the diagonal stays, 0 for a number that moves nothing
 				break
 			}
 			a[i] = append(a[i], (p-1)*sum)

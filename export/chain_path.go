@@ -35,23 +35,31 @@ const (
 // in the center of a root, where a lead-in does no harm.
 //
 // A chain may by chance hold a piece too short for a file, or find no way round
-// the start of a relief; then one within a little less of the tolerance is taken.
+// the start of a relief; and a tolerance of a good part of the tooth's own size may
+// lose the curves, or let the path cross itself. Then a path within less of the
+// tolerance is taken.
 func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport, error) {
 	path, report, err := fitPath(curves, count, o)
-	for _, share := range []float64{0.97, 0.9, 0.8, 0.6, 0.4} {
-		if err != nil || path.check() == nil && report.kinks == 0 {
-			break
-		}
+	if err == nil && sound(path, report) {
+		return path, report, nil
+	}
+	for _, share := range []float64{0.97, 0.9, 0.8, 0.6, 0.4, 0.25, 0.1, 0.03} {
 		closer := o
 		closer.Tolerance *= share
-		if again, other, err := fitPath(curves, count, closer); err == nil {
-			path, report = again, other
+		if again, other, failed := fitPath(curves, count, closer); failed == nil && sound(again, other) {
+			return again, other, nil
 		}
 	}
 	if err != nil {
 		return Path{}, FitReport{}, fmt.Errorf("closed path: %w", err)
 	}
 	return path, report, nil
+}
+
+// sound reports whether a path can go into a file, crosses itself nowhere and keeps
+// no kink that was none of the outline's corners.
+func sound(path Path, report FitReport) bool {
+	return report.kinks == 0 && path.check() == nil && path.Simple() == nil
 }
 
 // fitPath is closedPath without the name of the job in its errors.

@@ -64,6 +64,9 @@ func bruteDistance(c involute.Curve, pieces []piece) float64 {
 	return worst
 }
 
+// deviation returns the greatest distance between chain and curves, mm.
+func (c chain) deviation() float64 { return max(-c.Low, c.High) }
+
 // checkAgainstBruteForce fits the curve and compares the deviation it reports
 // with the one found point against point. The chords between curve points lie
 // off the curve by at most slack.

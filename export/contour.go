@@ -26,7 +26,7 @@ type ContourSpec struct {
 // NewContour draws a gear: its closed contour as arcs, the bore (with its
 // keyway in line with a tooth, where the rim is thickest), bolt circle and hub, and
 // tip, reference, base, form and root circles for reference, with measuring pins
-// where asked for (see PinCircles). The first tooth points along +x.
+// where asked for (see pinCircles). The first tooth points along +x.
 func NewContour(s ContourSpec) (Outline, FitReport, error) {
 	o := Outline{Unit: s.Unit, Title: s.Title}
 	var pitch []involute.Curve
@@ -60,7 +60,7 @@ func NewContour(s ContourSpec) (Outline, FitReport, error) {
 		o.Circles = append(o.Circles, Circle{Layer: LayerReference, Radius: d / 2})
 	}
 	if s.Pin > 0 {
-		pins, err := PinCircles(s.Tooth, s.Pin, false)
+		pins, err := pinCircles(s.Tooth, s.Pin, false)
 		if err != nil {
 			return o, report, err
 		}

@@ -81,7 +81,7 @@ type standing struct {
 func standAt(p Path, turn float64, at, near involute.Vec, reach float64) standing {
 	s := standing{turn: turn, at: at}
 	for i := range p.Vertices {
-		if c := p.Curve(i); pieceDistance(c, near) < reach {
+		if c := p.Curve(i); newPlaced(c).distance(near) < reach {
 			s.pieces = append(s.pieces, c)
 		}
 	}
@@ -93,7 +93,7 @@ func standAt(p Path, turn float64, at, near involute.Vec, reach float64) standin
 func (s standing) distance(q involute.Vec) float64 {
 	least, right := math.Inf(1), false
 	for _, c := range s.pieces {
-		d := pieceDistance(c, q)
+		d := newPlaced(c).distance(q)
 		switch side := toTheRight(c, q); {
 		case d < least-1e-9:
 			least, right = d, side
@@ -231,14 +231,7 @@ func TestMeshContourHoldsAllOfBothGears(t *testing.T) {
 		t.Errorf("circles missing: %v", want)
 	}
 	for _, f := range []Format{FormatDXF, FormatDXFR12, FormatSVG} {
-		data, err := f.Encode(o)
-		if err != nil {
-			t.Fatal(f, err)
-		}
-		back, err := f.Decode(data)
-		if err != nil {
-			t.Fatal(f, err)
-		}
+		back := readBack(t, o, f)
 		cut, err1 := back.Cut()
 		mate, err2 := back.Mate()
 		if err := errors.Join(err1, err2); err != nil {

@@ -31,15 +31,43 @@ func flattened(p Path, err float64) [][2]float64 {
 	return out
 }
 
+// A buffered is a path and what it becomes by our reckoning, for testdata/buffer_shapely.py.
+type buffered struct {
+	Path     [][2]float64 `json:"path"`
+	Distance float64      `json:"distance"`
+	Offset   [][2]float64 `json:"offset"`
+}
+
+// A bufferedReading is what the script says of one.
+type bufferedReading struct {
+	Valid, Simple, Left      bool
+	Area, Buffer, Difference float64
+}
+
+// buffersOf gives the cases to the script.
+func buffersOf(t *testing.T, cases []buffered) (got []bufferedReading) {
+	t.Helper()
+	python := outsidePython(t, "shapely", "python3-shapely")
+	file := filepath.Join(t.TempDir(), "cases.json")
+	data, err := json.Marshal(cases)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := os.WriteFile(file, data, 0o644); err != nil {
+		t.Fatal(err)
+	}
+	if err := json.Unmarshal(outsideRun(t, python, "testdata/buffer_shapely.py", file), &got); err != nil {
+		t.Fatal(err)
+	}
+	if len(got) != len(cases) {
+		t.Fatalf("%d answers to %d cases", len(got), len(cases))
+	}
+	return got
+}
+
 // The Python library shapely, given polygons of many points, finds the same outline
 // for a spread of gears and distances, and nowhere a crossing.
 func TestShapelyBuffersGears(t *testing.T) {
-	python := outsidePython(t, "shapely", "python3-shapely")
-	type buffered struct {
-		Path     [][2]float64 `json:"path"`
-		Distance float64      `json:"distance"`
-		Offset   [][2]float64 `json:"offset"`
-	}
 	const chordError = 5e-5 // of a module, as the buffer's with 64 chords to a quarter circle of radius 0.7
 	var cases []buffered
 	var paths []Path
@@ -66,22 +94,7 @@ func TestShapelyBuffersGears(t *testing.T) {
 			slack = append(slack, out.length()*(2*e+d*math.Pi*math.Pi/(2*256*256)))
 		}
 	}
-	file := filepath.Join(t.TempDir(), "cases.json")
-	data, err := json.Marshal(cases)
-	if err != nil {
-		t.Fatal(err)
-	}
-	if err := os.WriteFile(file, data, 0o644); err != nil {
-		t.Fatal(err)
-	}
-	var got []struct {
-		Valid, Simple, Left      bool
-		Area, Buffer, Difference float64
-	}
-	if err := json.Unmarshal(outsideRun(t, python, "testdata/buffer_shapely.py", file), &got); err != nil {
-		t.Fatal(err)
-	}
-	for i, g := range got {
+	for i, g := range buffersOf(t, cases) {
 		if !g.Valid || !g.Simple || !g.Left {
 			t.Errorf("case %d: valid %v, simple %v, counter-clockwise %v", i, g.Valid, g.Simple, g.Left)
 		}
@@ -89,8 +102,5 @@ func TestShapelyBuffersGears(t *testing.T) {
 			t.Errorf("case %d: area %.9g, as a polygon %.9g, the buffer's %.9g, %.3g in only one of them; slack %.3g",
 				i, paths[i].area(), g.Area, g.Buffer, g.Difference, slack[i])
 		}
-	}
-	if len(got) != len(cases) {
-		t.Errorf("%d answers to %d cases", len(got), len(cases))
 	}
 }

@@ -3,7 +3,6 @@ package export
 import (
 	"fmt"
 	"math"
-	"slices"
 
 	"flankwright/involute"
 )
@@ -90,6 +89,7 @@ func (s ContourSpec) CheckOpenings(o Outline) (float64, error) {
 	return worst, nil
 }
 
+// count returns how many there are of what is there once or not at all.
 func count(there bool) int {
 	if there {
 		return 1
@@ -163,7 +163,7 @@ func (s ContourSpec) boreOff(circles []Circle, paths []Path) float64 {
 			}
 		}
 		wall := math.Sqrt(r*r - half*half)
-		worst = slices.Max([]float64{worst, math.Abs(sweep-2*(math.Pi-math.Asin(half/r))) * r, math.Abs(straight - 2*(floor-wall) - 2*half)})
+		worst = max(worst, math.Abs(sweep-2*(math.Pi-math.Asin(half/r)))*r, math.Abs(straight-2*(floor-wall)-2*half))
 	}
 	return worst
 }

@@ -38,14 +38,7 @@ func TestOpeningsComeBack(t *testing.T) {
 		o := Outline{Unit: s.Unit, Circles: []Circle{{LayerReference, involute.Vec{}, 500}}}
 		o.openings(s)
 		for _, f := range []Format{FormatDXF, FormatDXFR12, FormatSVG} {
-			data, err := f.Encode(o)
-			if err != nil {
-				t.Fatal(err)
-			}
-			back, err := f.Decode(data)
-			if err != nil {
-				t.Fatal(err)
-			}
+			back := readBack(t, o, f)
 			const asWritten = 2e-9 // mm: the decimals of a file
 			if off, err := s.CheckOpenings(back); err != nil || off > asWritten {
 				t.Fatalf("%v of %+v: off by %g, %v", f, s, off, err)

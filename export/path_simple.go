@@ -2,7 +2,6 @@ package export
 
 import (
 	"fmt"
-	"math"
 
 	"flankwright/involute"
 )
@@ -27,31 +26,41 @@ func (e *CrossingError) Error() string {
 func (p Path) Simple() error {
 	spans := p.splitArcs().spans()
 	tree := newBoxTree(spans)
-	var err error
 	for i, s := range spans {
+		var err error
 		tree.near(s.box(), 0, func(j int) {
+			o := spans[j]
 			if j <= i || err != nil {
 				return
 			}
-			o := spans[j]
-			for _, place := range s.meet(o, 0) {
-				if !(place >= 0 && place <= s.place(s.to)) {
-					continue
-				}
-				q, _ := s.at(place)
-				on := o.place(q)
-				there, _ := o.at(on)
-				if !(on >= 0 && on <= o.place(o.to)) || there.Sub(q).Norm() > minPiece {
-					continue
-				}
-				neighbors := j == i+1 || (i == 0 && j == len(spans)-1)
-				if neighbors && math.Min(math.Min(q.Sub(s.from).Norm(), q.Sub(s.to).Norm()), math.Min(q.Sub(o.from).Norm(), q.Sub(o.to).Norm())) < crossingSlack {
-					continue
-				}
+			neighbors := j == i+1 || i == 0 && j == len(spans)-1
+			if q, ok := s.touches(o, neighbors); ok {
 				err = &CrossingError{i + 1, j + 1, q}
-				return
 			}
 		})
+		if err != nil {
+			return err
+		}
 	}
-	return err
+	return nil
+}
+
+// touches returns a point where two spans meet, of neighbors one other than that which they share.
+func (s span) touches(o span, neighbors bool) (involute.Vec, bool) {
+	for _, place := range s.meet(o, 0) {
+		if !(place >= 0 && place <= s.place(s.to)) {
+			continue
+		}
+		q, _ := s.at(place)
+		on := o.place(q)
+		there, _ := o.at(on)
+		if !(on >= 0 && on <= o.place(o.to)) || there.Sub(q).Norm() > minPiece {
+			continue
+		}
+		end := min(q.Sub(s.from).Norm(), q.Sub(s.to).Norm(), q.Sub(o.from).Norm(), q.Sub(o.to).Norm())
+		if !neighbors || end >= crossingSlack {
+			return q, true
+		}
+	}
+	return involute.Vec{}, false
 }

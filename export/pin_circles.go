@@ -6,7 +6,7 @@ import (
 	"flankwright/involute"
 )
 
-// PinCircles returns the measuring pins of diameter pin (mm) where they rest in
+// pinCircles returns the measuring pins of diameter pin (mm) where they rest in
 // the tooth spaces, as circles on LayerPins; the first tooth points along +x.
 //
 // They are the two of a measurement over two pins: in spaces exactly opposite
@@ -20,7 +20,7 @@ import (
 // plane, a circle of the ball's radius, which keeps off the flanks drawn, since a
 // ball touches them above and below the plane. The error is an *involute.Impossible
 // where the pin does not rest on the flanks.
-func PinCircles(t involute.Tooth, pin float64, all bool) ([]Circle, error) {
+func pinCircles(t involute.Tooth, pin float64, all bool) ([]Circle, error) {
 	seat, err := t.Seat(pin)
 	if err != nil {
 		return nil, err

@@ -13,7 +13,7 @@ import (
 func pathDistance(p Path, q involute.Vec) float64 {
 	least := math.Inf(1)
 	for i := range p.Vertices {
-		least = min(least, pieceDistance(p.Curve(i), q))
+		least = min(least, newPlaced(p.Curve(i)).distance(q))
 	}
 	return least
 }
@@ -106,7 +106,7 @@ func TestPinsAreTheOnesMeasured(t *testing.T) {
 func TestPinsInEverySpace(t *testing.T) {
 	for _, z := range []int{7, 12} {
 		tt := tooth(t, involute.Spec{Teeth: z, Module: 2, Rack: isoA(), Shift: 0.2}, 0.05)
-		pins, err := PinCircles(tt, 3.5, true)
+		pins, err := pinCircles(tt, 3.5, true)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -131,7 +131,7 @@ func TestPinsThatDoNotRest(t *testing.T) {
 	tt := tooth(t, involute.Spec{Teeth: 24, Module: 2, Rack: isoA()}, 0.05)
 	for _, pin := range []float64{-1, 0, 0.5, math.NaN()} {
 		var imp *involute.Impossible
-		if _, err := PinCircles(tt, pin, false); !errors.As(err, &imp) || imp.Reason != involute.PinFallsThrough {
+		if _, err := pinCircles(tt, pin, false); !errors.As(err, &imp) || imp.Reason != involute.PinFallsThrough {
 			t.Errorf("pin %g: %v", pin, err)
 		}
 	}

@@ -14,6 +14,7 @@ import (
 // from a file. It is measured with the geometry of lines and arcs alone.
 //
 //   - here: over pins
+//   - readback_distance.go: how far a point is from a side of a tooth
 //   - readback_flank.go: where flanks, teeth and spaces are
 //   - readback_span.go: span over teeth
 //   - readback_limits.go: least and greatest radius, area, joints
@@ -31,12 +32,6 @@ type Section struct {
 	twist  float64 // turn per mm of face of a helical gear, radians
 }
 
-// A placed piece is a line or an arc with the polar angle of its middle.
-type placed struct {
-	involute.Curve
-	angle float64
-}
-
 // NewSection takes a contour apart: it finds the tooth spaces where the path
 // crosses the circle halfway between root and tip. lead is a helical gear's
 // lead in mm, 0 for a spur gear.
@@ -47,9 +42,8 @@ func NewSection(p Path, lead float64) (Section, error) {
 	}
 	for i := range s.path.Vertices {
 		c := s.path.Curve(i)
-		mid, _ := c.At(0.5)
 		s.curves = append(s.curves, c)
-		s.pieces = append(s.pieces, placed{c, mid.Angle()})
+		s.pieces = append(s.pieces, newPlaced(c))
 		near, far := reachFrom(involute.Vec{}, c)
 		s.least, s.most = min(s.least, near), max(s.most, far)
 	}
@@ -109,17 +103,18 @@ func (s Section) rest(space, pin float64) (involute.Vec, error) {
 	left, right := s.sides(space)
 	width := math.Pi / float64(len(s.spaces))
 	// The middle of the space is where both sides are equally near; with a true
-	// contour that is its center line, and never a quarter of the width away.
+	// contour that is its center line, and never a quarter of the width away. (It is
+	// sought as a polar angle: a turn of 0 would be sought to digits that are none.)
 	balance := func(r float64) (involute.Vec, float64) {
-		off := func(turn float64) float64 {
-			c := involute.Polar(r, space+turn)
+		off := func(angle float64) float64 {
+			c := involute.Polar(r, angle)
 			return s.distance(left, c) - s.distance(right, c)
 		}
-		turn, err := involute.FindRoot(off, -width/4, width/4)
+		middle, err := involute.FindRoot(off, space-width/4, space+width/4)
 		if err != nil {
-			turn = 0
+			middle = space
 		}
-		c := involute.Polar(r, space+turn)
+		c := involute.Polar(r, middle)
 		return c, min(s.distance(left, c), s.distance(right, c))
 	}
 	r, err := involute.FindRoot(func(r float64) float64 {
@@ -149,74 +144,4 @@ func (s Section) between(from, to float64) []placed {
 		}
 	}
 	return out
-}
-
-// distance returns how far a point is from the nearest of the pieces, or, on a
-// helical gear, from the nearest of the surfaces that they sweep along the helix.
-func (s Section) distance(pieces []placed, c involute.Vec) float64 {
-	least, nearest := math.Inf(1), 0
-	for i, p := range pieces {
-		if d := pieceDistance(p.Curve, c); d < least {
-			least, nearest = d, i
-		}
-	}
-	if s.twist == 0 || len(pieces) == 0 {
-		return least
-	}
-	// A surface swept along the helix comes nearer than the piece itself by the
-	// cosine of the helix angle at most; at the outermost radius that is least.
-	share := 1 / math.Hypot(1, s.twist*s.most)
-	least = s.sweptDistance(pieces[nearest].Curve, c)
-	for i, p := range pieces {
-		if i != nearest && share*pieceDistance(p.Curve, c) < least {
-			least = min(least, s.sweptDistance(p.Curve, c))
-		}
-	}
-	return least
-}
-
-// pieceDistance returns the distance of a point from a line or an arc.
-func pieceDistance(p involute.Curve, c involute.Vec) float64 {
-	a, _ := p.At(0)
-	b, _ := p.At(1)
-	ends := min(c.Sub(a).Norm(), c.Sub(b).Norm())
-	switch p := p.(type) {
-	case involute.Line:
-		d := b.Sub(a)
-		t := c.Sub(a).Dot(d) / d.Dot(d)
-		if t > 0 && t < 1 {
-			return min(ends, math.Abs(d.Cross(c.Sub(a)))/d.Norm())
-		}
-	case involute.Arc:
-		from := c.Sub(p.Center)
-		turn := math.Remainder(from.Angle()-p.Start-p.Sweep/2, 2*math.Pi)
-		if math.Abs(turn) <= math.Abs(p.Sweep)/2 {
-			return min(ends, math.Abs(from.Norm()-p.Radius))
-		}
-	}
-	return ends
-}
-
-// sweptSteps samples a piece for the point nearest to a ball; golden section
-// then closes in on it. A piece turns by under 90°, over which the distance has
-// one minimum, or two at its ends.
-const sweptSteps = 12
-
-// sweptDistance returns the distance of the point c of the plane z = 0 from the
-// surface that a piece sweeps when it moves along the helix.
-func (s Section) sweptDistance(p involute.Curve, c involute.Vec) float64 {
-	at := func(t float64) float64 {
-		q, _ := p.At(t)
-		return involute.HelixDistance(c.Norm(), q.Norm(), q.Angle()-c.Angle(), s.twist)
-	}
-	best, bestT := math.Inf(1), 0.0
-	for i := range sweptSteps + 1 {
-		t := float64(i) / sweptSteps
-		if d := at(t); d < best {
-			best, bestT = d, t
-		}
-	}
-	lo, hi := max(0, bestT-1.0/sweptSteps), min(1, bestT+1.0/sweptSteps)
-	_, farthest := findMaximum(func(t float64) float64 { return -at(t) }, lo, hi)
-	return min(best, -farthest)
 }

@@ -2,7 +2,6 @@ package export
 
 import (
 	"math"
-	"slices"
 
 	"flankwright/involute"
 )
@@ -43,31 +42,18 @@ func (s Section) Unevenness() Unevenness {
 	for _, c := range s.curves {
 		for i := range evenSamples {
 			q, _ := c.At(float64(i) / evenSamples)
-			out.Shape = math.Max(out.Shape, nearestPiece(first, home(q)))
+			_, off := nearestPiece(first, home(q))
+			out.Shape = max(out.Shape, off)
 		}
 	}
 	for _, q := range joints {
 		least := math.Inf(1)
 		for _, p := range near {
-			least = math.Min(least, p.Sub(home(q)).Norm())
+			least = min(least, p.Sub(home(q)).Norm())
 		}
-		out.Joints = math.Max(out.Joints, least)
+		out.Joints = max(out.Joints, least)
 	}
 	return out
-}
-
-// nearestPiece returns the distance of a point from the nearest of the pieces.
-func nearestPiece(pieces []placed, q involute.Vec) float64 {
-	least := math.Inf(1)
-	for _, p := range pieces {
-		// No point of a piece that turns by under 180° is farther from either end than the chord.
-		a, _ := p.At(0)
-		b, _ := p.At(1)
-		if q.Sub(a).Norm()-b.Sub(a).Norm() < least {
-			least = math.Min(least, pieceDistance(p.Curve, q))
-		}
-	}
-	return least
 }
 
 // oneCircle is how near the centers and radii of two neighbors are one circle, as a share of the radius.
@@ -97,10 +83,4 @@ func sameCurve(a, b involute.Curve) bool {
 	q, also := b.(involute.Arc)
 	return ok && also && p.Sweep*q.Sweep > 0 &&
 		p.Center.Sub(q.Center).Norm() < oneCircle*p.Radius && math.Abs(p.Radius-q.Radius) < oneCircle*p.Radius
-}
-
-// sortedUnique returns the numbers in rising order, each once.
-func sortedUnique(v []float64) []float64 {
-	slices.Sort(v)
-	return slices.Compact(v)
 }

@@ -62,13 +62,13 @@ func (s Section) Joints() Joints {
 		next := s.curves[(i+1)%len(s.curves)]
 		to, _ := c.At(1)
 		from, _ := next.At(0)
-		out.Gap = math.Max(out.Gap, to.Sub(from).Norm())
+		out.Gap = max(out.Gap, to.Sub(from).Norm())
 		_, end := directions(c)
 		start, _ := directions(next)
 		if angle := math.Abs(turn(end, start)); angle > cornerAngle {
 			out.Corners++
 		} else {
-			out.TangentBreakDeg = math.Max(out.TangentBreakDeg, angle/involute.Degree)
+			out.TangentBreakDeg = max(out.TangentBreakDeg, angle/involute.Degree)
 		}
 	}
 	return out

@@ -73,14 +73,7 @@ func TestJointsOfAFile(t *testing.T) {
 		t.Fatal(err)
 	}
 	for _, f := range []Format{FormatDXF, FormatDXFR12, FormatSVG} {
-		data, err := f.Encode(o)
-		if err != nil {
-			t.Fatal(err)
-		}
-		back, err := f.Decode(data)
-		if err != nil {
-			t.Fatal(err)
-		}
+		back := readBack(t, o, f)
 		path, err := back.Cut()
 		if err != nil {
 			t.Fatal(err)

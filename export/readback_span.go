@@ -3,6 +3,7 @@ package export
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"flankwright/involute"
 )
@@ -132,7 +133,7 @@ func (f face) reach(lambda float64) float64 {
 	for _, t := range f.touches {
 		at := func(v float64) {
 			if v >= t.from && v <= t.to {
-				most = math.Max(most, t.distance*math.Cos(v-t.angle)+t.radius+lambda*v)
+				most = max(most, t.distance*math.Cos(v-t.angle)+t.radius+lambda*v)
 			}
 		}
 		at(t.from)
@@ -149,7 +150,7 @@ func (f face) reachAt(v float64) float64 {
 	most := math.Inf(-1)
 	for _, t := range f.touches {
 		if v >= t.from && v <= t.to {
-			most = math.Max(most, t.distance*math.Cos(v-t.angle)+t.radius)
+			most = max(most, t.distance*math.Cos(v-t.angle)+t.radius)
 		}
 	}
 	return most
@@ -175,14 +176,16 @@ func (f face) rocked(near face) float64 {
 			stops = append(stops, t.from)
 		}
 	}
-	stops = sortedUnique(append(stops, to))
+	stops = append(stops, to)
+	slices.Sort(stops)
+	stops = slices.Compact(stops)
 	least := math.Inf(1)
 	apart := func(v float64) float64 { return f.reachAt(v) + near.reachAt(v) }
 	for i, v := range stops {
-		least = math.Min(least, apart(v))
+		least = min(least, apart(v))
 		if i > 0 {
 			_, low := findMaximum(func(v float64) float64 { return -apart(v) }, stops[i-1], v)
-			least = math.Min(least, -low)
+			least = min(least, -low)
 		}
 	}
 	return least

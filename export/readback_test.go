@@ -31,6 +31,23 @@ func fullRadius() involute.Rack {
 	return r
 }
 
+// readBack writes an outline and reads it again.
+func readBack(t interface {
+	Helper()
+	Fatal(...any)
+}, o Outline, f Format) Outline {
+	t.Helper()
+	data, err := f.Encode(o)
+	if err != nil {
+		t.Fatal(f, err)
+	}
+	back, err := f.Decode(data)
+	if err != nil {
+		t.Fatal(f, err)
+	}
+	return back
+}
+
 // What is written is measured: contours of several gears, through every format
 // and back, must give the closed formula's reading over pins within what the
 // tolerance allows: each flank off by ε moves a pin's center by ε/sin α_K.
@@ -53,10 +70,7 @@ func TestContourMeasuresItself(t *testing.T) {
 	} {
 		const tolerance = 0.0025
 		tt := tooth(t, c.spec, c.thin)
-		o, report, err := NewContour(ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: tolerance}, Bore: c.bore, KeyWidth: c.bore / 5, KeyDepth: c.bore / 10, Title: c.name})
-		if err != nil {
-			t.Fatal(c.name, err)
-		}
+		o, report := fitted(t, ContourSpec{Tooth: tt, Fit: FitOptions{Tolerance: tolerance}, Bore: c.bore, KeyWidth: c.bore / 5, KeyDepth: c.bore / 10, Title: c.name})
 		if report.MaxDeviation > tolerance {
 			t.Errorf("%s: deviation %g", c.name, report.MaxDeviation)
 		}
@@ -70,14 +84,7 @@ func TestContourMeasuresItself(t *testing.T) {
 		}
 		slack := 2*tolerance*seat.CenterDiameter/math.Sqrt(seat.CenterDiameter*seat.CenterDiameter-tt.BaseDiameter()*tt.BaseDiameter())/math.Cos(tt.BaseHelix()) + 1e-6
 		for _, f := range []Format{FormatDXF, FormatDXFR12, FormatSVG} {
-			data, err := f.Encode(o)
-			if err != nil {
-				t.Fatal(c.name, err)
-			}
-			back, err := f.Decode(data)
-			if err != nil {
-				t.Fatal(c.name, err)
-			}
+			back := readBack(t, o, f)
 			path, err := back.Cut()
 			if err != nil {
 				t.Fatal(c.name, err)

@@ -111,7 +111,7 @@ func (m rollMesh) most(stands []stand, pitch float64, f func(stand) float64) flo
 		at := float64(i) * step
 		_, v := findMaximum(func(angle float64) float64 { return f(m.stand(angle)) }, at-step, at+step)
 		if finite(v) {
-			best = math.Max(best, v)
+			best = max(best, v)
 		}
 	}
 	return best

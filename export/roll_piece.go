@@ -38,7 +38,7 @@ func newRollPiece(c involute.Curve) rollPiece {
 		p.center, p.radius = arc.Center, math.Copysign(arc.Radius, arc.Sweep)
 		half := math.Abs(arc.Sweep) / 2
 		p.cosHalf = math.Cos(half)
-		p.size = math.Max(p.size, arc.Radius*(1-p.cosHalf)) // the rise of an arc over 180°
+		p.size = max(p.size, arc.Radius*(1-p.cosHalf)) // the rise of an arc over 180°
 	}
 	return p
 }

@@ -127,6 +127,40 @@ func TestRandomGearsGoTheWholeWay(t *testing.T) {
 	}
 }
 
+// A tolerance as coarse as the tooth itself still gives a closed, simple contour
+// within it: random gears of few teeth, and one on which a number of the fit moved
+// nothing that is measured.
+func TestCoarseTolerancesGoTheWholeWay(t *testing.T) {
+	still := journey{
+		spec: involute.Spec{
+			Teeth: 5, Module: 2.215724419577992, Shift: 0.2923265359577384, Thinning: involute.FlanksOnly, Mill: involute.MillSpec{Diameter: 2.602312873081933},
+			Rack: involute.Rack{PressureAngle: 20 * involute.Degree, Addendum: 0.9628610796055506, Dedendum: 1.3253491732983407, TipRadius: 0.19340001460643902},
+		},
+		thin: 0.12670525669556204, fit: FitOptions{Tolerance: 1.2382355294399223, Side: Outside}, format: FormatDXF,
+	}
+	journeys := []journey{still}
+	for i := range 200 {
+		r := rand.New(rand.NewPCG(17, uint64(i)))
+		j := randomJourney(r)
+		j.spec.Teeth = 5 + r.IntN(20)
+		j.fit.Tolerance = j.spec.Module * math.Pow(10, -0.6+0.9*r.Float64())
+		journeys = append(journeys, j)
+	}
+	sum := tally{reasons: map[involute.Reason]int{}}
+	for i, j := range journeys {
+		if err := j.travel(&sum); err != nil {
+			t.Errorf("gear %d, %+v: %v", i, j, err)
+		}
+	}
+	impossible := 0
+	for _, n := range sum.reasons {
+		impossible += n
+	}
+	if sum.refused != impossible || sum.drawn < 100 {
+		t.Errorf("%d of %d possible gears refused: %+v", sum.refused-impossible, len(journeys)-impossible, sum)
+	}
+}
+
 // travel takes one gear the whole way.
 func (j journey) travel(sum *tally) error {
 	sum.gears++

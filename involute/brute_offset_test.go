@@ -98,3 +98,25 @@ func TestOffsetByPolygon(t *testing.T) {
 		}
 	}
 }
+
+// On a gear of one tooth the flank rolls through more than half a turn: the points
+// of its own outline still lie on it.
+func TestOffsetOfOneTooth(t *testing.T) {
+	tooth := mustTooth(t, Spec{
+		Teeth: 1, Module: 3.8049, Helix: 0.6309, Shift: 0.58505,
+		Rack: Rack{PressureAngle: 17.5 * Degree, Addendum: 0.7363, Dedendum: 0.99817, TipRadius: 0.64192},
+	})
+	if roll := tooth.RollAngle(tooth.TipFormDiameter()); roll <= math.Pi {
+		t.Fatalf("it rolls through %g only", roll)
+	}
+	exact := tooth.Profile()
+	for _, p := range tooth.Outline().Pieces {
+		t0, t1 := p.Domain()
+		for i := range 201 {
+			q, _ := p.At(t0 + (t1-t0)*float64(i)/200)
+			if off := exact.Offset(q); math.Abs(off) > 1e-9 {
+				t.Errorf("piece of role %d, %d/200 along: offset %g", p.Role, i, off)
+			}
+		}
+	}
+}

@@ -81,7 +81,7 @@ func TestReliefByDistance(t *testing.T) {
 	breaks.within(t, "break at the start, rad", 1e-8)
 }
 
-// RealHalfAngleAt and so the tip land agree with the drawn relieved flank.
+// realHalfAngleAt and so the tip land agree with the drawn relieved flank.
 func TestReliefNarrowsTip(t *testing.T) {
 	for _, c := range relievedGears() {
 		tooth := c.tooth(t)
@@ -91,10 +91,10 @@ func TestReliefNarrowsTip(t *testing.T) {
 			if !ok {
 				t.Fatalf("%s: no flank drawn at %g", c.name, d)
 			}
-			near(t, c.name+": half angle", tooth.RealHalfAngleAt(d), drawn, 1e-12)
+			near(t, c.name+": half angle", tooth.realHalfAngleAt(d), drawn, 1e-12)
 		}
 		d := c.spec.Relief.Start - 1e-3
-		near(t, c.name+": below", tooth.RealHalfAngleAt(d), tooth.HalfAngleAt(d), 0)
+		near(t, c.name+": below", tooth.realHalfAngleAt(d), tooth.HalfAngleAt(d), 0)
 	}
 }
 

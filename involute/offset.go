@@ -75,7 +75,8 @@ func nearest(c Curve, q Vec) float64 {
 			return clamp(0)
 		}
 		roll := math.Copysign(tanOfCos(2*c.BaseRadius, 2*r), c.T0+c.T1)
-		return clamp(math.Remainder(q.Angle()+math.Atan(roll)-c.BaseAngle, 2*math.Pi))
+		middle := (c.T0 + c.T1) / 2 // with one or two teeth the roll may pass half a turn
+		return clamp(middle + math.Remainder(q.Angle()+math.Atan(roll)-c.BaseAngle-middle, 2*math.Pi))
 	}
 	return nearestBySteps(c, q)
 }

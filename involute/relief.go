@@ -133,9 +133,9 @@ func (g *Gear) InvoluteEndDiameter() float64 {
 	return g.daFa
 }
 
-// RealHalfAngleAt returns half the tooth's angle at diameter dy on the flank as
+// realHalfAngleAt returns half the tooth's angle at diameter dy on the flank as
 // it is cut: HalfAngleAt less C/r_b where the tip is relieved, radians.
-func (t Tooth) RealHalfAngleAt(dy float64) float64 {
+func (t Tooth) realHalfAngleAt(dy float64) float64 {
 	_, taken := t.reliefAt(dy)
 	return t.HalfAngleAt(dy) - 2*taken/t.db
 }

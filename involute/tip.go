@@ -62,7 +62,7 @@ func (t Tooth) endTip() error {
 	switch {
 	case t.da*t.HalfAngleAt(t.da) <= 0:
 		return impossible(Pointed, math.Abs(t.da), math.Abs(t.PointedDiameter()))
-	case t.RealHalfAngleAt(t.da) <= 0 && t.relieved(): // half the land is what there is to take off
+	case t.realHalfAngleAt(t.da) <= 0 && t.relieved(): // half the land is what there is to take off
 		return impossible(ReliefTooLarge, s.Relief.Amount, t.HalfAngleAt(t.da)*t.db/2)
 	case s.TipChamfer > 0 && !t.chamferFits():
 		return t.chamferTooLarge()
@@ -118,7 +118,7 @@ func (t Tooth) largestTip(asked float64, fits func(float64) bool) float64 {
 
 // flankEnd returns where the first flank (that below a tooth pointing along +x)
 // ends at its tip form diameter.
-func (t Tooth) flankEnd() Vec { return Polar(t.daFa/2, -t.RealHalfAngleAt(t.daFa)) }
+func (t Tooth) flankEnd() Vec { return Polar(t.daFa/2, -t.realHalfAngleAt(t.daFa)) }
 
 // chamferEnd returns where the 45° chamfer that starts at flankEnd meets the tip circle.
 func (t Tooth) chamferEnd() Vec {
@@ -136,7 +136,7 @@ func (t Tooth) chamferEnd() Vec {
 // would lie outside it.
 func (t Tooth) chamferFits() bool {
 	to := t.chamferEnd()
-	return to.Y < 0 && -to.Angle() < t.RealHalfAngleAt(t.da)
+	return to.Y < 0 && -to.Angle() < t.realHalfAngleAt(t.da)
 }
 
 // rounding returns the arc that rounds the first flank's corner, from the flank
@@ -176,7 +176,7 @@ func (t Tooth) landAngle() float64 {
 	case t.spec.TipRound > 0:
 		return -t.rounding(t.spec.TipRound).Center.Angle()
 	}
-	return t.RealHalfAngleAt(t.da)
+	return t.realHalfAngleAt(t.da)
 }
 
 // TipLand returns the arc length of the tip that is left between chamfers or

@@ -46,6 +46,9 @@ const (
 	mostBreak = 0.01
 	// mostGap is the greatest gap between two pieces, mm: the finest distance at which importers join ends.
 	mostGap = 1e-6
+	// mostUneven is by how much the teeth of one contour may differ, mm: they are the
+	// first one turned, and a file's decimals are far finer.
+	mostUneven = 1e-6
 	// mostDrift is the share of the tolerance over pins that a drawing may use up
 	// before it is said: a quarter leaves the machine most of it.
 	mostDrift = 0.25
@@ -101,7 +104,7 @@ func (j *job) measure(d *drawnGear, path export.Path, o contourOptions) (faults 
 	d.AsWritten = w
 	least, most := d.read.Deviation(d.tooth)
 	w.ShapeRange = span{least - d.Stock, most - d.Stock}
-	w.Shape = math.Max(w.ShapeRange.Max, -w.ShapeRange.Min)
+	w.Shape = max(w.ShapeRange.Max, -w.ShapeRange.Min)
 	uneven, joints := d.read.Unevenness(), d.read.Joints()
 	w.Unevenness, w.Joints = uneven.Shape, uneven.Joints
 	w.Gap, w.TangentBreak, w.Corners = joints.Gap, joints.TangentBreakDeg, joints.Corners
@@ -119,13 +122,13 @@ func (j *job) measure(d *drawnGear, path export.Path, o contourOptions) (faults 
 func (j *job) judgeShape(d *drawnGear, path export.Path, o contourOptions) (faults []string) {
 	w := d.AsWritten
 	low, high := o.fit.Band()
-	low, high = math.Max(low, -d.MaxDeviation)-shapeRounding, math.Min(high, d.MaxDeviation)+shapeRounding
+	low, high = max(low, -d.MaxDeviation)-shapeRounding, min(high, d.MaxDeviation)+shapeRounding
 	add := func(format string, args ...any) { faults = append(faults, fmt.Sprintf(format, args...)) }
 	switch {
 	case w.ShapeRange.Max > high:
-		add("is up to %s outside of the exact shape, not %s", j.fine(w.ShapeRange.Max), j.fine(math.Max(high, 0)))
+		add("is up to %s outside of the exact shape, not %s", j.fine(w.ShapeRange.Max), j.fine(max(high, 0)))
 	case w.ShapeRange.Min < low:
-		add("is up to %s inside of the exact shape, not %s", j.fine(-w.ShapeRange.Min), j.fine(math.Max(-low, 0)))
+		add("is up to %s inside of the exact shape, not %s", j.fine(-w.ShapeRange.Min), j.fine(max(-low, 0)))
 	}
 	if err := path.Simple(); err != nil {
 		add("crosses itself: %v", err)
@@ -150,9 +153,14 @@ func (j *job) judgeShape(d *drawnGear, path export.Path, o contourOptions) (faul
 	return faults
 }
 
-// mostUneven is by how much the teeth of one contour may differ, mm: they are the
-// first one turned, and a file's decimals are far finer.
-const mostUneven = 1e-6
+// openingFaults holds bore, keyway, holes and hub of a file that was read back
+// against what they should be. It is for a gear alone: in a mesh they stand turned.
+func openingFaults(spec export.ContourSpec, back export.Outline) []string {
+	if _, err := spec.CheckOpenings(back); err != nil {
+		return []string{err.Error()}
+	}
+	return nil
+}
 
 // measurePins pushes a pin into the spaces, and says where it reads otherwise than
 // the formula by more than the fit can do.

@@ -2,6 +2,7 @@ package main
 
 import (
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -89,7 +90,7 @@ func (j *job) runMeshContour(c *cli.Context, out string, o contourOptions) error
 		}
 		for i, g := range []*gear{m.first, m.second} {
 			pair[i].File = r.File
-			if !hasGear(gears, g) {
+			if !slices.Contains(gears, g) {
 				gears, drawn = append(gears, g), append(drawn, pair[i])
 			}
 		}
@@ -104,15 +105,6 @@ func (j *job) runMeshContour(c *cli.Context, out string, o contourOptions) error
 		return err
 	}
 	return j.showContours(c, gears, drawn, rolled)
-}
-
-func hasGear(list []*gear, g *gear) bool {
-	for _, x := range list {
-		if x == g {
-			return true
-		}
-	}
-	return false
 }
 
 // drawMesh draws a mesh and measures both contours as read back, alone and

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"math"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -74,9 +73,7 @@ func readContourOptions(c *cli.Context, j *job) (contourOptions, error) {
 	return o, nil
 }
 
-// leastSweep keeps a sweep asked for from cutting a gear into thousands of arcs, degrees.
-const leastSweep = 1
-
+// readSweep reads how far one arc may turn.
 func (o *contourOptions) readSweep(c *cli.Context) error {
 	v, ok := flagValue(c, "max-sweep")
 	if !ok {
@@ -86,10 +83,10 @@ func (o *contourOptions) readSweep(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	if !(deg >= leastSweep && deg <= 90) {
-		return wrong("--max-sweep: %v° is out of range; take %d° to 90°", deg, leastSweep)
+	if least := export.LeastSweep / involute.Degree; !(deg >= least && deg <= 90) {
+		return wrong("--max-sweep: %v° is out of range; take %g° to 90°", deg, least)
 	}
-	o.fit.MaxSweep = math.Min(deg, 90) * involute.Degree
+	o.fit.MaxSweep = deg * involute.Degree
 	return nil
 }
 

@@ -114,30 +114,18 @@ func (g *gear) millToDepth(root float64) float64 {
 // in a mesh at its tightest with the thickest teeth, mm; 0 or less where they pass.
 func (m *mesh) touches(g *gear, own *involute.Gear) float64 {
 	mate, _ := m.mateOf(g)
-	pair, first := involute.Mesh{First: own, Second: mate.g}, true
-	if g == m.second {
-		pair, first = involute.Mesh{First: mate.g, Second: own}, false
-	}
 	thick, err1 := own.Tooth(g.thickness.Limits.Max)
 	other, err2 := mate.g.Tooth(mate.thickness.Limits.Max)
 	if err1 != nil || err2 != nil {
 		return math.Inf(1)
 	}
-	t1, t2 := thick, other
-	if !first {
-		t1, t2 = other, thick
-	}
-	a := m.plan.Tightest()
-	c1, c2 := pair.TipClearances(a, t1, t2)
-	into := -c2
-	if !first {
-		into = -c1
-	}
-	gap, err := pair.FilletClearance(a, t1, t2, first)
+	a, pair := m.plan.Tightest(), involute.Mesh{First: own, Second: mate.g}
+	_, clearance := pair.TipClearances(a, thick, other)
+	gap, err := pair.FilletClearance(a, thick, other, true)
 	if err != nil {
 		return math.Inf(1)
 	}
-	return max(into, -gap)
+	return max(-clearance, -gap)
 }
 
 // millThatPasses words the largest end mill whose root no mate touches, and the

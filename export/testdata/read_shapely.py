@@ -1,7 +1,7 @@
-"""Measures the gear in a DXF file with the geometry library shapely and prints JSON.
+"""Measures the gears in DXF files with the geometry library shapely and prints a JSON list.
 
-Arguments: the DXF; a file of the exact outline's points, "x,y" a line; and the
-sagitta (in mm) at which arcs are cut into chords. The arcs' centers and radii are
+Arguments, three for each gear: the DXF; a file of the exact outline's points, "x,y" a
+line; and the sagitta (in mm) at which arcs are cut into chords. The arcs' centers and radii are
 worked out from the bulges by the library ezdxf, which reads the file.
 """
 import json
@@ -47,18 +47,23 @@ def read(path, sagitta):
     return lines, circles
 
 
-path, csv, sagitta = sys.argv[1], sys.argv[2], float(sys.argv[3])
-lines, circles = read(path, sagitta)
-[cut] = lines["CUT"]
-with open(csv) as f:
-    exact = [tuple(map(float, line.split(","))) for line in f]
-drawn = LinearRing(cut)
-bores = [Polygon(b) for b in lines.get("BORE", [])] + circles.get("BORE", [])
-json.dump({
-    "closed": drawn.is_closed, "simple": drawn.is_simple, "ccw": drawn.is_ccw,
-    "valid": explain_validity(Polygon(cut)),
-    "bored": [explain_validity(b) == "Valid Geometry" and Polygon(cut).contains(b) for b in bores],
-    "area": Polygon(cut).area, "length": drawn.length,
-    "exactvalid": explain_validity(Polygon(exact)), "exactarea": Polygon(exact).area,
-    "distance": LineString(cut + cut[:1]).hausdorff_distance(LineString(exact + exact[:1])),  # which is not right for rings
-}, sys.stdout)
+def measure(path, csv, sagitta):
+    """What is measured of one gear."""
+    lines, circles = read(path, sagitta)
+    [cut] = lines["CUT"]
+    with open(csv) as f:
+        exact = [tuple(map(float, line.split(","))) for line in f]
+    drawn = LinearRing(cut)
+    bores = [Polygon(b) for b in lines.get("BORE", [])] + circles.get("BORE", [])
+    return {
+        "closed": drawn.is_closed, "simple": drawn.is_simple, "ccw": drawn.is_ccw,
+        "valid": explain_validity(Polygon(cut)),
+        "bored": [explain_validity(b) == "Valid Geometry" and Polygon(cut).contains(b) for b in bores],
+        "area": Polygon(cut).area, "length": drawn.length,
+        "exactvalid": explain_validity(Polygon(exact)), "exactarea": Polygon(exact).area,
+        "distance": LineString(cut + cut[:1]).hausdorff_distance(LineString(exact + exact[:1])),  # which is not right for rings
+    }
+
+
+arguments = iter(sys.argv[1:])
+json.dump([measure(path, csv, float(sagitta)) for path, csv, sagitta in zip(arguments, arguments, arguments)], sys.stdout)
