@@ -281,9 +281,15 @@ func (m meshDims) pairGrid(u inspect.Unit, f func(float64) string) grid {
 		tight = f(*m.Tight)
 	}
 	g.row("Center distance without backlash, nominal teeth", u.String(), tight)
-	g.row("Sum of shifts", "", fmt.Sprintf("%+.4f", m.mesh.first.g.Spec().Shift+m.mesh.second.g.Spec().Shift))
-	g.row("  that is tight at the tightest center", "", fmt.Sprintf("%+.4f", m.mesh.tightShift()))
+	g.row("Sum of shifts", "", signed(m.mesh.first.g.Spec().Shift+m.mesh.second.g.Spec().Shift))
+	g.row("  that is tight at the tightest center", "", signed(m.mesh.tightShift()))
 	return g
+}
+
+// signed writes a coefficient with its sign, and no sign of rounding before a zero.
+func signed(x float64) string {
+	const last = 1e-4
+	return fmt.Sprintf("%+.4f", math.Round(x/last)*last+0)
 }
 
 func overlapText(m meshDims) string {
