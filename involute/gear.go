@@ -176,14 +176,15 @@ func (g *Gear) NominalThickness() float64 {
 // normal thickness sn by being fed deeper: (s_n/m_n − π/2)/(2 tan α_n)
 // (ISO 21771:2007, clause 4). Where the flanks alone are moved it is x itself.
 func (g *Gear) GeneratingShift(sn float64) float64 {
-	if !g.fedDeeper() {
+	if !g.FedDeeper() {
 		return g.spec.Shift
 	}
 	return (sn/g.spec.Module - math.Pi/2) / g.ThinningPerDepth()
 }
 
-// fedDeeper reports whether a thinner tooth is one cut deeper.
-func (g *Gear) fedDeeper() bool { return g.spec.Thinning == Infeed && g.spec.Mill.Diameter == 0 }
+// FedDeeper reports whether a thinner tooth is one cut deeper, and not one whose
+// flanks alone were moved.
+func (g *Gear) FedDeeper() bool { return g.spec.Thinning == Infeed && g.spec.Mill.Diameter == 0 }
 
 // ThinningPerDepth returns 2 tan α_n: how much normal thickness at the reference
 // cylinder a tooth loses for each unit of length that the rack goes deeper

@@ -30,7 +30,7 @@ func (t Tooth) rackTip(space, side float64) Fillet {
 // toolWidening returns by how much the tool's tooth is wider than the rack's, in
 // the normal section, mm.
 func (t Tooth) toolWidening() float64 {
-	if t.fedDeeper() {
+	if t.FedDeeper() {
 		return 0
 	}
 	return t.NominalThickness() - t.sn

@@ -66,7 +66,11 @@ func explainSensitivity(e *explainer, t involute.Tooth, seat involute.PinSeat, a
 	}
 	e.result("how much less a tooth thinner by 1 reads", "M_s = "+factor+" * cos(α_t) / (cos(β) * sin(α_Kt))", num("M_s", byThickness), srcGeometry, append(more, at, b, ak)...)
 	an := deg("α_n", t.PressureAngle())
-	e.result("how much less a cut deeper by 1 reads", "M_h = 2 * tan(α_n) * M_s", num("M_h", t.ThinningPerDepth()*byThickness), srcGeometry, an, num("M_s", byThickness))
+	if t.FedDeeper() {
+		e.result("how much less a cut deeper by 1 reads", "M_h = 2 * tan(α_n) * M_s", num("M_h", t.ThinningPerDepth()*byThickness), srcGeometry, an, num("M_s", byThickness))
+	} else {
+		e.result("how much less it reads with 1 off each flank, along its normal", "M_n = 2 * M_s / cos(α_n)", num("M_n", 2*byThickness/math.Cos(t.PressureAngle())), srcGeometry, num("M_s", byThickness), an)
+	}
 	e.result("how much more a pin larger by 1 reads", "M_D = "+factor+" / (sin(α_Kt) * cos(β_b)) + 1", num("M_D", byPin), srcGeometry, append(more, ak, bb)...)
 }
 

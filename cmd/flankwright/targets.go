@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"math"
 
 	"github.com/urfave/cli/v2"
 
@@ -70,7 +71,8 @@ type pinTarget struct {
 	Contact     *span     `json:"contact_diameter_mm"`
 	ByThickness *float64  `json:"change_per_thickness"`
 	ByPin       *float64  `json:"change_per_pin_diameter"`
-	ByDepth     *float64  `json:"change_per_depth_of_cut"`
+	ByDepth     *float64  `json:"change_per_depth_of_cut"` // null where the flanks alone are moved
+	ByFlank     *float64  `json:"change_per_flank_moved"`  // both flanks along their normals
 	FaceNeeded  float64   `json:"face_width_needed_mm"`
 	Usable      bool      `json:"usable"`
 	Why         string    `json:"why"`
@@ -174,7 +176,11 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 	if seat, err := g.middle().Seat(p.Diameter); err == nil {
 		bt, bp := g.g.PinSensitivity(involute.TwoPins, seat)
 		bd := g.g.ThinningPerDepth() * bt
-		out.ByThickness, out.ByPin, out.ByDepth = &bt, &bp, &bd
+		bf := 2 * bt / math.Cos(g.g.PressureAngle())
+		out.ByThickness, out.ByPin, out.ByFlank = &bt, &bp, &bf
+		if g.g.FedDeeper() {
+			out.ByDepth = &bd
+		}
 	}
 	for _, w := range otherWays() {
 		if also, ok := j.alsoWay(g, p.Diameter, w, arbor); ok {

@@ -133,8 +133,12 @@ func (t *targets) below(p *page, gear *gear, g gearTargets, u inspect.Unit, digi
 			continue
 		}
 		p.line("  %s (%s): touches at %s to %s", pinText(m.Pin, u), m.From, f(m.Contact.Min), f(m.Contact.Max))
-		p.line("    %s deeper reads %s less; a tooth %s thinner reads %s less; a pin %s larger reads %s more",
-			f(step), fine(step**m.ByDepth), f(step), fine(step**m.ByThickness), f(step), fine(step**m.ByPin))
+		way, by := "deeper reads", m.ByDepth
+		if by == nil {
+			way, by = "off each flank reads", m.ByFlank
+		}
+		p.line("    %s %s %s less; a tooth %s thinner reads %s less; a pin %s larger reads %s more",
+			f(step), way, fine(step**by), f(step), fine(step**m.ByThickness), f(step), fine(step**m.ByPin))
 	}
 }
 
