@@ -104,21 +104,26 @@ func (j *job) runGearContours(c *cli.Context, out string, gears []*gear, opt con
 	if err != nil {
 		return err
 	}
-	if folder {
-		err = fileError(out, export.WriteFolder(out, files, c.Bool("force")))
-	} else {
-		err = writeFile(c, out, files[0].Data)
-	}
+	names, err := writeDrawings(c, out, files)
 	if err != nil {
 		return err
 	}
 	for i := range drawn {
-		drawn[i].File = out
-		if folder {
-			drawn[i].File = filepath.ToSlash(filepath.Join(out, files[i].Name))
-		}
+		drawn[i].File = names[i]
 	}
 	return j.showContours(c, gears, drawn, meshes)
+}
+
+// writeDrawings writes drawings into the folder out, or the only one to the file
+// out, and returns what they are called there.
+func writeDrawings(c *cli.Context, out string, files []export.File) (names []string, err error) {
+	if !isFolder(out) {
+		return []string{out}, writeFile(c, out, files[0].Data)
+	}
+	for _, f := range files {
+		names = append(names, filepath.ToSlash(filepath.Join(out, f.Name)))
+	}
+	return names, fileError(out, export.WriteFolder(out, files, c.Bool("force")))
 }
 
 // showContours prints what was drawn and measured.

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"path/filepath"
 	"slices"
 	"strings"
 
@@ -67,15 +66,13 @@ func (j *job) runMeshContour(c *cli.Context, out string, o contourOptions) error
 	if err != nil {
 		return err
 	}
-	folder := isFolder(out)
-	if !folder && len(meshes) > 1 {
+	if !isFolder(out) && len(meshes) > 1 {
 		return wrong("-o %s: one file holds one mesh, and there are %d; choose one by --gear NAME, or give a folder -o DIR/", out, len(meshes))
 	}
 	if c.Bool("roll") && o.format != export.FormatSVG {
 		return wrong("--roll: only an SVG moves; write -o roll.svg, or --format svg with a folder")
 	}
-	var drawn []drawnGear
-	var gears []*gear
+	var pairs [][2]drawnGear
 	var rolled []rolledMesh
 	var files []export.File
 	for _, m := range meshes {
@@ -83,26 +80,23 @@ func (j *job) runMeshContour(c *cli.Context, out string, o contourOptions) error
 		if err != nil {
 			return err
 		}
-		name := m.first.name + "-" + m.second.name + o.format.Ending()
-		r.File = out
-		if folder {
-			r.File = filepath.ToSlash(filepath.Join(out, name))
-		}
-		for i, g := range []*gear{m.first, m.second} {
-			pair[i].File = r.File
-			if !slices.Contains(gears, g) {
-				gears, drawn = append(gears, g), append(drawn, pair[i])
-			}
-		}
-		rolled, files = append(rolled, r), append(files, export.File{Name: name, Data: data})
+		pairs, rolled = append(pairs, pair), append(rolled, r)
+		files = append(files, export.File{Name: m.first.name + "-" + m.second.name + o.format.Ending(), Data: data})
 	}
-	if folder {
-		err = fileError(out, export.WriteFolder(out, files, c.Bool("force")))
-	} else {
-		err = writeFile(c, out, files[0].Data)
-	}
+	names, err := writeDrawings(c, out, files)
 	if err != nil {
 		return err
+	}
+	var drawn []drawnGear
+	var gears []*gear
+	for i, pair := range pairs {
+		rolled[i].File = names[i]
+		for _, d := range pair {
+			d.File = names[i]
+			if !slices.Contains(gears, d.gear) {
+				gears, drawn = append(gears, d.gear), append(drawn, d)
+			}
+		}
 	}
 	return j.showContours(c, gears, drawn, rolled)
 }
