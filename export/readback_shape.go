@@ -27,6 +27,23 @@ func (s Section) Deviation(t involute.Tooth) (least, most float64) {
 	return least, most
 }
 
+// Farthest returns the point of the contour, among those that Deviation looks at,
+// that lies farthest from where a contour moved outward by stock (mm) should be.
+func (s Section) Farthest(t involute.Tooth, stock float64) involute.Vec {
+	exact := t.Profile()
+	var at involute.Vec
+	most := -1.0
+	for _, p := range s.pieces {
+		for i := range shapeSamples {
+			q, _ := p.At(float64(i) / shapeSamples)
+			if off := math.Abs(exact.Offset(q) - stock); off > most {
+				at, most = q, off
+			}
+		}
+	}
+	return at
+}
+
 // Upright returns the path as that of a gear about center (mm) moved to the
 // origin and turned so that its teeth stand as those of a drawing: one along +x.
 // Which way it has to turn is taken from all teeth. A path that is no gear comes

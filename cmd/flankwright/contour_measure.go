@@ -126,9 +126,9 @@ func (j *job) judgeShape(d *drawnGear, path export.Path, o contourOptions) (faul
 	add := func(format string, args ...any) { faults = append(faults, fmt.Sprintf(format, args...)) }
 	switch {
 	case w.ShapeRange.Max > high:
-		add("is up to %s outside of the exact shape, not %s", j.fine(w.ShapeRange.Max), j.fine(max(high, 0)))
+		add("is up to %s outside of the exact shape, not %s, farthest %s", j.fine(w.ShapeRange.Max), j.fine(max(high, 0)), j.whereWorst(d))
 	case w.ShapeRange.Min < low:
-		add("is up to %s inside of the exact shape, not %s", j.fine(-w.ShapeRange.Min), j.fine(max(-low, 0)))
+		add("is up to %s inside of the exact shape, not %s, farthest %s", j.fine(-w.ShapeRange.Min), j.fine(max(-low, 0)), j.whereWorst(d))
 	}
 	if err := path.Simple(); err != nil {
 		add("crosses itself: %v", err)
@@ -160,6 +160,12 @@ func openingFaults(spec export.ContourSpec, back export.Outline) []string {
 		return []string{err.Error()}
 	}
 	return nil
+}
+
+// whereWorst words where a contour is farthest off, about its own axis with a tooth along x.
+func (j *job) whereWorst(d *drawnGear) string {
+	p := d.read.Farthest(d.tooth, d.Stock)
+	return fmt.Sprintf("at x %s, y %s", j.length(p.X), j.length(p.Y))
 }
 
 // measurePins pushes a pin into the spaces, and says where it reads otherwise than
