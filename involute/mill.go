@@ -110,20 +110,13 @@ func (t Tooth) LargestMill() float64 {
 		return 0
 	}
 	fits := func(diameter float64) bool { _, ok := t.seatMill(diameter / 2); return ok }
-	low, high := 0.0, t.da
+	high := t.da
 	for range 10 {
 		if fits(high) {
 			high *= 2
 		}
 	}
-	for range 60 {
-		if mid := (low + high) / 2; fits(mid) {
-			low = mid
-		} else {
-			high = mid
-		}
-	}
-	return low
+	return LargestFitting(fits, 0, high)
 }
 
 // curves returns the root from the space's center line to the flank, in a frame

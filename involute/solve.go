@@ -88,3 +88,21 @@ func ulp(x float64) float64 {
 	x = math.Abs(x)
 	return math.Nextafter(x, math.Inf(1)) - x
 }
+
+// LargestFitting returns the largest value between low, which fits, and high for
+// which fits says yes, by halving down to the last digit or to 60 times. Where
+// fits changes its mind more than once it is one of the changes.
+func LargestFitting(fits func(float64) bool, low, high float64) float64 {
+	for range 60 {
+		mid := (low + high) / 2
+		if mid == low || mid == high {
+			break
+		}
+		if fits(mid) {
+			low = mid
+		} else {
+			high = mid
+		}
+	}
+	return low
+}

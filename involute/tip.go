@@ -102,15 +102,7 @@ func (t Tooth) largestTip(asked float64, fits func(float64) bool) float64 {
 	size := min(asked, (t.da-t.db)/2)
 	for i := steps - 1; i > 0; i-- {
 		if low := size * float64(i) / steps; fits(low) {
-			high := size * float64(i+1) / steps
-			for range 40 {
-				if mid := (low + high) / 2; fits(mid) {
-					low = mid
-				} else {
-					high = mid
-				}
-			}
-			return low
+			return LargestFitting(fits, low, size*float64(i+1)/steps)
 		}
 	}
 	return 0

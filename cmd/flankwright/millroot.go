@@ -83,8 +83,9 @@ func (j *job) warnShallowRoot(g *gear) {
 	want := g.g.RootDiameterAt(g.nominal.Thickness())
 	root := g.rootLimits().Max // of the thickest tooth, whose space is narrowest
 	if root-want > shallow*g.g.Module() {
+		most := g.millToDepth(want)
 		j.addWarning("shallow-root", g.name, "an end mill of %s rests on the flanks before it reaches the root circle: the root diameter comes out at %s, not %s. The largest that gets down is %s%s",
-			j.length(spec.Mill.Diameter), j.length(root), j.length(want), j.lengthDown(g.millToDepth(want)), j.usualMill(g.millToDepth(want)))
+			j.length(spec.Mill.Diameter), j.length(root), j.length(want), j.lengthDown(most), j.usualMill(most))
 	}
 }
 
@@ -93,21 +94,17 @@ const shallow = 0.01
 
 // millToDepth returns the largest end mill that reaches the root diameter, mm.
 func (g *gear) millToDepth(root float64) float64 {
-	low, high := 0.0, g.g.Spec().Mill.Diameter
-	for range 40 {
+	reaches := func(diameter float64) bool {
 		spec := g.g.Spec()
-		spec.Mill.Diameter = (low + high) / 2
+		spec.Mill.Diameter = diameter
 		own, err := involute.NewGear(spec)
 		if err != nil {
-			break
+			return false
 		}
-		if t, err := own.Tooth(g.thickness.Limits.Max); err == nil && t.RootDiameter() <= root*(1+1e-12) {
-			low = spec.Mill.Diameter
-		} else {
-			high = spec.Mill.Diameter
-		}
+		t, err := own.Tooth(g.thickness.Limits.Max)
+		return err == nil && t.RootDiameter() <= root*(1+1e-12)
 	}
-	return low
+	return involute.LargestFitting(reaches, 0, g.g.Spec().Mill.Diameter)
 }
 
 // touches returns how far the mate's tips cut into the root of g, made as own,
@@ -145,18 +142,12 @@ func (j *job) millThatPasses(g *gear) string {
 		}
 		return true
 	}
-	low, high := 0.01*g.g.Module(), g.g.Spec().Mill.Diameter
-	if !passes(low) {
+	least := 0.01 * g.g.Module()
+	if !passes(least) {
 		return "No end mill would do: its straight root stands in the way. Take root = \"generated\", or give this gear more shift"
 	}
-	for range 40 {
-		if mid := (low + high) / 2; passes(mid) {
-			low = mid
-		} else {
-			high = mid
-		}
-	}
-	return fmt.Sprintf("The largest that passes is %s%s", j.lengthDown(low), j.usualMill(low))
+	largest := involute.LargestFitting(passes, least, g.g.Spec().Mill.Diameter)
+	return fmt.Sprintf("The largest that passes is %s%s", j.lengthDown(largest), j.usualMill(largest))
 }
 
 // lengthDown words a length rounded down, so that what it says still passes.
