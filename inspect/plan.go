@@ -1,16 +1,12 @@
 package inspect
 
-import (
-	"fmt"
-	"math"
-
-	"flankwright/involute"
-)
+import "flankwright/involute"
 
 // A PlanGear is a gear whose thickness limits are to be found.
 type PlanGear struct {
-	Gear *involute.Gear
-	Thin *Limits // how much thinner than nominal, normal, mm; nil where the meshes decide
+	Gear      *involute.Gear
+	Thin      *Limits // how much thinner than nominal, normal, mm; nil where the meshes decide
+	Tolerance float64 // how much the thickness may vary where a mesh asks for the least backlash only, mm
 }
 
 // Share says which gear of a mesh takes the thinning.
@@ -18,9 +14,10 @@ type Share int
 
 // The shares.
 const (
-	ShareEqual  Share = iota // half each
-	ShareFirst               // the first gear takes all
-	ShareSecond              // the second gear takes all
+	ShareEqual   Share = iota // half each
+	ShareFirst                // the first gear takes all
+	ShareSecond               // the second gear takes all
+	ShareByTeeth              // in proportion to the numbers of teeth, so that small pinions keep their strength
 )
 
 // A PlanMesh is a mesh whose backlash may decide thicknesses.
@@ -29,7 +26,11 @@ type PlanMesh struct {
 	Mesh          involute.Mesh
 	Center        Limits  // |a|, mm
 	Backlash      *Limits // circumferential, on the working pitch circle, mm; nil for no wish
+	LeastOnly     bool    // Backlash.Min alone is asked for; the greatest follows from the gears' tolerances
 	Share         Share
+	Deviations    [2]Deviations // of the gears
+	Climate       *Climate      // nil: always at the reference temperature
+	Method        Method        // by which the wish is to be held
 }
 
 // Tightest returns the center distance with the least backlash: the smaller, or
@@ -75,38 +76,11 @@ type Thickness struct {
 	By     Decider
 }
 
-// A ProblemKind says what is wrong with a backlash that cannot be had.
-type ProblemKind int
-
-// The kinds of problems.
-const (
-	TooThick ProblemKind = iota // the teeth would have to be thicker than nominal
-	NoRoom                      // the center's tolerance, or a mate already fixed, takes more than the range
-	Conflict                    // another mesh of the same gear asks for something else
-)
-
-// A PlanProblem says why a mesh's backlash cannot be had.
-type PlanProblem struct {
-	Kind  ProblemKind
-	Mesh  int     // index
-	Gear  int     // index of the gear that cannot be made
-	Thin  Limits  // the thinning it would need, mm; empty where Min > Max
-	Play  float64 // the least backlash of nominal (or fixed) teeth, at the tightest center, mm
-	Tight float64 // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
-	Most  float64 // NoRoom: the greatest backlash that would have to be allowed, mm
-}
-
-// Error says so in short; the program's edge words it for people.
-func (p *PlanProblem) Error() string {
-	return fmt.Sprintf("mesh %d: no tooth thickness gives this backlash (thinning %g to %g mm)", p.Mesh+1, p.Thin.Min, p.Thin.Max)
-}
-
 // noThinning takes up rounding: a thinning this little below zero is zero, mm.
 const noThinning = 1e-9
 
 // Plan finds the thickness limits of all gears: a gear's own thinning rules;
-// else its meshes' backlash, the thickest pair at the tightest center giving
-// the least, the thinnest at the loosest the greatest; else nominal.
+// else its meshes' backlash, with everything that takes or adds to it; else nominal.
 //
 // In each mesh the gears share the thinning out, and a gear that is already fixed
 // leaves its mate the rest. A gear in several meshes takes the least of its
@@ -128,10 +102,15 @@ func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
 	}
 	out := make([]Thickness, len(gears))
 	for i, g := range gears {
-		s := g.Gear.NominalThickness()
-		out[i] = Thickness{Limits{s - p.thin[i].Max, s - p.thin[i].Min}, p.by[i]}
+		out[i] = Thickness{g.thickness(p.thin[i]), p.by[i]}
 	}
 	return out, nil
+}
+
+// thickness returns the limits of the thickness for limits of the thinning.
+func (g PlanGear) thickness(thin Limits) Limits {
+	s := g.Gear.NominalThickness()
+	return Limits{s - thin.Max, s - thin.Min}
 }
 
 // A planner works a plan out.
@@ -140,28 +119,32 @@ type planner struct {
 	meshes []PlanMesh
 	thin   []Limits
 	by     []Decider
-	wants  []Limits // by mesh: the thinning of both gears together
-	active []int    // the meshes that decide something
-	hard   []bool   // by gear: its share is not to be changed
+	active []int  // the meshes that decide something
+	hard   []bool // by gear: its share is not to be changed
+}
+
+// pair returns the gears of a mesh.
+func (p *planner) pair(k int) [2]PlanGear {
+	return [2]PlanGear{p.gears[p.meshes[k].First], p.gears[p.meshes[k].Second]}
 }
 
 // shareOut gives every free gear the least of the shares that its meshes ask for.
 func (p *planner) shareOut() error {
-	p.wants = make([]Limits, len(p.meshes))
 	for k, m := range p.meshes {
-		if m.Backlash == nil || (p.gears[m.First].Thin != nil && p.gears[m.Second].Thin != nil) {
+		pair := p.pair(k)
+		if m.Backlash == nil || (pair[0].Thin != nil && pair[1].Thin != nil) {
 			continue
 		}
-		var err error
-		if p.wants[k], err = m.thinning(p.gears); err != nil {
+		thin, err := m.shares(k, pair)
+		if err != nil {
 			return err
 		}
 		p.active = append(p.active, k)
-		for _, w := range m.split(p.gears, p.wants[k]) {
-			if kind, bad := w.thin.problem(); bad {
-				return m.explain(&PlanProblem{Kind: kind, Mesh: k, Gear: w.gear, Thin: w.thin}, p.gears)
+		for i, gear := range []int{m.First, m.Second} {
+			if pair[i].Thin == nil {
+				hard := (m.Share == ShareFirst || m.Share == ShareSecond) && pair[1-i].Thin == nil
+				p.take(gear, thin[i], hard)
 			}
-			p.take(w)
 		}
 	}
 	return nil
@@ -169,21 +152,21 @@ func (p *planner) shareOut() error {
 
 // take adds one mesh's share to what a gear has. A hard share, of a mesh that
 // names the gear that takes it all, rules over soft ones.
-func (p *planner) take(w share) {
-	old, first := p.thin[w.gear], p.by[w.gear] != ByBacklash
-	p.by[w.gear] = ByBacklash
+func (p *planner) take(gear int, thin Limits, hard bool) {
+	old, first := p.thin[gear], p.by[gear] != ByBacklash
+	p.by[gear] = ByBacklash
 	switch {
-	case first || (w.hard && !p.hard[w.gear]):
-		p.thin[w.gear], p.hard[w.gear] = w.thin, w.hard
+	case first || (hard && !p.hard[gear]):
+		p.thin[gear], p.hard[gear] = thin, hard
 		return
-	case w.hard:
-		p.thin[w.gear] = Limits{max(old.Min, w.thin.Min), min(old.Max, w.thin.Max)}
+	case hard:
+		p.thin[gear] = Limits{max(old.Min, thin.Min), min(old.Max, thin.Max)}
 		return
-	case p.hard[w.gear]:
+	case p.hard[gear]:
 		return
 	}
-	least := min(old.Min, w.thin.Min)
-	p.thin[w.gear] = Limits{least, least + min(old.Width(), w.thin.Width())}
+	least := min(old.Min, thin.Min)
+	p.thin[gear] = Limits{least, least + min(old.Width(), thin.Width())}
 }
 
 // settle gives what a gear in several meshes leaves over to its mates, and
@@ -191,34 +174,67 @@ func (p *planner) take(w share) {
 func (p *planner) settle() error {
 	for _, k := range p.active {
 		m := p.meshes[k]
-		for _, side := range []struct{ own, mate int }{{m.First, m.Second}, {m.Second, m.First}} {
-			if p.by[side.own] == ByBacklash && !p.hard[side.own] && p.count(side.own) == 1 && p.count(side.mate) > 1 {
-				// A mate that another mesh thins more than this one asks leaves nothing to take, not a thicker tooth.
-				p.thin[side.own] = Limits{max(0, p.wants[k].Min-p.thin[side.mate].Min), p.wants[k].Max - p.thin[side.mate].Max}
-				break
+		for i, own := range []int{m.First, m.Second} {
+			mate := [2]int{m.Second, m.First}[i]
+			if p.by[own] != ByBacklash || p.hard[own] || p.count(own) != 1 || p.count(mate) < 2 {
+				continue
 			}
+			pair := p.pair(k)
+			pair[1-i].Thin = &p.thin[mate]
+			thin, err := m.shares(k, pair)
+			if problem, ok := err.(*PlanProblem); ok && problem.Kind == TooThick {
+				err = nil // a mate that another mesh thins more than this one asks leaves nothing to take, not a thicker tooth
+			}
+			if err != nil {
+				return p.conflict(k)
+			}
+			p.thin[own] = Limits{max(0, thin[i].Min), thin[i].Max}
+			break
 		}
 	}
 	for _, k := range p.active {
-		m, want := p.meshes[k], p.wants[k]
-		a, b := p.thin[m.First], p.thin[m.Second]
-		if short := want.Min - a.Min - b.Min; short > noThinning && !p.deepen(k, short) {
-			return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: a}, p.gears)
+		if short, err := p.short(k); err != nil || (short > noThinning && !p.deepen(k, short)) {
+			return p.conflict(k)
 		}
 	}
 	return p.check()
 }
 
+// short returns by how much the gears of a mesh would have to be thinner together
+// for the least backlash asked for, mm.
+func (p *planner) short(k int) (float64, error) {
+	m := p.meshes[k]
+	got, err := p.backlash(k)
+	if err != nil {
+		return 0, err
+	}
+	alpha, err := m.Mesh.WorkingPressureAngle(m.Tightest())
+	return (m.Backlash.Min - got.Min) * m.Mesh.ThinningPerBacklash(alpha), err
+}
+
+// backlash returns what the thinnings of a mesh's gears come to by its method.
+func (p *planner) backlash(k int) (Limits, error) {
+	m, pair := p.meshes[k], p.pair(k)
+	b, err := m.Budget(pair[0].thickness(p.thin[m.First]), pair[1].thickness(p.thin[m.Second]))
+	return b.By(m.Method), err
+}
+
 // check holds every mesh against what it asked for.
 func (p *planner) check() error {
 	for _, k := range p.active {
-		m, want := p.meshes[k], p.wants[k]
-		a, b := p.thin[m.First], p.thin[m.Second]
-		if a.Min > a.Max+noThinning || b.Min > b.Max+noThinning || a.Min+b.Min < want.Min-noThinning || a.Max+b.Max > want.Max+noThinning {
-			return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: a}, p.gears)
+		m := p.meshes[k]
+		got, err := p.backlash(k)
+		empty := p.thin[m.First].Width() < -noThinning || p.thin[m.Second].Width() < -noThinning
+		if err != nil || empty || got.Min < m.Backlash.Min-2*noThinning || (!m.LeastOnly && got.Max > m.Backlash.Max+2*noThinning) {
+			return p.conflict(k)
 		}
 	}
 	return nil
+}
+
+func (p *planner) conflict(k int) error {
+	m := p.meshes[k]
+	return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: p.thin[m.First]}, p.pair(k), [2]Limits{p.thin[m.First], p.thin[m.Second]})
 }
 
 // deepen thins one of two gears that both run in several meshes by what their own mesh still lacks.
@@ -243,86 +259,9 @@ func (p *planner) count(gear int) int {
 	return n
 }
 
-// thinning returns how much the two teeth together must be thinner than
-// nominal, least and most: the backlash asked for, turned into thickness at
-// the tightest and the loosest center.
-func (m PlanMesh) thinning(gears []PlanGear) (Limits, error) {
-	s1, s2 := gears[m.First].Gear.NominalThickness(), gears[m.Second].Gear.NominalThickness()
-	least, err := m.Mesh.ThinningForBacklash(m.Tightest(), s1, s2, m.Backlash.Min)
-	if err != nil {
-		return Limits{}, err
-	}
-	most, err := m.Mesh.ThinningForBacklash(m.Loosest(), s1, s2, m.Backlash.Max)
-	return Limits{least, most}, err
-}
-
-type share struct {
-	gear int
-	thin Limits
-	hard bool
-}
-
-// split shares the pair's thinning out to the gears that are still free. With
-// one gear fixed, the thickest pair still has the least backlash, so the mate
-// takes least − its least and most − its most.
-func (m PlanMesh) split(gears []PlanGear, want Limits) []share {
-	f1, f2 := gears[m.First].Thin, gears[m.Second].Thin
-	switch {
-	case f1 != nil:
-		return []share{{m.Second, Limits{want.Min - f1.Min, want.Max - f1.Max}, false}}
-	case f2 != nil:
-		return []share{{m.First, Limits{want.Min - f2.Min, want.Max - f2.Max}, false}}
-	case m.Share == ShareFirst:
-		return []share{{m.First, want, true}, {m.Second, Limits{}, true}}
-	case m.Share == ShareSecond:
-		return []share{{m.First, Limits{}, true}, {m.Second, want, true}}
-	}
-	half := Limits{want.Min / 2, want.Max / 2}
-	return []share{{m.First, half, false}, {m.Second, half, false}}
-}
-
-// problem reports an empty or a negative thinning.
-func (l Limits) problem() (ProblemKind, bool) {
-	switch {
-	case l.Min < -noThinning:
-		return TooThick, true
-	case l.Min > l.Max+noThinning:
-		return NoRoom, true
-	}
-	return 0, false
-}
-
-// explain adds the numbers that tell a person what would make it possible.
-func (m PlanMesh) explain(p *PlanProblem, gears []PlanGear) error {
-	thickest := func(i int) float64 {
-		n := gears[i].Gear.NominalThickness()
-		if t := gears[i].Thin; t != nil {
-			n -= t.Min
-		}
-		return n
-	}
-	s1, s2 := thickest(m.First), thickest(m.Second)
-	play, err := m.Mesh.Backlash(m.Tightest(), s1, s2)
-	if err != nil {
-		return p
-	}
-	p.Play = play.Circumferential
-	if a, err := m.Mesh.TightCenter(s1, s2); err == nil {
-		p.Tight = math.Abs(a)
-	}
-	alpha, err := m.Mesh.WorkingPressureAngle(m.Loosest())
-	if err == nil {
-		short := p.Thin.Min - p.Thin.Max
-		if gears[m.First].Thin == nil && gears[m.Second].Thin == nil && m.Share == ShareEqual {
-			short *= 2
-		}
-		p.Most = m.Backlash.Max + short/m.Mesh.ThinningPerBacklash(alpha)
-	}
-	return p
-}
-
 // BacklashRange returns the least backlash (thickest teeth, tightest center)
-// and the greatest (thinnest, loosest), each on that center's own pitch circles.
+// and the greatest (thinnest, loosest), each on that center's own pitch circles:
+// geometry alone, before deviations and climate.
 func (m PlanMesh) BacklashRange(first, second Limits) (least, most involute.Play, err error) {
 	least, err = m.Mesh.Backlash(m.Tightest(), first.Max, second.Max)
 	if err != nil {

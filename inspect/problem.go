@@ -1,0 +1,52 @@
+package inspect
+
+import (
+	"fmt"
+	"math"
+)
+
+// A ProblemKind says what is wrong with a backlash that cannot be had.
+type ProblemKind int
+
+// The kinds of problems.
+const (
+	TooThick ProblemKind = iota // the teeth would have to be thicker than nominal
+	NoRoom                      // what takes and adds backlash, or a mate already fixed, needs more than the range
+	Conflict                    // another mesh of the same gear asks for something else
+)
+
+// A PlanProblem says why a mesh's backlash cannot be had.
+type PlanProblem struct {
+	Kind   ProblemKind
+	Mesh   int     // index
+	Gear   int     // index of the gear that cannot be made
+	Thin   Limits  // the thinning it would need, mm; empty where Min > Max
+	Play   float64 // the least backlash of nominal (or fixed) teeth, mm
+	Tight  float64 // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
+	Most   float64 // the greatest backlash that would have to be allowed, mm
+	Budget Budget  // with thicknesses that give the least backlash and have no tolerance
+}
+
+// Error says so in short; the program's edge words it for people.
+func (p *PlanProblem) Error() string {
+	return fmt.Sprintf("mesh %d: no tooth thickness gives this backlash (thinning %g to %g mm)", p.Mesh+1, p.Thin.Min, p.Thin.Max)
+}
+
+// explain adds the numbers that tell a person what would make it possible: for
+// nominal teeth, and for thinnings that would do but for the greatest backlash.
+func (m PlanMesh) explain(p *PlanProblem, pair [2]PlanGear, thin [2]Limits) error {
+	nominal := m.split(pair).thin(0, 0)
+	n1, n2 := pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1])
+	if b, err := m.Budget(n1, n2); err == nil {
+		p.Play = b.By(m.Method).Min
+	}
+	if a, err := m.Mesh.TightCenter(n1.Max, n2.Max); err == nil {
+		p.Tight = math.Abs(a)
+	}
+	b, err := m.Budget(pair[0].thickness(thin[0]), pair[1].thickness(thin[1]))
+	if err != nil {
+		return p
+	}
+	p.Budget, p.Most = b, b.By(m.Method).Max
+	return p
+}
