@@ -146,38 +146,61 @@ func (s split) grown(g involute.Growth, least bool) float64 {
 
 // statisticalThinning is worstThinning for backlash held statistically. How far
 // the thicknesses may vary and where their middle lies depend on each other through
-// the root of the sum of squares, and both are solved for.
+// the root of the sum of squares, and both are solved for. A tolerance that would
+// begin above the nominal thickness is cut off there.
 func (m PlanMesh) statisticalThinning(pair [2]PlanGear, s split) (least, width float64, err error) {
-	var failed error
-	backlash := func(least, width float64) Limits {
-		thin := s.thin(least, width)
-		b, err := m.Budget(pair[0].thickness(thin[0]), pair[1].thickness(thin[1]))
-		if err != nil {
-			failed = err
-		}
-		return b.Statistical()
-	}
-	far := m.Mesh.First.NormalPitch()
-	leastFor := func(width float64) float64 {
-		x, err := involute.FindRoot(func(x float64) float64 { return backlash(x, width).Min - m.Backlash.Min }, -far, far)
-		if err != nil && failed == nil {
-			failed = err
-		}
-		return x
-	}
-	if m.LeastOnly {
+	q := statisticalQuest{mesh: m, pair: pair, split: s, far: 2 * (m.Mesh.First.NormalPitch() + m.Backlash.Max)}
+	alone := q.leastFor(0)
+	over := func(width float64) float64 { return q.backlash(q.leastFor(width), width).Max - m.Backlash.Max }
+	switch {
+	case q.err != nil:
+		return 0, 0, q.err
+	case m.LeastOnly && alone >= 0:
 		width = tolerances(pair)
-		return leastFor(width), width, failed
+		return max(0, q.leastFor(width)), width, q.err
+	case m.LeastOnly:
+		return alone, tolerances(pair), nil
 	}
-	over := func(width float64) float64 { return backlash(leastFor(width), width).Max - m.Backlash.Max }
-	if at := over(0); at >= 0 || failed != nil {
+	if at := over(0); alone < 0 || at >= 0 {
 		// Not even a single thickness would do: the width is what is missing, below zero.
-		alpha, _ := m.Mesh.WorkingPressureAngle(m.Nominal())
-		return leastFor(0), -at * m.Mesh.ThinningPerBacklash(alpha), failed
+		alpha, err := m.Mesh.WorkingPressureAngle(m.Nominal())
+		return alone, -at * m.Mesh.ThinningPerBacklash(alpha), err
 	}
-	width, err = involute.FindRoot(over, 0, far)
-	if failed == nil {
-		failed = err
+	width = q.root(over, 0, q.far)
+	if least = q.leastFor(width); least >= 0 {
+		return least, width, q.err
 	}
-	return leastFor(width), width, failed
+	return 0, q.root(func(width float64) float64 { return q.backlash(0, width).Max - m.Backlash.Max }, 0, width), q.err
+}
+
+// A statisticalQuest keeps the first error of the functions that are solved.
+type statisticalQuest struct {
+	mesh  PlanMesh
+	pair  [2]PlanGear
+	split split
+	far   float64 // farther than any thinning, mm
+	err   error
+}
+
+func (q *statisticalQuest) root(f func(float64) float64, a, b float64) float64 {
+	x, err := involute.FindRoot(f, a, b)
+	if q.err == nil {
+		q.err = err
+	}
+	return x
+}
+
+// backlash returns the statistical backlash of a sum of least thinnings and a sum of widths.
+func (q *statisticalQuest) backlash(least, width float64) Limits {
+	thin := q.split.thin(least, width)
+	b, err := q.mesh.Budget(q.pair[0].thickness(thin[0]), q.pair[1].thickness(thin[1]))
+	if q.err == nil {
+		q.err = err
+	}
+	return b.Statistical()
+}
+
+// leastFor returns the sum of the least thinnings that gives the least backlash.
+func (q *statisticalQuest) leastFor(width float64) float64 {
+	return q.root(func(x float64) float64 { return q.backlash(x, width).Min - q.mesh.Backlash.Min }, -q.far, q.far)
 }

@@ -19,8 +19,9 @@ func NoGrowth() Growth { return Growth{1, 1, 1} }
 //
 // which without growth is that of Backlash (ISO 21771:2007, clause 5). Gears that
 // grow unlike have unlike base pitches: a tooth of the first in a space of the second
-// has the second's for p_bt, one of the second the first's. Least takes the
-// smaller, most the larger.
+// has the second's for p_bt, one of the second the first's, and where two pairs
+// of teeth touch at once their difference may count once more. Least and most bound
+// the backlash in all positions, and are off by that difference at most.
 func (m Mesh) CircumferentialBacklash(a, s1, s2 float64, g Growth) (least, most float64, err error) {
 	alpha, err := m.GrownPressureAngle(a, g)
 	if err != nil {
@@ -30,8 +31,8 @@ func (m Mesh) CircumferentialBacklash(a, s1, s2 float64, g Growth) (least, most 
 		return gear.db * k * (Inv(alpha) - s/math.Cos(gear.spec.Helix)/gear.d - gear.invT)
 	}
 	free := side(m.First, s1, g.First) + side(m.Second, s2, g.Second)
-	p := m.First.TransverseBasePitch()
-	least, most = free+p*min(g.First, g.Second), free+p*max(g.First, g.Second)
+	p1, p2 := m.First.TransverseBasePitch()*g.First, m.First.TransverseBasePitch()*g.Second
+	least, most = free+min(p1, p2)-math.Abs(p1-p2), free+max(p1, p2)
 	return least / math.Cos(alpha), most / math.Cos(alpha), nil
 }
 
