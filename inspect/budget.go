@@ -167,27 +167,27 @@ func (b Budget) By(m Method) Limits {
 	return b.Worst()
 }
 
-// A moment is a mesh at one moment: where everything that varies stands.
-type moment struct {
-	a      float64    // center distance of the drawing, with the sign of the formulas, mm
-	s      [2]float64 // normal tooth thicknesses, mm
-	proud  float64    // by how much the flanks that face each other stand proud of true, along the line of action, mm
-	growth involute.Growth
+// A Moment is a mesh at one moment: where everything that varies stands.
+type Moment struct {
+	Center    float64    // of the drawing, with the sign of the formulas, mm
+	Thickness [2]float64 // normal, mm
+	Proud     float64    // by how much the flanks that face each other stand proud of true, along the line of action, mm
+	Growth    involute.Growth
 }
 
 // backlash returns j_wt at a moment: of the two ways in which unlike base pitches
 // can meet the one that is asked for.
-func (m PlanMesh) backlash(x moment, least bool) (float64, error) {
-	low, high, err := m.Mesh.CircumferentialBacklash(x.a, x.s[0], x.s[1], x.growth)
+func (m PlanMesh) backlash(x Moment, least bool) (float64, error) {
+	low, high, err := m.Mesh.CircumferentialBacklash(x.Center, x.Thickness[0], x.Thickness[1], x.Growth)
 	if err != nil {
 		return 0, err
 	}
-	alpha, err := m.Mesh.GrownPressureAngle(x.a, x.growth)
+	alpha, err := m.Mesh.GrownPressureAngle(x.Center, x.Growth)
 	j := high
 	if least {
 		j = low
 	}
-	return j - x.proud/math.Cos(alpha), err
+	return j - x.Proud/math.Cos(alpha), err
 }
 
 // A step moves a moment to the worst of one cause.
@@ -195,7 +195,7 @@ type step struct {
 	cause   Cause
 	gear    int
 	certain bool
-	apply   func(x *moment)
+	apply   func(x *Moment)
 }
 
 // steps lists what leads from the middle to the least backlash (or the
@@ -210,43 +210,43 @@ func (m PlanMesh) steps(thick [2]Limits, least bool, g involute.Growth) []step {
 	if least {
 		sign, center = -1, m.Tightest()
 	}
-	list := []step{{OfCenter, -1, false, func(x *moment) { x.a = center }}}
-	each := func(c Cause, pick func(d Deviations) float64, certain bool, apply func(x *moment, v float64)) {
+	list := []step{{OfCenter, -1, false, func(x *Moment) { x.Center = center }}}
+	each := func(c Cause, pick func(d Deviations) float64, certain bool, apply func(x *Moment, v float64)) {
 		for i, d := range m.Deviations {
 			if v := pick(d); v > 0 {
-				list = append(list, step{c, i, certain && d.Measured, func(x *moment) { apply(x, v) }})
+				list = append(list, step{c, i, certain && d.Measured, func(x *Moment) { apply(x, v) }})
 			}
 		}
 	}
-	proud := func(x *moment, v float64) { x.proud -= sign * v }
-	each(OfRunout, func(d Deviations) float64 { return d.Runout }, true, func(x *moment, v float64) { x.a += sign * v / 2 })
+	proud := func(x *Moment, v float64) { x.Proud -= sign * v }
+	each(OfRunout, func(d Deviations) float64 { return d.Runout }, true, func(x *Moment, v float64) { x.Center += sign * v / 2 })
 	each(OfPitch, func(d Deviations) float64 { return d.Pitch * math.Cos(m.Mesh.First.TransversePressureAngle()) }, false, proud)
 	each(OfProfile, func(d Deviations) float64 { return d.Profile }, false, proud)
-	each(OfHelix, func(d Deviations) float64 { return d.Helix }, false, func(x *moment, v float64) {
+	each(OfHelix, func(d Deviations) float64 { return d.Helix }, false, func(x *Moment, v float64) {
 		if least {
 			proud(x, v)
 		}
 	})
 	if m.Climate != nil {
-		list = append(list, step{OfClimate, -1, true, func(x *moment) { x.growth = g }})
+		list = append(list, step{OfClimate, -1, true, func(x *Moment) { x.Growth = g }})
 	}
 	for i, l := range thick {
 		s := l.Min
 		if least {
 			s = l.Max
 		}
-		list = append(list, step{OfTeeth, i, false, func(x *moment) { x.s[i] = s }})
+		list = append(list, step{OfTeeth, i, false, func(x *Moment) { x.Thickness[i] = s }})
 	}
 	return list
 }
 
 // middle returns the moment with everything in its middle.
-func (m PlanMesh) middle(thick [2]Limits) moment {
-	return moment{a: m.Nominal(), s: [2]float64{thick[0].Middle(), thick[1].Middle()}, growth: involute.NoGrowth()}
+func (m PlanMesh) middle(thick [2]Limits) Moment {
+	return Moment{Center: m.Nominal(), Thickness: [2]float64{thick[0].Middle(), thick[1].Middle()}, Growth: involute.NoGrowth()}
 }
 
 // worst returns the moment of the least (or the greatest) backlash in a growth.
-func (m PlanMesh) worst(thick [2]Limits, least bool, g involute.Growth) moment {
+func (m PlanMesh) worst(thick [2]Limits, least bool, g involute.Growth) Moment {
 	x := m.middle(thick)
 	for _, s := range m.steps(thick, least, g) {
 		s.apply(&x)
@@ -276,44 +276,51 @@ func (m PlanMesh) worstGrowth(thick [2]Limits, least bool) (involute.Growth, err
 // Budget returns the budget of the mesh for the thickness limits of its gears,
 // mm: causes are brought in one after the other, each with what it changes, so that
 // the rows add up exactly. The involute's curvature makes what one cause takes
-// depend a little, some thousandths of it, on those before it.
+// depend a little, some hundredths of it, on those before it.
 func (m PlanMesh) Budget(first, second Limits) (Budget, error) {
-	thick := [2]Limits{first, second}
-	middle, err := m.backlash(m.middle(thick), true)
+	takes, err := m.Stations(first, second, true)
 	if err != nil {
 		return Budget{}, err
 	}
-	takes, err := m.changes(thick, true, middle)
+	adds, err := m.Stations(first, second, false)
 	if err != nil {
 		return Budget{}, err
 	}
-	adds, err := m.changes(thick, false, middle)
-	if err != nil {
-		return Budget{}, err
-	}
-	b := Budget{Middle: middle, Rows: takes}
-	for i := range b.Rows {
-		b.Rows[i].Takes, b.Rows[i].Adds = -takes[i].Adds, adds[i].Adds
+	b := Budget{Middle: takes[0].Backlash}
+	for i := 1; i < len(takes); i++ {
+		row := takes[i].Contribution
+		row.Takes, row.Adds = takes[i-1].Backlash-takes[i].Backlash, adds[i].Backlash-adds[i-1].Backlash
+		b.Rows = append(b.Rows, row)
 	}
 	return b, nil
 }
 
-// changes returns the contributions on one side, each cause's change in Adds.
-func (m PlanMesh) changes(thick [2]Limits, least bool, middle float64) ([]Contribution, error) {
+// A Station is a stop on the way from the middle of everything to the least or
+// the greatest backlash: the cause that was brought in last, and what is left.
+type Station struct {
+	Contribution // Takes and Adds are not set
+	Moment
+	Backlash float64 // circumferential, mm
+}
+
+// Stations returns the way from the middle, which is the first station, to the
+// least or the greatest backlash.
+func (m PlanMesh) Stations(first, second Limits, least bool) ([]Station, error) {
+	thick := [2]Limits{first, second}
 	g, err := m.worstGrowth(thick, least)
 	if err != nil {
 		return nil, err
 	}
-	var rows []Contribution
-	x, before := m.middle(thick), middle
+	x := m.middle(thick)
+	j, err := m.backlash(x, least)
+	list := []Station{{Moment: x, Backlash: j}}
 	for _, s := range m.steps(thick, least, g) {
-		s.apply(&x)
-		after, err := m.backlash(x, least)
 		if err != nil {
 			return nil, err
 		}
-		rows = append(rows, Contribution{Cause: s.cause, Gear: s.gear, Certain: s.certain, Adds: after - before})
-		before = after
+		s.apply(&x)
+		j, err = m.backlash(x, least)
+		list = append(list, Station{Contribution{Cause: s.cause, Gear: s.gear, Certain: s.certain}, x, j})
 	}
-	return rows, nil
+	return list, err
 }

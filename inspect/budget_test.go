@@ -200,7 +200,7 @@ func TestBudgetsAddUp(t *testing.T) {
 			proud += u(Limits{-d.Profile, d.Profile + d.Helix})
 		}
 		g := rapid.SampledFrom(p.mesh.Climate.growths()).Draw(t, "growth")
-		j, err := p.mesh.backlash(moment{u(p.mesh.Center) + ecc, [2]float64{u(first), u(second)}, proud, g}, true)
+		j, err := p.mesh.backlash(Moment{u(p.mesh.Center) + ecc, [2]float64{u(first), u(second)}, proud, g}, true)
 		if err != nil || j < worst.Min-1e-12 || j > worst.Max+1e-12 {
 			t.Errorf("a state between has %v of %v (%v)", j, worst, err)
 		}

@@ -44,7 +44,7 @@ func (m PlanMesh) Simulate(first, second Limits, limit float64, pairs int, seed 
 		if err != nil {
 			return out, err
 		}
-		middle, err := m.backlash(moment{a: pair.a, s: pair.s, growth: involute.NoGrowth()}, true)
+		middle, err := m.backlash(Moment{Center: pair.a, Thickness: pair.s, Growth: involute.NoGrowth()}, true)
 		if err != nil {
 			return out, err
 		}
@@ -125,11 +125,11 @@ func eccentricity(rng *rand.Rand, d Deviations) float64 {
 func (m PlanMesh) extremes(p drawn, growths []involute.Growth) (low, high float64, err error) {
 	low, high = math.Inf(1), math.Inf(-1)
 	for _, g := range growths {
-		least, err := m.backlash(moment{p.a - p.ecc, p.s, p.takes, g}, true)
+		least, err := m.backlash(Moment{p.a - p.ecc, p.s, p.takes, g}, true)
 		if err != nil {
 			return 0, 0, err
 		}
-		most, err := m.backlash(moment{p.a + p.ecc, p.s, -p.adds, g}, false)
+		most, err := m.backlash(Moment{p.a + p.ecc, p.s, -p.adds, g}, false)
 		if err != nil {
 			return 0, 0, err
 		}

@@ -105,7 +105,7 @@ func (m PlanMesh) worstThinning(pair [2]PlanGear, s split) (least, width float64
 			if err != nil {
 				return 0, err
 			}
-			alpha, err := m.Mesh.GrownPressureAngle(x.a, g)
+			alpha, err := m.Mesh.GrownPressureAngle(x.Center, g)
 			if err != nil {
 				return 0, err
 			}

@@ -1,0 +1,126 @@
+package inspect
+
+import (
+	"math"
+
+	"flankwright/involute"
+)
+
+// A RemedyKind is a change that would make a backlash possible.
+type RemedyKind int
+
+// The remedies.
+const (
+	WidenBacklash  RemedyKind = iota // Value: the greatest backlash that must be allowed, mm
+	AskForMore                       // Value: the least backlash to ask for, mm
+	CloserCenter                     // Value: the tolerance of the center distance, plus and minus, that must not be reached, mm
+	CloserRunout                     // Value: the share of the runouts that must not be reached
+	FinerTeeth                       // Value: the share of all deviations of the teeth that must not be reached
+	MoveCenter                       // Value: by how much to change the center distance, mm
+	Statistically                    // hold the backlash statistically instead of at worst
+	SteadierWarmth                   // Value: the share of the climate's growth that must not be reached
+)
+
+// A Remedy is one change; all else stays.
+type Remedy struct {
+	Kind  RemedyKind
+	Value float64
+}
+
+// Room returns what a wish leaves for the thicknesses of the gears together, by a
+// method: the sum of the tolerances, mm. Below zero it is what is missing.
+func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
+	m.Method, m.LeastOnly = method, false
+	find := m.worstThinning
+	if method == Statistical {
+		find = m.statisticalThinning
+	}
+	_, width, err := find(pair, m.split(pair))
+	return width, err
+}
+
+// possible reports whether the wish can be had.
+func (m PlanMesh) possible(pair [2]PlanGear) bool {
+	_, err := m.shares(0, pair)
+	return err == nil
+}
+
+// Remedies lists what would make a wish possible that is not, each alone; what
+// alone would not do is left out.
+func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
+	if p.Kind == TooThick {
+		list := []Remedy{{AskForMore, p.Play}}
+		nominal := m.split(pair).thin(0, 0)
+		if by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min); ok {
+			list = append(list, Remedy{MoveCenter, by})
+		}
+		return list
+	}
+	list := []Remedy{{WidenBacklash, p.Most}}
+	scaled := func(kind RemedyKind, size float64, scale func(m *PlanMesh, by float64)) {
+		fits := func(by float64) bool {
+			try := m
+			scale(&try, by)
+			return try.possible(pair)
+		}
+		if fits(0) && !fits(1) {
+			list = append(list, Remedy{kind, size * involute.LargestFitting(fits, 0, 1)})
+		}
+	}
+	scaled(CloserCenter, m.Center.Width()/2, func(m *PlanMesh, by float64) {
+		middle, half := m.Center.Middle(), by*m.Center.Width()/2
+		m.Center = Limits{middle - half, middle + half}
+	})
+	scaled(CloserRunout, 1, func(m *PlanMesh, by float64) {
+		for i := range m.Deviations {
+			m.Deviations[i].Runout *= by
+		}
+	})
+	scaled(FinerTeeth, 1, func(m *PlanMesh, by float64) {
+		for i, d := range m.Deviations {
+			m.Deviations[i] = Deviations{d.Runout * by, d.Measured, d.Pitch * by, d.Profile * by, d.Helix * by}
+			if d.Measured {
+				m.Deviations[i].Runout = d.Runout
+			}
+		}
+	})
+	scaled(SteadierWarmth, 1, func(m *PlanMesh, by float64) { m.Climate = m.Climate.scaled(by) })
+	if m.Method == WorstCase {
+		m.Method = Statistical
+		if m.possible(pair) {
+			list = append(list, Remedy{Kind: Statistically})
+		}
+	}
+	return list
+}
+
+// scaled returns a climate with a share of the growth.
+func (c *Climate) scaled(by float64) *Climate {
+	if c == nil {
+		return nil
+	}
+	out := *c
+	near := func(l Limits, to float64) Limits { return Limits{to + by*(l.Min-to), to + by*(l.Max-to)} }
+	out.Temperature = near(c.Temperature, ReferenceTemperature)
+	out.Swell = [2]Limits{near(c.Swell[0], 0), near(c.Swell[1], 0)}
+	return &out
+}
+
+// CenterFor returns by how much the center distance must change, positive for
+// farther apart by its absolute value, so that teeth of these thicknesses have the
+// least backlash asked for, by the mesh's method. It is false where no change
+// up to a module does it.
+func (m PlanMesh) CenterFor(first, second Limits, least float64) (by float64, ok bool) {
+	off := func(by float64) float64 {
+		try := m
+		try.Center = Limits{m.Center.Min + by, m.Center.Max + by}
+		b, err := try.Budget(first, second)
+		if err != nil {
+			return math.Inf(-1) // closer than the base circles allow
+		}
+		return b.By(m.Method).Min - least
+	}
+	module := m.Mesh.First.Module()
+	by, err := involute.FindRoot(off, -module, module)
+	return by, err == nil
+}

@@ -1,0 +1,92 @@
+package inspect
+
+import (
+	"errors"
+	"math"
+	"testing"
+
+	"pgregory.net/rapid"
+)
+
+// Every remedy works when it is taken, a hair beyond its value, and does not
+// where it is not gone as far.
+func TestRemediesWork(t *testing.T) {
+	seen := map[RemedyKind]int{}
+	rapid.Check(t, func(t *rapid.T) {
+		p := drawPair(t)
+		p.drawBurden(t, true)
+		p.mesh.Deviations[rapid.IntRange(0, 1).Draw(t, "eccentric")].Runout += rapid.Float64Range(0, 0.08).Draw(t, "eccentricity") * p.gears[0].Gear.Module()
+		p.mesh.Method = rapid.SampledFrom([]Method{WorstCase, Statistical}).Draw(t, "method")
+		module := p.gears[0].Gear.Module()
+		least := rapid.Float64Range(0, 0.08).Draw(t, "least") * module
+		p.mesh.Backlash = &Limits{least, least + rapid.Float64Range(0, 0.06).Draw(t, "range")*module}
+		pair := [2]PlanGear{p.gears[0], p.gears[1]}
+		_, err := p.mesh.shares(0, pair)
+		var problem *PlanProblem
+		if !errors.As(err, &problem) {
+			return
+		}
+		for _, r := range p.mesh.Remedies(pair, problem) {
+			seen[r.Kind]++
+			for _, share := range []float64{0.999, 1.001} {
+				m := p.mesh
+				wish := *m.Backlash
+				m.Backlash = &wish
+				works := share < 1
+				v := r.Value * share
+				switch r.Kind {
+				case WidenBacklash:
+					m.Backlash.Max, works = v, share > 1
+				case AskForMore:
+					m.Backlash = &Limits{v, v + module}
+					works = share > 1
+				case CloserCenter:
+					m.Center = Limits{m.Center.Middle() - v, m.Center.Middle() + v}
+				case CloserRunout:
+					m.Deviations[0].Runout *= v
+					m.Deviations[1].Runout *= v
+				case MoveCenter:
+					by := r.Value + (1-share)*0.1*module
+					m.Center = Limits{m.Center.Min + by, m.Center.Max + by}
+					m.Backlash.Max += module
+					works = share > 1
+				case Statistically:
+					m.Method, works = Statistical, true
+				default:
+					continue
+				}
+				if r.Value < 1e-6 {
+					continue // too small for a thousandth of it to tell
+				}
+				if got := m.possible(pair); got != works {
+					t.Errorf("%+v at %v of it: possible %v (%v)", r, share, got, problem)
+				}
+			}
+		}
+	})
+	for _, k := range []RemedyKind{WidenBacklash, AskForMore, CloserCenter, CloserRunout, FinerTeeth, MoveCenter} {
+		if seen[k] == 0 {
+			t.Errorf("remedy %d never came up: %v", k, seen)
+		}
+	}
+}
+
+// Opening the center for a wanted backlash, the textbook rule to first order:
+// Δa = j/(2 tan α_wt).
+func TestCenterFor(t *testing.T) {
+	m := handMesh(t)
+	m.Center = Limits{90, 90}
+	nominal := m.Mesh.First.NominalThickness()
+	by, ok := m.CenterFor(Limits{nominal, nominal}, Limits{nominal, nominal}, 0.1)
+	if want := 0.1 / 2 / 0.363970234; !ok || math.Abs(by-want) > 0.01*want {
+		t.Errorf("open by %v, the rule says %v", by, want)
+	}
+	m.Center = Limits{90 + by, 90 + by}
+	b, err := m.Budget(Limits{nominal, nominal}, Limits{nominal, nominal})
+	if err != nil || math.Abs(b.Worst().Min-0.1) > 1e-12 {
+		t.Errorf("opened so far it has %v (%v)", b.Worst(), err)
+	}
+	if _, ok := m.CenterFor(Limits{nominal, nominal}, Limits{nominal, nominal}, 100); ok {
+		t.Error("a center for 100 mm of backlash")
+	}
+}
