@@ -58,13 +58,21 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 	}
 	list := []Remedy{{WidenBacklash, p.Most}}
 	scaled := func(kind RemedyKind, size float64, scale func(m *PlanMesh, by float64)) {
-		fits := func(by float64) bool {
+		at := func(by float64) PlanMesh {
 			try := m
 			scale(&try, by)
-			return try.possible(pair)
+			return try
 		}
-		if fits(0) && !fits(1) {
-			list = append(list, Remedy{kind, size * involute.LargestFitting(fits, 0, 1)})
+		room := func(by float64) float64 {
+			width, err := at(by).Room(pair, m.Method)
+			if err != nil {
+				return math.NaN()
+			}
+			return width
+		}
+		const hair = 1e-6
+		if by, err := involute.FindRoot(room, 0, 1); err == nil && by > hair && at(by-hair).possible(pair) {
+			list = append(list, Remedy{kind, size * by})
 		}
 	}
 	scaled(CloserCenter, m.Center.Width()/2, func(m *PlanMesh, by float64) {
