@@ -119,10 +119,7 @@ func ParseLimits(text string, bare Unit) (Limits, error) {
 	low, high, isRange := strings.Cut(text, "..")
 	if !isRange {
 		v, err := ParseLength(text, bare)
-		if i := strings.LastIndexByte(text, '-'); err != nil && i > 0 && !strings.Contains(text, "/") {
-			return Limits{}, fmt.Errorf("%q is not a range; write it with two points: %s..%s", clip(text), strings.TrimSpace(text[:i]), strings.TrimSpace(text[i+1:]))
-		}
-		return Limits{v, v}, err
+		return Limits{v, v}, twoPoints(text, err)
 	}
 	bare = UnitOf(high, bare)
 	a, err := ParseLength(low, bare)
@@ -133,10 +130,102 @@ func ParseLimits(text string, bare Unit) (Limits, error) {
 	if err != nil {
 		return Limits{}, err
 	}
+	return rising(text, a, b)
+}
+
+// rising returns the range of two values in their order.
+func rising(text string, a, b float64) (Limits, error) {
 	if a > b {
 		return Limits{}, fmt.Errorf("%q runs backwards; write the smaller value first", clip(text))
 	}
 	return Limits{a, b}, nil
+}
+
+// twoPoints words an error anew where a range seems to be meant, written 5-60.
+func twoPoints(text string, err error) error {
+	i := strings.LastIndexByte(text, '-')
+	if err == nil || i <= 0 || strings.Contains(text, "/") {
+		return err
+	}
+	return fmt.Errorf("%q is not a range; write it with two points: %s..%s", clip(text), clip(strings.TrimSpace(text[:i])), clip(strings.TrimSpace(text[i+1:])))
+}
+
+// ParsePercents reads a range of percentages such as 0.1..0.6, or one for a
+// range without width; a % may stand behind. It returns fractions: 0.001..0.006.
+func ParsePercents(text string) (Limits, error) {
+	low, high, isRange := strings.Cut(text, "..")
+	if !isRange {
+		high = low
+	}
+	a, err1 := parsePercent(low)
+	b, err2 := parsePercent(high)
+	if err1 != nil || err2 != nil {
+		return Limits{}, twoPoints(text, fmt.Errorf("%q is not a percentage; write it like 0.6 or 0.1..0.6", clip(text)))
+	}
+	return rising(text, a, b)
+}
+
+func parsePercent(text string) (float64, error) {
+	v, err := ParseNumber(strings.TrimSuffix(strings.TrimSpace(text), "%"))
+	return v / 100, err
+}
+
+// coldest and hottest bound temperatures in service, °C: what gears and their
+// grease meet outdoors in the cold, and past what the expansions of tables hold for.
+const (
+	coldest = -60
+	hottest = 200
+)
+
+// ParseTemperatures reads a range of temperatures such as 5..60, 5..60 °C or
+// 40..140 F, where a unit at the end covers both ends; one value stands for a
+// range without width. Without a unit they are °C. It returns °C, by t = (F − 32)·5/9.
+func ParseTemperatures(text string) (Limits, error) {
+	low, high, isRange := strings.Cut(text, "..")
+	if !isRange {
+		high = low
+	}
+	low, lowUnit := splitDegrees(low)
+	high, highUnit := splitDegrees(high)
+	a, err1 := ParseNumber(low)
+	b, err2 := ParseNumber(high)
+	if err1 != nil || err2 != nil {
+		return Limits{}, twoPoints(text, fmt.Errorf("%q is not a temperature; write it like 60, 5..60 or 40..140 F", clip(text)))
+	}
+	switch {
+	case lowUnit == 0:
+		lowUnit = highUnit
+	case highUnit == 0:
+		return Limits{}, fmt.Errorf("%q has its unit in the middle; write it at the end, where it covers both", clip(text))
+	}
+	l, err := rising(text, celsius(a, lowUnit), celsius(b, highUnit))
+	if err == nil && (l.Min < coldest || l.Max > hottest) {
+		return Limits{}, fmt.Errorf("%q is out of what gears meet and expansions are known for; it must be from %d to %d °C (%g to %g °F)",
+			clip(text), coldest, hottest, coldest*1.8+32, hottest*1.8+32)
+	}
+	return l, err
+}
+
+// splitDegrees takes the unit off the end of a temperature: 'C', 'F', or 0 for none.
+func splitDegrees(text string) (number string, unit byte) {
+	s := strings.TrimSpace(text)
+	if s == "" {
+		return s, 0
+	}
+	unit = s[len(s)-1] &^ 0x20 // upper case
+	if unit != 'C' && unit != 'F' {
+		return s, 0
+	}
+	s = strings.TrimSpace(s[:len(s)-1])
+	return strings.TrimSpace(strings.TrimSuffix(strings.TrimSuffix(s, "°"), "deg")), unit
+}
+
+// celsius returns a temperature in °C.
+func celsius(t float64, unit byte) float64 {
+	if unit == 'F' {
+		return (t - 32) * 5 / 9
+	}
+	return t
 }
 
 // ParseAngle reads an angle in degrees: 20, 14.5°, 12°30', 12°30'15", 20deg. It returns degrees.

@@ -2,6 +2,7 @@ package inspect
 
 import (
 	"math"
+	"strings"
 	"testing"
 )
 
@@ -34,6 +35,40 @@ func TestParseLimits(t *testing.T) {
 	}
 	if _, err := ParseLimits("0.5..0.4", Millimeter); err == nil {
 		t.Error("backwards range read")
+	}
+}
+
+// Fixed points of the Fahrenheit scale: ice at 32, the reference of ISO 1 at 68,
+// the scales' meeting at −40; 140 °F is 60 °C.
+func TestParseTemperatures(t *testing.T) {
+	for text, want := range map[string]Limits{
+		"5..60": {5, 60}, "5..60 °C": {5, 60}, "5 .. 60C": {5, 60}, "60": {60, 60}, "-20..60": {-20, 60}, "−40": {-40, -40},
+		"68F": {20, 20}, "68..140 F": {20, 60}, "32..140°F": {0, 60}, "-40 degF": {-40, -40}, "32f..60c": {0, 60}, "0C..140F": {0, 60}, "2e1": {20, 20},
+	} {
+		if got, err := ParseTemperatures(text); err != nil || got != want {
+			t.Errorf("%q = %v, %v; want %v", text, got, err, want)
+		}
+	}
+	for text, says := range map[string]string{
+		"": "5..60", "F": "40..140 F", "warm": "40..140 F", "60..5": "runs backwards", "40F..0C": "runs backwards", "5-60": "two points: 5..60", "40F..140": "at the end",
+		"-61": "-60 to 200 °C", "201": "(-76 to 392 °F)", "20..393F": "-60 to 200 °C", "NaN": "is not", "Inf": "is not", "1..2..3": "is not", "60°": "is not", "300 K": "is not",
+	} {
+		if v, err := ParseTemperatures(text); err == nil || !strings.Contains(err.Error(), says) {
+			t.Errorf("%q read as %v, %v; wanted %q", text, v, err, says)
+		}
+	}
+}
+
+func TestParsePercents(t *testing.T) {
+	for text, want := range map[string]Limits{"0.5": {0.005, 0.005}, "0.5 %": {0.005, 0.005}, "0.25..0.5%": {0.0025, 0.005}, "0.25% .. 0.5%": {0.0025, 0.005}, "-1..1": {-0.01, 0.01}} {
+		if got, err := ParsePercents(text); err != nil || got != want {
+			t.Errorf("%q = %v, %v; want %v", text, got, err, want)
+		}
+	}
+	for _, text := range []string{"", "%", "0.5 mm", "0.5..0.25", "0.2-0.5", "0,5", "NaN"} {
+		if v, err := ParsePercents(text); err == nil {
+			t.Errorf("%q read as %v", text, v)
+		}
 	}
 }
 
@@ -74,7 +109,7 @@ func TestFormatLimits(t *testing.T) {
 }
 
 func FuzzParseLength(f *testing.F) {
-	for _, s := range []string{"0.75in", "3/16in", "1-1/2\"", "19.05mm", "-1e3", "0.04..0.08", "12°30'15\""} {
+	for _, s := range []string{"0.75in", "3/16in", "1-1/2\"", "19.05mm", "-1e3", "0.04..0.08", "12°30'15\"", "5..60 °C", "40..140 F", "0.1..0.6 %", "-20F..5"} {
 		f.Add(s)
 	}
 	f.Fuzz(func(t *testing.T, s string) {
@@ -88,6 +123,12 @@ func FuzzParseLength(f *testing.F) {
 		}
 		if v, err := ParseAngle(s); err == nil && !finite(v) {
 			t.Errorf("%q read as %v", s, v)
+		}
+		if l, err := ParseTemperatures(s); err == nil && !(l.Min <= l.Max && l.Min >= coldest && l.Max <= hottest) {
+			t.Errorf("%q read as %v °C", s, l)
+		}
+		if l, err := ParsePercents(s); err == nil && !(l.Min <= l.Max && finite(l.Min, l.Max)) {
+			t.Errorf("%q read as %v", s, l)
 		}
 	})
 }

@@ -282,10 +282,10 @@ func slide(s involute.Sliding) *float64 {
 }
 
 // thicknessWords says where the thickness limits come from.
-func thicknessWords(by inspect.Decider) string {
-	switch by {
+func thicknessWords(g *gear) string {
+	switch g.thickness.By {
 	case inspect.ByThin:
-		return "thin"
+		return orDefault(g.fixedBy, "thin")
 	case inspect.ByBacklash:
 		return "backlash"
 	}

@@ -97,7 +97,7 @@ func (d *dims) shopGrid(u inspect.Unit, f func(float64) string, digits int) grid
 	d.formRows(&g, unit, f)
 	d.boreRows(&g, u, digits)
 	limits("Tooth thickness, normal, thinned", func(x gearDims) span { return x.Limits })
-	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i].thickness.By) })...)
+	g.row("  decided by", "", d.each(func(i int, _ gearDims) string { return thicknessWords(d.list[i]) })...)
 	g.row("Angle of index", "deg", d.each(func(_ int, x gearDims) string { return fmt.Sprintf("%.6f", x.Index) })...)
 	g.row("", "", d.each(func(_ int, x gearDims) string { return angleDMS(2 * math.Pi / float64(x.Teeth)) })...)
 	g.row("  turns of a 40:1 dividing head", "", d.each(func(_ int, x gearDims) string { return headTurns(x.Teeth) })...)

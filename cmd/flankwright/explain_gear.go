@@ -119,6 +119,7 @@ func explainLimits(e *explainer, g *gear, an, m, hfP, haP, d quantity) {
 		e.result("thickest tooth, from thin", "s_nmax = s_n - t_min", mm("s_nmax", g.thickness.Limits.Max), "the job", sn, mm("t_min", g.thin.Min))
 		e.result("thinnest tooth, from thin", "s_nmin = s_n - t_max", mm("s_nmin", low), "the job", sn, mm("t_max", g.thin.Max))
 	}
+	explainFixed(e, g, d)
 	dfe := mm("d_fE", g.rootLimits().Min)
 	if g.g.GeneratingShift(low) == g.g.Spec().Shift { // the flanks alone are moved
 		e.result("depth of cut of the thinnest tooth", "h_E = (d_blank - d_fE) / 2", mm("h_E", g.depthOfCut().Max), srcGear, mm("d_blank", g.g.TipDiameter()), dfe)

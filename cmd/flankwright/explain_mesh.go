@@ -105,7 +105,7 @@ func explainContact(e *explainer, m *mesh, a, aw, db1, db2 quantity) {
 // backlash asked for, and where they share it alone, the limits that follow.
 func explainThinning(e *explainer, m *mesh) {
 	want := m.plan.Backlash
-	if want == nil || (m.first.thin != nil && m.second.thin != nil) {
+	if want == nil || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
 		return
 	}
 	g := m.first.g

@@ -41,6 +41,14 @@ func explained() map[string][]string {
 		"metric keyway":      {"--module", "2", "--teeth", "40", "--bore", "25 H7", "--keyway", "auto", "--bolt-circle", "5x6 on 50", "--hub", "40"},
 		"inch keyway":        {"--dp", "10", "--teeth", "40", "--bore", "1-1/8", "--keyway", "auto", "--bolt-circle", "8x1/4 on 2.5"},
 		"keyway by size":     {"--module", "2", "--teeth", "8", "--bore", "6 H8", "--keyway", "2x1"},
+		"over pins, even":    {"--module", "2", "--teeth", "20", "--over-pins", "44.75..44.8 over 3.5"},
+		"over pins, odd":     {"--dp", "16", "--teeth", "17", "--over-pins", "1.203..1.204in over 0.108in"},
+		"over three pins":    {"--module", "2", "--teeth", "21", "--over-pins", "46.5..46.6 over 3.5, three pins"},
+		"one pin to axis":    {"--module", "2", "--teeth", "20", "--over-pins", "22.4 over 3.5, one pin to the axis"},
+		"one pin to bore":    {"--module", "2", "--teeth", "20", "--bore", "10 H7", "--over-pins", "27.4..27.42 over 3.5, one pin to the far side of the bore"},
+		"free pins":          {"--module", "2", "--teeth", "21", "--helix-angle", "20", "--face-width", "30", "--over-pins", "49.3..49.4 over 3.5, rollers between free parallel anvils"},
+		"opposed pins":       {"--module", "2", "--teeth", "21", "--helix-angle", "20", "--face-width", "30", "--over-pins", "49.5..49.6 over 3.5, rollers exactly opposed"},
+		"by span":            {"--module", "2", "--teeth", "21", "--helix-angle", "20", "--face-width", "30", "--span", "15.4..15.45 over 3", "--thinning", "flanks"},
 		"asked for":          {"--module", "2", "--teeth", "17", "--measured-tip", "37.9", "--pin", "3.5", "--pin", "4", "--span-teeth", "2", "--arbor", "10"},
 	}
 	for _, name := range exampleNames() {

@@ -10,7 +10,7 @@ import (
 
 // Flag categories, as the help groups them.
 const (
-	catTooth  = "Tooth (× module means a plain number)"
+	catTooth  = "Tooth, shared by all gears (× module means a plain number)"
 	catGear   = "Gear (with a job file: of the gear that --gear names)"
 	catMate   = "Mate, for a pair without a job file (the gears are then called pinion and wheel)"
 	catMesh   = "Mesh"
@@ -22,7 +22,7 @@ func flagName(key string) string { return strings.ReplaceAll(key, "_", "-") }
 
 // mateKeys are the gear keys that --mate-… flags give the second gear of a pair.
 func mateKeys() []string {
-	return []string{"teeth", "shift", "thin", "tip_diameter", "face_width", "ring", "material"}
+	return []string{"teeth", "shift", "thin", "over_pins", "span", "tip_diameter", "face_width", "ring", "material"}
 }
 
 // jobFlags are the flags that describe a gear or a pair, one for each key that
@@ -114,9 +114,6 @@ func flagged(c *cli.Context, where scope, prefix string) (map[string]value, erro
 		if !ok {
 			continue
 		}
-		if k.name == "material" && prefix == "" {
-			continue // a word for the head of the sheet
-		}
 		if err := refuseLater(k, v, v.at); err != nil {
 			return nil, err
 		}
@@ -178,12 +175,23 @@ func requestFromFlags(c *cli.Context) (request, error) {
 	}
 	if len(mate) == 0 {
 		if len(mesh.vals) > 0 {
-			return r, wrong("--center, --backlash and --thin-share are about a pair: give --mate-teeth too")
+			return r, wrong("%s are about a pair: give --mate-teeth too", meshFlags())
 		}
 		r.gears = []gearRequest{{"gear", base.with(own), own}}
 		return r, nil
 	}
 	return r, r.addPair(base, own, mate, mesh)
+}
+
+// meshFlags names the flags of a mesh.
+func meshFlags() string {
+	var names []string
+	for _, k := range keys() {
+		if k.where&inMesh != 0 && k.usage != "" {
+			names = append(names, "--"+flagName(k.name))
+		}
+	}
+	return inWords(names)
 }
 
 // addPair makes the request's gears a pinion and a wheel that mesh.
@@ -196,6 +204,12 @@ func (r *request) addPair(base settings, own, mate map[string]value, mesh settin
 	}
 	if tip, ok := own["tip"]; ok && !has(mate, "tip_diameter") {
 		mate["tip"] = tip // so is a word about tips
+	}
+	if tolerance, ok := own["thin_tolerance"]; ok && !hasAny(mate, thicknessKeys()) {
+		mate["thin_tolerance"] = tolerance // and a tolerance for what is still to be decided
+		if hasAny(own, fixingKeys()) {
+			delete(own, "thin_tolerance")
+		}
 	}
 	r.gears = []gearRequest{
 		{"pinion", base.with(own), own},
@@ -247,7 +261,7 @@ func (r *request) overrideByFlags(c *cli.Context) error {
 		return err
 	}
 	if len(r.meshes) != 1 {
-		return wrong("--center, --backlash and --thin-share need a job with exactly one mesh; this one has %d: write them into its [[mesh]]", len(r.meshes))
+		return wrong("%s need a job with exactly one mesh; this one has %d: write them into its [[mesh]]", meshFlags(), len(r.meshes))
 	}
 	r.meshes[0] = r.meshes[0].with(mesh)
 	return nil

@@ -27,6 +27,9 @@ func badJobs(f *testing.F) []string {
 		gear+"addendum = 0.8\ndedendum = 1.0\ntip_radius = 0.3", gear+"tip_chamfer = 0.2", gear+"[gear.a.b]\nx = 1", gear+"gear.b.teeth = 3",
 		pair+"center = { at = 50.2, tolerance = 0.02 }\nbacklash = \"0.2..0.4\"\nthin_share = \"a\"", pair+"center = \"50±0.01\"", pair+"center = 1e300", gear+"face_width = 1e308\nhelix_angle = 20",
 		pair+"center = {at = 50, class = \"js7\"}", strings.Replace(pair, "teeth = 20", "teeth = 8\ntip = \"shortened\"", 1), strings.Replace(gear, "module = 2", "transverse_dp = 12\nhelix_angle = 30", 1),
+		gear+"over_pins = { pin = 3.5, limits = \"44.7..44.8\", way = \"two pins\" }", gear+"over_pins = \"22.3 over 3.5, one pin to the axis\"", gear+"span = \"15.2..15.3 over 3 teeth\"",
+		gear+"span = { teeth = 3, limits = 15.2 }", gear+"runout = 0.02\nswell = \"0.1..0.6 %\"\nmaterial = { name = \"bar\", expansion = 20.5 }\naccuracy = \"ISO 1328-1:2013 class 8\"",
+		pair+"backlash = 0.1\n[gear.a.x]", strings.ReplaceAll(pair, "teeth = ", "material = \"4140\"\nthin_tolerance = 0.05\nteeth = ")+"backlash = 0.1\nthin_share = \"by strength\"\nbudget = \"statistical\"\ntemperature = \"40..140 F\"\nhousing = \"6061-T6\"",
 		"units = \"in\"\n[gear.a]\ndp = 1e-9\nteeth = 10000", "units = \"in\"\n[[gear]]\nteeth = 3", "units = \"mm\"\nmesh = [1, [2]]\n[gear.a]\nteeth = 9\nmodule = 1",
 	)
 }
@@ -90,7 +93,7 @@ func FuzzArguments(f *testing.F) {
 	for _, line := range []string{
 		"dims --example indexer", "dims --json --example feed-drive", "targets --example change-gear --pin 1.7 --pin 2mm", "dims --teeth 20 --module 2",
 		"targets --teeth 17 --module 1 --pin 1.2", "tables racks --json", "new", "--version", "dims --", "dims -- -", "targets - --gear", "dims --digits", "--json dims",
-		"dims --example indexer --gear driver --teeth 19 --thin 0.1..0.2", "dims --mate-teeth 20 --teeth 4 --dp 8 --backlash 0.1", "bevel", "dims --bevel", "dims --shop x", "targets --span-teeth x --example indexer",
+		"dims --example indexer --gear driver --teeth 19 --thin 0.1..0.2", "dims --mate-teeth 20 --teeth 4 --dp 8 --backlash 0.1", "bevel", "dims --bevel", "dims --module 2 --teeth 20 --span 0.6in", "targets --module 2 --teeth 20 --temperature 5..60", "dims --shop x", "targets --span-teeth x --example indexer",
 	} {
 		f.Add(line)
 	}

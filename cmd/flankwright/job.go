@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"flankwright/inspect"
@@ -142,16 +143,19 @@ func (r *request) readGears(root *table, shared map[string]value) error {
 	return nil
 }
 
-// overlay puts a gear's own values over the shared ones. Its own tooth size
-// replaces a shared one given in another way.
+// overlay puts a gear's own values over the shared ones, or flags over a job's.
+// A tooth size or a thickness replaces one given in another way.
 func overlay(s settings, own map[string]value) settings {
-	for _, k := range pitchKeys() {
-		if _, ok := own[k]; ok {
-			s.vals = without(s.vals, pitchKeys()...)
-			break
+	for _, ways := range [][]string{pitchKeys(), thicknessKeys()} {
+		if hasAny(own, ways) {
+			s.vals = without(s.vals, ways...)
 		}
 	}
 	return s.with(own)
+}
+
+func hasAny(vals map[string]value, keys []string) bool {
+	return slices.ContainsFunc(keys, func(k string) bool { return has(vals, k) })
 }
 
 func without(vals map[string]value, keys ...string) map[string]value {
@@ -238,28 +242,11 @@ func checkKeys(t *table, where scope, name string) error {
 // refuseLater refuses what the program knows but cannot do yet, by key or by value.
 func refuseLater(spec keySpec, v value, at place) error {
 	text, _ := asText(v)
-	_, isFlag := v.content.(flagText)
-	switch {
-	case spec.name == "ring" && (v.content == false || text == "false"):
+	switch _, isFlag := v.content.(flagText); {
+	case !spec.later, spec.name == "ring" && (v.content == false || text == "false"):
 		return nil
-	case spec.later:
-		return later(at, spec.name, isFlag)
-	case spec.name == "thin_share" && strings.EqualFold(text, "by strength"):
-		return later(at, spec.name+" = "+describe(v), isFlag)
-	}
-	return nil
-}
-
-func describe(v value) string {
-	if text, ok := asText(v); ok {
-		return fmt.Sprintf("%q", text)
-	}
-	return "{ … }"
-}
-
-func later(at place, what string, isFlag bool) error {
-	if isFlag {
+	case isFlag:
 		return fault(at, "not supported yet")
 	}
-	return fault(at, "%s: not supported yet", what)
+	return fault(at, "%s: not supported yet", spec.name)
 }

@@ -76,9 +76,14 @@ func runJSON(t *testing.T, status int, args ...string) map[string]any {
 	if got != status {
 		t.Fatalf("%q ends with %d: %s", args, got, stderr)
 	}
+	return decoded(t, out)
+}
+
+func decoded(t *testing.T, text string) map[string]any {
+	t.Helper()
 	var v map[string]any
-	if err := json.Unmarshal([]byte(out), &v); err != nil {
-		t.Fatalf("%q: %v", args, err)
+	if err := json.Unmarshal([]byte(text), &v); err != nil {
+		t.Fatalf("%v in %s", err, text)
 	}
 	return v
 }

@@ -76,6 +76,9 @@ func (j *job) addMesh(i int) error {
 	if err := j.readBacklash(m, s); err != nil {
 		return err
 	}
+	if err := j.readService(m, s); err != nil {
+		return err
+	}
 	j.meshes = append(j.meshes, m)
 	return nil
 }
@@ -134,14 +137,11 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	if err != nil {
 		return err
 	}
-	if ok && single {
-		return bad("backlash", s.vals["backlash"], "one value (the least alone) is not supported yet; give a range such as \"0.05..0.15\"")
-	}
 	if ok && l.Min < 0 {
 		return bad("backlash", s.vals["backlash"], "must be 0 or more, not %s", j.length(l.Min))
 	}
 	if ok {
-		m.plan.Backlash = &l
+		m.plan.Backlash, m.leastOnly = &l, single
 	}
 	share, ok, err := s.word("thin_share")
 	if err != nil || !ok {
@@ -149,12 +149,14 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	}
 	switch share {
 	case "equal":
+	case "by strength":
+		m.byStrength = true
 	case m.first.name:
 		m.plan.Share = inspect.ShareFirst
 	case m.second.name:
 		m.plan.Share = inspect.ShareSecond
 	default:
-		return bad("thin_share", s.vals["thin_share"], "%q is neither \"equal\" nor a gear of this mesh (%q, %q)", share, m.first.name, m.second.name)
+		return bad("thin_share", s.vals["thin_share"], "%q is neither \"equal\" nor \"by strength\" nor a gear of this mesh (%q, %q)", share, m.first.name, m.second.name)
 	}
 	if m.plan.Backlash == nil {
 		return bad("thin_share", s.vals["thin_share"], "shares out the thinning that a backlash asks for; give backlash too")
@@ -229,7 +231,10 @@ func (j *job) remake(g *gear, spec involute.Spec) error {
 func (j *job) planThickness() error {
 	var gears []inspect.PlanGear
 	for _, g := range j.gears {
-		gears = append(gears, inspect.PlanGear{Gear: g.g, Thin: g.thin})
+		if err := j.fix(g); err != nil {
+			return err
+		}
+		gears = append(gears, inspect.PlanGear{Gear: g.g, Thin: g.ownThin()})
 	}
 	var meshes []inspect.PlanMesh
 	for _, m := range j.meshes {

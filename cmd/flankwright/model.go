@@ -25,7 +25,10 @@ type gear struct {
 	nominal   involute.Tooth
 	thickness inspect.Thickness
 	thin      *inspect.Limits
-	faceWidth float64 // mm, 0 for not given
+	drawn     *drawnLimits    // of a drawing, or read off the gear; not with thin
+	fixed     *inspect.Limits // how much thinner than nominal they make the teeth, mm; below 0 where thicker
+	fixedBy   string          // their key: over_pins or span
+	faceWidth float64         // mm, 0 for not given
 	bore      *boreSize
 	keyway    *keyway
 	bolts     *boltCircle
@@ -41,6 +44,7 @@ type gear struct {
 	tipBy       tipDecision
 	rootBy      rootDecision
 	settings    settings
+	conditions
 }
 
 // depthOfCut returns the limits of the depth of cut from the blank's outside, mm.
@@ -96,6 +100,11 @@ type mesh struct {
 	first, second *gear
 	plan          inspect.PlanMesh
 	at            place // of the center distance, or of the mesh
+	leastOnly     bool  // the backlash is one value, the least
+	byStrength    bool  // the thinning is shared out by the teeth's strength
+	statistical   bool  // the limits are those of the statistical budget, not of the worst case
+	temperature   *inspect.Limits
+	housing       *material
 }
 
 // face returns the common face width, 0 where one is not known.
@@ -120,6 +129,9 @@ func resolve(r request) (*job, error) {
 		if err := j.addMesh(i); err != nil {
 			return nil, err
 		}
+	}
+	if err := j.checkTolerances(); err != nil {
+		return nil, err
 	}
 	if err := j.shortenTips(); err != nil {
 		return nil, err
@@ -159,20 +171,18 @@ func (j *job) addGear(i int, hand float64) error {
 	if g.faceWidth, _, err = gr.positive("face_width"); err != nil {
 		return err
 	}
-	if l, _, ok, err := gr.limits("thin"); err != nil {
-		return err
-	} else if ok {
-		if l.Min < 0 {
-			return bad("thin", gr.vals["thin"], "is how much thinner the tooth is, 0 or more; for a thicker tooth raise shift")
-		}
-		g.thin = &l
-	}
 	if b, ok, err := gr.bore("bore"); err != nil {
 		return err
 	} else if ok {
 		g.bore = &b
 	}
 	if err := j.readOpenings(g); err != nil {
+		return err
+	}
+	if err := j.readThickness(g); err != nil {
+		return err
+	}
+	if err := g.readConditions(); err != nil {
 		return err
 	}
 	j.gears = append(j.gears, g)

@@ -9,7 +9,7 @@ import (
 )
 
 func packetCommand() *cli.Command {
-	flags := append(jobFlagsWithout("material"), commonFlags()...)
+	flags := append(jobFlags(), commonFlags()...)
 	flags = append(flags, fileFlags("folder to write into; made if missing")...)
 	flags = append(flags, targetFlags()...)
 	flags = append(flags, contourFlags()...)

@@ -77,7 +77,7 @@ func unknownFlag(c *cli.Context, name string) error {
 	}
 	command := strings.TrimSpace(strings.TrimPrefix(c.Command.Name, "flankwright"))
 	if k, ok := findKey(strings.ReplaceAll(name, "-", "_")); ok && command != "" && command != "tables" && command != "new" {
-		if k.usage != "" && k.where&atTop != 0 || k.name == "material" {
+		if k.usage != "" && k.where&atTop != 0 {
 			return wrong("--%s: is for the sheet; %s does not use it", name, command)
 		}
 		return wrong("--%s: no such flag; write %s into a job file, %s", name, k.name, scopeName(k.where))

@@ -168,6 +168,17 @@ func (s settings) limits(key string) (l inspect.Limits, single, ok bool, err err
 	return l, !strings.Contains(text, ".."), true, nil
 }
 
+// written returns a text, or a number as a text.
+func written(v value) (string, bool) {
+	switch c := v.content.(type) {
+	case int64:
+		return strconv.FormatInt(c, 10), true
+	case float64:
+		return strconv.FormatFloat(c, 'g', -1, 64), true
+	}
+	return asText(v)
+}
+
 func asText(v value) (string, bool) {
 	switch c := v.content.(type) {
 	case string:

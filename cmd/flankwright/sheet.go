@@ -21,27 +21,11 @@ func sheetFlags() []cli.Flag {
 	}
 	return append(flags,
 		&cli.StringFlag{Name: "page", Usage: "a4 or letter (letter for inch jobs)", Category: catHead},
-		&cli.StringFlag{Name: "date", Usage: "date to print; otherwise a blank to fill in", Category: catHead},
-		&cli.StringFlag{Name: "material", Usage: "material to print; otherwise a blank to fill in", Category: catHead})
-}
-
-// jobFlagsWithout returns the flags of a job except some.
-func jobFlagsWithout(names ...string) []cli.Flag {
-	var out []cli.Flag
-	for _, f := range jobFlags() {
-		keep := true
-		for _, n := range names {
-			keep = keep && f.Names()[0] != n
-		}
-		if keep {
-			out = append(out, f)
-		}
-	}
-	return out
+		&cli.StringFlag{Name: "date", Usage: "date to print; otherwise a blank to fill in", Category: catHead})
 }
 
 func sheetCommand() *cli.Command {
-	flags := append(jobFlagsWithout("material"), commonFlags()...)
+	flags := append(jobFlags(), commonFlags()...)
 	flags = append(flags, fileFlags("FILE.pdf, a page a gear; FILE.svg or .png for one gear; a folder, DIR/, for an SVG of every gear")...)
 	flags = append(flags, targetFlags()...)
 	flags = append(flags, sheetFlags()...)
@@ -174,10 +158,9 @@ func (t *targets) sheetPages(c *cli.Context) ([]export.Drawing, error) {
 			return nil, wrong("--page: %v", err)
 		}
 	}
-	head := sheetHead{date: c.String("date"), material: c.String("material")}
 	var pages []export.Drawing
 	for i, g := range t.list {
-		s, err := t.job.sheet(g, t.gears[i], head)
+		s, err := t.job.sheet(g, t.gears[i], c.String("date"))
 		if err != nil {
 			return nil, err
 		}

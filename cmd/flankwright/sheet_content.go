@@ -10,8 +10,6 @@ import (
 	"flankwright/involute"
 )
 
-type sheetHead struct{ date, material string }
-
 func footText(name string, page, of int) string {
 	return fmt.Sprintf("flankwright · %s · page %d of %d", name, page, of)
 }
@@ -20,7 +18,7 @@ func footText(name string, page, of int) string {
 const sheetTolerance = 0.002
 
 // sheet gathers what the inspection sheet of one gear says.
-func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error) {
+func (j *job) sheet(g *gear, t gearTargets, date string) (export.Sheet, error) {
 	tooth := g.middle()
 	spec := j.contourSpec(g, contourOptions{fit: export.FitOptions{Tolerance: sheetTolerance * g.g.Module()}})
 	outline, _, err := export.NewContour(spec)
@@ -38,7 +36,7 @@ func (j *job) sheet(g *gear, t gearTargets, head sheetHead) (export.Sheet, error
 	word := func(key string) string { w, _, _ := j.top.word(key); return w }
 	s := export.Sheet{
 		Title: orDefault(word("title"), g.plainTitle()), Gear: g.name,
-		Part: word("part"), DrawingNumber: word("drawing"), Author: word("author"), Date: head.date, Material: head.material,
+		Part: word("part"), DrawingNumber: word("drawing"), Author: word("author"), Date: date, Material: g.material.word(),
 		Data: j.sheetData(g), InchFirst: j.display == inspect.Inch,
 		Targets: j.sheetTargets(g, t), Limits: j.sheetLimits(g),
 		Shape: shape, Pins: j.pinView(g, t, tooth), Span: j.spanView(g, t, tooth),

@@ -123,7 +123,7 @@ func newTargets(j *job, gears []*gear, a ask) *targets {
 
 func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	out := gearTargets{
-		Thickness: toSpan(g.thickness.Limits), DecidedBy: thicknessWords(g.thickness.By),
+		Thickness: toSpan(g.thickness.Limits), DecidedBy: thicknessWords(g),
 		OverPins: []pinTarget{}, Span: []spanTarget{},
 	}
 	if ideal, ok := inspect.IdealPin(g.g, g.thickness.Limits); ok {

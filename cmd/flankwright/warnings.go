@@ -76,7 +76,9 @@ func (j *job) warnGear(g *gear) {
 	if g.thin != nil && g.thin.Width() == 0 {
 		j.addWarning("no-tolerance", g.name, "thin is one value: the targets are without tolerance. Give a range such as \"0.04..0.08\"")
 	}
-	if taken := g.g.NominalThickness() - g.thickness.Limits.Min; taken > heavyThinning*g.g.NominalThickness() {
+	if g.fixed != nil {
+		j.warnFixed(g)
+	} else if taken := g.g.NominalThickness() - g.thickness.Limits.Min; taken > heavyThinning*g.g.NominalThickness() {
 		j.addWarning("heavy-thinning", g.name, "the teeth come out up to %s thinner than nominal, %.0f %% of the tooth. Is the center distance right?", j.length(taken), 100*taken/g.g.NominalThickness())
 	}
 	thinnest, err := g.g.Tooth(g.thickness.Limits.Min)
@@ -228,10 +230,16 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 			pair, j.length(least.Circumferential), j.length(m.tight()), m.tightShift(), m.first.g.Spec().Shift+m.second.g.Spec().Shift)
 	}
 	want := m.plan.Backlash
-	if want == nil || m.first.thin == nil || m.second.thin == nil {
+	if want == nil || m.first.ownThin() == nil || m.second.ownThin() == nil {
 		return
 	}
 	slack := 1e-6 // mm, rounding of limits given in decimals
+	if m.leastOnly {
+		if least.Circumferential < want.Min-slack {
+			j.addMeshWarning("backlash-out", m, "%s: the thicknesses given make %s of backlash at least, not the %s asked for; the thicknesses rule", pair, j.length(least.Circumferential), j.length(want.Min))
+		}
+		return
+	}
 	if least.Circumferential < want.Min-slack || most.Circumferential > want.Max+slack {
 		j.addMeshWarning("backlash-out", m, "%s: the thicknesses given make %s to %s of backlash, not the %s to %s asked for; the thicknesses rule", pair,
 			j.length(least.Circumferential), j.length(most.Circumferential), j.length(want.Min), j.length(want.Max))

@@ -115,7 +115,7 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 		return text + fmt.Sprintf("cannot be had together with what the other meshes of %s and its mate ask for. Change one of the backlashes or thin_share, or give %s a thin of its own", name, name)
 	}
 	text += "leaves nothing for the teeth: "
-	if m.first.thin != nil || m.second.thin != nil {
+	if m.first.ownThin() != nil || m.second.ownThin() != nil {
 		text += "the center distance's tolerance and the gear that is already fixed take it all. "
 	} else {
 		text += "the center distance's tolerance takes it all. "

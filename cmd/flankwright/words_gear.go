@@ -42,21 +42,35 @@ func (j *job) impossibleThinning(g *gear, err error) error {
 	}
 	asked, what := g.g.NominalThickness()-g.thickness.Limits.Min, "thin"
 	at := g.settings.at
-	if v, ok := g.settings.vals["thin"]; ok {
-		at = v.at
-	} else if v, ok := j.backlashOf(g); ok {
+	if v, ok := j.backlashOf(g); ok {
 		at, what = v.at, "backlash"
 	}
-	why := map[involute.Reason]string{
+	for _, key := range fixingKeys() {
+		if v, ok := g.settings.vals[key]; ok {
+			at, what = v.at, key
+		}
+	}
+	return faultAt(at, "%s makes %s up to %s thinner than nominal, a tooth thickness of %s, and such a tooth %s; at most %s can be taken",
+		what, called(g), j.length(asked), j.length(g.thickness.Limits.Min), noTooth(imp), j.lengthDown(mostThinning(g)))
+}
+
+// noTooth says what is wrong with a tooth that cannot be.
+func noTooth(err error) string {
+	var imp *involute.Impossible
+	if !errors.As(err, &imp) {
+		return "cannot be"
+	}
+	why, ok := map[involute.Reason]string{
 		involute.Pointed: "comes to a point below its tip", involute.NoInvolute: "has no involute left", involute.CutOff: "is cut off at its root",
 		involute.RootNotPositive: "has no root left", involute.ChamferTooLarge: "has no tip left for its chamfer",
 		involute.RoundTooLarge: "has no tip left for its rounding", involute.ReliefOff: "has no flank left below its relief",
+		involute.SpaceClosed: "leaves no space", involute.TooThick: "needs a cutter narrower than its own rounding",
+		involute.MillTooLarge: "leaves no way in for the end mill of its root",
 	}[imp.Reason]
-	if why == "" {
-		why = "has no thickness left"
+	if !ok {
+		return "has no thickness left"
 	}
-	return faultAt(at, "%s makes %s up to %s thinner than nominal, a tooth thickness of %s, and such a tooth %s; at most %s can be taken",
-		what, called(g), j.length(asked), j.length(g.thickness.Limits.Min), why, j.lengthDown(mostThinning(g)))
+	return why
 }
 
 // mostThinning returns how much thinner than nominal a tooth can be, mm, to a thousandth of itself.
