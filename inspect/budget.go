@@ -123,6 +123,18 @@ func (b Budget) Statistical() Limits {
 	return l
 }
 
+// MiddleIn returns the backlash with everything in its middle but a climate
+// of one temperature, for which the budget is.
+func (b Budget) MiddleIn(c *Climate) float64 {
+	j := b.Middle
+	for _, r := range b.Rows {
+		if r.Cause == OfClimate && c != nil {
+			j += (r.Adds - r.Takes) / 2
+		}
+	}
+	return j
+}
+
 // rss returns the roots of the sums of squares of what is not certain.
 func (b Budget) rss() (takes, adds float64) {
 	for _, r := range b.Rows {

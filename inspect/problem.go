@@ -17,14 +17,14 @@ const (
 
 // A PlanProblem says why a mesh's backlash cannot be had.
 type PlanProblem struct {
-	Kind   ProblemKind
-	Mesh   int     // index
-	Gear   int     // index of the gear that cannot be made
-	Thin   Limits  // the thinning it would need, mm; empty where Min > Max
-	Play   float64 // the least backlash of nominal (or fixed) teeth, mm
-	Tight  float64 // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
-	Most   float64 // the greatest backlash that would have to be allowed, mm
-	Budget Budget  // with thicknesses that give the least backlash and have no tolerance
+	Kind  ProblemKind
+	Mesh  int       // index
+	Gear  int       // index of the gear that cannot be made
+	Thin  Limits    // the thinning it would need, mm; empty where Min > Max
+	Play  float64   // the least backlash of nominal (or fixed) teeth, mm
+	Tight float64   // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
+	Most  float64   // the greatest backlash that would have to be allowed, mm
+	Sole  [2]Limits // the thinnings of both gears that give the least backlash and have no tolerance
 }
 
 // Error says so in short; the program's edge words it for people.
@@ -47,6 +47,6 @@ func (m PlanMesh) explain(p *PlanProblem, pair [2]PlanGear, thin [2]Limits) erro
 	if err != nil {
 		return p
 	}
-	p.Budget, p.Most = b, b.By(m.Method).Max
+	p.Sole, p.Most = thin, b.By(m.Method).Max
 	return p
 }

@@ -11,14 +11,15 @@ type RemedyKind int
 
 // The remedies.
 const (
-	WidenBacklash  RemedyKind = iota // Value: the greatest backlash that must be allowed, mm
-	AskForMore                       // Value: the least backlash to ask for, mm
-	CloserCenter                     // Value: the tolerance of the center distance, plus and minus, that must not be reached, mm
-	CloserRunout                     // Value: the share of the runouts that must not be reached
-	FinerTeeth                       // Value: the share of all deviations of the teeth that must not be reached
-	MoveCenter                       // Value: by how much to change the center distance, mm
-	Statistically                    // hold the backlash statistically instead of at worst
-	SteadierWarmth                   // Value: the share of the climate's growth that must not be reached
+	WidenBacklash      RemedyKind = iota // Value: the greatest backlash that must be allowed, mm
+	AskForMore                           // Value: the least backlash to ask for, mm
+	CloserCenter                         // Value: the tolerance of the center distance, plus and minus, that must not be reached, mm
+	CloserRunout                         // Value: the share of the runouts that must not be reached
+	FinerTeeth                           // Value: the share of all deviations of the teeth that must not be reached
+	MoveCenter                           // Value: by how much to change the center distance, mm
+	Statistically                        // hold the backlash statistically instead of at worst
+	WidenStatistically                   // Value: the greatest backlash that must be allowed if it is held statistically, mm
+	SteadierWarmth                       // Value: the share of the climate's growth that must not be reached
 )
 
 // A Remedy is one change; all else stays.
@@ -95,8 +96,12 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 	scaled(SteadierWarmth, 1, func(m *PlanMesh, by float64) { m.Climate = m.Climate.scaled(by) })
 	if m.Method == WorstCase {
 		m.Method = Statistical
-		if m.possible(pair) {
+		_, err := m.shares(0, pair)
+		switch p, isProblem := err.(*PlanProblem); {
+		case err == nil:
 			list = append(list, Remedy{Kind: Statistically})
+		case isProblem && p.Kind == NoRoom:
+			list = append(list, Remedy{WidenStatistically, p.Most})
 		}
 	}
 	return list

@@ -37,6 +37,8 @@ func TestRemediesWork(t *testing.T) {
 				switch r.Kind {
 				case WidenBacklash:
 					m.Backlash.Max, works = v, share > 1
+				case WidenStatistically:
+					m.Backlash.Max, m.Method, works = v, Statistical, share > 1
 				case AskForMore:
 					m.Backlash = &Limits{v, v + module}
 					works = share > 1

@@ -2,6 +2,8 @@ package refdata
 
 import (
 	"fmt"
+	"regexp"
+	"slices"
 	"strings"
 	"unicode"
 )
@@ -68,4 +70,23 @@ func edits(a, b string) int {
 		}
 	}
 	return row[len(to)]
+}
+
+// wordPattern matches a number, with the sign or point before it where no
+// letter or digit stands before that, or a run of anything but digits, blanks
+// and the punctuation of standard numbers.
+var wordPattern = regexp.MustCompile(`\B[-.][0-9]+|[0-9]+|[^\s\p{Z}\p{Pd}:/.,;()=_0-9]+`)
+
+// words parts text into lower case words and numbers, so that
+// "ISO 1328-1:2013 class 8" and "iso1328-1 2013 CLASS8" are one.
+func words(text string) []string {
+	return wordPattern.FindAllString(strings.ToLower(text), -1)
+}
+
+// cut returns what follows the head in w, and whether w begins with it; if not, all of w.
+func cut(w []string, head ...string) (rest []string, ok bool) {
+	if len(w) < len(head) || !slices.Equal(w[:len(head)], head) {
+		return w, false
+	}
+	return w[len(head):], true
 }

@@ -61,56 +61,6 @@ func grade(class string) int {
 	return n
 }
 
-// DIN 3967 and DIN 3964: the number rows of T_sn, the monotone A_sne, and A_a as half of ISO 286's grades.
-func TestDIN3967(t *testing.T) {
-	rows := [][]float64{
-		{3, 5, 8, 12, 20, 30, 50, 80, 130, 200, 300, 500, 800, 1300},
-		{6, 10, 16, 25, 40, 60, 100, 160, 250, 400, 600, 1000},
-	}
-	tolerances := map[float64][]float64{} // by diameter range, series 21 to 30
-	allowance := map[string]float64{}     // by series: the range before
-	var before record
-	halves := 0
-	for _, r := range records("allowance_din3967") {
-		over, to, v := r.number("over_mm"), r.number("to_mm"), r.number("value_um")
-		switch r.text("table") {
-		case "T_sn":
-			tolerances[to] = append(tolerances[to], v)
-		case "A_sne":
-			if series := r.text("series"); series != "h" && over > 0 && v >= allowance[series] || v > 0 || series == "h" && v != 0 {
-				t.Errorf("A_sne %s to %g mm: %g after %g", series, to, v, allowance[series])
-			}
-			allowance[r.text("series")] = v
-			if before.table != nil && before.text("table") == "A_sne" && before.number("to_mm") == to && v <= before.number("value_um") {
-				t.Errorf("A_sne to %g mm: %s is not thinner than %s", to, before.text("series"), r.text("series"))
-			}
-		case "A_a":
-			if to > 500 {
-				break // ISO 286-1's table ends here
-			}
-			halves++
-			if _, upper, _, err := ISO286Limits(to, r.text("series")); err != nil || upper != r.scaled("value_um", -3) {
-				t.Errorf("A_a %s to %g mm: %g, by ISO 286-1 %g, %v", r.text("series"), to, v, upper*1000, err)
-			}
-		default:
-			t.Errorf("table %q", r.text("table"))
-		}
-		before = r
-	}
-	for to, got := range tolerances {
-		stretch := slices.ContainsFunc(rows, func(row []float64) bool {
-			i := slices.Index(row, got[0])
-			return i >= 0 && i+len(got) <= len(row) && slices.Equal(row[i:i+len(got)], got)
-		})
-		if len(got) != 10 || !stretch {
-			t.Errorf("T_sn to %g mm: %g", to, got)
-		}
-	}
-	if len(tolerances) != 7 || halves != 70 {
-		t.Errorf("%d ranges of T_sn, %d halves of grades", len(tolerances), halves)
-	}
-}
-
 // ISO 6336-5: better quality never carries less; ANSI/AGMA 2001: the MPa form is the psi form in its note.
 func TestGearAllowables(t *testing.T) {
 	order := map[string]int{"ML": 0, "ML/MQ": 1, "MQ": 1, "MQ/ME": 2, "ME": 2}

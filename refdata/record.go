@@ -74,3 +74,16 @@ func sizeRow(rs []record, size float64, from, to string) (record, bool) {
 	}
 	return record{}, false
 }
+
+// groups parts rows into those that follow each other with one value of a column.
+func groups(rs []record, column string) [][]record {
+	var all [][]record
+	for _, r := range rs {
+		if n := len(all); n > 0 && all[n-1][0].text(column) == r.text(column) {
+			all[n-1] = append(all[n-1], r)
+		} else {
+			all = append(all, []record{r})
+		}
+	}
+	return all
+}

@@ -88,6 +88,8 @@ func TestOrder(t *testing.T) {
 	}{
 		{"allowance_din3967", "over_mm", []string{"table", "series"}},
 		{"ansi_b4_1", "over_in", []string{"class"}},
+		{"backlash_coarse", "over_in", []string{"p_from"}},
+		{"backlash_fine", "p_from", []string{"designation"}},
 		{"diametral_pitches", "pitch_per_in", nil},
 		{"end_mills", "diameter_mm", []string{"system"}},
 		{"gear_pins", "diameter_mm", nil},
@@ -123,6 +125,7 @@ func TestRangesMeet(t *testing.T) {
 	for _, c := range []struct{ table, from, to, group string }{
 		{"allowance_din3967", "over_mm", "to_mm", "series"},
 		{"ansi_b4_1", "over_in", "upto_in", "class"},
+		{"backlash_coarse", "over_in", "upto_in", "p_from"},
 		{"iso286_hole", "over_mm", "upto_mm", ""},
 		{"iso286_it", "over_mm", "upto_mm", ""},
 		{"iso286_shaft", "over_mm", "upto_mm", ""},

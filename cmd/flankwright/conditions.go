@@ -16,7 +16,8 @@ type conditions struct {
 	swell         inspect.Limits // linear, as a fraction, from dry
 	runout        *float64       // total reading, mm
 	accuracyText  string
-	thinTolerance *float64 // how much thinner than its thickest a tooth may be, mm
+	flanks        *refdata.FlankTolerances // what the accuracy class allows
+	thinTolerance *float64                 // how much thinner than its thickest a tooth may be, mm
 }
 
 // A material is what a gear or a housing is made of.

@@ -202,9 +202,17 @@ type meshDims struct {
 	End             *pairDims  `json:"end_of_active_profile_mm"`
 	SlidingRoot     pairSlides `json:"specific_sliding_at_root"`
 	SlidingTip      pairSlides `json:"specific_sliding_at_tip"`
+	Counted         *counted   `json:"backlash_with_deviations"` // null where no deviations and no climate are given
 	Note            string     `json:"note"`
 
 	mesh *mesh
+}
+
+// counted is the circumferential backlash with runout, deviations and climate counted.
+type counted struct {
+	Held        string `json:"held"`
+	Worst       span   `json:"worst_mm"`
+	Statistical span   `json:"statistical_mm"`
 }
 
 type pairDims struct {
@@ -225,7 +233,7 @@ type dialDims struct {
 }
 
 // geometricNote is said with every backlash until a budget can be made.
-const geometricNote = "backlash is geometric: before runout, pitch error and temperature"
+const geometricNote = "circumferential, normal and angular backlash are geometric: before runout, pitch error and temperature"
 
 func newMeshDims(m *mesh, dial float64) meshDims {
 	d := meshDims{Gears: []string{m.first.name, m.second.name}, mesh: m, Note: geometricNote}
@@ -251,6 +259,9 @@ func newMeshDims(m *mesh, dial float64) meshDims {
 	least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
 	if err == nil {
 		d.backlash(least, most, dial)
+	}
+	if b, err := m.budget(); err == nil && m.burdened() {
+		d.Counted = &counted{methodWord(m.plan.Method), toSpan(b.Worst()), toSpan(b.Statistical())}
 	}
 	return d
 }

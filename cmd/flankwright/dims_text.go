@@ -33,15 +33,29 @@ func (d *dims) text(p *page, digits int) []byte {
 		p.grid(m.theoryGrid(u, f))
 		p.grid(m.pairGrid(u, f))
 	}
-	if len(d.Meshes) > 0 {
-		p.blank()
-		p.line("Backlash here is geometric: before runout, pitch error and temperature.")
-	}
+	d.backlashNote(p)
 	d.job.moreDigits(p, d.list, digits)
 	d.printIndex(p)
 	p.explanations(d.Explain)
 	p.warnings(d.Warnings)
 	return []byte(p.b.String())
+}
+
+// backlashNote says what the backlash shown does not count.
+func (d *dims) backlashNote(p *page) {
+	burdened := false
+	for _, m := range d.Meshes {
+		burdened = burdened || m.Counted != nil
+	}
+	if len(d.Meshes) == 0 {
+		return
+	}
+	p.blank()
+	if burdened {
+		p.line("Backlash here is geometric, before runout, pitch error and temperature, but for the rows that count them; see flankwright backlash.")
+		return
+	}
+	p.line("Backlash here is geometric: before runout, pitch error and temperature.")
 }
 
 // moreDigits says where a narrow range took more decimals than asked.
@@ -238,6 +252,10 @@ func (m meshDims) shopGrid(u inspect.Unit, f func(float64) string, digits int) g
 	minutes("  as an angle of "+m.Gears[1], m.AngleSecond)
 	if m.CenterPlay != nil {
 		lengths("  as play of the center distance", *m.CenterPlay)
+	}
+	if c := m.Counted; c != nil {
+		lengths("  with runout, deviations and climate, at worst", c.Worst)
+		lengths("  the same, statistically", c.Statistical)
 	}
 	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.First), m.Gears[0]), m.Dial.First)
 	lengths(fmt.Sprintf("  on a dial at radius %s of %s", f(m.Dial.Radius.Second), m.Gears[1]), m.Dial.Second)

@@ -7,6 +7,7 @@ import (
 
 	"flankwright/inspect"
 	"flankwright/involute"
+	"flankwright/refdata"
 )
 
 // What fixes a gear's thickness limits before any backlash does: its thinning,
@@ -41,6 +42,9 @@ func (j *job) readThickness(g *gear) error {
 	if err := g.settings.oneThickness(); err != nil {
 		return err
 	}
+	if done, err := g.readCallOut(); done || err != nil {
+		return err
+	}
 	l, _, ok, err := g.settings.limits("thin")
 	switch {
 	case err != nil:
@@ -61,6 +65,21 @@ func (j *job) readThickness(g *gear) error {
 		return err
 	}
 	return j.readSpan(g)
+}
+
+// readCallOut reads a thin that is a call-out of DIN 3967, such as "DIN 3967 cd25".
+func (g *gear) readCallOut() (done bool, err error) {
+	v, ok := g.settings.vals["thin"]
+	text, isText := asText(v)
+	if !ok || !isText || !strings.HasPrefix(strings.ToUpper(strings.TrimSpace(text)), "DIN") {
+		return false, nil
+	}
+	least, most, source, err := refdata.ThicknessCallOut(math.Abs(g.g.ReferenceDiameter()), text)
+	if err != nil {
+		return true, bad("thin", v, "%v", err)
+	}
+	g.thin, g.thinSource = &inspect.Limits{Min: least, Max: most}, source.String()
+	return true, nil
 }
 
 // oneThickness refuses a second key that says how thick the teeth are.

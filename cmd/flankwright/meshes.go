@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"math"
 	"strings"
 
@@ -79,6 +80,7 @@ func (j *job) addMesh(i int) error {
 	if err := j.readService(m, s); err != nil {
 		return err
 	}
+	j.burden(m)
 	j.meshes = append(j.meshes, m)
 	return nil
 }
@@ -234,7 +236,7 @@ func (j *job) planThickness() error {
 		if err := j.fix(g); err != nil {
 			return err
 		}
-		gears = append(gears, inspect.PlanGear{Gear: g.g, Thin: g.ownThin()})
+		gears = append(gears, g.planned())
 	}
 	var meshes []inspect.PlanMesh
 	for _, m := range j.meshes {
@@ -242,6 +244,7 @@ func (j *job) planThickness() error {
 	}
 	found, err := inspect.Plan(gears, meshes)
 	if err != nil {
+		errors.As(err, &j.problem)
 		return j.planError(err)
 	}
 	for i, g := range j.gears {

@@ -15,28 +15,30 @@ type job struct {
 	gears    []*gear
 	meshes   []*mesh
 	warnings []warning
-	early    int // how many of them came up before the gears were whole
+	early    int                  // how many of them came up before the gears were whole
+	problem  *inspect.PlanProblem // why the backlash asked for cannot be had
 }
 
 // A gear is one gear of a job.
 type gear struct {
-	name      string
-	g         *involute.Gear
-	nominal   involute.Tooth
-	thickness inspect.Thickness
-	thin      *inspect.Limits
-	drawn     *drawnLimits    // of a drawing, or read off the gear; not with thin
-	fixed     *inspect.Limits // how much thinner than nominal they make the teeth, mm; below 0 where thicker
-	fixedBy   string          // their key: over_pins or span
-	faceWidth float64         // mm, 0 for not given
-	bore      *boreSize
-	keyway    *keyway
-	bolts     *boltCircle
-	hub       float64 // outside diameter, mm, 0 for none
-	dp        float64 // normal diametral pitch as given, 0 where a module was
-	rack      string  // name for people
-	source    string  // of the rack
-	shortened bool
+	name       string
+	g          *involute.Gear
+	nominal    involute.Tooth
+	thickness  inspect.Thickness
+	thin       *inspect.Limits
+	thinSource string          // of a thin that is a call-out
+	drawn      *drawnLimits    // of a drawing, or read off the gear; not with thin
+	fixed      *inspect.Limits // how much thinner than nominal they make the teeth, mm; below 0 where thicker
+	fixedBy    string          // their key: over_pins or span
+	faceWidth  float64         // mm, 0 for not given
+	bore       *boreSize
+	keyway     *keyway
+	bolts      *boltCircle
+	hub        float64 // outside diameter, mm, 0 for none
+	dp         float64 // normal diametral pitch as given, 0 where a module was
+	rack       string  // name for people
+	source     string  // of the rack
+	shortened  bool
 	// handAssumed: neither the gear nor a mate nor the shared values say a hand.
 	handAssumed bool
 	measured    bool    // the outside diameter is the blank's, as measured
@@ -112,7 +114,8 @@ func (m *mesh) face() float64 {
 	return min(m.first.faceWidth, m.second.faceWidth)
 }
 
-// resolve works a request out.
+// resolve works a request out. Where its backlash cannot be had it returns, with the
+// error, the job as far as it got.
 func resolve(r request) (*job, error) {
 	j := &job{request: r}
 	hands, assumed, err := j.hands()
@@ -140,7 +143,7 @@ func resolve(r request) (*job, error) {
 		return nil, err
 	}
 	if err := j.planThickness(); err != nil {
-		return nil, err
+		return j, err
 	}
 	for _, g := range j.gears {
 		if err := j.finishGear(g); err != nil {
@@ -183,6 +186,9 @@ func (j *job) addGear(i int, hand float64) error {
 		return err
 	}
 	if err := g.readConditions(); err != nil {
+		return err
+	}
+	if err := g.readAccuracy(); err != nil {
 		return err
 	}
 	j.gears = append(j.gears, g)

@@ -36,7 +36,7 @@ func newApp(stdin io.Reader, stdout, stderr io.Writer) *cli.App {
 		HideHelpCommand:           true,
 		DisableSliceFlagSeparator: true, // --pin 3,5 is a slip, not two pins
 		Commands: []*cli.Command{
-			newCommand(), dimsCommand(), targetsCommand(), contourCommand(),
+			newCommand(), dimsCommand(), backlashCommand(), targetsCommand(), contourCommand(),
 			sheetCommand(), packetCommand(), tablesCommand(),
 		},
 		ExitErrHandler: func(*cli.Context, error) {},
@@ -94,7 +94,7 @@ func unknownFlag(c *cli.Context, name string) error {
 
 // plannedCommands are to come, and are refused until then.
 func plannedCommands() []string {
-	return []string{"size", "backlash", "reading", "unknown", "cutters", "load", "bore"}
+	return []string{"size", "reading", "unknown", "cutters", "load", "bore"}
 }
 
 // noCommand runs where no command was recognized.
@@ -283,7 +283,8 @@ func plainPathError(err error) string {
 	return fmt.Sprintf("%s: %v", p.Path, p.Err)
 }
 
-// loadJob reads and resolves the job of a command, and the gears it is about.
+// loadJob reads and resolves the job of a command, and the gears it is about. It
+// returns the job with an error where its backlash cannot be had.
 func loadJob(c *cli.Context) (*job, []*gear, error) {
 	r, err := loadRequest(c)
 	if err != nil {
@@ -291,7 +292,7 @@ func loadJob(c *cli.Context) (*job, []*gear, error) {
 	}
 	j, err := resolve(r)
 	if err != nil {
-		return nil, nil, err
+		return j, nil, err
 	}
 	gears, err := j.chosen(c.String("gear"))
 	if err != nil {

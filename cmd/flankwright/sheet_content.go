@@ -273,7 +273,7 @@ func sheetMethod(g *gear, t gearTargets) []string {
 // sheetCautions stand on every sheet.
 func sheetCautions() []string {
 	return []string{
-		"The targets hold for the pin or ball diameter stated; another diameter needs other targets. Tooth thickness is normal, at the pitch (reference) circle. Backlash is geometric: before runout, pitch error and temperature.",
+		"The targets hold for the pin or ball diameter stated; another diameter needs other targets. Tooth thickness is normal, at the pitch (reference) circle. Backlash is geometric, before runout, pitch error and temperature, unless it says with deviations.",
 		"Measure with the spindle stopped and locked. Guard running gears. Where a failure could hurt people, local codes, the machine's guarding rules and a licensed engineer decide.",
 	}
 }

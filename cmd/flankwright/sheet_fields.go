@@ -159,12 +159,36 @@ func (j *job) sheetLimits(g *gear) []export.Field {
 		center := j.limitsField(fmt.Sprintf("Center, %s (%d teeth)", mate, mateTeeth(m, g)), m.plan.Center)
 		center.Other = ""
 		fields = append(fields, center)
-		least, most, err := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
-		if err == nil {
-			fields = append(fields, j.rangeField("Backlash, "+mate, least.Circumferential, most.Circumferential))
-		}
+		fields = append(fields, j.backlashFields(m, mate)...)
 	}
 	return append(fields, export.Field{Label: "Reference temperature", Value: "20 °C (68 °F)", Other: "ISO 1"})
+}
+
+// backlashFields word the backlash that is allowed, and what the limits make of it:
+// with deviations and climate where they are given.
+func (j *job) backlashFields(m *mesh, mate string) []export.Field {
+	var fields []export.Field
+	if want := m.plan.Backlash; want != nil {
+		allowed := export.Field{Label: "Backlash allowed, " + mate, Value: "over " + j.length(want.Min)}
+		if !m.leastOnly {
+			allowed = j.rangeField(allowed.Label, want.Min, want.Max)
+		}
+		if m.plan.Method == inspect.Statistical {
+			allowed.Label += ", statistically"
+		}
+		fields = append(fields, allowed)
+	}
+	b, err := m.budget()
+	least, most, err2 := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
+	if err != nil || err2 != nil {
+		return fields
+	}
+	fields = append(fields, j.rangeField("Backlash, "+mate, least.Circumferential, most.Circumferential))
+	if m.burdened() {
+		got := b.By(m.plan.Method)
+		fields = append(fields, j.rangeField("Backlash with deviations", got.Min, got.Max))
+	}
+	return fields
 }
 
 func mateTeeth(m *mesh, g *gear) int {

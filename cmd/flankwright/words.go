@@ -90,22 +90,25 @@ func (j *job) planError(err error) error {
 	var p *inspect.PlanProblem
 	if !errors.As(err, &p) {
 		var imp *involute.Impossible
-		if errors.As(err, &imp) {
-			return wrong("the backlash asked for: %s", j.length(imp.Value))
+		if errors.As(err, &imp) && imp.Reason == involute.CenterTooSmall {
+			return wrong("a center distance of %s, less its tolerance and the runouts, leaves no working pressure angle: the base circles alone need %s", j.length(imp.Value), j.length(imp.Limit))
 		}
 		return err
 	}
-	return bad("backlash", j.request.meshes[p.Mesh].vals["backlash"], "%s", j.planReason(p))
+	text := j.planReason(p)
+	if j.meshes[p.Mesh].burdened() {
+		text += "; the command backlash shows where it goes"
+	}
+	return bad("backlash", j.request.meshes[p.Mesh].vals["backlash"], "%s", text)
 }
 
 // planReason says why a backlash cannot be had, and what could.
 func (j *job) planReason(p *inspect.PlanProblem) string {
 	m := j.meshes[p.Mesh]
-	want := m.plan.Backlash
-	text := fmt.Sprintf("%s and %s: %s to %s of backlash ", m.first.name, m.second.name, j.length(want.Min), j.length(want.Max))
+	text := fmt.Sprintf("%s and %s: %s of backlash ", m.first.name, m.second.name, j.wishText(m))
 	switch p.Kind {
 	case inspect.TooThick:
-		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s at the tightest center. Ask for %s or more, ", j.length(p.Play), j.length(p.Play))
+		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s, at the least. Ask for %s or more, ", j.length(p.Play), j.length(p.Play))
 		if p.Tight > 0 {
 			text += fmt.Sprintf("bring the center toward %s, ", j.length(p.Tight))
 		}
@@ -114,13 +117,15 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 		name := j.gears[p.Gear].name
 		return text + fmt.Sprintf("cannot be had together with what the other meshes of %s and its mate ask for. Change one of the backlashes or thin_share, or give %s a thin of its own", name, name)
 	}
-	text += "leaves nothing for the teeth: "
-	if m.first.ownThin() != nil || m.second.ownThin() != nil {
-		text += "the center distance's tolerance and the gear that is already fixed take it all. "
-	} else {
-		text += "the center distance's tolerance takes it all. "
+	takers := "the center distance's tolerance"
+	verb := "takes"
+	if m.burdened() {
+		takers, verb = "center distance, deviations and climate", "take"
 	}
-	return text + fmt.Sprintf("Allow more than %s, or tighten the tolerance", j.length(p.Most))
+	if m.first.ownThin() != nil || m.second.ownThin() != nil {
+		takers, verb = takers+" and the gear that is already fixed", "take"
+	}
+	return text + fmt.Sprintf("leaves nothing for the teeth: %s %s it all. Allow more than %s, or tighten the tolerance", takers, verb, j.length(p.Most))
 }
 
 // faultText words why a measure cannot be used.

@@ -1,0 +1,422 @@
+package main
+
+import (
+	"fmt"
+	"math"
+
+	"github.com/urfave/cli/v2"
+
+	"flankwright/inspect"
+)
+
+// The simulation that backlash runs unless told otherwise.
+const (
+	usualPairs = 20000
+	usualSeed  = 1
+	mostPairs  = 2000000
+)
+
+func backlashCommand() *cli.Command {
+	flags := append(jobFlags(), commonFlags()...)
+	flags = append(flags, fileFlags("file to write instead of standard output")...)
+	flags = append(flags,
+		&cli.BoolFlag{Name: "customary", Usage: "what standards and custom would give this pair, as a starting point", Category: catMesh, DisableDefaultText: true},
+		&cli.IntFlag{Name: "pairs", Usage: "how many pairs to draw at random for the chance of binding", Value: usualPairs, Category: catMesh},
+		&cli.Int64Flag{Name: "seed", Usage: "where the random numbers begin; the same seed gives the same pairs", Value: usualSeed, Category: catMesh})
+	return &cli.Command{
+		Name: "backlash", Usage: "how thin the teeth must be for the backlash wanted, and what takes it",
+		UsageText: "flankwright backlash [JOB] [flags]\nflankwright backlash --module 2 --teeth 20 --mate-teeth 41 --center 61±0.02 --backlash 0.05..0.15", Flags: flags,
+		Action: func(c *cli.Context) error {
+			j, gears, err := loadPlanned(c)
+			if err != nil {
+				return err
+			}
+			b, err := newBacklash(c, j, gears)
+			if err != nil {
+				return err
+			}
+			if err := emit(c, b, func() []byte { return b.text(newPage(c.App.Writer), j.digits(c)) }); err != nil {
+				return err
+			}
+			return b.verdict()
+		},
+	}
+}
+
+// loadPlanned is loadJob, but a backlash that cannot be had is an answer.
+func loadPlanned(c *cli.Context) (*job, []*gear, error) {
+	j, gears, err := loadJob(c)
+	if j != nil && j.problem != nil {
+		gears, err = j.chosen(c.String("gear"))
+	}
+	if err != nil {
+		return nil, nil, err
+	}
+	if len(j.meshes) == 0 {
+		return nil, nil, wrong("backlash is of a pair: give --mate-teeth, or a [[mesh]] in the job")
+	}
+	return j, gears, nil
+}
+
+// backlash is the result of the command, as JSON writes it.
+type backlash struct {
+	Gears    ordered        `json:"gears"`
+	Meshes   []meshBacklash `json:"meshes"`
+	Warnings []warning      `json:"warnings"`
+	Explain  []explanation  `json:"explain,omitempty"`
+
+	job     *job
+	list    []*gear
+	targets *targets
+}
+
+type gearBacklash struct {
+	gearTargets
+	Thinning     span      `json:"thinner_than_nominal_mm"`
+	Tolerance    float64   `json:"thickness_tolerance_mm"`
+	Accuracy     string    `json:"accuracy,omitempty"`
+	Tolerances   *flankSet `json:"flank_tolerances_mm,omitempty"`
+	OutsideRange []string  `json:"outside_of_the_standard,omitempty"`
+}
+
+// A flankSet is what an accuracy class allows one gear, mm.
+type flankSet struct {
+	Pitch      float64 `json:"single_pitch"`
+	Cumulative float64 `json:"cumulative_pitch"`
+	Profile    float64 `json:"profile"`
+	Helix      float64 `json:"helix,omitempty"`
+	Runout     float64 `json:"runout"`
+}
+
+type meshBacklash struct {
+	Gears           []string       `json:"gears"`
+	Asked           *askedBacklash `json:"asked_mm"`
+	Method          string         `json:"held"`
+	Possible        bool           `json:"possible"`
+	Problem         string         `json:"problem,omitempty"`
+	Circumferential span           `json:"circumferential_backlash_mm"`
+	Statistical     span           `json:"statistical_backlash_mm"`
+	Middle          float64        `json:"middle_backlash_mm"`
+	Budget          []budgetRow    `json:"budget"`
+	CostsMost       string         `json:"costs_most"`
+	Left            *leftOver      `json:"left_for_thickness_mm"`
+	Remedies        []remedyText   `json:"remedies"`
+	At              []atHeat       `json:"at"`
+	Random          *randomPairs   `json:"random_pairs"`
+	Customary       []custom       `json:"customary"`
+
+	mesh   *mesh
+	budget inspect.Budget
+}
+
+type askedBacklash struct {
+	Min float64  `json:"min"`
+	Max *float64 `json:"max"` // null: the least alone is asked for
+}
+
+// leftOver is what the wish leaves the thicknesses of both gears together.
+type leftOver struct {
+	Worst       float64 `json:"worst"`
+	Statistical float64 `json:"statistical"`
+}
+
+type budgetRow struct {
+	What            string  `json:"what"`
+	Gear            string  `json:"gear,omitempty"`
+	Worst           float64 `json:"worst_mm"`
+	Statistical     float64 `json:"statistical_mm"`
+	WorstAdds       float64 `json:"worst_adds_mm"`
+	StatisticalAdds float64 `json:"statistical_adds_mm"`
+	Certain         bool    `json:"met_by_every_pair"`
+	text            string
+}
+
+// atHeat is the backlash at one temperature.
+type atHeat struct {
+	Temperature float64 `json:"temperature_c"`
+	Worst       span    `json:"worst_mm"`
+	Statistical span    `json:"statistical_mm"`
+	Middle      float64 `json:"middle_mm"`
+}
+
+type randomPairs struct {
+	Pairs  int     `json:"pairs"`
+	Seed   uint64  `json:"seed"`
+	Bind   float64 `json:"chance_of_binding"`
+	Over   float64 `json:"chance_of_exceeding"`
+	Mean   float64 `json:"mean_mm"`
+	Nearly span    `json:"nearly_all_mm"`
+}
+
+func newBacklash(c *cli.Context, j *job, gears []*gear) (*backlash, error) {
+	pairs, seed := c.Int("pairs"), c.Int64("seed")
+	switch {
+	case pairs < 1000 || pairs > mostPairs:
+		return nil, wrong("--pairs: %d pairs tell nothing or take too long; give 1000 to %d", pairs, mostPairs)
+	case seed < 0:
+		return nil, wrong("--seed: needs a whole number of 0 or more, not %d", seed)
+	}
+	b := &backlash{job: j, list: gears, Warnings: j.about(gears), Meshes: []meshBacklash{}}
+	if j.problem == nil {
+		b.addGears()
+	}
+	for _, m := range j.meshes {
+		if len(gears) < len(j.gears) && gears[0] != m.first && gears[0] != m.second {
+			continue
+		}
+		one, err := j.meshBacklash(m)
+		if err != nil {
+			return nil, j.impossibleMesh(m, err)
+		}
+		if j.problem == nil {
+			if err := one.simulate(pairs, uint64(seed)); err != nil {
+				return nil, j.impossibleMesh(m, err)
+			}
+		}
+		if c.Bool("customary") || m.plan.Backlash == nil {
+			one.Customary = j.customary(m)
+		}
+		b.Meshes = append(b.Meshes, one)
+	}
+	if c.Bool("explain") {
+		b.Explain = j.explainBacklash(b)
+	}
+	return b, nil
+}
+
+// addGears adds each gear's limits and what to measure.
+func (b *backlash) addGears() {
+	b.targets = newTargets(b.job, b.list, ask{})
+	for i, g := range b.list {
+		t := b.targets.gears[i]
+		nominal := g.g.NominalThickness()
+		one := gearBacklash{
+			gearTargets: t, Tolerance: g.thickness.Limits.Width(),
+			Thinning: span{nominal - g.thickness.Limits.Max, nominal - g.thickness.Limits.Min},
+		}
+		if f := g.flanks; f != nil {
+			one.Accuracy, one.OutsideRange = f.Accuracy.String(), f.Outside
+			one.Tolerances = &flankSet{f.SinglePitch, f.CumulativePitch, f.Profile, f.Helix, f.Runout}
+		}
+		b.Gears.add(g.name, one)
+	}
+}
+
+// meshBacklash works out the budget of a mesh: of the thicknesses found, or where
+// the job's backlash cannot be had, of those that would give the least of it.
+func (j *job) meshBacklash(m *mesh) (meshBacklash, error) {
+	out := meshBacklash{
+		Gears: []string{m.first.name, m.second.name}, mesh: m, Possible: true, Budget: []budgetRow{}, Remedies: []remedyText{}, At: []atHeat{}, Customary: []custom{},
+		Method: methodWord(m.plan.Method),
+	}
+	var err error
+	thick := [2]inspect.Limits{m.first.thickness.Limits, m.second.thickness.Limits}
+	if j.problem != nil {
+		thick = j.thicknessWithout(m)
+	}
+	if out.budget, err = m.plan.Budget(thick[0], thick[1]); err != nil {
+		return out, err
+	}
+	out.Circumferential, out.Statistical, out.Middle = toSpan(out.budget.Worst()), toSpan(out.budget.Statistical()), out.budget.Middle
+	out.addRows(j)
+	if want := m.plan.Backlash; want != nil {
+		out.Asked = &askedBacklash{Min: want.Min}
+		if !m.leastOnly {
+			out.Asked.Max = &want.Max
+		}
+		out.Possible = held(out.budget.By(m.plan.Method), *want, m.leastOnly)
+	}
+	if p := j.problem; p != nil && j.meshes[p.Mesh] == m {
+		out.Possible, out.Problem = false, j.planReason(p)
+	}
+	if err := out.addLeft(); err != nil {
+		return out, err
+	}
+	if !out.Possible {
+		out.Remedies = j.remedies(m)
+	}
+	return out, out.addHeat(thick)
+}
+
+// methodWord says how a backlash is held.
+func methodWord(m inspect.Method) string {
+	if m == inspect.Statistical {
+		return "statistically"
+	}
+	return "at worst"
+}
+
+// held reports whether a backlash lies within what was asked for, to a rounding
+// of limits that are given in decimals.
+func held(got, want inspect.Limits, leastOnly bool) bool {
+	const slack = 1e-6 // mm
+	return got.Min >= want.Min-slack && (leastOnly || got.Max <= want.Max+slack)
+}
+
+// thicknessWithout returns the thicknesses to show a budget of where the backlash
+// cannot be had: those that would give its least with no tolerance, or nominal.
+func (j *job) thicknessWithout(m *mesh) [2]inspect.Limits {
+	thin := j.problem.Sole
+	if j.meshes[j.problem.Mesh] != m {
+		thin = [2]inspect.Limits{}
+		for i, g := range []*gear{m.first, m.second} {
+			if own := g.ownThin(); own != nil {
+				thin[i] = *own
+			}
+		}
+	}
+	var out [2]inspect.Limits
+	for i, g := range []*gear{m.first, m.second} {
+		n := g.g.NominalThickness()
+		out[i] = inspect.Limits{Min: n - thin[i].Max, Max: n - thin[i].Min}
+	}
+	return out
+}
+
+// addRows adds the budget's rows, and names the one that costs most.
+func (b *meshBacklash) addRows(j *job) {
+	most := 0.0
+	for _, r := range b.budget.Rows {
+		takes, adds := b.budget.StatisticalShare(r)
+		row := budgetRow{What: causeName(r.Cause), Worst: r.Takes, Statistical: takes, WorstAdds: r.Adds, StatisticalAdds: adds, Certain: r.Certain, text: j.causeText(b.mesh, r)}
+		if r.Gear >= 0 {
+			row.Gear = b.Gears[r.Gear]
+		}
+		b.Budget = append(b.Budget, row)
+		if cost := r.Takes + r.Adds; r.Cause != inspect.OfTeeth && cost > most {
+			most, b.CostsMost = cost, row.name()
+		}
+	}
+}
+
+// name names a row in a sentence.
+func (r budgetRow) name() string {
+	if r.Gear == "" {
+		return r.What
+	}
+	return r.What + " of " + r.Gear
+}
+
+// addLeft adds what a range of backlash leaves for the thicknesses.
+func (b *meshBacklash) addLeft() error {
+	m := b.mesh
+	if m.plan.Backlash == nil || m.leastOnly || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
+		return nil
+	}
+	worst, err := m.plan.Room(m.pair(), inspect.WorstCase)
+	if err != nil {
+		return err
+	}
+	statistical, err := m.plan.Room(m.pair(), inspect.Statistical)
+	b.Left = &leftOver{worst, statistical}
+	return err
+}
+
+// addHeat adds the backlash at the ends of the temperature's range and at 20 °C.
+func (b *meshBacklash) addHeat(thick [2]inspect.Limits) error {
+	m := b.mesh
+	heats := []float64{inspect.ReferenceTemperature}
+	if t := m.temperature; t != nil && *t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+		heats = nil
+		for _, h := range []float64{t.Min, inspect.ReferenceTemperature, t.Max} {
+			if len(heats) == 0 || h > heats[len(heats)-1] {
+				heats = append(heats, h)
+			}
+		}
+	}
+	for _, h := range heats {
+		at := m.plan.AtTemperature(h)
+		budget, err := at.Budget(thick[0], thick[1])
+		if err != nil {
+			return err
+		}
+		b.At = append(b.At, atHeat{h, toSpan(budget.Worst()), toSpan(budget.Statistical()), budget.MiddleIn(at.Climate)})
+	}
+	return nil
+}
+
+// simulate draws pairs at random.
+func (b *meshBacklash) simulate(pairs int, seed uint64) error {
+	m := b.mesh
+	limit := math.Inf(1)
+	if m.plan.Backlash != nil && !m.leastOnly {
+		limit = m.plan.Backlash.Max
+	}
+	s, err := m.plan.Simulate(m.first.thickness.Limits, m.second.thickness.Limits, limit, pairs, seed)
+	b.Random = &randomPairs{s.Pairs, s.Seed, s.Bind, s.Over, s.Mean, toSpan(s.Nearly)}
+	return err
+}
+
+// verdict is errNo where a backlash that is asked for cannot be had.
+func (b *backlash) verdict() error {
+	for _, m := range b.Meshes {
+		if !m.Possible {
+			return errNo
+		}
+	}
+	return nil
+}
+
+// causeName names a cause as JSON does.
+func causeName(c inspect.Cause) string {
+	switch c {
+	case inspect.OfCenter:
+		return "center distance"
+	case inspect.OfRunout:
+		return "runout"
+	case inspect.OfPitch:
+		return "pitch deviation"
+	case inspect.OfProfile:
+		return "profile deviation"
+	case inspect.OfHelix:
+		return "helix deviation"
+	case inspect.OfClimate:
+		return "temperature"
+	}
+	return "tooth thickness"
+}
+
+// causeText words a row of the budget with its size.
+func (j *job) causeText(m *mesh, r inspect.Contribution) string {
+	if r.Gear < 0 {
+		if r.Cause == inspect.OfClimate {
+			return climateText(m.plan.Climate)
+		}
+		return "Center distance, ±" + j.length(m.plan.Center.Width()/2)
+	}
+	g := []*gear{m.first, m.second}[r.Gear]
+	d := m.plan.Deviations[r.Gear]
+	switch r.Cause {
+	case inspect.OfRunout:
+		how := "allowed"
+		if d.Measured {
+			how = "measured"
+		}
+		return fmt.Sprintf("Runout of %s, %s %s", g.name, j.length(d.Runout), how)
+	case inspect.OfPitch:
+		return fmt.Sprintf("Pitch of %s, f_pt ±%s", g.name, j.length(d.Pitch))
+	case inspect.OfProfile:
+		return fmt.Sprintf("Profile of %s, F_α %s", g.name, j.length(d.Profile))
+	case inspect.OfHelix:
+		return fmt.Sprintf("Helix of %s, F_β %s", g.name, j.length(d.Helix))
+	}
+	return fmt.Sprintf("Tooth thickness of %s, its tolerance", g.name)
+}
+
+// climateText words what a mesh runs in.
+func climateText(c *inspect.Climate) string {
+	text := ""
+	if t := c.Temperature; t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+		text = fmt.Sprintf("Temperature, %g to %g °C", t.Min, t.Max)
+		if t.Width() == 0 {
+			text = fmt.Sprintf("Temperature, %g °C", t.Min)
+		}
+	}
+	if c.Swell == [2]inspect.Limits{} {
+		return text
+	}
+	if text != "" {
+		return text + ", and swelling"
+	}
+	return "Swelling in water"
+}

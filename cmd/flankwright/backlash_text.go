@@ -1,0 +1,229 @@
+package main
+
+import (
+	"fmt"
+	"strings"
+
+	"flankwright/inspect"
+)
+
+// text prints first how thin the teeth must be and what to measure, then where
+// the backlash goes.
+func (b *backlash) text(p *page, digits int) []byte {
+	u := b.job.display
+	if title, _, _ := b.job.top.word("title"); title != "" {
+		p.head(title)
+	}
+	if n := len(b.Warnings); n > 0 {
+		p.line("%s below", plural(n, "warning"))
+	}
+	for _, m := range b.Meshes {
+		m.problemText(p, b.job)
+	}
+	if b.targets != nil {
+		p.blank()
+		p.grid(b.limitsGrid(u, digits))
+		b.measureText(p, digits)
+	}
+	for _, m := range b.Meshes {
+		m.budgetText(p, b.job, digits)
+	}
+	b.notCounted(p)
+	for _, m := range b.Meshes {
+		if len(m.Customary) > 0 {
+			m.customaryText(p, b.job, digits)
+		}
+	}
+	p.explanations(b.Explain)
+	p.warnings(b.Warnings)
+	return []byte(p.b.String())
+}
+
+// problemText says that a backlash cannot be had, what costs most and what would help.
+func (b *meshBacklash) problemText(p *page, j *job) {
+	if b.Possible {
+		return
+	}
+	p.blank()
+	text := b.Problem
+	if text == "" {
+		got := b.budget.By(b.mesh.plan.Method)
+		text = fmt.Sprintf("%s and %s: the teeth as they are give %s to %s of backlash %s, not the %s asked for", b.Gears[0], b.Gears[1],
+			j.length(got.Min), j.length(got.Max), b.Method, j.wishText(b.mesh))
+	}
+	p.wrapped("NO: "+text+".", "  ")
+	if b.Left != nil {
+		p.wrapped(fmt.Sprintf("Left for the teeth: %s at worst, %s statistically. Most goes to: %s.", j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost), "  ")
+	}
+	if len(b.Remedies) > 0 {
+		p.line("Any one of these would do:")
+		for _, r := range b.Remedies {
+			p.wrapped("  - "+r.Text, "    ")
+		}
+	}
+}
+
+// limitsGrid is the table of the gears' thickness limits.
+func (b *backlash) limitsGrid(u inspect.Unit, digits int) grid {
+	g := grid{}
+	var low, high, thinLow, thinHigh, left, by []string
+	for _, x := range b.list {
+		g.heads = append(g.heads, x.name)
+		s := u.FormatLimits(x.thickness.Limits, digits)
+		nominal := x.g.NominalThickness()
+		t := u.FormatLimits(inspect.Limits{Min: nominal - x.thickness.Limits.Max, Max: nominal - x.thickness.Limits.Min}, digits)
+		low, high, thinLow, thinHigh = append(low, s.Low), append(high, s.High), append(thinLow, t.Low), append(thinHigh, t.High)
+		left, by = append(left, u.Format(x.thickness.Limits.Width(), digits)), append(by, thicknessWords(x))
+	}
+	unit := u.String()
+	g.row("Tooth thickness, normal, least", unit, low...)
+	g.row("  most", unit, high...)
+	g.row("Thinner than nominal, least", unit, thinLow...)
+	g.row("  most", unit, thinHigh...)
+	g.row("Left for the machinist, thickness tolerance", unit, left...)
+	g.row("  decided by", "", by...)
+	return g
+}
+
+// measureText prints the targets of each gear that follow: the first usable pin
+// and span, and the chords.
+func (b *backlash) measureText(p *page, digits int) {
+	for i, t := range b.targets.gears {
+		short := t
+		short.OverPins, short.Span = nil, nil
+		for _, pin := range t.OverPins {
+			if pin.Usable {
+				pin.Also = nil
+				short.OverPins = []pinTarget{pin}
+				break
+			}
+		}
+		for _, s := range t.Span {
+			if s.Usable {
+				short.Span = []spanTarget{s}
+				break
+			}
+		}
+		p.blank()
+		p.head("What to measure on " + b.list[i].name)
+		var more []string
+		g := b.targets.measureGrid(short, b.job.display, digits, &more)
+		g.rows = g.rows[:len(g.rows)-1] // the thickness stands above
+		p.grid(g)
+		for _, m := range more {
+			p.line("  %s", m)
+		}
+		p.line("  Chordal height %s, constant chord height %s; more by: flankwright targets", b.job.display.Format(t.Chordal.Height, digits), b.job.display.Format(t.ConstantChord.Height, digits))
+	}
+}
+
+// budgetText prints the budget of a mesh.
+func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
+	u := j.display
+	f := func(mm float64) string { return u.Format(mm, digits+1) } // small amounts: one digit more
+	unit := u.String()
+	p.blank()
+	p.head(fmt.Sprintf("Budget of %s and %s: backlash, circumferential, at the working pitch circle", b.Gears[0], b.Gears[1]))
+	g := grid{heads: []string{"takes, worst", "statistically", "adds, worst", "statistically"}}
+	for _, r := range b.Budget {
+		g.row(r.text, unit, f(r.Worst), f(r.Statistical), f(r.WorstAdds), f(r.StatisticalAdds))
+	}
+	sum := func(l span) (string, string) { return f(b.Middle - l.Min), f(l.Max - b.Middle) }
+	takes, adds := sum(b.Circumferential)
+	takesRSS, addsRSS := sum(b.Statistical)
+	g.row("In all", unit, takes, takesRSS, adds, addsRSS)
+	g.row("Backlash: the middle of everything, less and plus these", unit, f(b.Middle), f(b.Middle), f(b.Middle), f(b.Middle))
+	g.row("  comes to", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
+	p.grid(g)
+	if j.problem != nil {
+		p.line("Shown with teeth that give the least asked for, and have no tolerance.")
+	}
+	b.accuracyText(p)
+	if b.Asked != nil {
+		p.line("Asked for: %s, held %s.", j.wishText(b.mesh), b.Method)
+	}
+	if b.Left != nil && b.Possible {
+		p.line("It leaves the thicknesses of both gears together %s at worst, %s statistically. Most of the rest goes to: %s.",
+			j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost)
+	}
+	p.blank()
+	p.grid(b.heatGrid(unit, f))
+	b.randomText(p, j)
+}
+
+// accuracyText says by which standard the deviations are.
+func (b *meshBacklash) accuracyText(p *page) {
+	var words []string
+	for _, g := range []*gear{b.mesh.first, b.mesh.second} {
+		if g.flanks != nil {
+			words = append(words, g.name+" "+g.flanks.Accuracy.String())
+		}
+	}
+	if len(words) > 0 {
+		p.line("Accuracy: %s.", strings.Join(words, ", "))
+	}
+}
+
+// heatGrid is the backlash at each temperature.
+func (b *meshBacklash) heatGrid(unit string, f func(float64) string) grid {
+	g := grid{heads: []string{"least, worst", "statistically", "middle", "statistically", "most, worst"}}
+	for _, h := range b.At {
+		g.row(fmt.Sprintf("Backlash at %g °C", h.Temperature), unit, f(h.Worst.Min), f(h.Statistical.Min), f(h.Middle), f(h.Statistical.Max), f(h.Worst.Max))
+	}
+	return g
+}
+
+// randomText says what came out of pairs drawn at random.
+func (b *meshBacklash) randomText(p *page, j *job) {
+	r := b.Random
+	if r == nil {
+		return
+	}
+	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere in a turn, hot or cold", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
+	if b.Asked != nil && b.Asked.Max != nil {
+		text += fmt.Sprintf("; %s exceed %s somewhere", percent(r.Over, r.Pairs), j.length(*b.Asked.Max))
+	}
+	p.wrapped(text+fmt.Sprintf(". Nearly all (99.7 %%) stay between %s and %s.", j.length(r.Nearly.Min), j.length(r.Nearly.Max)), "  ")
+}
+
+// percent words a share of random pairs.
+func percent(share float64, pairs int) string {
+	if share == 0 {
+		return "none"
+	}
+	if share == 1 {
+		return "all"
+	}
+	text := fmt.Sprintf("%.2f %%", 100*share)
+	if strings.Trim(text, "0. %") == "" {
+		return fmt.Sprintf("%.0f of them", share*float64(pairs))
+	}
+	return text
+}
+
+// notCounted says what no budget here counts, and what this one lacks.
+func (b *backlash) notCounted(p *page) {
+	var lack []string
+	for _, g := range b.list {
+		switch {
+		case g.flanks == nil && g.runout == nil:
+			lack = append(lack, "runout and tooth deviations of "+g.name+" (give accuracy, or runout as measured)")
+		case g.flanks == nil:
+			lack = append(lack, "pitch, profile and helix of "+g.name+" (give accuracy)")
+		case !g.flanks.HasHelix:
+			lack = append(lack, "the helix of "+g.name+" (give face_width)")
+		}
+	}
+	for _, m := range b.Meshes {
+		if m.mesh.temperature == nil {
+			lack = append(lack, "temperature (give temperature, housing and material)")
+			break
+		}
+	}
+	p.blank()
+	text := "Not counted: shafts out of parallel, play of bearings, bending under load, burrs and dirt."
+	if len(lack) > 0 {
+		text += " Not given, and so not counted: " + strings.Join(lack, "; ") + "."
+	}
+	p.wrapped(text, "  ")
+}
