@@ -21,6 +21,8 @@ func requiredNames() map[string]string {
 		"also":         "way:s measurement_mm:R usable:b why:s",
 		"span":         "teeth# length_mm:R usable:b why:s",
 		"chordal":      "thickness_mm:r height_mm#",
+		"mesh budget":  "circumferential_backlash_mm:r statistical_backlash_mm:r middle_backlash_mm# possible:b held:s",
+		"budget row":   "what:s worst_mm# statistical_mm# worst_adds_mm# statistical_adds_mm# met_by_every_pair:b",
 		"contour gear": "file:s segments# arcs# lines# max_deviation_mm# tolerance_mm#",
 		"as_written":   "over_pins_mm# target_mm# difference_mm#",
 	}
