@@ -52,7 +52,7 @@ func (b *meshBacklash) problemText(p *page, j *job) {
 			j.length(got.Min), j.length(got.Max), b.Method, j.wishText(b.mesh))
 	}
 	p.wrapped("NO: "+text+".", "  ")
-	if b.Left != nil {
+	if b.Left != nil && b.CostsMost != "" && j.problem != nil && j.problem.Kind == inspect.NoRoom {
 		p.wrapped(fmt.Sprintf("Left for the teeth: %s at worst, %s statistically. Most goes to: %s.", j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost), "  ")
 	}
 	if len(b.Remedies) > 0 {
@@ -143,8 +143,11 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 		p.line("Asked for: %s, held %s.", j.wishText(b.mesh), b.Method)
 	}
 	if b.Left != nil && b.Possible {
-		p.line("It leaves the thicknesses of both gears together %s at worst, %s statistically. Most of the rest goes to: %s.",
-			j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost)
+		text := fmt.Sprintf("It leaves the thicknesses of both gears together %s at worst, %s statistically.", j.length(b.Left.Worst), j.length(b.Left.Statistical))
+		if b.CostsMost != "" {
+			text += " Most of the rest goes to: " + b.CostsMost + "."
+		}
+		p.wrapped(text, "  ")
 	}
 	p.blank()
 	p.grid(b.heatGrid(unit, f))

@@ -173,10 +173,10 @@ func (j *job) backlashFields(m *mesh, mate string) []export.Field {
 		if !m.leastOnly {
 			allowed = j.rangeField(allowed.Label, want.Min, want.Max)
 		}
-		if m.plan.Method == inspect.Statistical {
-			allowed.Label += ", statistically"
-		}
 		fields = append(fields, allowed)
+		if m.plan.Method == inspect.Statistical {
+			fields = append(fields, export.Field{Label: "  held", Value: "statistically"})
+		}
 	}
 	b, err := m.budget()
 	least, most, err2 := m.plan.BacklashRange(m.first.thickness.Limits, m.second.thickness.Limits)
