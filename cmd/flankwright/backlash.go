@@ -1,7 +1,6 @@
 package main
 
 import (
-	"fmt"
 	"math"
 
 	"github.com/urfave/cli/v2"
@@ -11,9 +10,10 @@ import (
 
 // The simulation that backlash runs unless told otherwise.
 const (
-	usualPairs = 20000
-	usualSeed  = 1
-	mostPairs  = 2000000
+	usualPairs  = 20000
+	usualSeed   = 1
+	fewestPairs = 1000
+	mostPairs   = 2000000
 )
 
 func backlashCommand() *cli.Command {
@@ -31,7 +31,11 @@ func backlashCommand() *cli.Command {
 			if err != nil {
 				return err
 			}
-			b, err := newBacklash(c, j, gears)
+			opt, err := readBacklashOptions(c)
+			if err != nil {
+				return err
+			}
+			b, err := newBacklash(j, gears, opt)
 			if err != nil {
 				return err
 			}
@@ -148,14 +152,25 @@ type randomPairs struct {
 	Nearly span    `json:"nearly_all_mm"`
 }
 
-func newBacklash(c *cli.Context, j *job, gears []*gear) (*backlash, error) {
+// backlashOptions say how much is to be told.
+type backlashOptions struct {
+	pairs              int
+	seed               uint64
+	customary, explain bool
+}
+
+func readBacklashOptions(c *cli.Context) (backlashOptions, error) {
 	pairs, seed := c.Int("pairs"), c.Int64("seed")
 	switch {
-	case pairs < 1000 || pairs > mostPairs:
-		return nil, wrong("--pairs: %d pairs tell nothing or take too long; give 1000 to %d", pairs, mostPairs)
+	case pairs < fewestPairs || pairs > mostPairs:
+		return backlashOptions{}, wrong("--pairs: %d pairs tell nothing or take too long; give %d to %d", pairs, fewestPairs, mostPairs)
 	case seed < 0:
-		return nil, wrong("--seed: needs a whole number of 0 or more, not %d", seed)
+		return backlashOptions{}, wrong("--seed: needs a whole number of 0 or more, not %d", seed)
 	}
+	return backlashOptions{pairs, uint64(seed), c.Bool("customary"), c.Bool("explain")}, nil
+}
+
+func newBacklash(j *job, gears []*gear, opt backlashOptions) (*backlash, error) {
 	b := &backlash{job: j, list: gears, Warnings: j.about(gears), Meshes: []meshBacklash{}}
 	if j.problem == nil {
 		b.addGears()
@@ -169,16 +184,16 @@ func newBacklash(c *cli.Context, j *job, gears []*gear) (*backlash, error) {
 			return nil, j.impossibleMesh(m, err)
 		}
 		if j.problem == nil {
-			if err := one.simulate(pairs, uint64(seed)); err != nil {
+			if err := one.simulate(opt.pairs, opt.seed); err != nil {
 				return nil, j.impossibleMesh(m, err)
 			}
 		}
-		if c.Bool("customary") || m.plan.Backlash == nil {
+		if opt.customary || m.plan.Backlash == nil {
 			one.Customary = j.customary(m)
 		}
 		b.Meshes = append(b.Meshes, one)
 	}
-	if c.Bool("explain") {
+	if opt.explain {
 		b.Explain = j.explainBacklash(b)
 	}
 	return b, nil
@@ -273,30 +288,6 @@ func (j *job) thicknessWithout(m *mesh) [2]inspect.Limits {
 	return out
 }
 
-// addRows adds the budget's rows, and names the one that costs most.
-func (b *meshBacklash) addRows(j *job) {
-	most := 0.0
-	for _, r := range b.budget.Rows {
-		takes, adds := b.budget.StatisticalShare(r)
-		row := budgetRow{What: causeName(r.Cause), Worst: r.Takes, Statistical: takes, WorstAdds: r.Adds, StatisticalAdds: adds, Certain: r.Certain, text: j.causeText(b.mesh, r)}
-		if r.Gear >= 0 {
-			row.Gear = b.Gears[r.Gear]
-		}
-		b.Budget = append(b.Budget, row)
-		if cost := r.Takes + r.Adds; r.Cause != inspect.OfTeeth && cost > most {
-			most, b.CostsMost = cost, row.name()
-		}
-	}
-}
-
-// name names a row in a sentence.
-func (r budgetRow) name() string {
-	if r.Gear == "" {
-		return r.What
-	}
-	return r.What + " of " + r.Gear
-}
-
 // addLeft adds what a range of backlash leaves for the thicknesses.
 func (b *meshBacklash) addLeft() error {
 	m := b.mesh
@@ -355,68 +346,4 @@ func (b *backlash) verdict() error {
 		}
 	}
 	return nil
-}
-
-// causeName names a cause as JSON does.
-func causeName(c inspect.Cause) string {
-	switch c {
-	case inspect.OfCenter:
-		return "center distance"
-	case inspect.OfRunout:
-		return "runout"
-	case inspect.OfPitch:
-		return "pitch deviation"
-	case inspect.OfProfile:
-		return "profile deviation"
-	case inspect.OfHelix:
-		return "helix deviation"
-	case inspect.OfClimate:
-		return "temperature"
-	}
-	return "tooth thickness"
-}
-
-// causeText words a row of the budget with its size.
-func (j *job) causeText(m *mesh, r inspect.Contribution) string {
-	if r.Gear < 0 {
-		if r.Cause == inspect.OfClimate {
-			return climateText(m.plan.Climate)
-		}
-		return "Center distance, ±" + j.length(m.plan.Center.Width()/2)
-	}
-	g := []*gear{m.first, m.second}[r.Gear]
-	d := m.plan.Deviations[r.Gear]
-	switch r.Cause {
-	case inspect.OfRunout:
-		how := "allowed"
-		if d.Measured {
-			how = "measured"
-		}
-		return fmt.Sprintf("Runout of %s, %s %s", g.name, j.length(d.Runout), how)
-	case inspect.OfPitch:
-		return fmt.Sprintf("Pitch of %s, f_pt ±%s", g.name, j.length(d.Pitch))
-	case inspect.OfProfile:
-		return fmt.Sprintf("Profile of %s, F_α %s", g.name, j.length(d.Profile))
-	case inspect.OfHelix:
-		return fmt.Sprintf("Helix of %s, F_β %s", g.name, j.length(d.Helix))
-	}
-	return fmt.Sprintf("Tooth thickness of %s, its tolerance", g.name)
-}
-
-// climateText words what a mesh runs in.
-func climateText(c *inspect.Climate) string {
-	text := ""
-	if t := c.Temperature; t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
-		text = fmt.Sprintf("Temperature, %g to %g °C", t.Min, t.Max)
-		if t.Width() == 0 {
-			text = fmt.Sprintf("Temperature, %g °C", t.Min)
-		}
-	}
-	if c.Swell == [2]inspect.Limits{} {
-		return text
-	}
-	if text != "" {
-		return text + ", and swelling"
-	}
-	return "Swelling in water"
 }

@@ -75,7 +75,7 @@ func keys() []keySpec {
 		{"shaft", inGear, true, "shaft name"},
 
 		{"gears", inMesh, false, ""},
-		{"center", inMesh, false, "center distance: 50, 50±0.02 (or 50+-0.02), 50js7 (tight for nominal teeth)"},
+		{"center", inMesh, false, "center distance: 50, 50±0.02 (or 50+-0.02), 49.98..50.02, 50js7 (tight for nominal teeth)"},
 		{"backlash", inMesh, false, "backlash wanted, circumferential: 0.05..0.15, or the least alone"},
 		{"thin_share", inMesh, false, "equal, by strength, or the gear that takes it all (equal)"},
 		{"budget", inMesh, false, "limits from the worst case, or from the statistical budget (worst)"},
@@ -93,7 +93,7 @@ func keys() []keySpec {
 // inlineKeys are the keys of the tables that stand for one value.
 func inlineKeys() map[string][]string {
 	return map[string][]string{
-		"center":      {"at", "tolerance", "class"},
+		"center":      {"at", "tolerance", "class", "limits"},
 		"keyway":      {"width", "depth"},
 		"bolt_circle": {"diameter", "holes", "hole", "start"},
 		"root":        {"end_mill"},

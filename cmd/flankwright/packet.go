@@ -80,6 +80,13 @@ func (r contours) in(files []string) contours {
 	return r
 }
 
+// A packetPart is a result that goes into a packet as text and as JSON.
+type packetPart struct {
+	name   string
+	result any
+	text   func() []byte
+}
+
 // packetFiles makes every file of a packet in memory; the contours come first.
 func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, *contours, error) {
 	opt, err := readContourOptions(c, j)
@@ -115,15 +122,19 @@ func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, *contours,
 		d.Explain, t.Explain = j.explainDims(t.list), j.explainTargets(t)
 	}
 	digits := j.digits(c)
-	for _, r := range []struct {
-		name   string
-		result any
-		text   func() []byte
-	}{
+	results := []packetPart{
 		{"dims", d, func() []byte { return d.text(&page{}, digits) }},
 		{"targets", t, func() []byte { return t.text(&page{}, digits) }},
 		{"contour", measured, func() []byte { return measured.text(&page{}, digits) }},
-	} {
+	}
+	if len(j.meshes) > 0 {
+		b, err := newBacklash(j, t.list, backlashOptions{pairs: usualPairs, seed: usualSeed, explain: c.Bool("explain")})
+		if err != nil {
+			return nil, nil, err
+		}
+		results = append(results, packetPart{"backlash", b, func() []byte { return b.text(&page{}, digits) }})
+	}
+	for _, r := range results {
 		data, err := jsonText(r.result)
 		if err != nil {
 			return nil, nil, err

@@ -290,69 +290,6 @@ func splitClass(text string) (size, class string, ok bool) {
 func isLetter(c byte) bool { return c|0x20 >= 'a' && c|0x20 <= 'z' }
 func isDigit(c byte) bool  { return c >= '0' && c <= '9' }
 
-// center reads a center distance: a length, "2.0±0.0005", or a table with at
-// and a tolerance or a class. at is 0 where it is left to the mesh.
-func (s settings) center(key string) (at, tolerance float64, class string, err error) {
-	v, ok := s.vals[key]
-	if !ok {
-		return 0, 0, "", nil
-	}
-	if t, isTable := v.content.(*table); isTable {
-		return s.centerTable(key, t)
-	}
-	text, isText := asText(v)
-	if at, class, ok := s.centerClass(v, text); ok {
-		return at, 0, class, nil
-	}
-	base, tol, hasTol := strings.Cut(strings.ReplaceAll(text, "+-", "±"), "±")
-	if !isText || !hasTol {
-		at, _, err = s.positive(key)
-		return at, 0, "", err
-	}
-	unit := inspect.UnitOf(tol, s.bare(v)) // a unit at the end covers both
-	distance, err1 := inspect.ParseLength(base, unit)
-	tolerance, err2 := inspect.ParseLength(tol, unit)
-	if err1 != nil || err2 != nil {
-		return 0, 0, "", bad(key, v, "%q is not a center distance; write it like 50, \"50±0.02\" (or 50+-0.02) or \"50 js7\"", text)
-	}
-	if distance <= 0 || tolerance < 0 {
-		return 0, 0, "", bad(key, v, "needs a distance above 0 and a tolerance of 0 or more")
-	}
-	return distance, tolerance, "", nil
-}
-
-// centerClass reads a distance with an ISO 286 class: "50 js7" or "50js7".
-func (s settings) centerClass(v value, text string) (at float64, class string, ok bool) {
-	i := strings.Index(strings.ToLower(text), "js")
-	if i < 0 {
-		return 0, "", false
-	}
-	at, err := inspect.ParseLength(text[:i], s.bare(v))
-	return at, strings.TrimSpace(text[i:]), err == nil && at > 0
-}
-
-func (s settings) centerTable(key string, t *table) (at, tolerance float64, class string, err error) {
-	sub, err := s.inline(key, t)
-	if err != nil {
-		return 0, 0, "", err
-	}
-	if at, _, err = sub.positive("at"); err != nil {
-		return 0, 0, "", err
-	}
-	var hasTol bool
-	if tolerance, hasTol, err = sub.length("tolerance"); err != nil {
-		return 0, 0, "", err
-	}
-	if tolerance < 0 {
-		return 0, 0, "", bad("tolerance", sub.vals["tolerance"], "is ±, and needs a length of 0 or more")
-	}
-	class, hasClass, err := sub.word("class")
-	if err == nil && hasClass && hasTol {
-		err = bad("class", sub.vals["class"], "and tolerance say the same thing; give one of them")
-	}
-	return at, tolerance, class, err
-}
-
 // inline returns the values of a table that stands for one value, and refuses unknown keys.
 func (s settings) inline(key string, t *table) (settings, error) {
 	names := inlineKeys()[key]
