@@ -135,6 +135,7 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	g.row("Backlash: the middle of everything, less and plus these", unit, f(b.Middle), f(b.Middle), f(b.Middle), f(b.Middle))
 	g.row("  comes to", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
 	p.grid(g)
+	p.line("Statistically: the rows are shares of the root of the sum of squares; what every pair meets in full, as heat, is added in full.")
 	if j.problem != nil {
 		p.line("Shown with teeth that give the least asked for, and have no tolerance.")
 	}
@@ -182,7 +183,7 @@ func (b *meshBacklash) randomText(p *page, j *job) {
 	if r == nil {
 		return
 	}
-	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere in a turn, hot or cold", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
+	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere, hot or cold, when turned until all their deviations have met", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
 	if b.Asked != nil && b.Asked.Max != nil {
 		text += fmt.Sprintf("; %s exceed %s somewhere", percent(r.Over, r.Pairs), j.length(*b.Asked.Max))
 	}

@@ -13,7 +13,7 @@ var exampleFiles embed.FS
 // exampleNames lists the examples in the order in which help shows them; the
 // first is what new writes.
 func exampleNames() []string {
-	return []string{"indexer", "feed-drive", "change-gear", "helical-table"}
+	return []string{"indexer", "warm-indexer", "feed-drive", "change-gear", "helical-table"}
 }
 
 func exampleJob(name string) ([]byte, error) {
