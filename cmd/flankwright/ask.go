@@ -21,6 +21,7 @@ type ask struct {
 	pins  []float64 // mm
 	teeth []int
 	arbor float64 // mm, 0 for the bore
+	shop  *shop   // what is on hand; nil where it is not known
 }
 
 func readAsk(c *cli.Context, j *job, gears []*gear) (ask, error) {
@@ -43,6 +44,9 @@ func readAsk(c *cli.Context, j *job, gears []*gear) (ask, error) {
 	}
 	var err error
 	if a.arbor, _, err = flagLength(c, j, "arbor"); err != nil {
+		return a, err
+	}
+	if a.shop, err = loadShop(c); err != nil {
 		return a, err
 	}
 	return a, j.checkArbor(a, gears)

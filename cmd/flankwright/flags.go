@@ -69,7 +69,7 @@ func commonFlags() []cli.Flag {
 		&cli.StringFlag{Name: "gear", Usage: "one gear of the job, by name", Category: catOutput},
 		&cli.StringFlag{Name: "measured-tip", Usage: "outside diameter of the blank as measured; heights, depth of cut and contact follow", Category: "Measuring"},
 		&cli.StringFlag{Name: "example", Usage: "use an example job that the program carries", Category: catOutput},
-		&cli.StringFlag{Name: "shop", Usage: "what is on hand", Hidden: true},
+		&cli.StringFlag{Name: "shop", Usage: "what is on hand, a file (flankwright new --shop writes one); none: not the one in your configuration folder", Category: "Measuring"},
 	}
 }
 

@@ -17,6 +17,27 @@ const longAddendum = 0.25
 // idealOnly marks a pin of the ideal size that no series has.
 const idealOnly = "the ideal size, in no series"
 
+// offers returns the pins to measure a gear with: those asked for, else what the shop
+// has, with how that was chosen, else of the standard series.
+func (j *job) offers(g *gear, a ask) (offers []pinOffer, choice inspect.PinChoice) {
+	if a.pins != nil {
+		for _, d := range a.pins {
+			offers = append(offers, pinOffer{PinCandidate: inspect.PinCandidate{Diameter: d, From: "asked for"}})
+		}
+		return offers, choice
+	}
+	if a.shop != nil {
+		choice = a.shop.stock.ChoosePins(g.subject(a.arbor))
+		if len(choice.Takes) > 0 {
+			return sizeOffers(choice), choice
+		}
+	}
+	for _, p := range j.choosePins(g) {
+		offers = append(offers, pinOffer{PinCandidate: p})
+	}
+	return offers, choice
+}
+
 // choosePins returns the pins to measure a gear with when none is asked for:
 // first of a series that shops keep for gears, then of a gauge-pin set. Where
 // none of a series is usable it is left out; where none at all is, the ideal
@@ -133,6 +154,9 @@ type namedWay struct {
 	name string
 	text string
 }
+
+// farSideOfArbor names the way to the bore's far side where an arbor stands in the bore.
+const farSideOfArbor = "one pin to the far side of the arbor"
 
 // otherWays lists the ways that stand beside the two-pin reading.
 func otherWays() []namedWay {

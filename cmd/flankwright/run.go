@@ -208,13 +208,13 @@ func report(err error, asJSON bool, stderr io.Writer) int {
 	return p.status
 }
 
-// maxJob bounds a job file; a large one is a mistake.
+// maxJob bounds a job file or a shop file; a large one is a mistake.
 const maxJob = 1 << 20
 
 // loadRequest reads the request of a command: a file, standard input, an example, or flags.
 func loadRequest(c *cli.Context) (request, error) {
-	if c.IsSet("shop") {
-		return request{}, wrong("--shop: not supported yet")
+	if err := checkShop(c); err != nil {
+		return request{}, err
 	}
 	if c.NArg() > 1 {
 		return request{}, wrong("one job at a time: %q is one too many", c.Args().Get(1))
@@ -245,28 +245,37 @@ func readJob(c *cli.Context, path, example string) (data []byte, name string, er
 		data, err = exampleJob(example)
 		return data, example + ".toml", err
 	}
-	in, name := c.App.Reader, "standard input"
-	if path != "-" {
-		f, err := os.Open(path)
-		if err != nil {
-			return nil, "", cannot("%v", plainPathError(err))
-		}
-		defer f.Close()
-		if info, err := f.Stat(); err == nil && info.IsDir() {
-			return nil, "", cannot("%s: is a folder, not a job file", path)
-		}
-		in, name = f, filepath.ToSlash(path)
+	if path == "-" {
+		return readText(c.App.Reader, "standard input", "job file", "flankwright new writes one")
 	}
-	data, err = io.ReadAll(io.LimitReader(in, maxJob+1))
+	return readFile(path, "job file", "flankwright new writes one")
+}
+
+// readFile reads a TOML file whole; kind says what it should be, hint how to get one.
+func readFile(path, kind, hint string) (data []byte, name string, err error) {
+	f, err := os.Open(path)
+	if err != nil {
+		return nil, "", cannot("%v", plainPathError(err))
+	}
+	defer f.Close()
+	if info, err := f.Stat(); err == nil && info.IsDir() {
+		return nil, "", cannot("%s: is a folder, not a %s", path, kind)
+	}
+	return readText(f, filepath.ToSlash(path), kind, hint)
+}
+
+// readText reads TOML, and refuses what is no text.
+func readText(in io.Reader, name, kind, hint string) ([]byte, string, error) {
+	data, err := io.ReadAll(io.LimitReader(in, maxJob+1))
 	if err != nil {
 		return nil, "", cannot("%s: cannot be read: %v", name, err)
 	}
 	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf")) // some editors begin a file with it
 	if !utf8.Valid(data) || bytes.IndexByte(data, 0) >= 0 {
-		return nil, "", wrong("%s: is no text; a job is a TOML file (flankwright new writes one)", name)
+		return nil, "", wrong("%s: is no text; a %s is TOML (%s)", name, kind, hint)
 	}
 	if len(data) > maxJob {
-		return nil, "", wrong("%s: larger than a megabyte; that is no job file", name)
+		return nil, "", wrong("%s: larger than a megabyte; that is no %s", name, kind)
 	}
 	return data, name, nil
 }

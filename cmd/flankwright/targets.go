@@ -58,6 +58,8 @@ type gearTargets struct {
 	Span          []spanTarget `json:"span"`
 	Chordal       chordTarget  `json:"chordal"`
 	ConstantChord chordTarget  `json:"constant_chord"`
+	Take          []take       `json:"take,omitzero"` // with a shop file: what can be measured with what is there
+	Missing       []missing    `json:"missing,omitempty"`
 	Warnings      []warning    `json:"-"`
 }
 
@@ -77,11 +79,15 @@ type pinTarget struct {
 	Usable      bool      `json:"usable"`
 	Why         string    `json:"why"`
 	Also        []alsoWay `json:"also"`
-	even        bool      // number of teeth
+	// ShopMeasured is what the shop's pins of a size asked for measure, where that is another diameter.
+	ShopMeasured *float64 `json:"shop_measured_mm,omitempty"`
+	shopPick     inspect.Pick
+	even         bool // number of teeth
 }
 
 type alsoWay struct {
 	Way         string   `json:"way"`
+	Pin         *float64 `json:"pin_diameter_mm,omitempty"` // where it is not that of the two pins
 	Measurement *span    `json:"measurement_mm"`
 	Aim         *float64 `json:"aim_mm"`
 	AxialOffset float64  `json:"axial_offset_mm"`
@@ -100,6 +106,7 @@ type spanTarget struct {
 	FaceNeeded float64  `json:"face_width_needed_mm"`
 	Usable     bool     `json:"usable"`
 	Why        string   `json:"why"`
+	Missing    string   `json:"missing,omitempty"` // what the shop lacks for it
 }
 
 type chordTarget struct {
@@ -129,15 +136,9 @@ func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	if ideal, ok := inspect.IdealPin(g.g, g.thickness.Limits); ok {
 		out.IdealPin = &ideal
 	}
-	pins := j.choosePins(g)
-	if a.pins != nil {
-		pins = nil
-		for _, d := range a.pins {
-			pins = append(pins, inspect.PinCandidate{Diameter: d, From: "asked for"})
-		}
-	}
-	for _, p := range pins {
-		out.OverPins = append(out.OverPins, j.pinTarget(g, p, a.arbor))
+	offers, choice := j.offers(g, a)
+	for _, p := range offers {
+		out.OverPins = append(out.OverPins, j.pinTarget(g, p, a))
 	}
 	teeth := a.teeth
 	if teeth == nil {
@@ -148,6 +149,9 @@ func (j *job) gearTargets(g *gear, a ask) gearTargets {
 	}
 	out.Chordal = j.chordTarget(g, inspect.Chordal{Tip: g.g.TipDiameter()})
 	out.ConstantChord = j.chordTarget(g, inspect.ConstantChord{Tip: g.g.TipDiameter()})
+	if a.shop != nil {
+		j.takeFrom(&out, g, a, choice)
+	}
 	return out
 }
 
@@ -164,16 +168,22 @@ func measured(t inspect.Target) (value *span, aim *float64, contact *span) {
 	return value, aim, contact
 }
 
-func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarget {
-	m := inspect.OverPins{Pin: p.Diameter}
+func (j *job) pinTarget(g *gear, p pinOffer, a ask) pinTarget {
+	d, few := p.in(involute.TwoPins)
+	m := inspect.OverPins{Pin: d}
 	t := inspect.NewTarget(g.g, m, g.thickness.Limits, g.part())
-	out := pinTarget{Pin: p.Diameter, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable(), Why: j.why(t.Faults), Also: []alsoWay{}}
+	out := pinTarget{Pin: d, From: p.From, Pins: 2, Kind: "pins", Usable: t.Usable() && few == "", Why: orDefault(j.why(t.Faults), few), Also: []alsoWay{}}
 	if g.g.Helical() {
-		out.Kind, out.even = "balls", g.g.Teeth()%2 == 0
+		out.Kind, out.even = "balls", g.g.Teeth()%2 == 0 && p.size == nil
 		out.FaceNeeded = m.FaceNeeded(g.middle())
 	}
+	if p.size != nil {
+		out.Kind = kindOfPins(p.size.Ball)
+	} else if a.pins != nil {
+		out.ShopMeasured, out.shopPick = a.shop.shopMeasured(d, g.g.Helical())
+	}
 	out.Measurement, out.Aim, out.Contact = measured(t)
-	if seat, err := g.middle().Seat(p.Diameter); err == nil {
+	if seat, err := g.middle().Seat(d); err == nil {
 		bt, bp := g.g.PinSensitivity(involute.TwoPins, seat)
 		bd := g.g.ThinningPerDepth() * bt
 		bf := 2 * bt / math.Cos(g.g.PressureAngle())
@@ -183,7 +193,7 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 		}
 	}
 	for _, w := range otherWays() {
-		if also, ok := j.alsoWay(g, p.Diameter, w, arbor); ok {
+		if also, ok := j.alsoWay(g, p, w, a); ok {
 			out.Also = append(out.Also, also)
 		}
 	}
@@ -191,14 +201,18 @@ func (j *job) pinTarget(g *gear, p inspect.PinCandidate, arbor float64) pinTarge
 }
 
 // alsoWay measures with the same pin in another way, where that way exists for the gear.
-func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay, bool) {
-	m := inspect.OverPins{Pin: pin, Way: w.way}
+func (j *job) alsoWay(g *gear, p pinOffer, w namedWay, a ask) (alsoWay, bool) {
+	d, few := p.in(w.way)
+	m := inspect.OverPins{Pin: d, Way: w.way}
 	out := alsoWay{Way: w.name, text: w.text}
+	if d != p.Diameter {
+		out.Pin = &d
+	}
 	if w.way == involute.PinToFarSide {
 		switch {
-		case arbor > 0:
-			m.Bore = arbor
-			out.Way, out.text = "one pin to the far side of the arbor", "one %s to the arbor's far side"
+		case a.arbor > 0:
+			m.Bore = a.arbor
+			out.Way, out.text = farSideOfArbor, "one %s to the arbor's far side"
 		case g.bore != nil:
 			m.Bore = g.bore.limits.Middle()
 		default:
@@ -209,15 +223,18 @@ func (j *job) alsoWay(g *gear, pin float64, w namedWay, arbor float64) (alsoWay,
 	if len(t.Faults) > 0 && t.Faults[0].Code == inspect.WrongWay {
 		return out, false
 	}
-	out.Usable, out.Why = t.Usable(), j.why(t.Faults)
-	if w.way == involute.PinToFarSide && out.Why == "" && arbor == 0 && g.bore.limits.Width() > 0 {
+	out.Usable, out.Why = t.Usable() && few == "", orDefault(j.why(t.Faults), few)
+	if w.way == involute.PinToFarSide && out.Why == "" && a.arbor == 0 && g.bore.limits.Width() > 0 {
 		out.bore = m.Bore
 		out.Why = fmt.Sprintf("for a bore of %s; half of any difference goes on or off", j.length(g.bore.limits.Middle()))
 	}
 	out.Measurement, out.Aim, _ = measured(t)
-	if seat, err := g.middle().Seat(pin); err == nil && g.g.Helical() {
-		if r, err := g.g.Reading(w.way, seat.CenterDiameter, pin, m.Bore); err == nil {
-			out.AxialOffset, out.FaceNeeded = r.AxialOffset, g.g.FaceForPins(r, pin)
+	if p.size != nil && w.way == involute.ThreePins && out.Usable {
+		out.Why = j.threePinNeed(g, a.shop, t)
+	}
+	if seat, err := g.middle().Seat(d); err == nil && g.g.Helical() {
+		if r, err := g.g.Reading(w.way, seat.CenterDiameter, d, m.Bore); err == nil {
+			out.AxialOffset, out.FaceNeeded = r.AxialOffset, g.g.FaceForPins(r, d)
 		}
 	}
 	return out, true

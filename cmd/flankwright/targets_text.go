@@ -79,11 +79,15 @@ func (t *targets) measureGrid(g gearTargets, u inspect.Unit, digits int, more *[
 	for _, p := range g.OverPins {
 		add(fmt.Sprintf("Over two %s %s", p.kindText(), pinText(p.Pin, u)), p.Measurement, p.Aim, p.Usable, p.Why)
 		for _, a := range p.Also {
-			add("  "+wayText(a.text, p.Kind), a.Measurement, a.Aim, a.Usable, a.Why)
+			label := "  " + wayText(a.text, p.Kind)
+			if a.Pin != nil {
+				label += ", " + pinText(*a.Pin, u)
+			}
+			add(label, a.Measurement, a.Aim, a.Usable, a.Why)
 		}
 	}
 	for _, s := range g.Span {
-		add(fmt.Sprintf("Span over %s", teethText(s.Teeth)), s.Length, s.Aim, s.Usable, s.Why)
+		add(fmt.Sprintf("Span over %s", teethText(s.Teeth)), s.Length, s.Aim, s.Usable, s.Why+s.Missing)
 	}
 	add("Chordal thickness", &g.Chordal.Thickness, &g.Chordal.Aim, g.Chordal.Usable, g.Chordal.Why)
 	add("Constant chord", &g.ConstantChord.Thickness, &g.ConstantChord.Aim, g.ConstantChord.Usable, g.ConstantChord.Why)
@@ -139,6 +143,12 @@ func (t *targets) below(p *page, gear *gear, g gearTargets, u inspect.Unit, digi
 		}
 		p.line("    %s %s %s less; a tooth %s thinner reads %s less; a pin %s larger reads %s more",
 			f(step), way, fine(step**by), f(step), fine(step**m.ByThickness), f(step), fine(step**m.ByPin))
+		if note := t.job.measuredNote(m); note != "" {
+			p.item(note)
+		}
+	}
+	if g.Take != nil {
+		t.takeText(p, g)
 	}
 }
 
@@ -161,6 +171,7 @@ func (t *targets) reasons(name string, g gearTargets) []string {
 	}
 	for _, s := range g.Span {
 		add("span over "+teethText(s.Teeth), s.Why)
+		add("span over "+teethText(s.Teeth), s.Missing)
 	}
 	add("chordal thickness", g.Chordal.Why)
 	add("constant chord", g.ConstantChord.Why)
