@@ -25,23 +25,31 @@ func (j *job) explainTargets(t *targets) []explanation {
 	return all
 }
 
+// explainSeat explains where a pin's center comes to lie.
+func explainSeat(e *explainer, t involute.Tooth, seat involute.PinSeat, z, pin quantity) (ak, dK quantity) {
+	d, db := mm("d", t.ReferenceDiameter()), mm("d_b", t.BaseDiameter())
+	b, bb := deg("β", math.Abs(t.Spec().Helix)), deg("β_b", t.BaseHelix())
+	at, sn := deg("α_t", t.TransversePressureAngle()), mm("s_n", t.Thickness())
+	alpha := math.Acos(t.BaseDiameter() / seat.CenterDiameter)
+	ak = deg("α_Kt", alpha)
+	right := t.Thickness()/math.Cos(t.Spec().Helix)/t.ReferenceDiameter() + involute.Inv(t.TransversePressureAngle()) -
+		math.Pi/float64(t.Teeth()) + pin.Value/(t.BaseDiameter()*math.Cos(t.BaseHelix()))
+	e.solved("pressure angle at the pin's center", "inv(α_Kt) = s_n / cos(β) / d + inv(α_t) - pi / z + D / (d_b * cos(β_b))",
+		ak, involute.Inv(alpha)-right, srcThickness+" (over balls)", sn, b, d, at, z, pin, db, bb)
+	dK = mm("d_K", seat.CenterDiameter)
+	e.result("circle of the pin centers", "d_K = d_b / cos(α_Kt)", dK, srcThickness+" (over balls)", db, ak)
+	return ak, dK
+}
+
 func explainPins(e *explainer, t involute.Tooth, p pinTarget) {
 	seat, err := t.Seat(p.Pin)
 	if err != nil {
 		return
 	}
 	z, pin := num("z", float64(t.Teeth())), mm("D", p.Pin)
-	d, db := mm("d", t.ReferenceDiameter()), mm("d_b", t.BaseDiameter())
+	db, at := mm("d_b", t.BaseDiameter()), deg("α_t", t.TransversePressureAngle())
 	b, bb := deg("β", math.Abs(t.Spec().Helix)), deg("β_b", t.BaseHelix())
-	at, sn := deg("α_t", t.TransversePressureAngle()), mm("s_n", t.Thickness())
-	alpha := math.Acos(t.BaseDiameter() / seat.CenterDiameter)
-	ak := deg("α_Kt", alpha)
-	right := t.Thickness()/math.Cos(t.Spec().Helix)/t.ReferenceDiameter() + involute.Inv(t.TransversePressureAngle()) -
-		math.Pi/float64(t.Teeth()) + p.Pin/(t.BaseDiameter()*math.Cos(t.BaseHelix()))
-	e.solved("pressure angle at the pin's center", "inv(α_Kt) = s_n / cos(β) / d + inv(α_t) - pi / z + D / (d_b * cos(β_b))",
-		ak, involute.Inv(alpha)-right, srcThickness+" (over balls)", sn, b, d, at, z, pin, db, bb)
-	dK := mm("d_K", seat.CenterDiameter)
-	e.result("circle of the pin centers", "d_K = d_b / cos(α_Kt)", dK, srcThickness+" (over balls)", db, ak)
+	ak, dK := explainSeat(e, t, seat, z, pin)
 	r, err := t.Reading(involute.TwoPins, seat.CenterDiameter, p.Pin, 0)
 	if err != nil {
 		return
@@ -82,7 +90,17 @@ func valueOf(p *float64) float64 {
 }
 
 func explainAlso(e *explainer, t involute.Tooth, p pinTarget, dK, pin, z quantity) {
+	twoPins, twoD := dK, pin
 	for _, a := range p.Also {
+		dK, pin := twoPins, twoD
+		if a.Pin != nil { // measured otherwise than the two
+			seat, err := t.Seat(*a.Pin)
+			if err != nil {
+				continue
+			}
+			pin = mm("D", *a.Pin)
+			_, dK = explainSeat(e, t, seat, z, pin)
+		}
 		switch a.Way {
 		case "three pins":
 			e.result("over three pins", "M_3 = d_K * (1 + cos(pi / z)) / 2 + D", mm("M_3", dK.Value*(1+math.Cos(math.Pi/z.Value))/2+pin.Value), srcGeometry, dK, z, pin)

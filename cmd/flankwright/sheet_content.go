@@ -64,7 +64,13 @@ func figures(l span, aim float64) (low, mid, high export.Figure) {
 
 // pinBoth words a pin's diameter in both units.
 func (j *job) pinBoth(d float64) string {
-	mm, in := "Ø "+inspect.Millimeter.Format(d, 3)+" mm", "Ø "+inspect.Inch.Format(d, 4)+" in"
+	more := 1 // of a diameter as measured
+	for _, u := range []inspect.Unit{inspect.Millimeter, inspect.Inch} {
+		if scale := u.MM() * math.Pow10(-u.Decimals()); math.Abs(d/scale-math.Round(d/scale)) < 1e-6 {
+			more = 0
+		}
+	}
+	mm, in := "Ø "+inspect.Millimeter.Format(d, 3+more)+" mm", "Ø "+inspect.Inch.Format(d, 4+more)+" in"
 	if j.display == inspect.Inch {
 		return in + " (" + strings.TrimPrefix(mm, "Ø ") + ")"
 	}
