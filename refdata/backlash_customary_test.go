@@ -13,6 +13,7 @@ func inches(mm float64) float64 { return math.Round(mm/25.4*1e9) / 1e9 }
 func TestCustomaryCoarse(t *testing.T) {
 	for _, c := range []struct{ dp, center, least, most float64 }{
 		{10, 3, .005, .015},
+		{10, 0.5, .005, .015},
 		{19.99, 5, .005, .015},
 		{19.999, 5, .005, .015}, // after the last printed pitch and still under 20
 		{12, 5.001, .010, .020},

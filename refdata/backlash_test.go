@@ -41,6 +41,10 @@ func TestLeastBacklashISO(t *testing.T) {
 	if n != 22 {
 		t.Errorf("%d values, want 22", n)
 	}
+	// unrounded, by hand: (2/3)(0.06 + 0.05 + 0.3)
+	if got, err := LeastBacklashISO(100, 10); err != nil || math.Abs(got.Normal-0.82/3) > 1e-15 {
+		t.Errorf("a 100, m 10: %g mm, %v", got.Normal, err)
+	}
 }
 
 // AGMA 2002-B88, appendix, printed table (recalled): 21 values, each the
@@ -86,7 +90,7 @@ func TestLeastBacklashOutside(t *testing.T) {
 	}{
 		{LeastBacklashISO, 50, 1.5, ""},
 		{LeastBacklashISO, 1600, 18, ""},
-		{LeastBacklashISO, 49, 1, "module 1 mm (the table of ISO/TR 10064-2 covers 1.5 to 18 mm), center distance 49 mm (the table of ISO/TR 10064-2 covers 50 to 1600 mm)"},
+		{LeastBacklashISO, 0.9, 0.5, "module 0.5 mm (the table of ISO/TR 10064-2 covers 1.5 to 18 mm), center distance 0.9 mm (the table of ISO/TR 10064-2 covers 50 to 1600 mm)"},
 		{LeastBacklashISO, -1601, 20, "module 20 mm (the table of ISO/TR 10064-2 covers 1.5 to 18 mm), center distance 1601 mm (the table of ISO/TR 10064-2 covers 50 to 1600 mm)"},
 		{LeastBacklashAGMA, 2 * 25.4, 25.4 / 18.0, ""},
 		{LeastBacklashAGMA, 32 * 25.4, 25.4 / 1.25, ""},

@@ -43,8 +43,9 @@ func (a Accuracy) check() error {
 	return nil
 }
 
-// A ToothSize is what flank tolerances depend on. Signs, as of an internal
-// gear's teeth and diameter by ISO 21771, do not count.
+// A ToothSize is what flank tolerances depend on. The signs
+// that teeth and diameter of an internal gear and the helix angle of a hand have
+// by ISO 21771 do not count.
 type ToothSize struct {
 	ReferenceDiameter float64 // d, mm
 	Module            float64 // normal module m_n, mm
@@ -58,8 +59,7 @@ const largestSize = 1e6
 
 // settled returns g without signs, or an error where a size is no size.
 func (g ToothSize) settled() (ToothSize, error) {
-	g.ReferenceDiameter, g.Module = math.Abs(g.ReferenceDiameter), math.Abs(g.Module)
-	g.FaceWidth, g.HelixAngle = math.Abs(g.FaceWidth), math.Abs(g.HelixAngle)
+	g.ReferenceDiameter, g.HelixAngle = math.Abs(g.ReferenceDiameter), math.Abs(g.HelixAngle)
 	if g.Teeth < 0 {
 		g.Teeth = -g.Teeth
 	}

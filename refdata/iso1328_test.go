@@ -90,6 +90,12 @@ func TestFlankTolerances1995(t *testing.T) {
 		for _, share := range []float64{0.001, 0.4, 1} {
 			got, exact := tolerances(t, a, ToothSize{ReferenceDiameter: at("d", share), Module: at("m", share), FaceWidth: at("b", share)})
 			for name, v := range byName(got) {
+				if row["exact_"+name] == "" {
+					continue // slopes and forms; see TestParts1995
+				}
+				if want := decimal(t, row["exact_"+name]); math.Abs(byName(exact)[name]*1000-want) > 0.005+1e-9 { // to 0.01 um
+					t.Errorf("%v, d to %s, m to %s: %s %.5f mm, want %g um", a, row["d_to"], row["m_to"], name, byName(exact)[name], want)
+				}
 				if row[name] == "" {
 					continue
 				}
@@ -106,6 +112,56 @@ func TestFlankTolerances1995(t *testing.T) {
 	if values != 3*43 {
 		t.Errorf("%d values compared, want 3 × 43", values)
 	}
+}
+
+// Slope, form and sector of 1995 in a gear of 79.06 mm (√: 8.89140), module
+// 2.64575 (√: 1.62658) and face width 28.284 mm (√: 5.31830), by hand.
+func TestParts1995ByHand(t *testing.T) {
+	a, g := Accuracy{1995, 5}, ToothSize{ReferenceDiameter: 60, Module: 3, FaceWidth: 30, Teeth: 20}
+	_, e := tolerances(t, a, g)
+	for _, c := range []struct {
+		name      string
+		got, want float64 // mm, um
+	}{
+		{"f_Ha", e.ProfileSlope, 3.25316 + 1.24480 + 0.5},
+		{"f_fa", e.ProfileForm, 4.06645 + 1.51154 + 0.5},
+		{"f_Hb", e.HelixSlope, 0.62240 + 2.39324 + 3},
+		{"f_fb", e.HelixForm, 0.62240 + 2.39324 + 3},
+	} {
+		if math.Abs(c.got*1000-c.want) > 3e-5 {
+			t.Errorf("%s %.6f um, want %g", c.name, c.got*1000, c.want)
+		}
+	}
+	um, source, err := a.sectorMicrometers(g, 3) // f_pt 5.86069, 1.6 × √(2 × 2.64575)
+	if err != nil || math.Abs(um-5.86069-1.6*2.30033) > 3e-5 || source.Edition != "1995" {
+		t.Errorf("F_pk %.6f um, %v, %v", um, source, err)
+	}
+}
+
+// ISO 1328-1:1995 (recalled): the size ranges, each standing in by its geometric mean.
+func TestRanges1995(t *testing.T) {
+	ranges := func(ends string, set func(*ToothSize, float64), used func(ToothSize) float64) {
+		var last string
+		for end := range strings.FieldsSeq(ends) {
+			if last != "" {
+				from, to := decimal(t, last), decimal(t, end)
+				for _, v := range []float64{from + 0.001, (from + to) / 2, to} {
+					g := ToothSize{ReferenceDiameter: 60, Module: 3, FaceWidth: 30}
+					set(&g, v)
+					if got, _ := tolerances(t, Accuracy{1995, 5}, g); used(got.Used) != math.Sqrt(from*to) {
+						t.Errorf("%g mm: %g is used, want the mean of %g and %g", v, used(got.Used), from, to)
+					}
+				}
+			}
+			last = end
+		}
+	}
+	ranges("5 20 50 125 280 560 1000 1600 2500 4000 6000 8000 10000",
+		func(g *ToothSize, v float64) { g.ReferenceDiameter = v }, func(g ToothSize) float64 { return g.ReferenceDiameter })
+	ranges("0.5 2 3.5 6 10 16 25 40 70",
+		func(g *ToothSize, v float64) { g.Module = v }, func(g ToothSize) float64 { return g.Module })
+	ranges("4 10 20 40 80 160 250 400 650 1000",
+		func(g *ToothSize, v float64) { g.FaceWidth = v }, func(g ToothSize) float64 { return g.FaceWidth })
 }
 
 // In the edition of 1995 profile and helix in all are slope and form combined
@@ -295,8 +351,12 @@ func TestTolerancesOfInternalGear(t *testing.T) {
 			t.Errorf("%d: %+v and %+v", edition, plus, minus)
 		}
 		narrow, _ := tolerances(t, Accuracy{edition, 8}, ToothSize{ReferenceDiameter: 120, Module: 2})
-		if narrow.HasHelix || narrow.Helix != 0 || narrow.HelixSlope != 0 || narrow.HelixForm != 0 || narrow.Profile != plus.Profile {
+		if narrow.HasHelix || narrow.Helix != 0 || narrow.HelixSlope != 0 || narrow.HelixForm != 0 || narrow.Used.FaceWidth != 0 || narrow.Profile != plus.Profile {
 			t.Errorf("%d, no face width: %+v", edition, narrow)
+		}
+		thin, _ := tolerances(t, Accuracy{edition, 8}, ToothSize{ReferenceDiameter: 120, Module: 2, FaceWidth: 0.5})
+		if !thin.HasHelix || !(thin.Helix > 0) || edition == 1995 && thin.Used.FaceWidth != math.Sqrt(4*10) || len(thin.Outside) != 1 {
+			t.Errorf("%d, face width 0.5 mm: %+v", edition, thin)
 		}
 	}
 }
@@ -322,6 +382,8 @@ func TestTolerancesRefused(t *testing.T) {
 		{Accuracy{2013, 8}, with(func(g *ToothSize) { g.ReferenceDiameter = math.NaN() }), "reference diameter of NaN mm"},
 		{Accuracy{2013, 8}, with(func(g *ToothSize) { g.Module = math.Inf(1) }), "module of +Inf mm"},
 		{Accuracy{1995, 8}, with(func(g *ToothSize) { g.Module = 0 }), "module of 0 mm"},
+		{Accuracy{2013, 8}, with(func(g *ToothSize) { g.Module = -3 }), "module of -3 mm"},
+		{Accuracy{1995, 8}, with(func(g *ToothSize) { g.FaceWidth = -30 }), "face width of -30 mm"},
 		{Accuracy{1995, 8}, with(func(g *ToothSize) { g.FaceWidth = math.NaN() }), "face width of NaN mm"},
 		{Accuracy{2013, 8}, with(func(g *ToothSize) { g.FaceWidth = 2e6 }), "at most 1000000 mm"},
 		{Accuracy{2013, 8}, with(func(g *ToothSize) { g.HelixAngle = math.NaN() }), "helix angle of NaN°"},
