@@ -1,6 +1,10 @@
 package inspect
 
-import "flankwright/involute"
+import (
+	"math"
+
+	"flankwright/involute"
+)
 
 // A PlanGear is a gear whose thickness limits are to be found.
 type PlanGear struct {
@@ -189,27 +193,18 @@ func (p *planner) settle() error {
 				return p.conflict(k)
 			}
 			p.thin[own] = Limits{max(0, thin[i].Min), thin[i].Max}
+			if m.LeastOnly { // then the width is what is stated
+				p.thin[own].Max = p.thin[own].Min + thin[i].Width()
+			}
 			break
 		}
 	}
 	for _, k := range p.active {
-		if short, err := p.short(k); err != nil || (short > noThinning && !p.deepen(k, short)) {
+		if err := p.deepen(k); err != nil {
 			return p.conflict(k)
 		}
 	}
 	return p.check()
-}
-
-// short returns by how much the gears of a mesh would have to be thinner together
-// for the least backlash asked for, mm.
-func (p *planner) short(k int) (float64, error) {
-	m := p.meshes[k]
-	got, err := p.backlash(k)
-	if err != nil {
-		return 0, err
-	}
-	alpha, err := m.Mesh.WorkingPressureAngle(m.Tightest())
-	return (m.Backlash.Min - got.Min) * m.Mesh.ThinningPerBacklash(alpha), err
 }
 
 // backlash returns what the thinnings of a mesh's gears come to by its method.
@@ -224,8 +219,10 @@ func (p *planner) check() error {
 	for _, k := range p.active {
 		m := p.meshes[k]
 		got, err := p.backlash(k)
-		empty := p.thin[m.First].Width() < -noThinning || p.thin[m.Second].Width() < -noThinning
-		if err != nil || empty || got.Min < m.Backlash.Min-2*noThinning || (!m.LeastOnly && got.Max > m.Backlash.Max+2*noThinning) {
+		bad := func(gear int) bool {
+			return p.by[gear] == ByBacklash && (p.thin[gear].Width() < -noThinning || p.thin[gear].Min < -noThinning)
+		}
+		if err != nil || bad(m.First) || bad(m.Second) || got.Min < m.Backlash.Min-2*noThinning || (!m.LeastOnly && got.Max > m.Backlash.Max+2*noThinning) {
 			return p.conflict(k)
 		}
 	}
@@ -234,18 +231,41 @@ func (p *planner) check() error {
 
 func (p *planner) conflict(k int) error {
 	m := p.meshes[k]
-	return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: p.thin[m.First]}, p.pair(k), [2]Limits{p.thin[m.First], p.thin[m.Second]})
-}
-
-// deepen thins one of two gears that both run in several meshes by what their own mesh still lacks.
-func (p *planner) deepen(k int, short float64) bool {
-	for _, i := range []int{p.meshes[k].First, p.meshes[k].Second} {
-		if p.by[i] == ByBacklash && !p.hard[i] {
-			p.thin[i] = Limits{p.thin[i].Min + short, p.thin[i].Max + short}
-			return true
+	sole := [2]Limits{}
+	for i, gear := range []int{m.First, m.Second} {
+		sole[i] = Limits{p.thin[gear].Min, p.thin[gear].Min}
+		if own := p.gears[gear].Thin; own != nil {
+			sole[i] = *own
 		}
 	}
-	return false
+	return m.explain(&PlanProblem{Kind: Conflict, Mesh: k, Gear: m.First, Thin: p.thin[m.First]}, p.pair(k), sole)
+}
+
+// deepen thins one of two gears that both run in several meshes by what their own
+// mesh still lacks of its least backlash.
+func (p *planner) deepen(k int) error {
+	m := p.meshes[k]
+	got, err := p.backlash(k)
+	if err != nil || got.Min >= m.Backlash.Min-noThinning {
+		return err
+	}
+	for _, i := range []int{m.First, m.Second} {
+		if p.by[i] != ByBacklash || p.hard[i] {
+			continue
+		}
+		old := p.thin[i]
+		by, err := involute.FindRoot(func(by float64) float64 {
+			p.thin[i] = Limits{old.Min + by, old.Max + by}
+			got, err := p.backlash(k)
+			if err != nil {
+				return math.NaN()
+			}
+			return got.Min - m.Backlash.Min
+		}, 0, m.Mesh.First.NormalPitch()+m.Backlash.Min)
+		p.thin[i] = Limits{old.Min + by, old.Max + by}
+		return err
+	}
+	return p.conflict(k)
 }
 
 // count returns how many deciding meshes a gear runs in.

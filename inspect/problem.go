@@ -17,14 +17,14 @@ const (
 
 // A PlanProblem says why a mesh's backlash cannot be had.
 type PlanProblem struct {
-	Kind  ProblemKind
-	Mesh  int       // index
-	Gear  int       // index of the gear that cannot be made
-	Thin  Limits    // the thinning it would need, mm; empty where Min > Max
-	Play  float64   // the least backlash of nominal (or fixed) teeth, mm
-	Tight float64   // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
-	Most  float64   // the greatest backlash that would have to be allowed, mm
-	Sole  [2]Limits // the thinnings of both gears that give the least backlash and have no tolerance
+	Kind    ProblemKind
+	Mesh    int       // index
+	Gear    int       // index of the gear that cannot be made
+	Thin    Limits    // the thinning it would need, mm; empty where Min > Max
+	Nominal Limits    // the backlash of nominal (or fixed) teeth, mm
+	Tight   float64   // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
+	Most    float64   // the greatest backlash that would have to be allowed, mm
+	Sole    [2]Limits // the thinnings of both gears that give the least backlash and have no tolerance
 }
 
 // Error says so in short; the program's edge words it for people.
@@ -38,7 +38,7 @@ func (m PlanMesh) explain(p *PlanProblem, pair [2]PlanGear, thin [2]Limits) erro
 	nominal := m.split(pair).thin(0, 0)
 	n1, n2 := pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1])
 	if b, err := m.Budget(n1, n2); err == nil {
-		p.Play = b.By(m.Method).Min
+		p.Nominal = b.By(m.Method)
 	}
 	if a, err := m.Mesh.TightCenter(n1.Max, n2.Max); err == nil {
 		p.Tight = math.Abs(a)

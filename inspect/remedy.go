@@ -28,6 +28,15 @@ type Remedy struct {
 	Value float64
 }
 
+// hair is how far beyond its value a remedy is tried, as a share of it, or of a module.
+const hair = 1e-6
+
+// Moved returns the mesh with its center distance farther by so much, mm.
+func (m PlanMesh) Moved(by float64) PlanMesh {
+	m.Center = Limits{m.Center.Min + by, m.Center.Max + by}
+	return m
+}
+
 // Room returns what a wish leaves for the thicknesses of the gears together, by a
 // method: the sum of the tolerances, mm. Below zero it is what is missing.
 func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
@@ -36,7 +45,10 @@ func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
 	if method == Statistical {
 		find = m.statisticalThinning
 	}
-	_, width, err := find(pair, m.split(pair))
+	least, width, err := find(pair, m.split(pair))
+	if method == WorstCase {
+		width += min(0, least) // no tooth is thicker than nominal
+	}
 	return width, err
 }
 
@@ -50,9 +62,10 @@ func (m PlanMesh) possible(pair [2]PlanGear) bool {
 // alone would not do is left out.
 func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 	if p.Kind == TooThick {
-		list := []Remedy{{AskForMore, p.Play}}
+		list := []Remedy{{AskForMore, p.Nominal.Min}}
 		nominal := m.split(pair).thin(0, 0)
-		if by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min); ok {
+		by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min)
+		if ok && m.Moved(by-hair*m.Mesh.First.Module()).possible(pair) {
 			list = append(list, Remedy{MoveCenter, by})
 		}
 		return list
@@ -71,7 +84,6 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 			}
 			return width
 		}
-		const hair = 1e-6
 		if by, err := involute.FindRoot(room, 0, 1); err == nil && by > hair && at(by-hair).possible(pair) {
 			list = append(list, Remedy{kind, size * by})
 		}
@@ -94,13 +106,13 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 		}
 	})
 	scaled(SteadierWarmth, 1, func(m *PlanMesh, by float64) { m.Climate = m.Climate.scaled(by) })
-	if m.Method == WorstCase {
+	if worst := p.Most; m.Method == WorstCase {
 		m.Method = Statistical
 		_, err := m.shares(0, pair)
 		switch p, isProblem := err.(*PlanProblem); {
 		case err == nil:
 			list = append(list, Remedy{Kind: Statistically})
-		case isProblem && p.Kind == NoRoom:
+		case isProblem && p.Kind == NoRoom && p.Most < worst-hair:
 			list = append(list, Remedy{WidenStatistically, p.Most})
 		}
 	}
@@ -125,9 +137,7 @@ func (c *Climate) scaled(by float64) *Climate {
 // up to a module does it.
 func (m PlanMesh) CenterFor(first, second Limits, least float64) (by float64, ok bool) {
 	off := func(by float64) float64 {
-		try := m
-		try.Center = Limits{m.Center.Min + by, m.Center.Max + by}
-		b, err := try.Budget(first, second)
+		b, err := m.Moved(by).Budget(first, second)
 		if err != nil {
 			return math.Inf(-1) // closer than the base circles allow
 		}

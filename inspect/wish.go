@@ -24,7 +24,7 @@ func (m PlanMesh) split(pair [2]PlanGear) split {
 	case pair[1].Thin != nil || m.Share == ShareFirst:
 		first, width = 1, 1
 	case m.Share == ShareByTeeth:
-		z1, z2 := float64(pair[0].Gear.Teeth()), float64(pair[1].Gear.Teeth())
+		z1, z2 := math.Abs(float64(pair[0].Gear.Teeth())), math.Abs(float64(pair[1].Gear.Teeth()))
 		first = z1 / (z1 + z2)
 	}
 	if both := pair[0].Tolerance + pair[1].Tolerance; m.LeastOnly && both > 0 && pair[0].Thin == nil && pair[1].Thin == nil {
@@ -123,8 +123,8 @@ func (m PlanMesh) worstThinning(pair [2]PlanGear, s split) (least, width float64
 	if least, err = end(true, m.Backlash.Min); err != nil {
 		return 0, 0, err
 	}
-	if m.LeastOnly {
-		return least, tolerances(pair), nil
+	if m.LeastOnly { // and nominal teeth may have more
+		return max(0, least), tolerances(pair), nil
 	}
 	most, err := end(false, m.Backlash.Max)
 	return least, most - least, err
@@ -155,22 +155,27 @@ func (m PlanMesh) statisticalThinning(pair [2]PlanGear, s split) (least, width f
 	switch {
 	case q.err != nil:
 		return 0, 0, q.err
-	case m.LeastOnly && alone >= 0:
+	case m.LeastOnly: // and nominal teeth may have more
 		width = tolerances(pair)
 		return max(0, q.leastFor(width)), width, q.err
-	case m.LeastOnly:
-		return alone, tolerances(pair), nil
 	}
-	if at := over(0); alone < 0 || at >= 0 {
+	nominalOver := func(width float64) float64 { return q.backlash(0, width).Max - m.Backlash.Max }
+	if alone < 0 {
+		over = nominalOver
+	}
+	if at := over(0); at >= 0 {
 		// Not even a single thickness would do: the width is what is missing, below zero.
 		alpha, err := m.Mesh.WorkingPressureAngle(m.Nominal())
 		return alone, -at * m.Mesh.ThinningPerBacklash(alpha), err
 	}
 	width = q.root(over, 0, q.far)
+	if alone < 0 { // nominal teeth have more than the least asked for
+		return alone, width, q.err
+	}
 	if least = q.leastFor(width); least >= 0 {
 		return least, width, q.err
 	}
-	return 0, q.root(func(width float64) float64 { return q.backlash(0, width).Max - m.Backlash.Max }, 0, width), q.err
+	return 0, q.root(nominalOver, 0, width), q.err
 }
 
 // A statisticalQuest keeps the first error of the functions that are solved.

@@ -1,0 +1,88 @@
+package inspect
+
+import (
+	"errors"
+	"math"
+	"testing"
+
+	"pgregory.net/rapid"
+)
+
+// With deviations and a climate the thicknesses found hold the wish exactly, by the
+// method asked for, however the gears share it out, one gear fixed or none.
+// Gears that grow unlike hold it on the safe side.
+func TestPlanHoldsTheBudget(t *testing.T) {
+	found := map[string]int{}
+	rapid.Check(t, func(t *rapid.T) {
+		p := drawPair(t)
+		alike := rapid.Bool().Draw(t, "alike")
+		p.drawBurden(t, alike)
+		p.mesh.Method = rapid.SampledFrom([]Method{WorstCase, Statistical}).Draw(t, "method")
+		p.mesh.Share = rapid.SampledFrom([]Share{ShareEqual, ShareFirst, ShareSecond, ShareByTeeth}).Draw(t, "share")
+		p.mesh.LeastOnly = rapid.Bool().Draw(t, "least only")
+		if fixed := rapid.IntRange(-1, 1).Draw(t, "fixed"); fixed >= 0 {
+			at := rapid.Float64Range(0, 0.02).Draw(t, "made") * p.gears[fixed].Gear.Module()
+			p.gears[fixed].Thin = &Limits{at, at + rapid.Float64Range(0, 0.005).Draw(t, "by")*p.gears[fixed].Gear.Module()}
+		}
+		module := p.gears[0].Gear.Module()
+		for i := range p.gears {
+			p.gears[i].Tolerance = rapid.Float64Range(0.001, 0.03).Draw(t, "tolerance") * module
+		}
+		least := rapid.Float64Range(0, 0.08).Draw(t, "least") * module
+		p.mesh.Backlash = &Limits{least, least + rapid.Float64Range(0.02, 0.3).Draw(t, "range")*module}
+		got, err := Plan(p.gears, []PlanMesh{p.mesh})
+		if err != nil {
+			checkBudgetProblem(t, p, err)
+			return
+		}
+		b, err := p.mesh.Budget(got[0].Limits, got[1].Limits)
+		if err != nil {
+			t.Fatal(err)
+		}
+		j, want := b.By(p.mesh.Method), *p.mesh.Backlash
+		if p.mesh.LeastOnly {
+			want.Max = j.Max
+			for i, g := range p.gears {
+				if g.Thin == nil && math.Abs(got[i].Limits.Width()-g.Tolerance) > 1e-12 && p.mesh.Share != ShareFirst && p.mesh.Share != ShareSecond {
+					t.Errorf("gear %d varies by %v, stated %v", i, got[i].Limits.Width(), g.Tolerance)
+				}
+			}
+		}
+		slack := 1e-9
+		if !alike && p.mesh.Climate != nil {
+			slack = 2e-3 * (want.Max + module*0.05)
+		}
+		nominal := (p.mesh.Method == Statistical || p.mesh.LeastOnly) && (thinOf(p.gears[0], got[0]).Min < 1e-9 || thinOf(p.gears[1], got[1]).Min < 1e-9)
+		if j.Min < want.Min-2*noThinning || j.Max > want.Max+2*noThinning || (j.Min > want.Min+slack && !nominal) || (!p.mesh.LeastOnly && j.Max < want.Max-slack) {
+			t.Errorf("comes to %v, asked for %v", j, want)
+		}
+		found[[]string{"worst", "statistical"}[p.mesh.Method]]++
+	})
+	if found["worst"] == 0 || found["statistical"] == 0 {
+		t.Errorf("plans found: %v", found)
+	}
+}
+
+// checkBudgetProblem checks that a refusal is right: nominal teeth have more than the
+// least asked for, or a wider range would do and the one asked for would not.
+func checkBudgetProblem(t *rapid.T, p plannedPair, err error) {
+	var problem *PlanProblem
+	if !errors.As(err, &problem) {
+		return // a center distance that leaves no working angle
+	}
+	switch problem.Kind {
+	case TooThick:
+		if problem.Nominal.Min < p.mesh.Backlash.Min {
+			t.Errorf("refused as too thick, but nominal teeth have %v of the %v asked for", problem.Nominal.Min, p.mesh.Backlash.Min)
+		}
+		p.mesh.Backlash = &Limits{problem.Nominal.Min + 1e-6, math.Max(problem.Nominal.Min, p.mesh.Backlash.Max) + p.gears[0].Gear.Module()*0.5}
+	case NoRoom:
+		if problem.Most < p.mesh.Backlash.Max {
+			t.Errorf("refused for want of room, but %v would do", problem.Most)
+		}
+		p.mesh.Backlash = &Limits{p.mesh.Backlash.Min, problem.Most * (1 + 5e-3)}
+	}
+	if _, err := Plan(p.gears, []PlanMesh{p.mesh}); err != nil {
+		t.Errorf("the way out that the refusal names does not lead out: %v, then %v", problem, err)
+	}
+}
