@@ -123,12 +123,12 @@ func (b Budget) Statistical() Limits {
 	return l
 }
 
-// MiddleIn returns the backlash with everything in its middle but a climate
-// of one temperature, for which the budget is.
-func (b Budget) MiddleIn(c *Climate) float64 {
+// MiddleWarm returns the backlash with everything in its middle but the climate,
+// which counts in full; it is of use where that has one temperature.
+func (b Budget) MiddleWarm() float64 {
 	j := b.Middle
 	for _, r := range b.Rows {
-		if r.Cause == OfClimate && c != nil {
+		if r.Cause == OfClimate {
 			j += (r.Adds - r.Takes) / 2
 		}
 	}

@@ -47,15 +47,19 @@ func TestRemediesWork(t *testing.T) {
 				case CloserRunout:
 					m.Deviations[0].Runout *= v
 					m.Deviations[1].Runout *= v
-				case MoveCenter:
-					by := r.Value + (1-share)*0.1*module
-					m.Center = Limits{m.Center.Min + by, m.Center.Max + by}
-					m.Backlash.Max += module
-					works = share > 1
+				case FinerTeeth:
+					for i, d := range m.Deviations {
+						m.Deviations[i] = Deviations{d.Runout * v, d.Measured, d.Pitch * v, d.Profile * v, d.Helix * v}
+						if d.Measured {
+							m.Deviations[i].Runout = d.Runout
+						}
+					}
+				case SteadierWarmth:
+					m.Climate = m.Climate.scaled(v)
+				case MoveCenter: // a hair closer it works; a hair farther nominal teeth have too much
+					m, works = m.Moved(r.Value+(1-share)*1e-3*module), share > 1
 				case Statistically:
 					m.Method, works = Statistical, true
-				default:
-					continue
 				}
 				if math.Abs(r.Value) < 1e-2*min(module, 1) {
 					continue // too small for a thousandth of it to tell

@@ -32,9 +32,9 @@ type Pin struct {
 	Count int
 }
 
-// samePin is how near two nominal sizes are one, mm: a fiftieth of the finest step
+// SamePin is how near two nominal sizes are one, mm: a fiftieth of the finest step
 // of a set, and above what 1/8 in and 3.175 mm differ by.
-const samePin = 5e-5
+const SamePin = 5e-5
 
 // A FaceKind is what an instrument puts on the tooth.
 type FaceKind int
@@ -159,7 +159,7 @@ func (s Stock) Sizes(ball bool) []PinSize {
 	slices.SortStableFunc(pins, func(a, b Pin) int { return cmp.Compare(a.Nominal, b.Nominal) })
 	var sizes []PinSize
 	for _, p := range pins {
-		if n := len(sizes); n == 0 || p.Nominal-sizes[n-1].Nominal > samePin {
+		if n := len(sizes); n == 0 || p.Nominal-sizes[n-1].Nominal > SamePin {
 			sizes = append(sizes, PinSize{Ball: ball, Nominal: p.Nominal, Label: p.Label})
 		}
 		z := &sizes[len(sizes)-1]

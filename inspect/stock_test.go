@@ -211,7 +211,7 @@ func TestChoosePinsAlways(t *testing.T) {
 			}
 			rank := PinTake{Gauge: s.GaugeFor(target.Value)}.rank()
 			best := got.Takes[0]
-			if rank < best.rank() || rank == best.rank() && math.Abs(z.Nominal-ideal) < math.Abs(best.Size.Nominal-ideal)-samePin {
+			if rank < best.rank() || rank == best.rank() && math.Abs(z.Nominal-ideal) < math.Abs(best.Size.Nominal-ideal)-SamePin {
 				t.Errorf("Ø%v is taken, Ø%v is as good and nearer to %v", best.Size.Nominal, z.Nominal, ideal)
 			}
 		}

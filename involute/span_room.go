@@ -25,9 +25,9 @@ type SpanFace struct{ Land, Radius, HalfWidth float64 }
 //
 // The faces of a helical gear are tilted by β_b: x cos β_b + z sin β_b is the
 // distance from the middle, ±W/2, they touch at z = ±W sin β_b/2, and the section at z
-// is turned by z tan β_b/r_b, which keeps the face touching the flank at y = r_b. Its room is the least distance in front of the face of metal
-// that the face's own outline covers, sought in sections along z: it may
-// come out larger than it is, by a hundredth of the module. The face width is
+// is turned by z tan β_b/r_b, which keeps the face touching the flank at y = r_b.
+// Its room is the least distance in front of the face of metal that the face's own
+// outline covers, sought in sections along z: it may come out larger than it is, by a hundredth of the module. The face width is
 // taken as endless.
 // Derived from the geometry; no standard gives it.
 func (t Tooth) SpanRoom(k int, f SpanFace) float64 {

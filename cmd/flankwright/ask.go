@@ -80,6 +80,9 @@ func (j *job) readBlank(c *cli.Context, gears []*gear) error {
 	if err := j.retip(g, tip); err != nil {
 		return err
 	}
+	if j.problem != nil {
+		return nil // there are no thickness limits to go on with
+	}
 	if err := j.finishGear(g); err != nil {
 		return err
 	}

@@ -1,7 +1,9 @@
 package main
 
 import (
+	"errors"
 	"math"
+	"slices"
 
 	"github.com/urfave/cli/v2"
 
@@ -51,7 +53,9 @@ func backlashCommand() *cli.Command {
 func loadPlanned(c *cli.Context) (*job, []*gear, error) {
 	j, gears, err := loadJob(c)
 	if j != nil && j.problem != nil {
-		gears, err = j.chosen(c.String("gear"))
+		if gears, err = j.chosen(c.String("gear")); err == nil {
+			err = j.readBlank(c, gears)
+		}
 	}
 	if err != nil {
 		return nil, nil, err
@@ -93,29 +97,27 @@ type flankSet struct {
 }
 
 type meshBacklash struct {
-	Gears           []string       `json:"gears"`
-	Asked           *askedBacklash `json:"asked_mm"`
-	Method          string         `json:"held"`
-	Possible        bool           `json:"possible"`
-	Problem         string         `json:"problem,omitempty"`
-	Circumferential span           `json:"circumferential_backlash_mm"`
-	Statistical     span           `json:"statistical_backlash_mm"`
-	Middle          float64        `json:"middle_backlash_mm"`
-	Budget          []budgetRow    `json:"budget"`
-	CostsMost       string         `json:"costs_most"`
-	Left            *leftOver      `json:"left_for_thickness_mm"`
-	Remedies        []remedyText   `json:"remedies"`
-	At              []atHeat       `json:"at"`
-	Random          *randomPairs   `json:"random_pairs"`
-	Customary       []custom       `json:"customary"`
+	Gears           []string     `json:"gears"`
+	Asked           *askedSpan   `json:"asked_mm"`
+	Method          string       `json:"held"`
+	Possible        bool         `json:"possible"`
+	Problem         string       `json:"problem,omitempty"`
+	Circumferential span         `json:"circumferential_backlash_mm"`
+	Statistical     span         `json:"statistical_backlash_mm"`
+	Middle          float64      `json:"middle_backlash_mm"`
+	Budget          []budgetRow  `json:"budget"`
+	CostsMost       string       `json:"costs_most"`
+	Left            *leftOver    `json:"left_for_thickness_mm"`
+	Remedies        []remedyText `json:"remedies"`
+	At              []atHeat     `json:"at"`
+	Random          *randomPairs `json:"random_pairs"`
+	Customary       []custom     `json:"customary"`
 
-	mesh   *mesh
-	budget inspect.Budget
-}
-
-type askedBacklash struct {
-	Min float64  `json:"min"`
-	Max *float64 `json:"max"` // null: the least alone is asked for
+	mesh    *mesh
+	thick   [2]inspect.Limits // of which the budget is
+	problem *inspect.PlanProblem
+	alone   bool // planned by itself, since another mesh's backlash cannot be had
+	budget  inspect.Budget
 }
 
 // leftOver is what the wish leaves the thicknesses of both gears together.
@@ -157,6 +159,7 @@ type backlashOptions struct {
 	pairs              int
 	seed               uint64
 	customary, explain bool
+	ask                ask // what to measure with
 }
 
 func readBacklashOptions(c *cli.Context) (backlashOptions, error) {
@@ -167,13 +170,14 @@ func readBacklashOptions(c *cli.Context) (backlashOptions, error) {
 	case seed < 0:
 		return backlashOptions{}, wrong("--seed: needs a whole number of 0 or more, not %d", seed)
 	}
-	return backlashOptions{pairs, uint64(seed), c.Bool("customary"), c.Bool("explain")}, nil
+	shop, err := loadShop(c)
+	return backlashOptions{pairs, uint64(seed), c.Bool("customary"), c.Bool("explain"), ask{shop: shop}}, err
 }
 
 func newBacklash(j *job, gears []*gear, opt backlashOptions) (*backlash, error) {
 	b := &backlash{job: j, list: gears, Warnings: j.about(gears), Meshes: []meshBacklash{}}
 	if j.problem == nil {
-		b.addGears()
+		b.addGears(opt.ask)
 	}
 	for _, m := range j.meshes {
 		if len(gears) < len(j.gears) && gears[0] != m.first && gears[0] != m.second {
@@ -189,19 +193,19 @@ func newBacklash(j *job, gears []*gear, opt backlashOptions) (*backlash, error) 
 			}
 		}
 		if opt.customary || m.plan.Backlash == nil {
-			one.Customary = j.customary(m)
+			one.Customary = m.customary()
 		}
 		b.Meshes = append(b.Meshes, one)
 	}
 	if opt.explain {
-		b.Explain = j.explainBacklash(b)
+		b.Explain = explainBacklash(b)
 	}
 	return b, nil
 }
 
 // addGears adds each gear's limits and what to measure.
-func (b *backlash) addGears() {
-	b.targets = newTargets(b.job, b.list, ask{})
+func (b *backlash) addGears(a ask) {
+	b.targets = newTargets(b.job, b.list, a)
 	for i, g := range b.list {
 		t := b.targets.gears[i]
 		nominal := g.g.NominalThickness()
@@ -224,33 +228,61 @@ func (j *job) meshBacklash(m *mesh) (meshBacklash, error) {
 		Gears: []string{m.first.name, m.second.name}, mesh: m, Possible: true, Budget: []budgetRow{}, Remedies: []remedyText{}, At: []atHeat{}, Customary: []custom{},
 		Method: methodWord(m.plan.Method),
 	}
-	var err error
-	thick := [2]inspect.Limits{m.first.thickness.Limits, m.second.thickness.Limits}
-	if j.problem != nil {
-		thick = j.thicknessWithout(m)
+	err := out.plan(j)
+	if err != nil {
+		return out, err
 	}
-	if out.budget, err = m.plan.Budget(thick[0], thick[1]); err != nil {
+	if out.budget, err = m.plan.Budget(out.thick[0], out.thick[1]); err != nil {
 		return out, err
 	}
 	out.Circumferential, out.Statistical, out.Middle = toSpan(out.budget.Worst()), toSpan(out.budget.Statistical()), out.budget.Middle
 	out.addRows(j)
 	if want := m.plan.Backlash; want != nil {
-		out.Asked = &askedBacklash{Min: want.Min}
+		out.Asked = &askedSpan{Min: want.Min}
 		if !m.leastOnly {
 			out.Asked.Max = &want.Max
 		}
-		out.Possible = held(out.budget.By(m.plan.Method), *want, m.leastOnly)
-	}
-	if p := j.problem; p != nil && j.meshes[p.Mesh] == m {
-		out.Possible, out.Problem = false, j.planReason(p)
+		out.Possible = out.problem == nil && held(out.budget.By(m.plan.Method), *want, m.leastOnly)
 	}
 	if err := out.addLeft(); err != nil {
 		return out, err
 	}
 	if !out.Possible {
-		out.Remedies = j.remedies(m)
+		out.Remedies = j.remedies(&out)
 	}
-	return out, out.addHeat(thick)
+	return out, out.addHeat()
+}
+
+// plan finds the thicknesses that a budget is shown of: those of the job's plan; or
+// where that failed, at the mesh to blame those that give its least backlash with no
+// tolerance, and at others what comes out of planning them alone.
+func (b *meshBacklash) plan(j *job) error {
+	m := b.mesh
+	switch {
+	case j.problem == nil:
+		b.thick = [2]inspect.Limits{m.first.thickness.Limits, m.second.thickness.Limits}
+		return nil
+	case j.meshes[j.problem.Mesh] == m:
+		b.problem = j.problem
+	default:
+		plan, pair := m.plan, m.pair()
+		plan.First, plan.Second = 0, 1
+		found, err := inspect.Plan(pair[:], []inspect.PlanMesh{plan})
+		if err == nil {
+			b.alone, b.thick = true, [2]inspect.Limits{found[0].Limits, found[1].Limits}
+			return nil
+		}
+		if !errors.As(err, &b.problem) {
+			return err
+		}
+		b.problem.Mesh = m.index
+	}
+	b.Problem = j.planReason(b.problem)
+	for i, g := range []*gear{m.first, m.second} {
+		n := g.g.NominalThickness()
+		b.thick[i] = inspect.Limits{Min: n - b.problem.Sole[i].Max, Max: n - b.problem.Sole[i].Min}
+	}
+	return nil
 }
 
 // methodWord says how a backlash is held.
@@ -266,26 +298,6 @@ func methodWord(m inspect.Method) string {
 func held(got, want inspect.Limits, leastOnly bool) bool {
 	const slack = 1e-6 // mm
 	return got.Min >= want.Min-slack && (leastOnly || got.Max <= want.Max+slack)
-}
-
-// thicknessWithout returns the thicknesses to show a budget of where the backlash
-// cannot be had: those that would give its least with no tolerance, or nominal.
-func (j *job) thicknessWithout(m *mesh) [2]inspect.Limits {
-	thin := j.problem.Sole
-	if j.meshes[j.problem.Mesh] != m {
-		thin = [2]inspect.Limits{}
-		for i, g := range []*gear{m.first, m.second} {
-			if own := g.ownThin(); own != nil {
-				thin[i] = *own
-			}
-		}
-	}
-	var out [2]inspect.Limits
-	for i, g := range []*gear{m.first, m.second} {
-		n := g.g.NominalThickness()
-		out[i] = inspect.Limits{Min: n - thin[i].Max, Max: n - thin[i].Min}
-	}
-	return out
 }
 
 // addLeft adds what a range of backlash leaves for the thicknesses.
@@ -304,24 +316,21 @@ func (b *meshBacklash) addLeft() error {
 }
 
 // addHeat adds the backlash at the ends of the temperature's range and at 20 °C.
-func (b *meshBacklash) addHeat(thick [2]inspect.Limits) error {
+func (b *meshBacklash) addHeat() error {
 	m := b.mesh
 	heats := []float64{inspect.ReferenceTemperature}
-	if t := m.temperature; t != nil && *t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
-		heats = nil
-		for _, h := range []float64{t.Min, inspect.ReferenceTemperature, t.Max} {
-			if len(heats) == 0 || h > heats[len(heats)-1] {
-				heats = append(heats, h)
-			}
-		}
+	if m.temperature != nil {
+		heats = append(heats, m.temperature.Min, m.temperature.Max)
+		slices.Sort(heats)
+		heats = slices.Compact(heats)
 	}
 	for _, h := range heats {
 		at := m.plan.AtTemperature(h)
-		budget, err := at.Budget(thick[0], thick[1])
+		budget, err := at.Budget(b.thick[0], b.thick[1])
 		if err != nil {
 			return err
 		}
-		b.At = append(b.At, atHeat{h, toSpan(budget.Worst()), toSpan(budget.Statistical()), budget.MiddleIn(at.Climate)})
+		b.At = append(b.At, atHeat{h, toSpan(budget.Worst()), toSpan(budget.Statistical()), budget.MiddleWarm()})
 	}
 	return nil
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"flankwright/inspect"
 )
@@ -10,80 +11,112 @@ import (
 // A remedyText is one change that alone would make a backlash possible.
 type remedyText struct {
 	What  string   `json:"what"`
-	Value *float64 `json:"value,omitempty"` // mm, or a share
+	Value *float64 `json:"value_mm,omitempty"`
+	Share *float64 `json:"share,omitempty"` // of what it is
 	Text  string   `json:"text"`
 }
 
-// remedies lists what would make a mesh's backlash possible.
-func (j *job) remedies(m *mesh) []remedyText {
+// remedies lists what would make a mesh's backlash possible. Values are worded rounded
+// to the side on which they work.
+func (j *job) remedies(b *meshBacklash) []remedyText {
+	if b.problem == nil {
+		return j.fixedRemedies(b)
+	}
 	out := []remedyText{}
-	add := func(what string, value float64, format string, args ...any) {
-		out = append(out, remedyText{what, &value, fmt.Sprintf(format, args...)})
-	}
-	p := j.problem
-	if p == nil || j.meshes[p.Mesh] != m {
-		j.openCenter(m, add)
+	if b.problem.Kind == inspect.Conflict {
 		return out
 	}
-	if p.Kind == inspect.Conflict {
-		return out
-	}
-	for _, r := range m.plan.Remedies(m.pair(), p) {
-		switch r.Kind {
-		case inspect.WidenBacklash:
-			add("greatest backlash", r.Value, "allow more than %s of backlash; a gear's tolerance is what goes beyond", j.length(r.Value))
-		case inspect.AskForMore:
-			add("least backlash", r.Value, "ask for %s or more: nominal teeth already have that", j.length(r.Value))
-		case inspect.CloserCenter:
-			add("center tolerance", r.Value, "hold the center distance closer than ±%s", j.length(r.Value))
-		case inspect.CloserRunout:
-			add("runout", r.Value, "bring the runout of both gears under %s", j.runoutsText(m, r.Value))
-		case inspect.FinerTeeth:
-			if text := finerText(m, r.Value); text != "" {
-				add("accuracy", r.Value, "%s", text)
-			}
-		case inspect.SteadierWarmth:
-			add("climate", r.Value, "keep heat and swelling to less than %.0f %% of it, or take materials that grow alike", 100*r.Value)
-		case inspect.MoveCenter:
-			add("center distance", r.Value, "%s, to %s", j.moveText(r.Value), j.length(m.plan.Center.Middle()+r.Value))
-		case inspect.Statistically:
-			out = append(out, remedyText{"statistically", nil, "hold the backlash statistically, budget = \"statistical\": a few pairs will then lie outside, and pairs drawn at random show how many"})
-		case inspect.WidenStatistically:
-			add("greatest backlash, held statistically", r.Value, "allow more than %s and hold it statistically, budget = \"statistical\"", j.length(r.Value))
+	m := b.mesh
+	for _, r := range m.plan.Remedies(m.pair(), b.problem) {
+		if text, ok := j.remedyText(m, r, b.problem); ok {
+			out = append(out, text)
 		}
 	}
 	return out
 }
 
-// openCenter says how far to move the center where the thicknesses are given and
-// the backlash falls short, or the other way round.
-func (j *job) openCenter(m *mesh, add func(what string, value float64, format string, args ...any)) {
-	want := m.plan.Backlash
-	b, err := m.budget()
-	if err != nil || want == nil {
-		return
+// remedyText words a remedy.
+func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (remedyText, bool) {
+	length := func(what, format string, args ...any) (remedyText, bool) {
+		return remedyText{What: what, Value: &r.Value, Text: fmt.Sprintf(format, args...)}, true
 	}
-	if got := b.By(m.plan.Method); got.Min >= want.Min && !m.leastOnly {
-		add("greatest backlash", got.Max, "allow %s of backlash", j.length(got.Max))
-		return
+	share := func(what, format string, args ...any) (remedyText, bool) {
+		return remedyText{What: what, Share: &r.Value, Text: fmt.Sprintf(format, args...)}, true
 	}
-	if by, ok := m.plan.CenterFor(m.first.thickness.Limits, m.second.thickness.Limits, want.Min); ok {
-		add("center distance", by, "%s, to %s; then the least is what is asked for", j.moveText(by), j.length(m.plan.Center.Middle()+by))
+	switch r.Kind {
+	case inspect.WidenBacklash:
+		return length("greatest backlash", "allow more than %s of backlash; a gear's tolerance is what goes beyond", j.lengthUp(r.Value))
+	case inspect.WidenStatistically:
+		return length("greatest backlash, held statistically", "allow more than %s and hold it statistically, budget = \"statistical\"", j.lengthUp(r.Value))
+	case inspect.AskForMore:
+		return length("least backlash", "ask for %s or more, and allow more than %s: nominal teeth already have that", j.lengthUp(p.Nominal.Min), j.lengthUp(p.Nominal.Max))
+	case inspect.CloserCenter:
+		return length("center tolerance", "hold the center distance closer than ±%s", j.lengthDown(r.Value))
+	case inspect.CloserRunout:
+		return share("runout", "bring the runout under %s (%.0f %% of what it is)", j.runoutsText(m, r.Value), math.Floor(100*r.Value))
+	case inspect.FinerTeeth:
+		text := finerText(m, r.Value)
+		t, _ := share("accuracy", "%s", text)
+		return t, text != ""
+	case inspect.SteadierWarmth:
+		return share("climate", "keep heat and swelling to less than %.0f %% of it, or take materials that grow alike", math.Floor(100*r.Value))
+	case inspect.MoveCenter:
+		return length("center distance", "%s", j.moveText(m, r.Value))
 	}
+	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\": a few pairs will then lie outside, and pairs drawn at random show how many"}, true
 }
 
-func (j *job) moveText(by float64) string {
+// fixedRemedies says what to change where both thicknesses are given and the backlash
+// is not what is asked for: the center, the greatest backlash allowed, or both.
+func (j *job) fixedRemedies(b *meshBacklash) []remedyText {
+	m, want, got := b.mesh, b.mesh.plan.Backlash, b.budget.By(b.mesh.plan.Method)
+	if want == nil {
+		return []remedyText{}
+	}
+	if got.Min >= want.Min {
+		return []remedyText{{What: "greatest backlash", Value: &got.Max, Text: "allow " + j.lengthUp(got.Max) + " of backlash"}}
+	}
+	by, ok := m.plan.CenterFor(b.thick[0], b.thick[1], want.Min)
+	if !ok {
+		return []remedyText{}
+	}
+	text := j.moveText(m, by)
+	moved, err := m.plan.Moved(by).Budget(b.thick[0], b.thick[1])
+	if err != nil {
+		return []remedyText{}
+	}
+	if most := moved.By(m.plan.Method).Max; !m.leastOnly && most > want.Max {
+		text += ", and allow " + j.lengthUp(most+j.lastDigit()) + " of backlash"
+	}
+	return []remedyText{{What: "center distance", Value: &by, Text: text}}
+}
+
+// lastDigit is one of the last digit that lengths are shown with, mm.
+func (r request) lastDigit() float64 {
+	return r.display.MM() * math.Pow10(-r.display.Decimals())
+}
+
+// moveText words a move of the center distance, rounded up.
+func (j *job) moveText(m *mesh, by float64) string {
+	size := j.lengthUp(math.Abs(by))
+	last := j.lastDigit()
+	steps := math.Ceil(math.Abs(by)/last-1e-6) * last
+	to := j.length(m.plan.Center.Middle() + math.Copysign(steps, by))
 	if by < 0 {
-		return "close the center distance by " + j.length(-by)
+		return "close the center distance by " + size + ", to " + to
 	}
-	return "open the center distance by " + j.length(by)
+	return "open the center distance by " + size + ", to " + to
 }
 
-// runoutsText words both runouts at a share of what they are.
+// runoutsText words the runouts at a share of what they are.
 func (j *job) runoutsText(m *mesh, share float64) string {
-	d := m.plan.Deviations
-	text := fmt.Sprintf("%s and %s", j.length(d[0].Runout*share), j.length(d[1].Runout*share))
-	return text + fmt.Sprintf(" (%.0f %% of what they are)", 100*share)
+	var words []string
+	for i, g := range []*gear{m.first, m.second} {
+		if r := m.plan.Deviations[i].Runout; r > 0 {
+			words = append(words, j.lengthDown(r*share)+" for "+g.name)
+		}
+	}
+	return strings.Join(words, " and ")
 }
 
 // finerText words by how many classes finer the gears must be: a class is a
@@ -93,7 +126,10 @@ func finerText(m *mesh, share float64) string {
 		return ""
 	}
 	n := int(math.Floor(2*math.Log2(1/share))) + 1
-	text := fmt.Sprintf("make the teeth finer by %s", plural2(n, "class", "classes"))
+	text := "make the teeth finer by 1 class"
+	if n > 1 {
+		text = fmt.Sprintf("make the teeth finer by %d classes", n)
+	}
 	for _, g := range []*gear{m.first, m.second} {
 		if f := g.flanks; f != nil {
 			finer := f.Accuracy
@@ -104,11 +140,4 @@ func finerText(m *mesh, share float64) string {
 		}
 	}
 	return text
-}
-
-func plural2(n int, one, many string) string {
-	if n == 1 {
-		return "1 " + one
-	}
-	return fmt.Sprintf("%d %s", n, many)
 }

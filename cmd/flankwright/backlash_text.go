@@ -23,6 +23,7 @@ func (b *backlash) text(p *page, digits int) []byte {
 	if b.targets != nil {
 		p.blank()
 		p.grid(b.limitsGrid(u, digits))
+		b.job.moreDigits(p, b.list, digits)
 		b.measureText(p, digits)
 	}
 	for _, m := range b.Meshes {
@@ -52,7 +53,7 @@ func (b *meshBacklash) problemText(p *page, j *job) {
 			j.length(got.Min), j.length(got.Max), b.Method, j.wishText(b.mesh))
 	}
 	p.wrapped("NO: "+text+".", "  ")
-	if b.Left != nil && b.CostsMost != "" && j.problem != nil && j.problem.Kind == inspect.NoRoom {
+	if b.Left != nil && b.CostsMost != "" && b.problem != nil && b.problem.Kind == inspect.NoRoom {
 		p.wrapped(fmt.Sprintf("Left for the teeth: %s at worst, %s statistically. Most goes to: %s.", j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost), "  ")
 	}
 	if len(b.Remedies) > 0 {
@@ -73,7 +74,7 @@ func (b *backlash) limitsGrid(u inspect.Unit, digits int) grid {
 		nominal := x.g.NominalThickness()
 		t := u.FormatLimits(inspect.Limits{Min: nominal - x.thickness.Limits.Max, Max: nominal - x.thickness.Limits.Min}, digits)
 		low, high, thinLow, thinHigh = append(low, s.Low), append(high, s.High), append(thinLow, t.Low), append(thinHigh, t.High)
-		left, by = append(left, u.Format(x.thickness.Limits.Width(), digits)), append(by, thicknessWords(x))
+		left, by = append(left, u.Format(x.thickness.Limits.Width(), s.Decimals)), append(by, thicknessWords(x))
 	}
 	unit := u.String()
 	g.row("Tooth thickness, normal, least", unit, low...)
@@ -136,7 +137,10 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	g.row("  comes to", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
 	p.grid(g)
 	p.line("Statistically: the rows are shares of the root of the sum of squares; what every pair meets in full, as heat, is added in full.")
-	if j.problem != nil {
+	switch {
+	case b.alone:
+		p.line("Planned alone, since the backlash of another mesh cannot be had.")
+	case b.problem != nil:
 		p.line("Shown with teeth that give the least asked for, and have no tolerance.")
 	}
 	b.accuracyText(p)

@@ -1,8 +1,6 @@
 package main
 
 import (
-	"math"
-
 	"flankwright/inspect"
 	"flankwright/refdata"
 )
@@ -19,15 +17,20 @@ func (g *gear) readAccuracy() error {
 	if err != nil {
 		return bad("accuracy", g.settings.vals["accuracy"], "%v", err)
 	}
-	t, err := class.Tolerances(refdata.ToothSize{
-		ReferenceDiameter: g.g.ReferenceDiameter(), Module: g.g.Module(), FaceWidth: g.faceWidth,
-		Teeth: g.g.Teeth(), HelixAngle: g.g.Spec().Helix,
-	})
+	t, err := class.Tolerances(g.toothSize())
 	if err != nil {
 		return bad("accuracy", g.settings.vals["accuracy"], "%v", err)
 	}
 	g.flanks = &t
 	return nil
+}
+
+// toothSize returns what flank tolerances depend on.
+func (g *gear) toothSize() refdata.ToothSize {
+	return refdata.ToothSize{
+		ReferenceDiameter: g.g.ReferenceDiameter(), Module: g.g.Module(), FaceWidth: g.faceWidth,
+		Teeth: g.g.Teeth(), HelixAngle: g.g.Spec().Helix,
+	}
 }
 
 // deviations returns how far a gear's teeth may be from true: by its class, with
@@ -116,10 +119,4 @@ func (j *job) wishText(m *mesh) string {
 		return j.length(want.Min) + " or more"
 	}
 	return j.length(want.Min) + " to " + j.length(want.Max)
-}
-
-// angleShare returns a backlash along the pitch circle as an angle of each gear, radians.
-func (m *mesh) angles(j float64) (first, second float64) {
-	dw1, dw2 := m.plan.Mesh.PitchDiameters(m.plan.Nominal())
-	return 2 * j / math.Abs(dw1), 2 * j / math.Abs(dw2)
 }

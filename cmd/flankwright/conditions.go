@@ -55,11 +55,16 @@ func (g *gear) readConditions() (err error) {
 		return err
 	case ok && mm < 0:
 		return bad("runout", g.settings.vals["runout"], "is the indicator's total reading, 0 or more")
+	case ok && mm > mostRunout*g.g.Module():
+		return bad("runout", g.settings.vals["runout"], "of %.4g modules is no gear that runs; the indicator's total reading must be under %.1f × module", mm/g.g.Module(), mostRunout)
 	case ok:
 		g.runout = &mm
 	}
 	return nil
 }
+
+// mostRunout is the most runout that is believed, × module: a quarter of the tooth's height.
+const mostRunout = 0.5
 
 // The greatest and the least expansion of a material that is believed, 1e-6/K:
 // from a tenth of the least of nickel-iron alloys to rubber.
@@ -159,9 +164,6 @@ func (s settings) accuracy(key string) (string, error) {
 	return strings.TrimSpace(text), err
 }
 
-// reference is the temperature that lengths are given at, °C (ISO 1).
-const reference = 20
-
 // readService reads what a mesh meets in service, and how its backlash is budgeted.
 func (j *job) readService(m *mesh, s settings) error {
 	budget, _, err := s.word("budget", "worst", "statistical")
@@ -185,7 +187,7 @@ func (j *job) readService(m *mesh, s settings) error {
 		return bad("temperature", v, "%v", err)
 	}
 	m.temperature = &l
-	if l.Min == reference && l.Max == reference {
+	if l.Min == inspect.ReferenceTemperature && l.Max == inspect.ReferenceTemperature {
 		return nil
 	}
 	return j.checkExpansions(m, s)
@@ -211,7 +213,7 @@ func (j *job) checkExpansions(m *mesh, s settings) error {
 		wanted = append(wanted, housing)
 	}
 	if len(wanted) > 0 {
-		return bad("temperature", s.vals["temperature"], "other than %d °C needs to know how gears and housing grow: give %s", reference, strings.Join(wanted, ", and "))
+		return bad("temperature", s.vals["temperature"], "other than %d °C needs to know how gears and housing grow: give %s", inspect.ReferenceTemperature, strings.Join(wanted, ", and "))
 	}
 	for _, part := range []struct {
 		key string

@@ -36,7 +36,7 @@ const usualCallOut = "cd25"
 
 // customary lists the habits that reach this pair. Backlash is at the nominal center
 // distance; thinnings are what each gear's share of it takes there at the tightest.
-func (j *job) customary(m *mesh) []custom {
+func (m *mesh) customary() []custom {
 	a, mn := math.Abs(m.plan.Nominal()), m.first.g.Module()
 	dp, center := 25.4/mn, a/25.4
 	out := []custom{}

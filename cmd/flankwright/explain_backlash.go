@@ -18,13 +18,13 @@ const (
 	srcRounded = "; then rounded as clause 5.2 rounds"
 )
 
-func (j *job) explainBacklash(b *backlash) []explanation {
+func explainBacklash(b *backlash) []explanation {
 	var list []explanation
 	for _, g := range b.list {
 		list = append(list, explainFlanks(g)...)
 	}
 	for _, m := range b.Meshes {
-		list = append(list, j.explainBudget(m)...)
+		list = append(list, explainBudget(m)...)
 	}
 	return list
 }
@@ -35,9 +35,7 @@ func explainFlanks(g *gear) []explanation {
 	if t == nil {
 		return nil
 	}
-	raw, err := t.Accuracy.Unrounded(refdata.ToothSize{
-		ReferenceDiameter: g.g.ReferenceDiameter(), Module: g.g.Module(), FaceWidth: g.faceWidth, Teeth: g.g.Teeth(), HelixAngle: g.g.Spec().Helix,
-	})
+	raw, err := t.Accuracy.Unrounded(g.toothSize())
 	if err != nil {
 		return nil
 	}
@@ -67,15 +65,11 @@ func explainFlanks(g *gear) []explanation {
 }
 
 // explainBudget explains each row of a budget, the totals and the customs.
-func (j *job) explainBudget(b meshBacklash) []explanation {
+func explainBudget(b meshBacklash) []explanation {
 	m := b.mesh
 	e := &explainer{about: m.first.name + " and " + m.second.name}
-	thick := [2]inspect.Limits{m.first.thickness.Limits, m.second.thickness.Limits}
-	if j.problem != nil {
-		thick = j.thicknessWithout(m)
-	}
 	for _, least := range []bool{true, false} {
-		stations, err := m.plan.Stations(thick[0], thick[1], least)
+		stations, err := m.plan.Stations(b.thick[0], b.thick[1], least)
 		if err != nil {
 			continue
 		}

@@ -116,8 +116,8 @@ func explainLimits(e *explainer, g *gear, an, m, hfP, haP, d quantity) {
 	}
 	if g.thin != nil {
 		sn := mm("s_n", g.nominal.Thickness())
-		e.result("thickest tooth, from thin", "s_nmax = s_n - t_min", mm("s_nmax", g.thickness.Limits.Max), "the job", sn, mm("t_min", g.thin.Min))
-		e.result("thinnest tooth, from thin", "s_nmin = s_n - t_max", mm("s_nmin", low), "the job", sn, mm("t_max", g.thin.Max))
+		e.result("thickest tooth, from thin", "s_nmax = s_n - t_min", mm("s_nmax", g.thickness.Limits.Max), orDefault(g.thinSource, "the job"), sn, mm("t_min", g.thin.Min))
+		e.result("thinnest tooth, from thin", "s_nmin = s_n - t_max", mm("s_nmin", low), orDefault(g.thinSource, "the job"), sn, mm("t_max", g.thin.Max))
 	}
 	explainFixed(e, g, d)
 	dfe := mm("d_fE", g.rootLimits().Min)

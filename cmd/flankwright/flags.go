@@ -264,6 +264,11 @@ func (r *request) overrideByFlags(c *cli.Context) error {
 		return wrong("%s need a job with exactly one mesh; this one has %d: write them into its [[mesh]]", meshFlags(), len(r.meshes))
 	}
 	r.meshes[0] = r.meshes[0].with(mesh)
+	if text, _ := asText(mesh["backlash"]); strings.Contains(text, "..") && !c.IsSet("thin-tolerance") {
+		for i := range r.gears { // which were for the job's one value
+			r.gears[i].vals = without(r.gears[i].vals, "thin_tolerance")
+		}
+	}
 	return nil
 }
 

@@ -155,6 +155,12 @@ func (r request) lengthDown(mm float64) string {
 	return r.display.FormatLimits(inspect.Limits{Min: 0, Max: mm}, r.display.Decimals()).High + " " + r.display.String()
 }
 
+// lengthUp words a length rounded up, so that what it says is enough.
+func (r request) lengthUp(mm float64) string {
+	const far = 1e9
+	return r.display.FormatLimits(inspect.Limits{Min: mm, Max: far}, r.display.Decimals()).Low + " " + r.display.String()
+}
+
 // usualMill words the largest usual end mill that is no larger than the size, in
 // the display's own system.
 func (j *job) usualMill(mm float64) string {

@@ -145,6 +145,11 @@ func resolve(r request) (*job, error) {
 	if err := j.planThickness(); err != nil {
 		return j, err
 	}
+	for _, m := range j.meshes {
+		if _, err := m.budget(); err != nil {
+			return nil, j.impossibleMesh(m, err)
+		}
+	}
 	for _, g := range j.gears {
 		if err := j.finishGear(g); err != nil {
 			return nil, err

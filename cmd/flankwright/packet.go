@@ -128,7 +128,7 @@ func (j *job) packetFiles(c *cli.Context, t *targets) ([]export.File, *contours,
 		{"contour", measured, func() []byte { return measured.text(&page{}, digits) }},
 	}
 	if len(j.meshes) > 0 {
-		b, err := newBacklash(j, t.list, backlashOptions{pairs: usualPairs, seed: usualSeed, explain: c.Bool("explain")})
+		b, err := newBacklash(j, t.list, backlashOptions{pairs: usualPairs, seed: usualSeed, explain: c.Bool("explain"), ask: t.ask})
 		if err != nil {
 			return nil, nil, err
 		}

@@ -85,12 +85,9 @@ func dropFar(pins []inspect.PinCandidate, ideal float64) []inspect.PinCandidate 
 	return near
 }
 
-// samePin is how near two pins are one pin, mm: a tenth of the finest class.
-const samePin = 5e-5
-
 func holds(list []inspect.PinCandidate, d float64) bool {
 	for _, p := range list {
-		if math.Abs(p.Diameter-d) < samePin {
+		if math.Abs(p.Diameter-d) < inspect.SamePin {
 			return true
 		}
 	}

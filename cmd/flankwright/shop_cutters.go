@@ -1,7 +1,9 @@
 package main
 
 import (
+	"errors"
 	"math"
+	"strings"
 
 	"flankwright/inspect"
 	"flankwright/refdata"
@@ -143,7 +145,9 @@ func cutterTeeth(s settings) (teeth [2]int, err error) {
 	}
 	text, isText := asText(v)
 	l := inspect.Limits{}
-	if isText {
+	if isText && strings.ContainsAny(text, "mn\"″/") { // a length's unit, or a fraction
+		err = errors.New("no numbers of teeth")
+	} else if isText {
 		l, err = inspect.ParseLimits(text, inspect.Millimeter)
 	} else if l.Min, _, err = s.number("teeth"); err == nil {
 		l.Max = l.Min

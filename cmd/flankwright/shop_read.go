@@ -162,7 +162,7 @@ func (r *shopReader) readSet(s settings, pin inspect.Pin, place string) error {
 	case to > largestPin:
 		return bad("to", s.vals["to"], "%s is no pin or ball; at most %s", r.length(to), r.length(largestPin))
 	case steps+1 > mostSizes:
-		return bad("step", s.vals["step"], "makes %.0f sizes; a set has %d at most", steps+1, mostSizes)
+		return bad("step", s.vals["step"], "is too fine: a set has %d sizes at most", mostSizes)
 	case math.Abs(steps-math.Round(steps)) > evenStep:
 		return bad("step", s.vals["step"], "does not divide the way from %s to %s evenly", r.fine(from), r.fine(to))
 	}

@@ -108,13 +108,29 @@ func kindOfPins(ball bool) string {
 	return "pins"
 }
 
-// takeAsked takes the first usable of the pins asked for; their sizes are the user's word.
+// onlyOne reports whether the shop has a pin (or ball) of a size, and no second one.
+func (s *shop) onlyOne(d float64, ball bool) bool {
+	for _, z := range s.stock.Sizes(ball) {
+		if math.Abs(z.Nominal-d) < inspect.SamePin {
+			_, two := z.Pick(involute.TwoPins)
+			return !two
+		}
+	}
+	return false
+}
+
+// takeAsked takes the first usable of the pins asked for. Their sizes are the user's
+// word, be they listed in the shop or not; of one that is listed there must be two.
 func (j *job) takeAsked(out *gearTargets, g *gear, a ask) {
 	for _, p := range out.OverPins {
 		if !p.Usable || p.Measurement == nil {
 			continue
 		}
 		l := inspect.Limits{Min: p.Measurement.Min, Max: p.Measurement.Max}
+		if a.shop.onlyOne(p.Pin, p.Kind == "balls") {
+			out.Missing = append(out.Missing, missing{"over pins", fmt.Sprintf("there is only one %s in the shop; two are needed", pinText(p.Pin, j.display))})
+			continue
+		}
 		gauge := a.shop.stock.GaugeFor(l)
 		if gauge == nil {
 			out.Missing = append(out.Missing, missing{"over pins", j.noGauge(l)})
@@ -185,7 +201,7 @@ func (s *shop) shopMeasured(d float64, ball bool) (*float64, inspect.Pick) {
 		return nil, inspect.Pick{}
 	}
 	for _, z := range s.stock.Sizes(ball) {
-		if math.Abs(z.Nominal-d) >= samePin {
+		if math.Abs(z.Nominal-d) >= inspect.SamePin {
 			continue
 		}
 		pick, ok := z.Pick(involute.TwoPins)

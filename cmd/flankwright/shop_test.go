@@ -20,7 +20,9 @@ func init() {
 	if os.Getenv("GOENV") == "" {
 		os.Setenv("GOENV", filepath.Join(folder, "go", "env")) // go list still finds its settings
 	}
-	os.Setenv("XDG_CONFIG_HOME", filepath.Join(os.TempDir(), "no-flankwright-shop"))
+	for _, name := range []string{"XDG_CONFIG_HOME", "AppData"} { // Linux, Windows
+		os.Setenv(name, filepath.Join(os.TempDir(), "no-flankwright-shop"))
+	}
 }
 
 func mustParseShop(t *testing.T, text string) *shop {

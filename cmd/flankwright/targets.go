@@ -46,6 +46,7 @@ type targets struct {
 
 	job   *job
 	list  []*gear
+	ask   ask  // what was asked for
 	asked bool // the pins were asked for, not chosen
 	gears []gearTargets
 }
@@ -119,7 +120,7 @@ type chordTarget struct {
 }
 
 func newTargets(j *job, gears []*gear, a ask) *targets {
-	t := &targets{job: j, list: gears, asked: a.pins != nil, Warnings: j.about(gears)}
+	t := &targets{job: j, list: gears, ask: a, asked: a.pins != nil, Warnings: j.about(gears)}
 	for _, g := range gears {
 		one := j.gearTargets(g, a)
 		t.gears = append(t.gears, one)

@@ -108,7 +108,7 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 	text := fmt.Sprintf("%s and %s: %s of backlash ", m.first.name, m.second.name, j.wishText(m))
 	switch p.Kind {
 	case inspect.TooThick:
-		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s, at the least. Ask for %s or more, ", j.length(p.Play), j.length(p.Play))
+		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s, at the least. Ask for that or more, ", j.lengthUp(p.Nominal.Min))
 		if p.Tight > 0 {
 			text += fmt.Sprintf("bring the center toward %s, ", j.length(p.Tight))
 		}
@@ -125,7 +125,7 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 	if m.first.ownThin() != nil || m.second.ownThin() != nil {
 		takers, verb = takers+" and the gear that is already fixed", "take"
 	}
-	return text + fmt.Sprintf("leaves nothing for the teeth: %s %s it all. Allow more than %s, or tighten the tolerance", takers, verb, j.length(p.Most))
+	return text + fmt.Sprintf("leaves nothing for the teeth: %s %s it all. Allow more than %s, or tighten the tolerance", takers, verb, j.lengthUp(p.Most))
 }
 
 // faultText words why a measure cannot be used.
