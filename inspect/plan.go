@@ -91,7 +91,7 @@ const noThinning = 1e-9
 // shares, least thinning and range alike, which suits all; its mates in one mesh
 // only take what that leaves them.
 func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
-	p := planner{gears: gears, meshes: meshes, thin: make([]Limits, len(gears)), by: make([]Decider, len(gears)), hard: make([]bool, len(gears))}
+	p := planner{gears: gears, meshes: meshes, thin: make([]Limits, len(gears)), by: make([]Decider, len(gears)), hard: make([]bool, len(gears)), bound: make([]*Limits, len(gears))}
 	for i, g := range gears {
 		p.by[i] = ByNothing
 		if g.Thin != nil {
@@ -123,8 +123,9 @@ type planner struct {
 	meshes []PlanMesh
 	thin   []Limits
 	by     []Decider
-	active []int  // the meshes that decide something
-	hard   []bool // by gear: its share is not to be changed
+	active []int     // the meshes that decide something
+	hard   []bool    // by gear: its share is not to be changed
+	bound  []*Limits // by gear: what meshes with settled gears leave it
 }
 
 // pair returns the gears of a mesh.
@@ -132,26 +133,121 @@ func (p *planner) pair(k int) [2]PlanGear {
 	return [2]PlanGear{p.gears[p.meshes[k].First], p.gears[p.meshes[k].Second]}
 }
 
-// shareOut gives every free gear the least of the shares that its meshes ask for.
+// shareOut gives every free gear its share: first of meshes that name the gear that
+// takes it all, then of meshes whose other gear is settled so, which bounds it, then
+// the least of what the rest ask for.
 func (p *planner) shareOut() error {
 	for k, m := range p.meshes {
-		pair := p.pair(k)
-		if m.Backlash == nil || (pair[0].Thin != nil && pair[1].Thin != nil) {
-			continue
+		if m.Backlash != nil && (p.gears[m.First].Thin == nil || p.gears[m.Second].Thin == nil) {
+			p.active = append(p.active, k)
 		}
-		thin, err := m.shares(k, pair)
-		if err != nil {
-			return err
-		}
-		p.active = append(p.active, k)
-		for i, gear := range []int{m.First, m.Second} {
-			if pair[i].Thin == nil {
-				hard := (m.Share == ShareFirst || m.Share == ShareSecond) && pair[1-i].Thin == nil
-				p.take(gear, thin[i], hard)
+	}
+	for _, pass := range []func(k int) error{p.shareNamed, p.shareBound, p.shareSoft} {
+		for _, k := range p.active {
+			if err := pass(k); err != nil {
+				return err
 			}
 		}
 	}
+	p.keepBounds()
 	return nil
+}
+
+// settled returns the gears of a mesh with those fixed that are settled: by their own
+// thinning, or by a mesh that names the gear that takes all; and how many they are.
+func (p *planner) settled(k int) (pair [2]PlanGear, n int) {
+	pair = p.pair(k)
+	for i, gear := range []int{p.meshes[k].First, p.meshes[k].Second} {
+		if pair[i].Thin == nil && p.hard[gear] {
+			pair[i].Thin = &p.thin[gear]
+		}
+		if pair[i].Thin != nil {
+			n++
+		}
+	}
+	return pair, n
+}
+
+// named reports whether a mesh with two free gears names the one that takes all.
+func (p *planner) named(k int) bool {
+	m, pair := p.meshes[k], p.pair(k)
+	return pair[0].Thin == nil && pair[1].Thin == nil && (m.Share == ShareFirst || m.Share == ShareSecond)
+}
+
+// shareNamed shares out in a mesh that names the gear that takes all.
+func (p *planner) shareNamed(k int) error {
+	if !p.named(k) {
+		return nil
+	}
+	thin, err := p.meshes[k].shares(k, p.pair(k))
+	if err == nil {
+		p.take(p.meshes[k].First, thin[0], true)
+		p.take(p.meshes[k].Second, thin[1], true)
+	}
+	return err
+}
+
+// shareBound bounds the free gear of a mesh whose other gear is settled.
+func (p *planner) shareBound(k int) error {
+	pair, n := p.settled(k)
+	if n != 1 || p.named(k) {
+		return nil
+	}
+	for i, gear := range []int{p.meshes[k].First, p.meshes[k].Second} {
+		mate := [2]int{p.meshes[k].Second, p.meshes[k].First}[i]
+		switch {
+		case pair[i].Thin != nil:
+		case p.hard[mate]:
+			left, err := p.left(k, i, pair)
+			if err != nil {
+				return err
+			}
+			p.bind(gear, left)
+		default:
+			thin, err := p.meshes[k].shares(k, pair)
+			if err != nil {
+				return err
+			}
+			p.bind(gear, thin[i])
+		}
+	}
+	return nil
+}
+
+// shareSoft shares out in a mesh of two gears that can both give way.
+func (p *planner) shareSoft(k int) error {
+	pair, n := p.settled(k)
+	if n != 0 {
+		return nil
+	}
+	thin, err := p.meshes[k].shares(k, pair)
+	if err == nil {
+		p.take(p.meshes[k].First, thin[0], false)
+		p.take(p.meshes[k].Second, thin[1], false)
+	}
+	return err
+}
+
+// bind bounds a gear by what a mesh with a settled gear leaves it.
+func (p *planner) bind(gear int, thin Limits) {
+	if old := p.bound[gear]; old != nil {
+		thin = Limits{max(old.Min, thin.Min), min(old.Max, thin.Max)}
+	}
+	p.bound[gear] = &thin
+}
+
+// keepBounds brings what gears take into their bounds; a gear that has only bounds takes them.
+func (p *planner) keepBounds() {
+	for i, bound := range p.bound {
+		switch {
+		case bound == nil:
+		case p.by[i] != ByBacklash:
+			p.by[i], p.thin[i] = ByBacklash, *bound
+		default:
+			least := max(bound.Min, min(p.thin[i].Min, bound.Max))
+			p.thin[i] = Limits{least, min(least+p.thin[i].Width(), bound.Max)}
+		}
+	}
 }
 
 // take adds one mesh's share to what a gear has. A hard share, of a mesh that
@@ -173,30 +269,19 @@ func (p *planner) take(gear int, thin Limits, hard bool) {
 	p.thin[gear] = Limits{least, least + min(old.Width(), thin.Width())}
 }
 
-// settle gives what a gear in several meshes leaves over to its mates, and
-// checks every mesh.
+// settle deepens meshes whose gears both run in others too, gives what a gear in
+// several meshes leaves over to its mates, and checks every mesh.
 func (p *planner) settle() error {
 	for _, k := range p.active {
-		m := p.meshes[k]
-		for i, own := range []int{m.First, m.Second} {
-			mate := [2]int{m.Second, m.First}[i]
-			if p.by[own] != ByBacklash || p.hard[own] || p.count(own) != 1 || p.count(mate) < 2 {
-				continue
-			}
-			pair := p.pair(k)
-			pair[1-i].Thin = &p.thin[mate]
-			thin, err := m.shares(k, pair)
-			if problem, ok := err.(*PlanProblem); ok && problem.Kind == TooThick {
-				err = nil // a mate that another mesh thins more than this one asks leaves nothing to take, not a thicker tooth
-			}
-			if err != nil {
+		if p.yielding(k) < 0 {
+			if err := p.deepen(k); err != nil {
 				return p.conflict(k)
 			}
-			p.thin[own] = Limits{max(0, thin[i].Min), thin[i].Max}
-			if m.LeastOnly { // then the width is what is stated
-				p.thin[own].Max = p.thin[own].Min + thin[i].Width()
-			}
-			break
+		}
+	}
+	for _, k := range p.active {
+		if err := p.yield(k); err != nil {
+			return p.conflict(k)
 		}
 	}
 	for _, k := range p.active {
@@ -205,6 +290,46 @@ func (p *planner) settle() error {
 		}
 	}
 	return p.check()
+}
+
+// yielding returns which gear of a mesh, 0 or 1, runs in no other and so can take
+// what the other leaves it; -1 for none.
+func (p *planner) yielding(k int) int {
+	m := p.meshes[k]
+	for i, own := range []int{m.First, m.Second} {
+		mate := [2]int{m.Second, m.First}[i]
+		if p.by[own] == ByBacklash && !p.hard[own] && p.count(own) == 1 && p.count(mate) > 1 {
+			return i
+		}
+	}
+	return -1
+}
+
+// yield gives the yielding gear of a mesh what the other leaves it.
+func (p *planner) yield(k int) error {
+	i := p.yielding(k)
+	if i < 0 {
+		return nil
+	}
+	m, pair := p.meshes[k], p.pair(k)
+	pair[1-i].Thin = &p.thin[[2]int{m.Second, m.First}[i]]
+	left, err := p.left(k, i, pair)
+	p.thin[[2]int{m.First, m.Second}[i]] = left
+	return err
+}
+
+// left returns what the other gear of a mesh, which is settled, leaves gear i of it. One
+// that another mesh thins more than this one asks leaves nothing to take, not a thicker tooth.
+func (p *planner) left(k, i int, pair [2]PlanGear) (Limits, error) {
+	thin, err := p.meshes[k].shares(k, pair)
+	if problem, ok := err.(*PlanProblem); ok && problem.Kind == TooThick && thin[i].Max > -noThinning {
+		err = nil
+	}
+	left := Limits{max(0, thin[i].Min), thin[i].Max}
+	if p.meshes[k].LeastOnly { // then the width is what is stated
+		left.Max = left.Min + thin[i].Width()
+	}
+	return left, err
 }
 
 // backlash returns what the thinnings of a mesh's gears come to by its method.

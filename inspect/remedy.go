@@ -46,10 +46,7 @@ func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
 		find = m.statisticalThinning
 	}
 	least, width, err := find(pair, m.split(pair))
-	if method == WorstCase {
-		width += min(0, least) // no tooth is thicker than nominal
-	}
-	return width, err
+	return width + min(0, least), err // no tooth is thicker than nominal
 }
 
 // possible reports whether the wish can be had.

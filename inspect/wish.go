@@ -166,11 +166,11 @@ func (m PlanMesh) statisticalThinning(pair [2]PlanGear, s split) (least, width f
 	if at := over(0); at >= 0 {
 		// Not even a single thickness would do: the width is what is missing, below zero.
 		alpha, err := m.Mesh.WorkingPressureAngle(m.Nominal())
-		return alone, -at * m.Mesh.ThinningPerBacklash(alpha), err
+		return alone, -at*m.Mesh.ThinningPerBacklash(alpha) - min(0, alone), err
 	}
 	width = q.root(over, 0, q.far)
-	if alone < 0 { // nominal teeth have more than the least asked for
-		return alone, width, q.err
+	if alone < 0 { // nominal teeth have more than the least asked for: the width begins at them
+		return alone, width - alone, q.err
 	}
 	if least = q.leastFor(width); least >= 0 {
 		return least, width, q.err
