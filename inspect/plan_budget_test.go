@@ -86,3 +86,54 @@ func checkBudgetProblem(t *rapid.T, p plannedPair, err error) {
 		t.Errorf("the way out that the refusal names does not lead out: %v, then %v", problem, err)
 	}
 }
+
+// Trains whose gears have deviations and a climate hold every mesh's wish by its
+// method, ranges and least values alike; no tooth is thicker than nominal.
+func TestTrainsHoldTheBudget(t *testing.T) {
+	planned, drawn := 0, 0
+	rapid.Check(t, func(t *rapid.T) {
+		gears, pairs := drawTrain(t)
+		module := gears[0].Gear.Module()
+		var meshes []PlanMesh
+		for i := range gears {
+			gears[i].Tolerance = 0.01 * module
+		}
+		for _, p := range pairs {
+			p.drawBurden(t, false)
+			p.mesh.Method = rapid.SampledFrom([]Method{WorstCase, Statistical}).Draw(t, "method")
+			p.mesh.LeastOnly = rapid.IntRange(0, 2).Draw(t, "least only") == 0
+			p.mesh.Backlash.Max += 0.15 * module
+			meshes = append(meshes, p.mesh)
+		}
+		drawn++
+		found, err := Plan(gears, meshes)
+		if err != nil {
+			if problem := (*PlanProblem)(nil); !errors.As(err, &problem) {
+				t.Fatalf("refused without reason: %v", err)
+			}
+			return
+		}
+		planned++
+		for i, f := range found {
+			if thin := thinOf(gears[i], f); f.By == ByBacklash && (thin.Min < -2*noThinning || thin.Width() < -2*noThinning) {
+				t.Errorf("gear %d is thinned by %v", i, thin)
+			}
+		}
+		for _, m := range meshes {
+			if gears[m.First].Thin != nil && gears[m.Second].Thin != nil {
+				continue
+			}
+			b, err := m.Budget(found[m.First].Limits, found[m.Second].Limits)
+			if err != nil {
+				t.Fatal(err)
+			}
+			if got := b.By(m.Method); got.Min < m.Backlash.Min-1e-8 || !m.LeastOnly && got.Max > m.Backlash.Max+1e-8 {
+				t.Errorf("gears %d and %d have %v of backlash, asked for %v", m.First, m.Second, got, *m.Backlash)
+			}
+		}
+	})
+	t.Logf("%d of %d trains planned", planned, drawn)
+	if planned < drawn/4 {
+		t.Errorf("only %d of %d drawn trains were planned", planned, drawn)
+	}
+}

@@ -17,6 +17,8 @@ const (
 	CloserRunout                         // Value: the share of the runouts that must not be reached
 	FinerTeeth                           // Value: the share of all deviations of the teeth that must not be reached
 	MoveCenter                           // Value: by how much to change the center distance, mm
+	RaiseShift                           // Value: by how much to raise the shift coefficients of the free gears, together
+	TakeNominal                          // Thin: nominal teeth as the thickest, and how thin they may be
 	Statistically                        // hold the backlash statistically instead of at worst
 	WidenStatistically                   // Value: the greatest backlash that must be allowed if it is held statistically, mm
 	SteadierWarmth                       // Value: the share of the climate's growth that must not be reached
@@ -26,6 +28,7 @@ const (
 type Remedy struct {
 	Kind  RemedyKind
 	Value float64
+	Thin  [2]Limits // thinnings, mm
 }
 
 // hair is how far beyond its value a remedy is tried, as a share of it, or of a module.
@@ -59,15 +62,15 @@ func (m PlanMesh) possible(pair [2]PlanGear) bool {
 // alone would not do is left out.
 func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 	if p.Kind == TooThick {
-		list := []Remedy{{AskForMore, p.Nominal.Min}}
+		list := []Remedy{{Kind: AskForMore, Value: p.Nominal.Min}}
 		nominal := m.split(pair).thin(0, 0)
 		by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min)
 		if ok && m.Moved(by-hair*m.Mesh.First.Module()).possible(pair) {
-			list = append(list, Remedy{MoveCenter, by})
+			list = append(list, Remedy{Kind: MoveCenter, Value: by})
 		}
-		return list
+		return append(list, m.nominalRemedies(pair)...)
 	}
-	list := []Remedy{{WidenBacklash, p.Most}}
+	list := []Remedy{{Kind: WidenBacklash, Value: p.Most}}
 	scaled := func(kind RemedyKind, size float64, scale func(m *PlanMesh, by float64)) {
 		at := func(by float64) PlanMesh {
 			try := m
@@ -82,7 +85,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 			return width
 		}
 		if by, err := involute.FindRoot(room, 0, 1); err == nil && by > hair && at(by-hair).possible(pair) {
-			list = append(list, Remedy{kind, size * by})
+			list = append(list, Remedy{Kind: kind, Value: size * by})
 		}
 	}
 	scaled(CloserCenter, m.Center.Width()/2, func(m *PlanMesh, by float64) {
@@ -110,8 +113,26 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 		case err == nil:
 			list = append(list, Remedy{Kind: Statistically})
 		case isProblem && p.Kind == NoRoom && p.Most < worst-hair:
-			list = append(list, Remedy{WidenStatistically, p.Most})
+			list = append(list, Remedy{Kind: WidenStatistically, Value: p.Most})
 		}
+	}
+	return list
+}
+
+// nominalRemedies are for nominal teeth that have more than the least backlash asked for.
+func (m PlanMesh) nominalRemedies(pair [2]PlanGear) []Remedy {
+	s := m.split(pair)
+	find := m.worstThinning
+	if m.Method == Statistical {
+		find = m.statisticalThinning
+	}
+	least, width, err := find(pair, s)
+	if err != nil {
+		return nil
+	}
+	list := []Remedy{{Kind: RaiseShift, Value: -least / (2 * m.Mesh.First.Module() * math.Tan(m.Mesh.First.PressureAngle()))}}
+	if width += least; width > hair*m.Mesh.First.Module() {
+		list = append(list, Remedy{Kind: TakeNominal, Thin: s.thin(0, width)})
 	}
 	return list
 }

@@ -6,6 +6,8 @@ import (
 	"testing"
 
 	"pgregory.net/rapid"
+
+	"flankwright/involute"
 )
 
 // Every remedy works when it is taken, a hair beyond its value, and does not
@@ -58,6 +60,14 @@ func TestRemediesWork(t *testing.T) {
 					m.Climate = m.Climate.scaled(v)
 				case MoveCenter: // a hair closer it works; a hair farther nominal teeth have too much
 					m, works = m.Moved(r.Value+(1-share)*1e-3*module), share > 1
+				case RaiseShift:
+					continue // TestRaiseShift
+				case TakeNominal:
+					b, err := m.Budget(pair[0].thickness(r.Thin[0]), pair[1].thickness(r.Thin[1]))
+					if got := b.By(m.Method); err != nil || got.Min < wish.Min-1e-8 || got.Max > wish.Max+1e-8 || got.Max < wish.Max-1e-3*module {
+						t.Errorf("nominal teeth and thinner have %v, asked for %v (%v)", got, wish, err)
+					}
+					continue
 				case Statistically:
 					m.Method, works = Statistical, true
 				}
@@ -105,6 +115,39 @@ func TestCloserByHand(t *testing.T) {
 	if got, want := value(m, CloserRunout), (0.03/(2*0.363970234)-2*0.01)/0.08; math.Abs(got-want) > 0.02*want {
 		t.Errorf("runouts to %v of what they are, by hand %v", got, want)
 	}
+}
+
+// Raised so far, nominal teeth have just the least backlash asked for.
+func TestRaiseShift(t *testing.T) {
+	m := handMesh(t)
+	m.Center, m.Backlash = Limits{90.3, 90.3}, &Limits{0.05, 0.06}
+	pair := [2]PlanGear{{Gear: m.Mesh.First}, {Gear: m.Mesh.Second}}
+	_, err := m.shares(0, pair)
+	var problem *PlanProblem
+	if !errors.As(err, &problem) {
+		t.Fatal(err)
+	}
+	for _, r := range m.Remedies(pair, problem) {
+		if r.Kind != RaiseShift {
+			continue
+		}
+		spec := m.Mesh.First.Spec()
+		spec.Shift += r.Value
+		g, err := involute.NewGear(spec)
+		if err != nil {
+			t.Fatal(err)
+		}
+		mesh, err := involute.NewMesh(g, m.Mesh.Second)
+		if err != nil {
+			t.Fatal(err)
+		}
+		play, err := mesh.Backlash(90.3, g.NominalThickness(), m.Mesh.Second.NominalThickness())
+		if err != nil || math.Abs(play.Circumferential-0.05) > 1e-9 {
+			t.Errorf("raised by %v nominal teeth have %v (%v)", r.Value, play.Circumferential, err)
+		}
+		return
+	}
+	t.Error("no shift is named")
 }
 
 // Opening the center for a wanted backlash, the textbook rule to first order:

@@ -15,6 +15,7 @@ type Simulation struct {
 	Pairs int
 	Seed  uint64
 	Bind  float64 // share of pairs that bind somewhere in a turn, hot or cold
+	Short float64 // share of pairs whose backlash falls below the least asked for somewhere
 	Over  float64 // share of pairs whose backlash exceeds the greatest allowed somewhere
 	Mean  float64 // of the middle of each pair, circumferential, mm
 	// Nearly holds the least backlash that only 0.135 % of pairs fall below, and the
@@ -26,14 +27,14 @@ type Simulation struct {
 const beyond3Sigma = 0.00135
 
 // Simulate draws pairs at random (Monte Carlo) and counts those that bind, and
-// those whose backlash exceeds limit (mm, circumferential; +Inf for none). What is
+// those whose backlash leaves the limits (mm, circumferential; ±Inf for none). What is
 // assumed of the shop: center distance and thicknesses lie normally about their
 // middles, their limits at three standard deviations, and nothing beyond is let
 // through; eccentricities lie normally in the plane, other deviations normally
 // about zero, none beyond what is allowed; a measured runout is what it is. Each
 // pair is turned until all its deviations have come together, and taken to
 // every corner of the climate.
-func (m PlanMesh) Simulate(first, second Limits, limit float64, pairs int, seed uint64) (Simulation, error) {
+func (m PlanMesh) Simulate(first, second, limits Limits, pairs int, seed uint64) (Simulation, error) {
 	out := Simulation{Pairs: pairs, Seed: seed}
 	rng := rand.New(rand.NewPCG(seed, 0))
 	growths := m.Climate.growths()
@@ -51,12 +52,15 @@ func (m PlanMesh) Simulate(first, second Limits, limit float64, pairs int, seed 
 		if low < 0 {
 			out.Bind++
 		}
-		if high > limit {
+		if low < limits.Min {
+			out.Short++
+		}
+		if high > limits.Max {
 			out.Over++
 		}
 		lows, highs, middles = append(lows, low), append(highs, high), append(middles, middle)
 	}
-	out.Bind, out.Over = out.Bind/float64(pairs), out.Over/float64(pairs)
+	out.Bind, out.Short, out.Over = out.Bind/float64(pairs), out.Short/float64(pairs), out.Over/float64(pairs)
 	slices.Sort(lows)
 	slices.Sort(highs)
 	out.Nearly = Limits{stat.Quantile(beyond3Sigma, stat.Empirical, lows, nil), stat.Quantile(1-beyond3Sigma, stat.Empirical, highs, nil)}

@@ -24,7 +24,7 @@ func TestSimulationOfOneCause(t *testing.T) {
 		// The first tooth alone varies, by 0.03 to each side: binds where it takes more than the middle.
 		middle := -z * 0.01
 		first := thinned(m.Mesh.First, middle-0.03, middle+0.03)
-		got, err := m.Simulate(first, thinned(m.Mesh.Second, 0, 0), middle+0.01, pairs, 7)
+		got, err := m.Simulate(first, thinned(m.Mesh.Second, 0, 0), Limits{middle - 0.02, middle + 0.01}, pairs, 7)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -35,6 +35,7 @@ func TestSimulationOfOneCause(t *testing.T) {
 		}
 		check("binds", got.Bind, below(z))
 		check("exceeds", got.Over, below(-1))
+		check("falls short", got.Short, below(-2))
 		if math.Abs(got.Mean-middle) > 4.5*0.01/math.Sqrt(pairs) {
 			t.Errorf("z %v: mean %v, want %v", z, got.Mean, middle)
 		}
@@ -50,7 +51,7 @@ func TestSimulationAgainstRSS(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	got, err := m.Simulate(first, second, math.Inf(1), 200000, 1)
+	got, err := m.Simulate(first, second, Limits{math.Inf(-1), math.Inf(1)}, 200000, 1)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -72,7 +73,7 @@ func TestSimulationBounds(t *testing.T) {
 	m.Climate = &Climate{Temperature: Limits{0, 50}, Expansion: [2]float64{11.5e-6, 11.5e-6}, Housing: 23.6e-6}
 	first, second := thinned(m.Mesh.First, 0.05, 0.09), thinned(m.Mesh.Second, 0.05, 0.08)
 	run := func(m PlanMesh, seed uint64) Simulation {
-		s, err := m.Simulate(first, second, 0.2, 20000, seed)
+		s, err := m.Simulate(first, second, Limits{0, 0.2}, 20000, seed)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -113,7 +114,7 @@ func TestSimulationBounds(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	rs, err := ring.Simulate(thinned(g1, 0.1, 0.1), thinned(g2, 0.1, 0.1), math.Inf(1), 5000, 3)
+	rs, err := ring.Simulate(thinned(g1, 0.1, 0.1), thinned(g2, 0.1, 0.1), Limits{0, math.Inf(1)}, 5000, 3)
 	if err != nil || rs.Nearly.Min < rb.Worst().Min || rs.Nearly.Max > rb.Worst().Max || rb.Worst().Min > rb.Middle-0.04 {
 		t.Errorf("ring: pairs within %v, worst %v about %v (%v)", rs.Nearly, rb.Worst(), rb.Middle, err)
 	}
