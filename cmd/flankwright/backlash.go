@@ -149,6 +149,7 @@ type randomPairs struct {
 	Pairs  int     `json:"pairs"`
 	Seed   uint64  `json:"seed"`
 	Bind   float64 `json:"chance_of_binding"`
+	Short  float64 `json:"chance_of_falling_short"` // of the least asked for
 	Over   float64 `json:"chance_of_exceeding"`
 	Mean   float64 `json:"mean_mm"`
 	Nearly span    `json:"nearly_all_mm"`
@@ -338,12 +339,15 @@ func (b *meshBacklash) addHeat() error {
 // simulate draws pairs at random.
 func (b *meshBacklash) simulate(pairs int, seed uint64) error {
 	m := b.mesh
-	limit := math.Inf(1)
-	if m.plan.Backlash != nil && !m.leastOnly {
-		limit = m.plan.Backlash.Max
+	limits := inspect.Limits{Min: math.Inf(-1), Max: math.Inf(1)}
+	if want := m.plan.Backlash; want != nil {
+		limits.Min = want.Min
+		if !m.leastOnly {
+			limits.Max = want.Max
+		}
 	}
-	s, err := m.plan.Simulate(m.first.thickness.Limits, m.second.thickness.Limits, limit, pairs, seed)
-	b.Random = &randomPairs{s.Pairs, s.Seed, s.Bind, s.Over, s.Mean, toSpan(s.Nearly)}
+	s, err := m.plan.Simulate(m.first.thickness.Limits, m.second.thickness.Limits, limits, pairs, seed)
+	b.Random = &randomPairs{s.Pairs, s.Seed, s.Bind, s.Short, s.Over, s.Mean, toSpan(s.Nearly)}
 	return err
 }
 

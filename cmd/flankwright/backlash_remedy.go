@@ -13,6 +13,7 @@ type remedyText struct {
 	What  string   `json:"what"`
 	Value *float64 `json:"value_mm,omitempty"`
 	Share *float64 `json:"share,omitempty"` // of what it is
+	Shift *float64 `json:"shift,omitempty"` // to add
 	Text  string   `json:"text"`
 }
 
@@ -53,17 +54,56 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 	case inspect.CloserCenter:
 		return length("center tolerance", "hold the center distance closer than ±%s", j.lengthDown(r.Value))
 	case inspect.CloserRunout:
+		if r.Value < smallestShare {
+			return remedyText{}, false
+		}
 		return share("runout", "bring the runout under %s (%.0f %% of what it is)", j.runoutsText(m, r.Value), math.Floor(100*r.Value))
 	case inspect.FinerTeeth:
 		text := finerText(m, r.Value)
 		t, _ := share("accuracy", "%s", text)
 		return t, text != ""
 	case inspect.SteadierWarmth:
+		if r.Value < smallestShare {
+			return remedyText{}, false
+		}
 		return share("climate", "keep heat and swelling to less than %.0f %% of it, or take materials that grow alike", math.Floor(100*r.Value))
 	case inspect.MoveCenter:
 		return length("center distance", "%s", j.moveText(m, r.Value))
+	case inspect.RaiseShift:
+		who := "the sum of the shifts"
+		for _, g := range []*gear{m.first, m.second} {
+			if g.ownThin() != nil {
+				who = "the shift of " + m.mate(g).name
+			}
+		}
+		last := 1e-4
+		return remedyText{What: "shift", Shift: &r.Value, Text: fmt.Sprintf("raise %s by %.4f", who, math.Ceil(r.Value/last-1e-6)*last)}, true
+	case inspect.TakeNominal:
+		return remedyText{What: "thin", Text: j.nominalText(m, r, p)}, true
 	}
 	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\": a few pairs will then lie outside, and pairs drawn at random show how many"}, true
+}
+
+// smallestShare is the share of a deviation below which asking for that little is no advice.
+const smallestShare = 0.05
+
+// mate returns the other gear of a mesh.
+func (m *mesh) mate(g *gear) *gear {
+	if g == m.first {
+		return m.second
+	}
+	return m.first
+}
+
+// nominalText words nominal teeth as the thickest: the thin of each gear that is free.
+func (j *job) nominalText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) string {
+	var words []string
+	for i, g := range []*gear{m.first, m.second} {
+		if g.ownThin() == nil {
+			words = append(words, fmt.Sprintf("thin = \"0..%s\" in %s", strings.ReplaceAll(j.lengthDown(r.Thin[i].Max), " ", ""), g.name))
+		}
+	}
+	return fmt.Sprintf("take nominal teeth as the thickest, %s, for %s to %s", strings.Join(words, " and "), j.length(p.Nominal.Min), j.length(m.plan.Backlash.Max))
 }
 
 // fixedRemedies says what to change where both thicknesses are given and the backlash

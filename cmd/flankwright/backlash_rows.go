@@ -80,9 +80,9 @@ func (j *job) causeText(m *mesh, r inspect.Contribution) string {
 func climateText(c *inspect.Climate) string {
 	text := ""
 	if t := c.Temperature; t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
-		text = fmt.Sprintf("Temperature, %g to %g °C", t.Min, t.Max)
+		text = fmt.Sprintf("Temperature, %s to %s °C", celsius(t.Min), celsius(t.Max))
 		if t.Width() == 0 {
-			text = fmt.Sprintf("Temperature, %g °C", t.Min)
+			text = fmt.Sprintf("Temperature, %s °C", celsius(t.Min))
 		}
 	}
 	if c.Swell == [2]inspect.Limits{} {
@@ -93,3 +93,6 @@ func climateText(c *inspect.Climate) string {
 	}
 	return "Swelling in water"
 }
+
+// celsius words a temperature to a tenth.
+func celsius(t float64) string { return trim("%.1f", t) }

@@ -125,7 +125,7 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	unit := u.String()
 	p.blank()
 	p.head(fmt.Sprintf("Budget of %s and %s: backlash, circumferential, at the working pitch circle", b.Gears[0], b.Gears[1]))
-	g := grid{heads: []string{"takes, worst", "statistically", "adds, worst", "statistically"}}
+	g := grid{heads: []string{"takes", "by RSS", "adds", "by RSS"}}
 	for _, r := range b.Budget {
 		g.row(r.text, unit, f(r.Worst), f(r.Statistical), f(r.WorstAdds), f(r.StatisticalAdds))
 	}
@@ -133,10 +133,10 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	takes, adds := sum(b.Circumferential)
 	takesRSS, addsRSS := sum(b.Statistical)
 	g.row("In all", unit, takes, takesRSS, adds, addsRSS)
-	g.row("Backlash: the middle of everything, less and plus these", unit, f(b.Middle), f(b.Middle), f(b.Middle), f(b.Middle))
-	g.row("  comes to", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
+	g.row("In the middle, at 20 °C and dry", unit, f(b.Middle), f(b.Middle), f(b.Middle), f(b.Middle))
+	g.row("Backlash, least and most", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
 	p.grid(g)
-	p.line("Statistically: the rows are shares of the root of the sum of squares; what every pair meets in full, as heat, is added in full.")
+	p.line("By RSS: shares of the root of the sum of squares; what every pair meets, as heat, in full.")
 	switch {
 	case b.alone:
 		p.line("Planned alone, since the backlash of another mesh cannot be had.")
@@ -174,9 +174,9 @@ func (b *meshBacklash) accuracyText(p *page) {
 
 // heatGrid is the backlash at each temperature.
 func (b *meshBacklash) heatGrid(unit string, f func(float64) string) grid {
-	g := grid{heads: []string{"least, worst", "statistically", "middle", "statistically", "most, worst"}}
+	g := grid{heads: []string{"least", "by RSS", "middle", "by RSS", "most"}}
 	for _, h := range b.At {
-		g.row(fmt.Sprintf("Backlash at %g °C", h.Temperature), unit, f(h.Worst.Min), f(h.Statistical.Min), f(h.Middle), f(h.Statistical.Max), f(h.Worst.Max))
+		g.row(fmt.Sprintf("Backlash at %s °C", celsius(h.Temperature)), unit, f(h.Worst.Min), f(h.Statistical.Min), f(h.Middle), f(h.Statistical.Max), f(h.Worst.Max))
 	}
 	return g
 }
@@ -188,6 +188,9 @@ func (b *meshBacklash) randomText(p *page, j *job) {
 		return
 	}
 	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere, hot or cold, when turned until all their deviations have met", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
+	if b.Asked != nil {
+		text += fmt.Sprintf("; %s fall below %s somewhere", percent(r.Short, r.Pairs), j.length(b.Asked.Min))
+	}
 	if b.Asked != nil && b.Asked.Max != nil {
 		text += fmt.Sprintf("; %s exceed %s somewhere", percent(r.Over, r.Pairs), j.length(*b.Asked.Max))
 	}
@@ -224,12 +227,20 @@ func (b *backlash) notCounted(p *page) {
 	}
 	for _, m := range b.Meshes {
 		if m.mesh.temperature == nil {
-			lack = append(lack, "temperature (give temperature, housing and material)")
+			lack = append(lack, "heat (give temperature, housing and material)")
 			break
 		}
 	}
+	swell := false
+	for _, g := range b.list {
+		swell = swell || g.swell.Max > 0
+	}
 	p.blank()
-	text := "Not counted: shafts out of parallel, play of bearings, bending under load, burrs and dirt."
+	text := "Not counted: shafts out of parallel, play of bearings, bending under load, burrs and dirt"
+	if swell {
+		text += ", swelling of the housing"
+	}
+	text += "."
 	if len(lack) > 0 {
 		text += " Not given, and so not counted: " + strings.Join(lack, "; ") + "."
 	}

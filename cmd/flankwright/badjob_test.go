@@ -171,7 +171,7 @@ func impossibleJobs() []badJob {
 		{onePair + "center = 1e300\n", "10:10", []string{"1e+300"}},
 		{onePair + "center = 58\n", "10:10", []string{"58.000 mm", "do not reach each other", "54.000 mm"}}, // (44 + 64)/2
 		{onePair + "center = 40\n", "10:10", []string{"40.000 mm", "base circles alone need 46.985 mm"}},    // 50 cos 20°
-		{onePair + "center = 50.5\nbacklash = \"0.1..0.2\"\n", "11:12", []string{"thicker than nominal", "0.381 mm", "50.000 mm"}},
+		{onePair + "center = 50.5\nbacklash = \"0.1..0.2\"\n", "11:12", []string{"thicker than nominal", "0.382 mm", "close the center distance by 0.365 mm, to 50.135 mm", "raise the sum of the shifts by 0.19"}},
 		{onePair + "center = \"50±0.2\"\nbacklash = \"0.1..0.2\"\n", "11:12", []string{"0.100 mm to 0.200 mm", "leaves nothing for the teeth"}},
 		{strings.Replace(onePair, "teeth = 30", "teeth = 30\nmodule = 3", 1), "", []string{"modules differ, 2 and 3 mm"}},
 		{strings.Replace(onePair, "teeth = 30", "teeth = 30\npressure_angle = 14.5", 1), "", []string{"20°", "14.5°"}},

@@ -1,6 +1,8 @@
 package main
 
 import (
+	"strings"
+
 	"flankwright/inspect"
 	"flankwright/refdata"
 )
@@ -15,7 +17,7 @@ func (g *gear) readAccuracy() error {
 	}
 	class, err := refdata.ParseAccuracy(g.accuracyText)
 	if err != nil {
-		return bad("accuracy", g.settings.vals["accuracy"], "%v", err)
+		return bad("accuracy", g.settings.vals["accuracy"], "%s", strings.TrimPrefix(err.Error(), "accuracy "))
 	}
 	t, err := class.Tolerances(g.toothSize())
 	if err != nil {

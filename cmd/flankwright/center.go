@@ -23,7 +23,10 @@ func (s settings) center(key string) (at, tolerance float64, class string, err e
 	if isText && strings.Contains(text, "..") {
 		return s.centerLimits(key)
 	}
-	base, tol, hasTol := strings.Cut(strings.ReplaceAll(text, "+-", "±"), "±")
+	base, tol, hasTol := strings.Cut(strings.NewReplacer("+/-", "±", "+-", "±").Replace(text), "±")
+	if _, class, hasClass := splitClass(text); isText && !hasTol && hasClass {
+		return 0, 0, "", bad(key, v, "%s is a class for bores and shafts; a center distance takes a js class, such as \"50 js7\"", class)
+	}
 	if !isText || !hasTol {
 		at, _, err = s.positive(key)
 		return at, 0, "", err

@@ -25,6 +25,7 @@ type material struct {
 	name      string  // as given; blank for numbers without a name
 	expansion float64 // linear, 1/K; 0 for not known
 	source    string  // of the expansion
+	metal     bool    // by the table: it does not swell
 }
 
 // word returns the material's name for the head of a sheet, blank where there is none.
@@ -45,6 +46,9 @@ func (g *gear) readConditions() (err error) {
 	}
 	if g.swell, err = g.settings.swell("swell"); err != nil {
 		return err
+	}
+	if g.swell.Max > 0 && g.material != nil && g.material.metal {
+		return bad("swell", g.settings.vals["swell"], "is for plastics in water; %s does not swell", g.material.name)
 	}
 	if g.accuracyText, err = g.settings.accuracy("accuracy"); err != nil {
 		return err
@@ -100,7 +104,7 @@ func (s settings) material(key string) (*material, error) {
 		case x < leastExpansion || x > mostExpansion:
 			return nil, bad("expansion", sub.vals["expansion"], "is in 1e-6/K, such as 11.5 for steel or 20.5 for brass, not %v", x)
 		}
-		return &material{name, x * 1e-6, "the job"}, nil
+		return &material{name: name, expansion: x * 1e-6, source: "the job"}, nil
 	}
 	name, isText := asText(v)
 	if !isText {
@@ -117,8 +121,11 @@ func namedMaterial(name string) *material {
 	if err != nil {
 		return &material{name: name}
 	}
-	return &material{name, m.Expansion, m.Source.String()}
+	return &material{name: name, expansion: m.Expansion, source: m.Source.String(), metal: m.E > stiffestPlastic}
 }
+
+// stiffestPlastic is Young's modulus above which a material is a metal, MPa.
+const stiffestPlastic = 20e3
 
 // mostSwell is the most that a plastic gear is believed to swell, as a fraction:
 // nylon in water swells by 0.03.

@@ -108,7 +108,7 @@ temperature = 20
 	if m := steel.material; m.name != "4140" || m.expansion != 12.3e-6 || m.source == "" || word.material.name != "red plastic" || word.material.known() {
 		t.Errorf("steel is %v, word %v", *m, *word.material)
 	}
-	if m := own.material; *m != (material{"brass bar", 20.5e-6, "the job"}) {
+	if m := own.material; *m != (material{name: "brass bar", expansion: 20.5e-6, source: "the job"}) {
 		t.Errorf("own is %v", *m)
 	}
 	if steel.runout == nil || math.Abs(*steel.runout-0.0508) > 1e-15 || steel.thinTolerance == nil || math.Abs(*steel.thinTolerance-0.0254) > 1e-15 || own.runout != nil {

@@ -52,7 +52,7 @@ func (d *dims) backlashNote(p *page) {
 	}
 	p.blank()
 	if burdened {
-		p.line("Backlash here is geometric, before runout, pitch error and temperature, but for the rows that count them; see flankwright backlash.")
+		p.wrapped("Backlash here is geometric, before runout, pitch error and temperature, but for the rows that count them; see flankwright backlash.", "  ")
 		return
 	}
 	p.line("Backlash here is geometric: before runout, pitch error and temperature.")

@@ -54,7 +54,8 @@ func explained() map[string][]string {
 	}
 	budget := []string{"--module", "2", "--teeth", "20", "--mate-teeth", "41", "--center", "61±0.02", "--face-width", "20", "--accuracy", "ISO 1328-1:2013 class 6", "--backlash", "0.05..1.2", "--temperature", "0..50", "--material", "4140", "--housing", "6061"}
 	cases["budget pair"] = budget
-	cases["budget pair, unlike"] = append(slices.Clone(budget), "--mate-material", "POM-C", "--swell", "0.2", "--runout", "0.03", "--budget", "statistical", "--customary")
+	cases["budget pair, unlike"] = append(slices.Clone(budget), "--mate-material", "POM-C", "--runout", "0.03", "--budget", "statistical", "--customary")
+	cases["budget pair that swells"] = []string{"--module", "2", "--teeth", "20", "--mate-teeth", "41", "--center", "61.3", "--backlash", "0.2..1.2", "--material", "PA66", "--swell", "0.1..0.2", "--temperature", "60", "--housing", "aluminum"}
 	cases["budget pair of 1995"] = []string{"--dp", "12", "--teeth", "20", "--helix-angle", "15", "--mate-teeth", "41", "--face-width", "20mm", "--accuracy", "ISO 1328-1:1995 grade 7", "--backlash", "0.001..0.02", "--thin-share", "by strength"}
 	for _, name := range exampleNames() {
 		cases["example "+name] = []string{"--example", name}

@@ -71,8 +71,8 @@ func (j *job) readThickness(g *gear) error {
 func (g *gear) readCallOut() (done bool, err error) {
 	v, ok := g.settings.vals["thin"]
 	text, isText := asText(v)
-	if !ok || !isText || !strings.HasPrefix(strings.ToUpper(strings.TrimSpace(text)), "DIN") {
-		return false, nil
+	if t := strings.ToUpper(strings.TrimSpace(text)); !ok || !isText || t == "" || t[0] < 'A' || t[0] > 'Z' {
+		return false, nil // a length or a range
 	}
 	least, most, source, err := refdata.ThicknessCallOut(math.Abs(g.g.ReferenceDiameter()), text)
 	if err != nil {
@@ -114,11 +114,14 @@ func (j *job) readOverPins(g *gear) error {
 	if m.Pin, _, err = s.positive("pin"); err != nil {
 		return err
 	}
-	word, _, err := s.word("way", wayNames()...)
-	if err != nil {
-		return err
+	m.Way = involute.TwoPins
+	if text, ok := asText(s.vals["way"]); ok {
+		if m.Way, ok = wayNamed(text); !ok {
+			return bad("way", s.vals["way"], "%q is not one of %s", text, quoted(wayNames()))
+		}
+	} else if s.has("way") {
+		return bad("way", s.vals["way"], "needs a text in quotes, not %s", kindOf(s.vals["way"]))
 	}
-	m.Way = wayNamed(word)
 	if m.Way == involute.PinToFarSide {
 		if g.bore == nil {
 			return bad(key, v, "to the far side of the bore needs the bore's diameter: give bore")
@@ -207,13 +210,21 @@ func wayNames() []string {
 	return names
 }
 
-func wayNamed(name string) involute.PinWay {
-	for _, w := range otherWays() {
-		if w.name == name {
-			return w.way
+// wayNamed returns the way of that name, in JSON's words or as targets prints it.
+func wayNamed(name string) (involute.PinWay, bool) {
+	for _, way := range []string{"two pins", "two balls"} {
+		if strings.EqualFold(way, name) {
+			return involute.TwoPins, true
 		}
 	}
-	return involute.TwoPins
+	for _, w := range otherWays() {
+		for _, known := range []string{w.name, w.text, wayText(w.text, "pins"), wayText(w.text, "balls")} {
+			if strings.EqualFold(known, name) {
+				return w.way, true
+			}
+		}
+	}
+	return 0, false
 }
 
 // How far from nominal, and how far apart, thickness limits read off a drawing

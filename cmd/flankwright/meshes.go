@@ -160,6 +160,11 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	default:
 		return bad("thin_share", s.vals["thin_share"], "%q is neither \"equal\" nor \"by strength\" nor a gear of this mesh (%q, %q)", share, m.first.name, m.second.name)
 	}
+	for _, g := range []*gear{m.first, m.second} {
+		if share == g.name && hasAny(g.settings.vals, fixingKeys()) {
+			return bad("thin_share", s.vals["thin_share"], "%q is fixed already and takes nothing; leave thin_share out", share)
+		}
+	}
 	if m.plan.Backlash == nil {
 		return bad("thin_share", s.vals["thin_share"], "shares out the thinning that a backlash asks for; give backlash too")
 	}

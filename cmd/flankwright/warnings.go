@@ -48,12 +48,13 @@ func (j *job) warnRackAngle(g *gear, angle float64) {
 
 // Thresholds of warnings, as shares of the normal module or plain ratios.
 const (
-	lowClearance   = 0.15 // tip clearance; racks leave 0.25, and under 0.15 dirt and runout reach the root
-	thinTip        = 0.2  // tip land; common practice wants 0.2 to 0.25, 0.4 where the case is hardened
-	heavyThinning  = 0.1  // of the tooth; backlash takes a few percent
-	lowContact     = 1.2  // transverse contact ratio; common practice
-	thinRim        = 1.2  // rim under the root, in whole depths; under it the rim bends (ISO 6336-3 rim factor)
-	barelyNegative = 1e-9 // backlash below zero by rounding only, mm
+	lowClearance   = 0.15  // tip clearance; racks leave 0.25, and under 0.15 dirt and runout reach the root
+	thinTip        = 0.2   // tip land; common practice wants 0.2 to 0.25, 0.4 where the case is hardened
+	heavyThinning  = 0.1   // of the tooth; backlash takes a few percent
+	lowContact     = 1.2   // transverse contact ratio; common practice
+	thinRim        = 1.2   // rim under the root, in whole depths; under it the rim bends (ISO 6336-3 rim factor)
+	tightThickness = 0.008 // tolerance of the thickness, mm: twice the error limit of a micrometer up to 50 mm (DIN 863-1)
+	barelyNegative = 1e-9  // backlash below zero by rounding only, mm
 )
 
 // warn collects what there is to say of all gears and meshes.
@@ -80,7 +81,7 @@ func (j *job) warnGear(g *gear) {
 	if g.fixed != nil {
 		j.warnFixed(g)
 	} else if taken := g.g.NominalThickness() - g.thickness.Limits.Min; taken > heavyThinning*g.g.NominalThickness() {
-		j.addWarning("heavy-thinning", g.name, "the teeth come out up to %s thinner than nominal, %.0f %% of the tooth. Is the center distance right?", j.length(taken), 100*taken/g.g.NominalThickness())
+		j.addWarning("heavy-thinning", g.name, "the teeth come out up to %s thinner than nominal, %.0f %% of the tooth; check center distance, backlash and climate", j.length(taken), 100*taken/g.g.NominalThickness())
 	}
 	thinnest, err := g.g.Tooth(g.thickness.Limits.Min)
 	if err != nil {
@@ -98,6 +99,12 @@ func (j *job) warnGear(g *gear) {
 	}
 	if land < thinTip*m {
 		j.addWarning("thin-tip", g.name, "the tip is only %s wide (%.2f × module); under %.1f × module it chips and burrs. Lower shift, chamfer or the outside diameter", j.length(land), land/m, thinTip)
+	}
+	if w := g.thickness.Limits.Width(); g.thickness.By == inspect.ByBacklash && w > 0 && w < tightThickness {
+		j.addWarning("tight-tolerance", g.name, "only %s of tooth thickness is left as tolerance, no more than a good micrometer is off by; allow more backlash", j.length(w))
+	}
+	if g.swell.Max > 0 {
+		j.addWarning("measure-dry", g.name, "it swells by up to %.3g %% in water; its limits are for the teeth as made, dry: measure it before it has drawn water", 100*g.swell.Max)
 	}
 	if g.flanks != nil && len(g.flanks.Outside) > 0 {
 		j.addWarning("accuracy-range", g.name, "%s is extrapolated: %s", g.flanks.Accuracy, strings.Join(g.flanks.Outside, "; "))

@@ -96,23 +96,22 @@ func (j *job) planError(err error) error {
 		return err
 	}
 	text := j.planReason(p)
+	if advice := j.planAdvice(p); advice != "" {
+		text += ". " + advice
+	}
 	if j.meshes[p.Mesh].burdened() {
 		text += "; the command backlash shows where it goes"
 	}
 	return bad("backlash", j.request.meshes[p.Mesh].vals["backlash"], "%s", text)
 }
 
-// planReason says why a backlash cannot be had, and what could.
+// planReason says why a backlash cannot be had.
 func (j *job) planReason(p *inspect.PlanProblem) string {
 	m := j.meshes[p.Mesh]
 	text := fmt.Sprintf("%s and %s: %s of backlash ", m.first.name, m.second.name, j.wishText(m))
 	switch p.Kind {
 	case inspect.TooThick:
-		text += fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s, at the least. Ask for that or more, ", j.lengthUp(p.Nominal.Min))
-		if p.Tight > 0 {
-			text += fmt.Sprintf("bring the center toward %s, ", j.length(p.Tight))
-		}
-		return text + fmt.Sprintf("or raise the sum of the shifts toward %+.4f, at which nominal teeth are tight there", m.tightShift())
+		return text + fmt.Sprintf("needs teeth thicker than nominal: as they are they already have %s, at the least", j.lengthUp(p.Nominal.Min))
 	case inspect.Conflict:
 		name := j.gears[p.Gear].name
 		return text + fmt.Sprintf("cannot be had together with what the other meshes of %s and its mate ask for. Change one of the backlashes or thin_share, or give %s a thin of its own", name, name)
@@ -125,7 +124,26 @@ func (j *job) planReason(p *inspect.PlanProblem) string {
 	if m.first.ownThin() != nil || m.second.ownThin() != nil {
 		takers, verb = takers+" and the gear that is already fixed", "take"
 	}
-	return text + fmt.Sprintf("leaves nothing for the teeth: %s %s it all. Allow more than %s, or tighten the tolerance", takers, verb, j.lengthUp(p.Most))
+	return text + fmt.Sprintf("leaves nothing for the teeth: %s %s it all", takers, verb)
+}
+
+// planAdvice says in a line what would make it possible.
+func (j *job) planAdvice(p *inspect.PlanProblem) string {
+	m := j.meshes[p.Mesh]
+	switch p.Kind {
+	case inspect.NoRoom:
+		return fmt.Sprintf("Allow more than %s, or tighten the tolerance", j.lengthUp(p.Most))
+	case inspect.Conflict:
+		return ""
+	}
+	var ways []string
+	for _, r := range m.plan.Remedies(m.pair(), p) {
+		if text, ok := j.remedyText(m, r, p); ok {
+			ways = append(ways, text.Text)
+		}
+	}
+	text := strings.Join(ways, "; or ")
+	return strings.ToUpper(text[:1]) + text[1:]
 }
 
 // faultText words why a measure cannot be used.
