@@ -109,18 +109,42 @@ func (b Budget) Worst() Limits {
 }
 
 // Statistical returns what to expect of nearly all pairs: what is certain is
-// added up, of the rest the squares (root of the sum of squares). Where each of
-// them is spread normally with its limits at three standard deviations, 99.73 %
-// of pairs lie between.
+// added up, and so are the means of the rest; of their spreads, three standard
+// deviations each, the root of the sum of squares is taken. If the sum were normal,
+// 99.73 % of pairs would lie between.
 func (b Budget) Statistical() Limits {
 	takes, adds := b.rss()
 	l := Limits{b.Middle - takes, b.Middle + adds}
 	for _, r := range b.Rows {
-		if r.Certain {
-			l.Min, l.Max = l.Min-r.Takes, l.Max+r.Adds
-		}
+		mean, _ := r.Spread()
+		l.Min, l.Max = l.Min-mean*r.Takes, l.Max+mean*r.Adds
 	}
 	return l
+}
+
+// Spread returns how a contribution is spread over pairs, as shares of what it is at
+// worst: its mean, and three standard deviations about it. Tolerances of center and
+// teeth lie normally about their middles with their limits at three standard
+// deviations. Eccentricities lie normally in the plane, other deviations normally about
+// zero, and a pair that turns meets them in full on either side: what counts is
+// their size, which has a mean. Cut off at their limits, three standard deviations,
+// these are √(2/π)(1 − e^(−9/2))/erf(3/√2)/3 of a band and
+// (√(π/2) erf(3/√2) − 3 e^(−9/2))/(1 − e^(−9/2))/3 of an eccentricity, whose spread is
+// what is left of its limit.
+func (r Contribution) Spread() (mean, three float64) {
+	cut, normal := 1-math.Exp(-4.5), math.Erf(3/math.Sqrt2)
+	switch {
+	case r.Certain:
+		return 1, 0
+	case r.Cause == OfRunout:
+		mean = (math.Sqrt(math.Pi/2)*normal - 3*math.Exp(-4.5)) / cut / 3
+		return mean, 1 - mean
+	case r.Cause == OfPitch || r.Cause == OfProfile || r.Cause == OfHelix:
+		mean = math.Sqrt(2/math.Pi) * cut / normal // of standard deviations
+		square := 1 - 6*math.Exp(-4.5)/math.Sqrt(2*math.Pi)/normal
+		return mean / 3, math.Sqrt(square - mean*mean)
+	}
+	return 0, 1
 }
 
 // MiddleWarm returns the backlash with everything in its middle but the climate,
@@ -135,28 +159,25 @@ func (b Budget) MiddleWarm() float64 {
 	return j
 }
 
-// rss returns the roots of the sums of squares of what is not certain.
+// rss returns the roots of the sums of squares of the spreads.
 func (b Budget) rss() (takes, adds float64) {
 	for _, r := range b.Rows {
-		if !r.Certain {
-			takes, adds = math.Hypot(takes, r.Takes), math.Hypot(adds, r.Adds)
-		}
+		_, three := r.Spread()
+		takes, adds = math.Hypot(takes, three*r.Takes), math.Hypot(adds, three*r.Adds)
 	}
 	return takes, adds
 }
 
 // StatisticalShare returns a row's share in the statistical totals, so that the
-// shares add up to them: what is certain in full, of the rest its square over
-// the root of the sum of squares.
+// shares add up to them: its mean, and the square of its spread over the root of the
+// sum of squares.
 func (b Budget) StatisticalShare(r Contribution) (takes, adds float64) {
-	if r.Certain {
-		return r.Takes, r.Adds
-	}
+	mean, three := r.Spread()
 	share := func(x, root float64) float64 {
 		if root == 0 {
-			return 0
+			return mean * x
 		}
-		return x / root * x
+		return mean*x + three*x/root*three*x
 	}
 	allTakes, allAdds := b.rss()
 	return share(r.Takes, allTakes), share(r.Adds, allAdds)
@@ -190,7 +211,7 @@ type Moment struct {
 // backlash returns j_wt at a moment: of the two ways in which unlike base pitches
 // can meet the one that is asked for.
 func (m PlanMesh) backlash(x Moment, least bool) (float64, error) {
-	low, high, err := m.Mesh.CircumferentialBacklash(x.Center, x.Thickness[0], x.Thickness[1], x.Growth)
+	low, high, err := m.Mesh.CircumferentialBacklash(x.Center, x.Thickness[0], x.Thickness[1], x.Growth, involute.MorePitches(m.ContactRatio))
 	if err != nil {
 		return 0, err
 	}

@@ -80,11 +80,19 @@ func TestBudgetByHand(t *testing.T) {
 			t.Errorf("row %d takes %.6f and adds %.6f, by hand %.6f and %.6f", i, r.Takes, r.Adds, w.Takes, w.Adds)
 		}
 		takes, adds = takes+w.Takes, adds+w.Adds
-		if w.Certain {
-			sure.Min, sure.Max = sure.Min+w.Takes, sure.Max+w.Adds
-		} else {
-			takesSquared, addsSquared = takesSquared+w.Takes*w.Takes, addsSquared+w.Adds*w.Adds
+		// Means and three standard deviations of a half normal distribution, and of the
+		// distance in a plane (Rayleigh), both cut at three: tables of statistics.
+		mean, three := 0.0, 1.0
+		switch {
+		case w.Certain:
+			mean, three = 1, 0
+		case w.Cause == OfRunout:
+			mean, three = 0.4101, 0.5899
+		case w.Cause == OfPitch || w.Cause == OfProfile || w.Cause == OfHelix:
+			mean, three = 0.2637, 0.5894
 		}
+		sure.Min, sure.Max = sure.Min+mean*w.Takes, sure.Max+mean*w.Adds
+		takesSquared, addsSquared = takesSquared+three*three*w.Takes*w.Takes, addsSquared+three*three*w.Adds*w.Adds
 	}
 	nearly := func(what string, got Limits, low, high float64) {
 		if math.Abs(got.Min-low) > 1e-3 || math.Abs(got.Max-high) > 1e-3 {

@@ -34,6 +34,7 @@ type PlanMesh struct {
 	Share         Share
 	Deviations    [2]Deviations // of the gears
 	Climate       *Climate      // nil: always at the reference temperature
+	ContactRatio  float64       // ε_γ, of transverse section and helix; for gears that grow unlike
 	Method        Method        // by which the wish is to be held
 }
 

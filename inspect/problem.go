@@ -3,6 +3,8 @@ package inspect
 import (
 	"fmt"
 	"math"
+
+	"flankwright/involute"
 )
 
 // A ProblemKind says what is wrong with a backlash that cannot be had.
@@ -48,5 +50,26 @@ func (m PlanMesh) explain(p *PlanProblem, pair [2]PlanGear, thin [2]Limits) erro
 		return p
 	}
 	p.Sole, p.Most = thin, b.By(m.Method).Max
+	if p.Kind == NoRoom {
+		p.Most = m.mostNeeded(pair, p.Most)
+	}
 	return p
+}
+
+// mostNeeded returns the greatest backlash from which on a wish leaves room. That of
+// teeth without tolerance is a little less where gears grow unlike.
+func (m PlanMesh) mostNeeded(pair [2]PlanGear, most float64) float64 {
+	room := func(most float64) float64 {
+		m.Backlash = &Limits{m.Backlash.Min, most}
+		width, err := m.Room(pair, m.Method)
+		if err != nil {
+			return math.NaN()
+		}
+		return width
+	}
+	far := most + 0.01*(most+m.Mesh.First.Module())
+	if found, err := involute.FindRoot(room, m.Backlash.Max, far); err == nil {
+		return max(most, found)
+	}
+	return most
 }

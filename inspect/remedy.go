@@ -40,6 +40,18 @@ func (m PlanMesh) Moved(by float64) PlanMesh {
 	return m
 }
 
+// WithFinerTeeth returns the mesh with a share of all deviations of its teeth, but for a
+// runout that is measured.
+func (m PlanMesh) WithFinerTeeth(share float64) PlanMesh {
+	for i, d := range m.Deviations {
+		m.Deviations[i] = Deviations{d.Runout * share, d.Measured, d.Pitch * share, d.Profile * share, d.Helix * share}
+		if d.Measured {
+			m.Deviations[i].Runout = d.Runout
+		}
+	}
+	return m
+}
+
 // Room returns what a wish leaves for the thicknesses of the gears together, by a
 // method: the sum of the tolerances, mm. Below zero it is what is missing.
 func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
@@ -52,8 +64,8 @@ func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
 	return width + min(0, least), err // no tooth is thicker than nominal
 }
 
-// possible reports whether the wish can be had.
-func (m PlanMesh) possible(pair [2]PlanGear) bool {
+// Possible reports whether the wish can be had.
+func (m PlanMesh) Possible(pair [2]PlanGear) bool {
 	_, err := m.shares(0, pair)
 	return err == nil
 }
@@ -65,7 +77,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 		list := []Remedy{{Kind: AskForMore, Value: p.Nominal.Min}}
 		nominal := m.split(pair).thin(0, 0)
 		by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min)
-		if ok && m.Moved(by-hair*m.Mesh.First.Module()).possible(pair) {
+		if ok && m.Moved(by-hair*m.Mesh.First.Module()).Possible(pair) {
 			list = append(list, Remedy{Kind: MoveCenter, Value: by})
 		}
 		return append(list, m.nominalRemedies(pair)...)
@@ -84,7 +96,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 			}
 			return width
 		}
-		if by, err := involute.FindRoot(room, 0, 1); err == nil && by > hair && at(by-hair).possible(pair) {
+		if by, err := involute.FindRoot(room, 0, 1); err == nil && by > hair && at(by-hair).Possible(pair) {
 			list = append(list, Remedy{Kind: kind, Value: size * by})
 		}
 	}
@@ -97,14 +109,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 			m.Deviations[i].Runout *= by
 		}
 	})
-	scaled(FinerTeeth, 1, func(m *PlanMesh, by float64) {
-		for i, d := range m.Deviations {
-			m.Deviations[i] = Deviations{d.Runout * by, d.Measured, d.Pitch * by, d.Profile * by, d.Helix * by}
-			if d.Measured {
-				m.Deviations[i].Runout = d.Runout
-			}
-		}
-	})
+	scaled(FinerTeeth, 1, func(m *PlanMesh, by float64) { *m = m.WithFinerTeeth(by) })
 	scaled(SteadierWarmth, 1, func(m *PlanMesh, by float64) { m.Climate = m.Climate.scaled(by) })
 	if worst := p.Most; m.Method == WorstCase {
 		m.Method = Statistical

@@ -50,12 +50,7 @@ func TestRemediesWork(t *testing.T) {
 					m.Deviations[0].Runout *= v
 					m.Deviations[1].Runout *= v
 				case FinerTeeth:
-					for i, d := range m.Deviations {
-						m.Deviations[i] = Deviations{d.Runout * v, d.Measured, d.Pitch * v, d.Profile * v, d.Helix * v}
-						if d.Measured {
-							m.Deviations[i].Runout = d.Runout
-						}
-					}
+					m = m.WithFinerTeeth(v)
 				case SteadierWarmth:
 					m.Climate = m.Climate.scaled(v)
 				case MoveCenter: // a hair closer it works; a hair farther nominal teeth have too much
@@ -74,7 +69,7 @@ func TestRemediesWork(t *testing.T) {
 				if math.Abs(r.Value) < 1e-2*min(module, 1) {
 					continue // too small for a thousandth of it to tell
 				}
-				if got := m.possible(pair); got != works {
+				if got := m.Possible(pair); got != works {
 					t.Errorf("%+v at %v of it: possible %v (%v)", r, share, got, problem)
 				}
 			}

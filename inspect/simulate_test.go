@@ -2,7 +2,10 @@ package inspect
 
 import (
 	"math"
+	"math/rand/v2"
 	"testing"
+
+	"gonum.org/v1/gonum/stat"
 
 	"flankwright/involute"
 )
@@ -62,6 +65,47 @@ func TestSimulationAgainstRSS(t *testing.T) {
 	}
 	if got.Bind != 0 || got.Over != 0 {
 		t.Errorf("%v bind and %v exceed without limit", got.Bind, got.Over)
+	}
+}
+
+// With deviations of every kind, some of which can only take, the statistical range
+// is what nearly all pairs have: to a tenth of it, and a few pairs in a thousand
+// beyond. Means and spreads of each kind are those of the pairs drawn.
+func TestStatisticalRangeOfPairs(t *testing.T) {
+	m := handMesh(t)
+	d := Deviations{Runout: 0.04, Pitch: 0.012, Profile: 0.015, Helix: 0.018}
+	m.Deviations = [2]Deviations{d, d}
+	first, second := thinned(m.Mesh.First, 0.12, 0.15), thinned(m.Mesh.Second, 0.12, 0.15)
+	b, err := m.Budget(first, second)
+	if err != nil {
+		t.Fatal(err)
+	}
+	likely := b.Statistical()
+	got, err := m.Simulate(first, second, likely, 200000, 5)
+	if err != nil {
+		t.Fatal(err)
+	}
+	low, high := (b.Middle-got.Nearly.Min)/(b.Middle-likely.Min), (got.Nearly.Max-b.Middle)/(likely.Max-b.Middle)
+	if low < 0.95 || low > 1.02 || high < 0.95 || high > 1.02 || got.Short > 0.003 || got.Over > 0.003 {
+		t.Errorf("99.73 %% of pairs within %v, said %v: ratios %.4f and %.4f, %v and %v beyond", got.Nearly, likely, low, high, got.Short, got.Over)
+	}
+	for _, c := range []struct {
+		cause Cause
+		only  Deviations
+	}{{OfRunout, Deviations{Runout: d.Runout}}, {OfProfile, Deviations{Profile: d.Profile}}, {OfHelix, Deviations{Helix: d.Helix}}} {
+		one := handMesh(t)
+		one.Center, one.Deviations = Limits{90, 90}, [2]Deviations{c.only, {}}
+		rng := rand.New(rand.NewPCG(11, 0))
+		var taken []float64
+		for range 50000 {
+			p := one.draw(rng, [2]Limits{first, second})
+			taken = append(taken, (p.ecc+p.takes)/max(c.only.Runout/2, c.only.Profile, c.only.Helix))
+		}
+		mean, three := Contribution{Cause: c.cause}.Spread()
+		gotMean, gotDev := stat.MeanStdDev(taken, nil)
+		if math.Abs(gotMean-mean) > 0.005 || 3*gotDev < three-0.005 || 3*gotDev > three+0.04 { // the eccentricity's is bounded by its limit
+			t.Errorf("cause %d: mean %.4f, spread %.4f, said %.4f and %.4f", c.cause, gotMean, 3*gotDev, mean, three)
+		}
 	}
 }
 

@@ -19,10 +19,10 @@ func NoGrowth() Growth { return Growth{1, 1, 1} }
 //
 // which without growth is that of Backlash (ISO 21771:2007, clause 5). Gears that
 // grow unlike have unlike base pitches: a tooth of the first in a space of the second
-// has the second's for p_bt, one of the second the first's, and where two pairs
-// of teeth touch at once their difference may count once more. Least and most bound
-// the backlash in all positions, and are off by that difference at most.
-func (m Mesh) CircumferentialBacklash(a, s1, s2 float64, g Growth) (least, most float64, err error) {
+// has the second's for p_bt, one of the second the first's, and where n + 1 pairs
+// of teeth touch at once their difference may count n times more. Least and most
+// bound the backlash in all positions. more is n, see MorePitches.
+func (m Mesh) CircumferentialBacklash(a, s1, s2 float64, g Growth, more int) (least, most float64, err error) {
 	alpha, err := m.GrownPressureAngle(a, g)
 	if err != nil {
 		return 0, 0, err
@@ -32,8 +32,16 @@ func (m Mesh) CircumferentialBacklash(a, s1, s2 float64, g Growth) (least, most 
 	}
 	free := side(m.First, s1, g.First) + side(m.Second, s2, g.Second)
 	p1, p2 := m.First.TransverseBasePitch()*g.First, m.First.TransverseBasePitch()*g.Second
-	least, most = free+min(p1, p2)-math.Abs(p1-p2), free+max(p1, p2)
+	least, most = free+min(p1, p2)-float64(more)*math.Abs(p1-p2), free+max(p1, p2)
 	return least / math.Cos(alpha), most / math.Cos(alpha), nil
+}
+
+// MorePitches returns how many times the difference of unlike base pitches may
+// count beyond the smaller pitch: as many as pairs of teeth touch on one side while
+// another touches on the other, half a pitch away, ⌊ε_γ − 1/2⌋, at least 1; a tenth of
+// a pitch is kept back.
+func MorePitches(totalContactRatio float64) int {
+	return max(1, int(math.Floor(totalContactRatio-0.4)))
 }
 
 // GrownPressureAngle returns α_wt of the grown parts at the drawing's center

@@ -2,6 +2,7 @@ package main
 
 import (
 	"errors"
+	"fmt"
 	"math"
 	"slices"
 
@@ -146,13 +147,13 @@ type atHeat struct {
 }
 
 type randomPairs struct {
-	Pairs  int     `json:"pairs"`
-	Seed   uint64  `json:"seed"`
-	Bind   float64 `json:"chance_of_binding"`
-	Short  float64 `json:"chance_of_falling_short"` // of the least asked for
-	Over   float64 `json:"chance_of_exceeding"`
-	Mean   float64 `json:"mean_mm"`
-	Nearly span    `json:"nearly_all_mm"`
+	Pairs  int      `json:"pairs"`
+	Seed   uint64   `json:"seed"`
+	Bind   float64  `json:"chance_of_binding"`
+	Short  *float64 `json:"chance_of_falling_short"` // of the least asked for; null where none is
+	Over   *float64 `json:"chance_of_exceeding"`     // null where no greatest is asked for
+	Mean   float64  `json:"mean_mm"`
+	Nearly span     `json:"nearly_all_mm"`
 }
 
 // backlashOptions say how much is to be told.
@@ -249,6 +250,11 @@ func (j *job) meshBacklash(m *mesh) (meshBacklash, error) {
 		return out, err
 	}
 	if !out.Possible {
+		if out.problem == nil {
+			got := out.budget.By(m.plan.Method)
+			out.Problem = fmt.Sprintf("%s and %s: the teeth as they are give %s to %s of backlash %s, not the %s asked for", m.first.name, m.second.name,
+				j.length(got.Min), j.length(got.Max), out.Method, j.wishText(m))
+		}
 		out.Remedies = j.remedies(&out)
 	}
 	return out, out.addHeat()
@@ -347,7 +353,13 @@ func (b *meshBacklash) simulate(pairs int, seed uint64) error {
 		}
 	}
 	s, err := m.plan.Simulate(m.first.thickness.Limits, m.second.thickness.Limits, limits, pairs, seed)
-	b.Random = &randomPairs{s.Pairs, s.Seed, s.Bind, s.Short, s.Over, s.Mean, toSpan(s.Nearly)}
+	b.Random = &randomPairs{Pairs: s.Pairs, Seed: s.Seed, Bind: s.Bind, Mean: s.Mean, Nearly: toSpan(s.Nearly)}
+	if b.Asked != nil {
+		b.Random.Short = &s.Short
+		if b.Asked.Max != nil {
+			b.Random.Over = &s.Over
+		}
+	}
 	return err
 }
 

@@ -54,7 +54,7 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 	case inspect.CloserCenter:
 		return length("center tolerance", "hold the center distance closer than ±%s", j.lengthDown(r.Value))
 	case inspect.CloserRunout:
-		if r.Value < smallestShare {
+		if text := j.runoutsText(m, r.Value); r.Value < smallestShare || text == "" {
 			return remedyText{}, false
 		}
 		return share("runout", "bring the runout under %s (%.0f %% of what it is)", j.runoutsText(m, r.Value), math.Floor(100*r.Value))
@@ -81,7 +81,7 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 	case inspect.TakeNominal:
 		return remedyText{What: "thin", Text: j.nominalText(m, r, p)}, true
 	}
-	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\": a few pairs will then lie outside, and pairs drawn at random show how many"}, true
+	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\", for all but a few pairs in a thousand"}, true
 }
 
 // smallestShare is the share of a deviation below which asking for that little is no advice.
@@ -148,12 +148,17 @@ func (j *job) moveText(m *mesh, by float64) string {
 	return "open the center distance by " + size + ", to " + to
 }
 
-// runoutsText words the runouts at a share of what they are.
+// runoutsText words the runouts at a share of what they are, blank where that is no advice.
 func (j *job) runoutsText(m *mesh, share float64) string {
 	var words []string
 	for i, g := range []*gear{m.first, m.second} {
-		if r := m.plan.Deviations[i].Runout; r > 0 {
-			words = append(words, j.lengthDown(r*share)+" for "+g.name)
+		d := m.plan.Deviations[i]
+		switch {
+		case d.Runout == 0:
+		case d.Runout*share < j.lastDigit() || (m.statistical && !d.Measured):
+			return "" // nothing to measure, or what a class allows: a finer one is the way
+		default:
+			words = append(words, j.lengthDown(d.Runout*share)+" for "+g.name)
 		}
 	}
 	return strings.Join(words, " and ")
@@ -162,10 +167,11 @@ func (j *job) runoutsText(m *mesh, share float64) string {
 // finerText words by how many classes finer the gears must be: a class is a
 // factor of √2 (ISO 1328-1:2013, clause 5).
 func finerText(m *mesh, share float64) string {
-	if m.first.flanks == nil && m.second.flanks == nil {
+	n := int(math.Floor(2*math.Log2(1/share))) + 1
+	by := math.Pow(2, -float64(n)/2)
+	if (m.first.flanks == nil && m.second.flanks == nil) || !m.plan.WithFinerTeeth(by).Possible(m.pair()) {
 		return ""
 	}
-	n := int(math.Floor(2*math.Log2(1/share))) + 1
 	text := "make the teeth finer by 1 class"
 	if n > 1 {
 		text = fmt.Sprintf("make the teeth finer by %d classes", n)

@@ -11,7 +11,7 @@ func (b *meshBacklash) addRows(j *job) {
 	most := 0.0
 	for _, r := range b.budget.Rows {
 		takes, adds := b.budget.StatisticalShare(r)
-		row := budgetRow{What: causeName(r.Cause), Worst: r.Takes, Statistical: takes, WorstAdds: r.Adds, StatisticalAdds: adds, Certain: r.Certain, text: j.causeText(b.mesh, r)}
+		row := budgetRow{What: rowName(b.mesh, r.Cause), Worst: r.Takes, Statistical: takes, WorstAdds: r.Adds, StatisticalAdds: adds, Certain: r.Certain, text: j.causeText(b.mesh, r)}
 		if r.Gear >= 0 {
 			row.Gear = b.Gears[r.Gear]
 		}
@@ -28,6 +28,14 @@ func (r budgetRow) name() string {
 		return r.What
 	}
 	return r.What + " of " + r.Gear
+}
+
+// rowName names a row's cause: a climate without heat is swelling.
+func rowName(m *mesh, c inspect.Cause) string {
+	if c == inspect.OfClimate && m.plan.Climate.Temperature == (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+		return "swelling"
+	}
+	return causeName(c)
 }
 
 // causeName names a cause as JSON does.

@@ -46,13 +46,7 @@ func (b *meshBacklash) problemText(p *page, j *job) {
 		return
 	}
 	p.blank()
-	text := b.Problem
-	if text == "" {
-		got := b.budget.By(b.mesh.plan.Method)
-		text = fmt.Sprintf("%s and %s: the teeth as they are give %s to %s of backlash %s, not the %s asked for", b.Gears[0], b.Gears[1],
-			j.length(got.Min), j.length(got.Max), b.Method, j.wishText(b.mesh))
-	}
-	p.wrapped("NO: "+text+".", "  ")
+	p.wrapped("NO: "+b.Problem+".", "  ")
 	if b.Left != nil && b.CostsMost != "" && b.problem != nil && b.problem.Kind == inspect.NoRoom {
 		p.wrapped(fmt.Sprintf("Left for the teeth: %s at worst, %s statistically. Most goes to: %s.", j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost), "  ")
 	}
@@ -125,7 +119,7 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	unit := u.String()
 	p.blank()
 	p.head(fmt.Sprintf("Budget of %s and %s: backlash, circumferential, at the working pitch circle", b.Gears[0], b.Gears[1]))
-	g := grid{heads: []string{"takes", "by RSS", "adds", "by RSS"}}
+	g := grid{heads: []string{"takes", "likely", "adds", "likely"}}
 	for _, r := range b.Budget {
 		g.row(r.text, unit, f(r.Worst), f(r.Statistical), f(r.WorstAdds), f(r.StatisticalAdds))
 	}
@@ -136,7 +130,7 @@ func (b *meshBacklash) budgetText(p *page, j *job, digits int) {
 	g.row("In the middle, at 20 °C and dry", unit, f(b.Middle), f(b.Middle), f(b.Middle), f(b.Middle))
 	g.row("Backlash, least and most", unit, f(b.Circumferential.Min), f(b.Statistical.Min), f(b.Circumferential.Max), f(b.Statistical.Max))
 	p.grid(g)
-	p.line("By RSS: shares of the root of the sum of squares; what every pair meets, as heat, in full.")
+	p.wrapped("Likely (statistically): shares of what nearly all pairs have, by the means of deviations and the root of the sum of squares of their spreads; what every pair meets, as heat, in full.", "  ")
 	switch {
 	case b.alone:
 		p.line("Planned alone, since the backlash of another mesh cannot be had.")
@@ -174,7 +168,7 @@ func (b *meshBacklash) accuracyText(p *page) {
 
 // heatGrid is the backlash at each temperature.
 func (b *meshBacklash) heatGrid(unit string, f func(float64) string) grid {
-	g := grid{heads: []string{"least", "by RSS", "middle", "by RSS", "most"}}
+	g := grid{heads: []string{"least", "likely", "middle", "likely", "most"}}
 	for _, h := range b.At {
 		g.row(fmt.Sprintf("Backlash at %s °C", celsius(h.Temperature)), unit, f(h.Worst.Min), f(h.Statistical.Min), f(h.Middle), f(h.Statistical.Max), f(h.Worst.Max))
 	}
@@ -188,11 +182,11 @@ func (b *meshBacklash) randomText(p *page, j *job) {
 		return
 	}
 	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere, hot or cold, when turned until all their deviations have met", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
-	if b.Asked != nil {
-		text += fmt.Sprintf("; %s fall below %s somewhere", percent(r.Short, r.Pairs), j.length(b.Asked.Min))
+	if r.Short != nil {
+		text += fmt.Sprintf("; %s fall below %s somewhere", percent(*r.Short, r.Pairs), j.length(b.Asked.Min))
 	}
-	if b.Asked != nil && b.Asked.Max != nil {
-		text += fmt.Sprintf("; %s exceed %s somewhere", percent(r.Over, r.Pairs), j.length(*b.Asked.Max))
+	if r.Over != nil {
+		text += fmt.Sprintf("; %s exceed %s somewhere", percent(*r.Over, r.Pairs), j.length(*b.Asked.Max))
 	}
 	p.wrapped(text+fmt.Sprintf(". Nearly all (99.7 %%) stay between %s and %s.", j.length(r.Nearly.Min), j.length(r.Nearly.Max)), "  ")
 }
@@ -236,7 +230,7 @@ func (b *backlash) notCounted(p *page) {
 		swell = swell || g.swell.Max > 0
 	}
 	p.blank()
-	text := "Not counted: shafts out of parallel, play of bearings, bending under load, burrs and dirt"
+	text := "Not counted: shafts out of parallel, play of bearings, bending under load, gears warmer than the housing, burrs and dirt"
 	if swell {
 		text += ", swelling of the housing"
 	}

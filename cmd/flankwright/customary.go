@@ -31,6 +31,9 @@ type pairSpans struct {
 	Second askedSpan `json:"second"`
 }
 
+// mostOfMetals is the expansion above which a gear is of plastic, 1/K: that of zinc.
+const mostOfMetals = 32e-6
+
 // usualCallOut is the DIN 3967 call-out that drawings show most.
 const usualCallOut = "cd25"
 
@@ -80,9 +83,17 @@ func (m *mesh) byNormal(name string, l refdata.LeastBacklash) custom {
 	}
 	out := m.wished(l.Normal / (math.Cos(alpha) * math.Cos(m.first.g.BaseHelix())))
 	out.Name, out.Source = name, l.Source.String()
+	var notes []string
 	if len(l.Outside) > 0 {
-		out.Note = "extrapolated: " + strings.Join(l.Outside, "; ")
+		notes = append(notes, "extrapolated: "+strings.Join(l.Outside, "; "))
 	}
+	for _, g := range []*gear{m.first, m.second} {
+		if g.swell.Max > 0 || g.material.known() && g.material.expansion > mostOfMetals {
+			notes = append(notes, "made for gears and housings of iron and steel")
+			break
+		}
+	}
+	out.Note = strings.Join(notes, "; ")
 	return out
 }
 
@@ -150,14 +161,15 @@ func (m *mesh) normalShare() float64 {
 
 // openFor returns by how much the center must be farther than the tight one of
 // nominal teeth for a circumferential backlash, which is what standard cutters
-// used at their depth need; nil where there is no tight center.
+// used at their depth need, the center's tolerance included; nil where there is none.
 func (m *mesh) openFor(least float64) *float64 {
 	tight := m.tight()
 	if tight == 0 || least < 0 {
 		return nil
 	}
 	plan := m.plan
-	plan.Center, plan.Deviations, plan.Climate, plan.Method = inspect.Limits{Min: tight, Max: tight}, [2]inspect.Deviations{}, nil, inspect.WorstCase
+	half := m.plan.Center.Width() / 2
+	plan.Center, plan.Deviations, plan.Climate, plan.Method = inspect.Limits{Min: tight - half, Max: tight + half}, [2]inspect.Deviations{}, nil, inspect.WorstCase
 	n1, n2 := m.first.g.NominalThickness(), m.second.g.NominalThickness()
 	by, ok := plan.CenterFor(inspect.Limits{Min: n1, Max: n1}, inspect.Limits{Min: n2, Max: n2}, least)
 	if !ok {

@@ -6,13 +6,14 @@ import (
 	"strings"
 
 	"flankwright/inspect"
+	"flankwright/involute"
 	"flankwright/refdata"
 )
 
 // Sources that only backlash names.
 const (
 	srcGrowth  = "ISO 21771:2007, clause 5 (gear pairs), with every length grown as heat and water make it"
-	srcRSS     = "root of the sum of squares, as ISO/TR 10064-2:1996, annex A, adds up deviations"
+	srcRSS     = "statistics of independent deviations, common practice; ISO/TR 10064-2:1996, annex A, adds up deviations of the teeth by the root of the sum of squares"
 	srcLeast   = "ISO/TR 10064-2:1996, annex A.4 (minimum backlash)"
 	srcWorst   = "sum of all at their worst"
 	srcRounded = "; then rounded as clause 5.2 rounds"
@@ -112,7 +113,7 @@ func explainStation(e *explainer, m *mesh, i int, s inspect.Station, least bool)
 	p := m.first.g.TransverseBasePitch()
 	pitch := mm("p", p*max(g.First, g.Second))
 	if least {
-		pitch.Value = p*min(g.First, g.Second) - p*math.Abs(g.First-g.Second)
+		pitch.Value = p*min(g.First, g.Second) - float64(involute.MorePitches(m.plan.ContactRatio))*p*math.Abs(g.First-g.Second)
 	}
 	out := mm("j_"+index, s.Backlash)
 	e.result("backlash with "+name,
@@ -145,13 +146,15 @@ func explainTotals(e *explainer, b meshBacklash) {
 	} {
 		var all, sure, squares []string
 		in := []quantity{mm("j_m", b.Middle)}
-		for i, r := range b.Budget {
-			x := mm(fmt.Sprintf("x_%d", i+1), side.pick(r))
+		for i, r := range b.budget.Rows {
+			x := mm(fmt.Sprintf("x_%d", i+1), side.pick(b.Budget[i]))
 			in, all = append(in, x), append(all, x.Symbol)
-			if r.Certain {
-				sure = append(sure, x.Symbol)
-			} else {
-				squares = append(squares, x.Symbol+" ^ 2")
+			mean, three := r.Spread()
+			if mean > 0 {
+				sure = append(sure, figure(mean)+" * "+x.Symbol)
+			}
+			if three > 0 {
+				squares = append(squares, "("+figure(three)+" * "+x.Symbol+") ^ 2")
 			}
 		}
 		e.result(side.name+" backlash at worst", "j = j_m "+side.sign+" ("+strings.Join(all, " + ")+")", mm("j", side.worst), srcWorst, in...)
@@ -159,7 +162,7 @@ func explainTotals(e *explainer, b meshBacklash) {
 		if len(sure) > 0 {
 			equation += " " + side.sign + " (" + strings.Join(sure, " + ") + ")"
 		}
-		e.result(side.name+" backlash, statistically", equation, mm("j", side.likely), srcRSS+"; what every pair meets is added in full", in...)
+		e.result(side.name+" backlash, statistically: means, and three standard deviations by the root of the sum of squares", equation, mm("j", side.likely), srcRSS, in...)
 	}
 }
 

@@ -73,7 +73,7 @@ func (j *job) warnGear(g *gear) {
 		j.addWarning("no-limits", g.name, "no thin and no backlash is given: the targets are the nominal tooth without tolerance. Give thin or backlash")
 	}
 	if g.thickness.By == inspect.ByBacklash && g.thickness.Limits.Width() == 0 {
-		j.addWarning("no-tolerance", g.name, "its mate takes all the thinning, and the center's tolerance all the room: its targets are without tolerance")
+		j.addWarning("no-tolerance", g.name, "its mate takes all the thinning and all the tolerance: its targets are without tolerance. thin_share = \"equal\" would share them")
 	}
 	if g.thin != nil && g.thin.Width() == 0 {
 		j.addWarning("no-tolerance", g.name, "thin is one value: the targets are without tolerance. Give a range such as \"0.04..0.08\"")
