@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"flankwright/inspect"
@@ -43,6 +44,15 @@ func (m *mesh) customary() []custom {
 	a, mn := math.Abs(m.plan.Nominal()), m.first.g.Module()
 	dp, center := 25.4/mn, a/25.4
 	out := []custom{}
+	if want := m.plan.Backlash; want != nil {
+		asked := m.wished(want.Min)
+		asked.Name, asked.Source = "As asked for", "the job"
+		if !m.leastOnly {
+			normal := want.Max * m.normalShare()
+			asked.Circumferential.Max, asked.Normal.Max = &want.Max, &normal
+		}
+		out = append(out, asked)
+	}
 	if l, err := refdata.LeastBacklashISO(a, mn); err == nil {
 		out = append(out, m.byNormal("ISO/TR 10064-2, least", l))
 	}
@@ -188,6 +198,7 @@ func (b *meshBacklash) customaryText(p *page, j *job, digits int) {
 		}
 		return f(s.Min), f(*s.Max)
 	}
+	var sources []string
 	g := grid{heads: []string{"least", "most", "normal", b.Gears[0], "to", b.Gears[1], "to", "or open"}}
 	var notes []string
 	for _, c := range b.Customary {
@@ -198,6 +209,13 @@ func (b *meshBacklash) customaryText(p *page, j *job, digits int) {
 		if c.OpenCenter != nil {
 			open = f(*c.OpenCenter)
 		}
+		family, _, _ := strings.Cut(c.Name, ",")
+		if strings.HasPrefix(family, "DIN 3967") {
+			family = "DIN 3967"
+		}
+		if line := family + ": " + c.Source; !slices.Contains(sources, line) && c.Source != "the job" {
+			sources = append(sources, line)
+		}
 		name := c.Name
 		if c.Note != "" {
 			name += " *"
@@ -206,11 +224,14 @@ func (b *meshBacklash) customaryText(p *page, j *job, digits int) {
 		g.row(name, u.String(), least, most, f(c.Normal.Min), t1, t1most, t2, t2most, open)
 	}
 	p.blank()
-	p.head(fmt.Sprintf("Customary for %s and %s: backlash, circumferential, and its least normal; how much thinner each gear's teeth", b.Gears[0], b.Gears[1]))
-	p.head("at the tightest center; or how much to open the center from the tight one for teeth of nominal thickness")
+	p.head(fmt.Sprintf("Customary for %s and %s", b.Gears[0], b.Gears[1]))
+	p.wrapped("Backlash, circumferential, and the least of it normal to the flanks; how much thinner than nominal it makes each gear's teeth; or how much to open the center from the tight one for standard cutters at full depth.", "")
 	p.grid(g)
 	for _, n := range notes {
 		p.wrapped(n, "  ")
 	}
-	p.line("Sources stand in --json and in the tables. DIN 3967's call-out goes into a job as thin = \"DIN 3967 %s\".", usualCallOut)
+	p.line("DIN 3967's call-out goes into a job as thin = \"DIN 3967 %s\". Sources:", usualCallOut)
+	for _, s := range sources {
+		p.wrapped("  "+s, "  ")
+	}
 }
