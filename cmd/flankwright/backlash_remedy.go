@@ -87,14 +87,6 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 // smallestShare is the share of a deviation below which asking for that little is no advice.
 const smallestShare = 0.05
 
-// mate returns the other gear of a mesh.
-func (m *mesh) mate(g *gear) *gear {
-	if g == m.first {
-		return m.second
-	}
-	return m.first
-}
-
 // nominalText words nominal teeth as the thickest: the thin of each gear that is free.
 func (j *job) nominalText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) string {
 	var words []string

@@ -109,6 +109,14 @@ type mesh struct {
 	housing       *material
 }
 
+// mate returns the other gear of a mesh.
+func (m *mesh) mate(g *gear) *gear {
+	if g == m.first {
+		return m.second
+	}
+	return m.first
+}
+
 // face returns the common face width, 0 where one is not known.
 func (m *mesh) face() float64 {
 	return min(m.first.faceWidth, m.second.faceWidth)

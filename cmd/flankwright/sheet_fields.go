@@ -152,11 +152,8 @@ func (j *job) sheetLimits(g *gear) []export.Field {
 		if m.first != g && m.second != g {
 			continue
 		}
-		mate := m.first.name
-		if m.first == g {
-			mate = m.second.name
-		}
-		center := j.limitsField(fmt.Sprintf("Center, %s (%d teeth)", mate, mateTeeth(m, g)), m.plan.Center)
+		mate := m.mate(g).name
+		center := j.limitsField(fmt.Sprintf("Center, %s (%d teeth)", mate, m.mate(g).g.Teeth()), m.plan.Center)
 		center.Other = ""
 		fields = append(fields, center)
 		fields = append(fields, j.backlashFields(m, mate)...)
@@ -189,11 +186,4 @@ func (j *job) backlashFields(m *mesh, mate string) []export.Field {
 		fields = append(fields, j.rangeField("Backlash with deviations", got.Min, got.Max))
 	}
 	return fields
-}
-
-func mateTeeth(m *mesh, g *gear) int {
-	if m.first == g {
-		return m.second.g.Teeth()
-	}
-	return m.first.g.Teeth()
 }
