@@ -52,9 +52,23 @@ func FuzzJob(f *testing.F) {
 		j, err := resolve(r)
 		if err != nil {
 			checkComplaint(t, err)
+		}
+		var results []any
+		switch {
+		case err == nil:
+			results = []any{newDims(j, j.gears, 0), newTargets(j, j.gears, ask{})}
+		case j == nil || j.problem == nil:
 			return
 		}
-		for _, result := range []any{newDims(j, j.gears, 0), newTargets(j, j.gears, ask{})} {
+		if len(j.meshes) > 0 { // a backlash that cannot be had has its budget too
+			b, err := newBacklash(j, j.gears, backlashOptions{pairs: 100, customary: true, explain: true})
+			if err != nil {
+				checkComplaint(t, err)
+			} else {
+				results = append(results, b)
+			}
+		}
+		for _, result := range results {
 			data, err := jsonText(result) // refuses NaN and infinities
 			if err != nil {
 				t.Errorf("%v in\n%s", err, text)
