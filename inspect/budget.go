@@ -58,6 +58,18 @@ func (l Limits) ends() []float64 {
 	return []float64{l.Min, l.Max}
 }
 
+// ServiceCenter returns the least center distance that a pair meets in its climate, as
+// against the size of its gears: what decides how many teeth touch at once at most. With
+// the sign of the formulas, mm.
+func (m PlanMesh) ServiceCenter() float64 {
+	tight := m.Tightest() - (m.Deviations[0].Runout+m.Deviations[1].Runout)/2
+	least := tight
+	for _, g := range m.Climate.growths() {
+		least = min(least, tight*g.Housing*2/(g.First+g.Second))
+	}
+	return least
+}
+
 // AtTemperature returns the mesh at one temperature, °C, swollen or not.
 func (m PlanMesh) AtTemperature(t float64) PlanMesh {
 	if m.Climate != nil {

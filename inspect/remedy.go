@@ -135,8 +135,12 @@ func (m PlanMesh) nominalRemedies(pair [2]PlanGear) []Remedy {
 	if err != nil {
 		return nil
 	}
-	list := []Remedy{{Kind: RaiseShift, Value: -least / (2 * m.Mesh.First.Module() * math.Tan(m.Mesh.First.PressureAngle()))}}
-	if width += least; width > hair*m.Mesh.First.Module() {
+	var list []Remedy
+	module := m.Mesh.First.Module()
+	if width > hair*module {
+		list = append(list, Remedy{Kind: RaiseShift, Value: -least / (2 * module * math.Tan(m.Mesh.First.PressureAngle()))})
+	}
+	if width += least; width > hair*module {
 		list = append(list, Remedy{Kind: TakeNominal, Thin: s.thin(0, width)})
 	}
 	return list

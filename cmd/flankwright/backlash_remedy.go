@@ -50,8 +50,15 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 	case inspect.WidenStatistically:
 		return length("greatest backlash, held statistically", "allow more than %s and hold it statistically, budget = \"statistical\"", j.lengthUp(r.Value))
 	case inspect.AskForMore:
-		return length("least backlash", "ask for %s or more, and allow more than %s: nominal teeth already have that", j.lengthUp(p.Nominal.Min), j.lengthUp(p.Nominal.Max))
+		text := fmt.Sprintf("ask for %s or more", j.lengthUp(p.Nominal.Min))
+		if most := p.Nominal.Max + 2*j.lastDigit(); most > m.plan.Backlash.Max {
+			text += ", and allow " + j.lengthUp(most)
+		}
+		return length("least backlash", "%s: nominal teeth already have that", text)
 	case inspect.CloserCenter:
+		if r.Value < j.lastDigit() {
+			return remedyText{}, false
+		}
 		return length("center tolerance", "hold the center distance closer than ±%s", j.lengthDown(r.Value))
 	case inspect.CloserRunout:
 		if text := j.runoutsText(m, r.Value); r.Value < smallestShare || text == "" {
@@ -79,7 +86,8 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 		last := 1e-4
 		return remedyText{What: "shift", Shift: &r.Value, Text: fmt.Sprintf("raise %s by %.4f", who, math.Ceil(r.Value/last-1e-6)*last)}, true
 	case inspect.TakeNominal:
-		return remedyText{What: "thin", Text: j.nominalText(m, r, p)}, true
+		text := j.nominalText(m, r)
+		return remedyText{What: "thin", Text: text}, text != ""
 	}
 	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\", for all but a few pairs in a thousand"}, true
 }
@@ -87,15 +95,28 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 // smallestShare is the share of a deviation below which asking for that little is no advice.
 const smallestShare = 0.05
 
-// nominalText words nominal teeth as the thickest: the thin of each gear that is free.
-func (j *job) nominalText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) string {
+// nominalText words nominal teeth as the thickest: the thin of each gear that is free,
+// and the backlash that they then have; blank where it is too little to hold.
+func (j *job) nominalText(m *mesh, r inspect.Remedy) string {
 	var words []string
+	var thick [2]inspect.Limits
 	for i, g := range []*gear{m.first, m.second} {
-		if g.ownThin() == nil {
+		n := g.g.NominalThickness()
+		thick[i] = inspect.Limits{Min: n - r.Thin[i].Max, Max: n - r.Thin[i].Min}
+		switch {
+		case g.ownThin() != nil:
+		case r.Thin[i].Max < j.lastDigit():
+			return ""
+		default:
 			words = append(words, fmt.Sprintf("thin = \"0..%s\" in %s", strings.ReplaceAll(j.lengthDown(r.Thin[i].Max), " ", ""), g.name))
 		}
 	}
-	return fmt.Sprintf("take nominal teeth as the thickest, %s, for %s to %s", strings.Join(words, " and "), j.length(p.Nominal.Min), j.length(m.plan.Backlash.Max))
+	b, err := m.plan.Budget(thick[0], thick[1])
+	if err != nil {
+		return ""
+	}
+	got := b.By(m.plan.Method)
+	return fmt.Sprintf("take nominal teeth as the thickest, %s, which makes %s to %s of backlash", strings.Join(words, " and "), j.lengthDown(got.Min), j.lengthUp(got.Max))
 }
 
 // fixedRemedies says what to change where both thicknesses are given and the backlash

@@ -53,7 +53,7 @@ func (j *job) burden(m *mesh) {
 	m.plan.Deviations = [2]inspect.Deviations{m.first.deviations(), m.second.deviations()}
 	m.plan.Climate = m.climate()
 	m.plan.LeastOnly = m.leastOnly
-	if c, err := m.plan.Mesh.Contact(m.plan.Nominal(), m.first.nominal, m.second.nominal); err == nil {
+	if c, err := m.plan.Mesh.Contact(m.plan.ServiceCenter(), m.first.nominal, m.second.nominal); err == nil {
 		m.plan.ContactRatio = c.TransverseRatio + m.plan.Mesh.OverlapRatio(m.face())
 	}
 	if m.statistical {
