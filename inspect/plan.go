@@ -2,6 +2,7 @@ package inspect
 
 import (
 	"math"
+	"slices"
 
 	"flankwright/involute"
 )
@@ -90,7 +91,8 @@ const noThinning = 1e-9
 // In each mesh the gears share the thinning out, and a gear that is already fixed
 // leaves its mate the rest. A gear in several meshes takes the least of its
 // shares, least thinning and range alike, which suits all; its mates in one mesh
-// only take what that leaves them.
+// only take what that leaves them. A train for which that finds nothing is planned
+// evenly, see even.
 func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
 	p := planner{gears: gears, meshes: meshes, thin: make([]Limits, len(gears)), by: make([]Decider, len(gears)), hard: make([]bool, len(gears)), bound: make([]*Limits, len(gears))}
 	for i, g := range gears {
@@ -102,8 +104,14 @@ func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
 	if err := p.shareOut(); err != nil {
 		return nil, err
 	}
-	if err := p.settle(); err != nil {
+	if err := p.settle(); err != nil && (len(p.active) < 2 || !p.even(-1) || p.check() != nil) {
 		return nil, err
+	}
+	if least := p.leastWidth(); len(p.active) > 1 && least < noThinning {
+		before := slices.Clone(p.thin)
+		if p.even(least) && p.check() != nil {
+			p.thin = before
+		}
 	}
 	out := make([]Thickness, len(gears))
 	for i, g := range gears {
@@ -249,6 +257,17 @@ func (p *planner) keepBounds() {
 			p.thin[i] = Limits{least, min(least+p.thin[i].Width(), bound.Max)}
 		}
 	}
+}
+
+// leastWidth returns the least width that a gear is left that is free to give way.
+func (p *planner) leastWidth() float64 {
+	least := math.Inf(1)
+	for i, by := range p.by {
+		if by == ByBacklash && !p.hard[i] {
+			least = min(least, p.thin[i].Width())
+		}
+	}
+	return least
 }
 
 // take adds one mesh's share to what a gear has. A hard share, of a mesh that

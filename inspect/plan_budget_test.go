@@ -137,3 +137,48 @@ func TestTrainsHoldTheBudget(t *testing.T) {
 		t.Errorf("only %d of %d drawn trains were planned", planned, drawn)
 	}
 }
+
+// A train for which a plan exists is planned: the wishes are what teeth drawn first, all
+// with one tolerance, come to, with a hair of room above.
+func TestFeasibleTrainsArePlanned(t *testing.T) {
+	evenly := 0
+	rapid.Check(t, func(t *rapid.T) {
+		gears, pairs := drawTrain(t)
+		module := gears[0].Gear.Module()
+		width := rapid.Float64Range(0.001, 0.02).Draw(t, "width") * module
+		var thick []Limits
+		for i := range gears {
+			gears[i].Thin = nil
+			least := rapid.SampledFrom([]float64{0, 0.02, 0.06}).Draw(t, "least thinning") * module
+			thick = append(thick, gears[i].thickness(Limits{least, least + width}))
+		}
+		var meshes []PlanMesh
+		for _, p := range pairs {
+			p.drawBurden(t, true)
+			m := p.mesh
+			m.Share, m.Method = ShareEqual, rapid.SampledFrom([]Method{WorstCase, Statistical}).Draw(t, "method")
+			b, err := m.Budget(thick[m.First], thick[m.Second])
+			if err != nil {
+				t.Skip(err)
+			}
+			const hair = 1e-4
+			wish := b.By(m.Method)
+			m.Backlash = &Limits{wish.Min, wish.Max + hair*module}
+			meshes = append(meshes, m)
+		}
+		found, err := Plan(gears, meshes)
+		if err != nil {
+			t.Fatalf("refused (%v), but %v do", err, thick)
+		}
+		alike := true
+		for _, f := range found {
+			alike = alike && math.Abs(f.Limits.Width()-found[0].Limits.Width()) < 1e-9
+		}
+		if alike && len(gears) > 2 {
+			evenly++
+		}
+	})
+	if evenly == 0 {
+		t.Error("no train had to be planned evenly")
+	}
+}
