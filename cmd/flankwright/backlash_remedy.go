@@ -73,7 +73,7 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 		if r.Value < smallestShare {
 			return remedyText{}, false
 		}
-		return share("climate", "keep heat and swelling to less than %.0f %% of it, or take materials that grow alike", math.Floor(100*r.Value))
+		return share("climate", "%s", climateWay(m.plan.Climate, r.Value))
 	case inspect.MoveCenter:
 		return length("center distance", "%s", j.moveText(m, r.Value))
 	case inspect.RaiseShift:
@@ -91,6 +91,22 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 	}
 	return remedyText{What: "statistically", Text: "hold the backlash statistically, budget = \"statistical\", for all but a few pairs in a thousand"}, true
 }
+
+// climateWay words a share of the heat and the swelling.
+func climateWay(c *inspect.Climate, share float64) string {
+	const ref = inspect.ReferenceTemperature
+	var words []string
+	if c.Temperature.Min < ref || c.Temperature.Max > ref {
+		words = append(words, fmt.Sprintf("the temperature within %s to %s °C", celsius(math.Ceil(10*(ref+share*(c.Temperature.Min-ref)))/10), celsius(math.Floor(10*(ref+share*(c.Temperature.Max-ref)))/10)))
+	}
+	if most := max(c.Swell[0].Max, c.Swell[1].Max); most > 0 {
+		words = append(words, fmt.Sprintf("swelling under %.0f %% of what it is", math.Floor(100*share)))
+	}
+	return "keep " + strings.Join(words, " and ")
+}
+
+// mostFiner is by how many classes finer is still advice for a shop.
+const mostFiner = 3
 
 // smallestShare is the share of a deviation below which asking for that little is no advice.
 const smallestShare = 0.05
@@ -182,7 +198,7 @@ func (j *job) runoutsText(m *mesh, share float64) string {
 func finerText(m *mesh, share float64) string {
 	n := int(math.Floor(2*math.Log2(1/share))) + 1
 	by := math.Pow(2, -float64(n)/2)
-	if (m.first.flanks == nil && m.second.flanks == nil) || !m.plan.WithFinerTeeth(by).Possible(m.pair()) {
+	if n > mostFiner || (m.first.flanks == nil && m.second.flanks == nil) || !m.plan.WithFinerTeeth(by).Possible(m.pair()) {
 		return ""
 	}
 	text := "make the teeth finer by 1 class"

@@ -30,12 +30,15 @@ func (r budgetRow) name() string {
 	return r.What + " of " + r.Gear
 }
 
-// rowName names a row's cause: a climate without heat is swelling.
+// rowName names a row's cause: a climate is heat, swelling or both.
 func rowName(m *mesh, c inspect.Cause) string {
-	if c == inspect.OfClimate && m.plan.Climate.Temperature == (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+	if c != inspect.OfClimate || m.plan.Climate.Swell == [2]inspect.Limits{} {
+		return causeName(c)
+	}
+	if m.plan.Climate.Temperature == (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
 		return "swelling"
 	}
-	return causeName(c)
+	return "temperature and swelling"
 }
 
 // causeName names a cause as JSON does.

@@ -51,7 +51,7 @@ func (b *meshBacklash) problemText(p *page, j *job) {
 		p.wrapped(fmt.Sprintf("Left for the teeth: %s at worst, %s statistically. Most goes to: %s.", j.length(b.Left.Worst), j.length(b.Left.Statistical), b.CostsMost), "  ")
 	}
 	if len(b.Remedies) > 0 {
-		p.line("Any one of these would do:")
+		p.line("Any one of these would do; by how much it is gone beyond is left for the teeth:")
 		for _, r := range b.Remedies {
 			p.wrapped("  - "+r.Text, "    ")
 		}
@@ -68,7 +68,8 @@ func (b *backlash) limitsGrid(u inspect.Unit, digits int) grid {
 		nominal := x.g.NominalThickness()
 		t := u.FormatLimits(inspect.Limits{Min: nominal - x.thickness.Limits.Max, Max: nominal - x.thickness.Limits.Min}, digits)
 		low, high, thinLow, thinHigh = append(low, s.Low), append(high, s.High), append(thinLow, t.Low), append(thinHigh, t.High)
-		left, by = append(left, u.Format(x.thickness.Limits.Width(), s.Decimals)), append(by, thicknessWords(x))
+		width := u.FormatLimits(inspect.Limits{Max: x.thickness.Limits.Width()}, s.Decimals) // rounded down, as the limits are inward
+		left, by = append(left, width.High), append(by, thicknessWords(x))
 	}
 	unit := u.String()
 	g.row("Tooth thickness, normal, least", unit, low...)
@@ -86,18 +87,15 @@ func (b *backlash) measureText(p *page, digits int) {
 	for i, t := range b.targets.gears {
 		short := t
 		short.OverPins, short.Span = nil, nil
-		for _, pin := range t.OverPins {
-			if pin.Usable {
-				pin.Also = nil
-				short.OverPins = []pinTarget{pin}
-				break
-			}
+		if pin := t.firstPin(); pin != nil {
+			one := *pin
+			one.Also, one.Why = nil, ""
+			short.OverPins = []pinTarget{one}
 		}
-		for _, s := range t.Span {
-			if s.Usable {
-				short.Span = []spanTarget{s}
-				break
-			}
+		if s := t.firstSpan(); s != nil {
+			one := *s
+			one.Why, one.Missing = "", ""
+			short.Span = []spanTarget{one}
 		}
 		p.blank()
 		p.head("What to measure on " + b.list[i].name)
@@ -107,6 +105,9 @@ func (b *backlash) measureText(p *page, digits int) {
 		p.grid(g)
 		for _, m := range more {
 			p.line("  %s", m)
+		}
+		if short.OverPins == nil || short.Span == nil {
+			p.line("  What cannot be used is left out; flankwright targets says why.")
 		}
 		p.line("  Chordal height %s, constant chord height %s; more by: flankwright targets", b.job.display.Format(t.Chordal.Height, digits), b.job.display.Format(t.ConstantChord.Height, digits))
 	}
@@ -181,7 +182,13 @@ func (b *meshBacklash) randomText(p *page, j *job) {
 	if r == nil {
 		return
 	}
-	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere, hot or cold, when turned until all their deviations have met", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
+	text := fmt.Sprintf("Of %d pairs drawn at random (seed %d) %s bind somewhere", r.Pairs, r.Seed, percent(r.Bind, r.Pairs))
+	if b.mesh.plan.Climate != nil {
+		text += ", hot or cold"
+	}
+	if b.mesh.plan.Deviations != [2]inspect.Deviations{} {
+		text += ", when turned until all their deviations have met"
+	}
 	if r.Short != nil {
 		text += fmt.Sprintf("; %s fall below %s somewhere", percent(*r.Short, r.Pairs), j.length(b.Asked.Min))
 	}
@@ -221,7 +228,11 @@ func (b *backlash) notCounted(p *page) {
 	}
 	for _, m := range b.Meshes {
 		if m.mesh.temperature == nil {
-			lack = append(lack, "heat (give temperature, housing and material)")
+			give := "temperature, housing and material"
+			if m.mesh.housing != nil {
+				give = "temperature"
+			}
+			lack = append(lack, "heat (give "+give+")")
 			break
 		}
 	}

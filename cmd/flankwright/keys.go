@@ -181,7 +181,7 @@ func otherNames() map[string]string {
 		"diametral_pitch": "dp", "pitch": "dp", "normal_diametral_pitch": "dp", "mod": "module", "normal_module": "module",
 		"number_of_teeth": "teeth", "z": "teeth", "profile_shift": "shift", "x": "shift", "outside_diameter": "tip_diameter", "od": "tip_diameter",
 		"center_distance": "center", "centre": "center", "width": "face_width", "face": "face_width", "helix": "helix_angle", "angle": "pressure_angle",
-		"play": "backlash", "hole": "bore", "holes": "bolt_circle", "bolts": "bolt_circle", "pcd": "bolt_circle", "key": "keyway", "boss": "hub",
+		"play": "backlash", "internal": "ring", "hole": "bore", "holes": "bolt_circle", "bolts": "bolt_circle", "pcd": "bolt_circle", "key": "keyway", "boss": "hub",
 	}
 }
 

@@ -106,15 +106,23 @@ func (j *job) sheetTargets(g *gear, t gearTargets) []export.Target {
 	if len(t.OverPins) > 0 {
 		p := t.OverPins[0]
 		if a := p.firstAlso(); a != nil {
-			with, why := alsoWith(a.Way, p.Kind)+j.pinBoth(p.Pin), a.Why
+			d := p.Pin
+			if a.Pin != nil { // the one that is taken, where the two measure otherwise
+				d = *a.Pin
+			}
+			with, why := alsoWith(a.Way, p.Kind)+j.pinBoth(d), a.Why
 			if a.bore > 0 { // the correction stands among the cautions
-				with, why = alsoWith(a.Way, p.Kind)+"Ø "+j.length(p.Pin)+", bore "+j.length(a.bore), ""
+				size, _, _ := strings.Cut(j.pinBoth(d), " (")
+				with, why = alsoWith(a.Way, p.Kind)+size+", bore "+j.length(a.bore), ""
 			}
 			add(capital(wayText(a.text, p.Kind)), with, a.Measurement, a.Aim, a.Usable, why)
 		}
 	}
 	if len(t.Span) > 0 {
 		s := t.Span[0]
+		if one := t.firstSpan(); one != nil {
+			s = *one
+		}
 		with := "over " + teethText(s.Teeth)
 		if g.g.Helical() {
 			with += ", across the helix"
@@ -182,13 +190,20 @@ func (t gearTargets) firstPin() *pinTarget {
 	return nil
 }
 
+// firstSpan returns the first usable span for which the shop lacks nothing, or the first usable one.
 func (t gearTargets) firstSpan() *spanTarget {
+	var first *spanTarget
 	for i := range t.Span {
-		if t.Span[i].Usable {
-			return &t.Span[i]
+		s := &t.Span[i]
+		switch {
+		case !s.Usable:
+		case s.Missing == "":
+			return s
+		case first == nil:
+			first = s
 		}
 	}
-	return nil
+	return first
 }
 
 // pinView draws the two pins where they rest. Spaces lie half a pitch beside the tooth on +x.
@@ -264,7 +279,7 @@ func sheetMethod(g *gear, t gearTargets) []string {
 		place = "Set the two balls in the spaces nearest to opposite, in one plane square to the axis."
 	}
 	if t.firstPin() == nil {
-		place = "No pin or ball of this sheet can be used on this gear."
+		place = "Two pins of this sheet cannot be used on this gear."
 	} else {
 		place += " Rock the gear gently and take the largest reading."
 	}
