@@ -27,6 +27,11 @@ type Climate struct {
 // ReferenceTemperature is that at which drawings hold, °C (ISO 1).
 const ReferenceTemperature = 20
 
+// Steady reports whether the temperature always is the reference temperature.
+func (c Climate) Steady() bool {
+	return c.Temperature == Limits{ReferenceTemperature, ReferenceTemperature}
+}
+
 // growth returns the growth at a temperature and a state of swelling.
 func (c Climate) growth(t, swell1, swell2 float64) involute.Growth {
 	dt := t - ReferenceTemperature

@@ -29,7 +29,7 @@ func handMesh(t testing.TB) PlanMesh {
 
 // thinned returns the thickness limits of teeth thinner than nominal by a range.
 func thinned(g *involute.Gear, least, most float64) Limits {
-	return PlanGear{Gear: g}.thickness(Limits{least, most})
+	return PlanGear{Gear: g}.Thickness(Limits{least, most})
 }
 
 // A whole budget by hand, first order. Everything is spelled out as on paper: a

@@ -22,7 +22,7 @@ type evenPlan struct {
 func (p *planner) even(least float64) bool {
 	e := evenPlan{planner: p, at: map[int]int{}}
 	for _, k := range p.active {
-		for _, gear := range []int{p.meshes[k].First, p.meshes[k].Second} {
+		for _, gear := range p.meshes[k].gears() {
 			if _, known := e.at[gear]; !known && p.gears[gear].Thin == nil && !p.hard[gear] {
 				e.at[gear] = len(e.free)
 				e.free = append(e.free, gear)
@@ -58,7 +58,7 @@ func (e evenPlan) thicken(thin []float64, width float64) {
 				continue
 			}
 			least, _, _ := e.bounds(k, width)
-			for _, mate := range []int{m.First, m.Second} {
+			for _, mate := range m.gears() {
 				if at, free := e.at[mate]; free && mate != gear {
 					least -= thin[at]
 				}
@@ -99,7 +99,7 @@ func (e evenPlan) thinnings(width float64) ([]float64, bool) {
 		}
 		far += math.Abs(least) + math.Abs(most)
 		from, to := origin, origin
-		for _, gear := range []int{e.meshes[k].First, e.meshes[k].Second} {
+		for _, gear := range e.meshes[k].gears() {
 			if i, free := e.at[gear]; free && side[i] > 0 {
 				to = i
 			} else if free {
@@ -192,7 +192,7 @@ func shortest(edges []edge, origin int, backward bool) ([]float64, bool) {
 // for which it is the narrower.
 func (e evenPlan) bounds(k int, width float64) (least, most float64, ok bool) {
 	m, pair := e.meshes[k], e.pair(k)
-	index := [2]int{m.First, m.Second}
+	index := m.gears()
 	least, most = math.Inf(-1), math.Inf(1)
 	for takes, gear := range index {
 		if _, free := e.at[gear]; !free {
@@ -210,7 +210,7 @@ func (e evenPlan) bounds(k int, width float64) (least, most float64, ok bool) {
 				if i == takes {
 					thin = Limits{thin.Min + x, thin.Max + x}
 				}
-				thick[i] = pair[i].thickness(thin)
+				thick[i] = pair[i].Thickness(thin)
 			}
 			b, err := m.Budget(thick[0], thick[1])
 			if err != nil {

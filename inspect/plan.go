@@ -63,13 +63,14 @@ func Plan(gears []PlanGear, meshes []PlanMesh) ([]Thickness, error) {
 	}
 	out := make([]Thickness, len(gears))
 	for i, g := range gears {
-		out[i] = Thickness{g.thickness(p.thin[i]), p.by[i]}
+		out[i] = Thickness{g.Thickness(p.thin[i]), p.by[i]}
 	}
 	return out, nil
 }
 
-// thickness returns the limits of the thickness for limits of the thinning.
-func (g PlanGear) thickness(thin Limits) Limits {
+// Thickness returns the limits of the thickness for limits of the thinning, and the
+// other way round, mm.
+func (g PlanGear) Thickness(thin Limits) Limits {
 	s := g.Gear.NominalThickness()
 	return Limits{s - thin.Max, s - thin.Min}
 }
@@ -114,7 +115,7 @@ func (p *planner) shareOut() error {
 // thinning, or by a mesh that names the gear that takes all; and how many they are.
 func (p *planner) settled(k int) (pair [2]PlanGear, n int) {
 	pair = p.pair(k)
-	for i, gear := range []int{p.meshes[k].First, p.meshes[k].Second} {
+	for i, gear := range p.meshes[k].gears() {
 		if pair[i].Thin == nil && p.hard[gear] {
 			pair[i].Thin = &p.thin[gear]
 		}
@@ -150,8 +151,9 @@ func (p *planner) shareBound(k int) error {
 	if n != 1 || p.named(k) {
 		return nil
 	}
-	for i, gear := range []int{p.meshes[k].First, p.meshes[k].Second} {
-		mate := [2]int{p.meshes[k].Second, p.meshes[k].First}[i]
+	gears := p.meshes[k].gears()
+	for i, gear := range gears {
+		mate := gears[1-i]
 		switch {
 		case pair[i].Thin != nil:
 		case p.hard[mate]:
@@ -263,9 +265,9 @@ func (p *planner) settle() error {
 // yielding returns which gear of a mesh, 0 or 1, runs in no other and so can take
 // what the other leaves it; -1 for none.
 func (p *planner) yielding(k int) int {
-	m := p.meshes[k]
-	for i, own := range []int{m.First, m.Second} {
-		mate := [2]int{m.Second, m.First}[i]
+	gears := p.meshes[k].gears()
+	for i, own := range gears {
+		mate := gears[1-i]
 		if p.by[own] == ByBacklash && !p.hard[own] && p.count(own) == 1 && p.count(mate) > 1 {
 			return i
 		}
@@ -279,10 +281,10 @@ func (p *planner) yield(k int) error {
 	if i < 0 {
 		return nil
 	}
-	m, pair := p.meshes[k], p.pair(k)
-	pair[1-i].Thin = &p.thin[[2]int{m.Second, m.First}[i]]
+	gears, pair := p.meshes[k].gears(), p.pair(k)
+	pair[1-i].Thin = &p.thin[gears[1-i]]
 	left, err := p.left(k, i, pair)
-	p.thin[[2]int{m.First, m.Second}[i]] = left
+	p.thin[gears[i]] = left
 	return err
 }
 
@@ -303,7 +305,7 @@ func (p *planner) left(k, i int, pair [2]PlanGear) (Limits, error) {
 // backlash returns what the thinnings of a mesh's gears come to by its method.
 func (p *planner) backlash(k int) (Limits, error) {
 	m, pair := p.meshes[k], p.pair(k)
-	b, err := m.Budget(pair[0].thickness(p.thin[m.First]), pair[1].thickness(p.thin[m.Second]))
+	b, err := m.Budget(pair[0].Thickness(p.thin[m.First]), pair[1].Thickness(p.thin[m.Second]))
 	return b.By(m.Method), err
 }
 
@@ -325,7 +327,7 @@ func (p *planner) check() error {
 func (p *planner) conflict(k int) error {
 	m := p.meshes[k]
 	sole := [2]Limits{}
-	for i, gear := range []int{m.First, m.Second} {
+	for i, gear := range m.gears() {
 		sole[i] = Limits{p.thin[gear].Min, p.thin[gear].Min}
 		if own := p.gears[gear].Thin; own != nil {
 			sole[i] = *own
@@ -342,7 +344,7 @@ func (p *planner) deepen(k int) error {
 	if err != nil || got.Min >= m.Backlash.Min-noThinning {
 		return err
 	}
-	for _, i := range []int{m.First, m.Second} {
+	for _, i := range m.gears() {
 		if p.by[i] != ByBacklash || p.hard[i] {
 			continue
 		}

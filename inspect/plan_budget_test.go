@@ -150,7 +150,7 @@ func TestFeasibleTrainsArePlanned(t *testing.T) {
 		for i := range gears {
 			gears[i].Thin = nil
 			least := rapid.SampledFrom([]float64{0, 0.02, 0.06}).Draw(t, "least thinning") * module
-			thick = append(thick, gears[i].thickness(Limits{least, least + width}))
+			thick = append(thick, gears[i].Thickness(Limits{least, least + width}))
 		}
 		var meshes []PlanMesh
 		for _, p := range pairs {

@@ -27,6 +27,9 @@ type PlanMesh struct {
 	Method        Method        // by which the wish is to be held
 }
 
+// gears returns the indices of the two gears.
+func (m PlanMesh) gears() [2]int { return [2]int{m.First, m.Second} }
+
 // Tightest returns the center distance with the least backlash: the smaller, or
 // with a ring the larger; with the sign of the formulas.
 func (m PlanMesh) Tightest() float64 {

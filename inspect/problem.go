@@ -24,7 +24,6 @@ type PlanProblem struct {
 	Gear    int       // index of the gear that cannot be made
 	Thin    Limits    // the thinning it would need, mm; empty where Min > Max
 	Nominal Limits    // the backlash of nominal (or fixed) teeth, mm
-	Tight   float64   // the center distance without backlash of nominal (or fixed) teeth, positive; 0 for none
 	Most    float64   // the greatest backlash that would have to be allowed, mm
 	Sole    [2]Limits // the thinnings of both gears that give the least backlash and have no tolerance
 }
@@ -38,14 +37,11 @@ func (p *PlanProblem) Error() string {
 // nominal teeth, and for thinnings that would do but for the greatest backlash.
 func (m PlanMesh) explain(p *PlanProblem, pair [2]PlanGear, thin [2]Limits) error {
 	nominal := m.split(pair).thin(0, 0)
-	n1, n2 := pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1])
+	n1, n2 := pair[0].Thickness(nominal[0]), pair[1].Thickness(nominal[1])
 	if b, err := m.Budget(n1, n2); err == nil {
 		p.Nominal = b.By(m.Method)
 	}
-	if a, err := m.Mesh.TightCenter(n1.Max, n2.Max); err == nil {
-		p.Tight = math.Abs(a)
-	}
-	b, err := m.Budget(pair[0].thickness(thin[0]), pair[1].thickness(thin[1]))
+	b, err := m.Budget(pair[0].Thickness(thin[0]), pair[1].Thickness(thin[1]))
 	if err != nil {
 		return p
 	}

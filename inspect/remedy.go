@@ -56,11 +56,7 @@ func (m PlanMesh) WithFinerTeeth(share float64) PlanMesh {
 // method: the sum of the tolerances, mm. Below zero it is what is missing.
 func (m PlanMesh) Room(pair [2]PlanGear, method Method) (float64, error) {
 	m.Method, m.LeastOnly = method, false
-	find := m.worstThinning
-	if method == Statistical {
-		find = m.statisticalThinning
-	}
-	least, width, err := find(pair, m.split(pair))
+	least, width, err := m.thinning(pair, m.split(pair))
 	return width + min(0, least), err // no tooth is thicker than nominal
 }
 
@@ -76,7 +72,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 	if p.Kind == TooThick {
 		list := []Remedy{{Kind: AskForMore, Value: p.Nominal.Min}}
 		nominal := m.split(pair).thin(0, 0)
-		by, ok := m.CenterFor(pair[0].thickness(nominal[0]), pair[1].thickness(nominal[1]), m.Backlash.Min)
+		by, ok := m.CenterFor(pair[0].Thickness(nominal[0]), pair[1].Thickness(nominal[1]), m.Backlash.Min)
 		if ok && m.Moved(by-hair*m.Mesh.First.Module()).Possible(pair) {
 			list = append(list, Remedy{Kind: MoveCenter, Value: by})
 		}
@@ -127,11 +123,7 @@ func (m PlanMesh) Remedies(pair [2]PlanGear, p *PlanProblem) []Remedy {
 // nominalRemedies are for nominal teeth that have more than the least backlash asked for.
 func (m PlanMesh) nominalRemedies(pair [2]PlanGear) []Remedy {
 	s := m.split(pair)
-	find := m.worstThinning
-	if m.Method == Statistical {
-		find = m.statisticalThinning
-	}
-	least, width, err := find(pair, s)
+	least, width, err := m.thinning(pair, s)
 	if err != nil {
 		return nil
 	}

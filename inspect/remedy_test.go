@@ -58,7 +58,7 @@ func TestRemediesWork(t *testing.T) {
 				case RaiseShift:
 					continue // TestRaiseShift
 				case TakeNominal:
-					b, err := m.Budget(pair[0].thickness(r.Thin[0]), pair[1].thickness(r.Thin[1]))
+					b, err := m.Budget(pair[0].Thickness(r.Thin[0]), pair[1].Thickness(r.Thin[1]))
 					if got := b.By(m.Method); err != nil || got.Min < wish.Min-1e-8 || got.Max > wish.Max+1e-8 || got.Max < wish.Max-1e-3*module {
 						t.Errorf("nominal teeth and thinner have %v, asked for %v (%v)", got, wish, err)
 					}

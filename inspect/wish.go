@@ -60,16 +60,12 @@ func (s split) free() int {
 // that its backlash stays within the wish, by the mesh's method.
 func (m PlanMesh) shares(index int, pair [2]PlanGear) ([2]Limits, error) {
 	s := m.split(pair)
-	find := m.worstThinning
-	if m.Method == Statistical {
-		find = m.statisticalThinning
-	}
-	least, width, err := find(pair, s)
+	least, width, err := m.thinning(pair, s)
 	if err != nil {
 		return [2]Limits{}, err
 	}
 	thin := s.thin(least, width)
-	problem := &PlanProblem{Mesh: index, Gear: [2]int{m.First, m.Second}[s.free()], Thin: thin[s.free()]}
+	problem := &PlanProblem{Mesh: index, Gear: m.gears()[s.free()], Thin: thin[s.free()]}
 	switch {
 	case least < -noThinning:
 		problem.Kind = TooThick
@@ -79,6 +75,15 @@ func (m PlanMesh) shares(index int, pair [2]PlanGear) ([2]Limits, error) {
 		return thin, nil
 	}
 	return thin, m.explain(problem, pair, s.thin(least, 0))
+}
+
+// thinning returns the sum of the least thinnings of the free gears and the sum of
+// their widths that hold the wish by the mesh's method, mm; either may be below zero.
+func (m PlanMesh) thinning(pair [2]PlanGear, s split) (least, width float64, err error) {
+	if m.Method == Statistical {
+		return m.statisticalThinning(pair, s)
+	}
+	return m.worstThinning(pair, s)
 }
 
 // tolerances returns the sum of the stated tolerances of the free gears.
@@ -97,7 +102,7 @@ func tolerances(pair [2]PlanGear) float64 {
 // the thickness, j_wt = j_0 + t k cos α_t/(cos β cos α_wt) for a part grown by k.
 func (m PlanMesh) worstThinning(pair [2]PlanGear, s split) (least, width float64, err error) {
 	end := func(isLeast bool, wish float64) (float64, error) {
-		thick := [2]Limits{pair[0].thickness(s.thin(0, 0)[0]), pair[1].thickness(s.thin(0, 0)[1])}
+		thick := [2]Limits{pair[0].Thickness(s.thin(0, 0)[0]), pair[1].Thickness(s.thin(0, 0)[1])}
 		extreme := math.Inf(-1)
 		for _, g := range m.Climate.growths() {
 			x := m.worst(thick, isLeast, g)
@@ -198,7 +203,7 @@ func (q *statisticalQuest) root(f func(float64) float64, a, b float64) float64 {
 // backlash returns the statistical backlash of a sum of least thinnings and a sum of widths.
 func (q *statisticalQuest) backlash(least, width float64) Limits {
 	thin := q.split.thin(least, width)
-	b, err := q.mesh.Budget(q.pair[0].thickness(thin[0]), q.pair[1].thickness(thin[1]))
+	b, err := q.mesh.Budget(q.pair[0].Thickness(thin[0]), q.pair[1].Thickness(thin[1]))
 	if q.err == nil {
 		q.err = err
 	}

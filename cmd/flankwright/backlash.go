@@ -210,10 +210,9 @@ func (b *backlash) addGears(a ask) {
 	b.targets = newTargets(b.job, b.list, a)
 	for i, g := range b.list {
 		t := b.targets.gears[i]
-		nominal := g.g.NominalThickness()
 		one := gearBacklash{
 			gearTargets: t, Tolerance: g.thickness.Limits.Width(),
-			Thinning: span{nominal - g.thickness.Limits.Max, nominal - g.thickness.Limits.Min},
+			Thinning: toSpan(g.planned().Thickness(g.thickness.Limits)), // what is left to nominal
 		}
 		if f := g.flanks; f != nil {
 			one.Accuracy, one.OutsideRange = f.Accuracy.String(), f.Outside
@@ -241,10 +240,10 @@ func (j *job) meshBacklash(m *mesh) (meshBacklash, error) {
 	out.addRows(j)
 	if want := m.plan.Backlash; want != nil {
 		out.Asked = &askedSpan{Min: want.Min}
-		if !m.leastOnly {
+		if !m.plan.LeastOnly {
 			out.Asked.Max = &want.Max
 		}
-		out.Possible = out.problem == nil && held(out.budget.By(m.plan.Method), *want, m.leastOnly)
+		out.Possible = out.problem == nil && held(out.budget.By(m.plan.Method), *want, m.plan.LeastOnly)
 	}
 	if err := out.addLeft(); err != nil {
 		return out, err
@@ -285,9 +284,8 @@ func (b *meshBacklash) plan(j *job) error {
 		b.problem.Mesh = m.index
 	}
 	b.Problem = j.planReason(b.problem)
-	for i, g := range []*gear{m.first, m.second} {
-		n := g.g.NominalThickness()
-		b.thick[i] = inspect.Limits{Min: n - b.problem.Sole[i].Max, Max: n - b.problem.Sole[i].Min}
+	for i, g := range m.pair() {
+		b.thick[i] = g.Thickness(b.problem.Sole[i])
 	}
 	return nil
 }
@@ -310,7 +308,7 @@ func held(got, want inspect.Limits, leastOnly bool) bool {
 // addLeft adds what a range of backlash leaves for the thicknesses.
 func (b *meshBacklash) addLeft() error {
 	m := b.mesh
-	if m.plan.Backlash == nil || m.leastOnly || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
+	if m.plan.Backlash == nil || m.plan.LeastOnly || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
 		return nil
 	}
 	worst, err := m.plan.Room(m.pair(), inspect.WorstCase)
@@ -348,7 +346,7 @@ func (b *meshBacklash) simulate(pairs int, seed uint64) error {
 	limits := inspect.Limits{Min: math.Inf(-1), Max: math.Inf(1)}
 	if want := m.plan.Backlash; want != nil {
 		limits.Min = want.Min
-		if !m.leastOnly {
+		if !m.plan.LeastOnly {
 			limits.Max = want.Max
 		}
 	}

@@ -96,7 +96,7 @@ func (j *job) remedyText(m *mesh, r inspect.Remedy, p *inspect.PlanProblem) (rem
 func climateWay(c *inspect.Climate, share float64) string {
 	const ref = inspect.ReferenceTemperature
 	var words []string
-	if c.Temperature.Min < ref || c.Temperature.Max > ref {
+	if !c.Steady() {
 		words = append(words, fmt.Sprintf("the temperature within %s to %s °C", celsius(math.Ceil(10*(ref+share*(c.Temperature.Min-ref)))/10), celsius(math.Floor(10*(ref+share*(c.Temperature.Max-ref)))/10)))
 	}
 	if most := max(c.Swell[0].Max, c.Swell[1].Max); most > 0 {
@@ -115,10 +115,7 @@ const smallestShare = 0.05
 // and the backlash that they then have; blank where it is too little to hold.
 func (j *job) nominalText(m *mesh, r inspect.Remedy) string {
 	var words []string
-	var thick [2]inspect.Limits
 	for i, g := range []*gear{m.first, m.second} {
-		n := g.g.NominalThickness()
-		thick[i] = inspect.Limits{Min: n - r.Thin[i].Max, Max: n - r.Thin[i].Min}
 		switch {
 		case g.ownThin() != nil:
 		case r.Thin[i].Max < j.lastDigit():
@@ -127,7 +124,7 @@ func (j *job) nominalText(m *mesh, r inspect.Remedy) string {
 			words = append(words, fmt.Sprintf("thin = \"0..%s\" in %s", strings.ReplaceAll(j.lengthDown(r.Thin[i].Max), " ", ""), g.name))
 		}
 	}
-	b, err := m.plan.Budget(thick[0], thick[1])
+	b, err := m.plan.Budget(m.first.planned().Thickness(r.Thin[0]), m.second.planned().Thickness(r.Thin[1]))
 	if err != nil {
 		return ""
 	}
@@ -154,7 +151,7 @@ func (j *job) fixedRemedies(b *meshBacklash) []remedyText {
 	if err != nil {
 		return []remedyText{}
 	}
-	if most := moved.By(m.plan.Method).Max; !m.leastOnly && most > want.Max {
+	if most := moved.By(m.plan.Method).Max; !m.plan.LeastOnly && most > want.Max {
 		text += ", and allow " + j.lengthUp(most+j.lastDigit()) + " of backlash"
 	}
 	return []remedyText{{What: "center distance", Value: &by, Text: text}}
@@ -184,7 +181,7 @@ func (j *job) runoutsText(m *mesh, share float64) string {
 		d := m.plan.Deviations[i]
 		switch {
 		case d.Runout == 0:
-		case d.Runout*share < j.lastDigit() || (m.statistical && !d.Measured):
+		case d.Runout*share < j.lastDigit() || (m.plan.Method == inspect.Statistical && !d.Measured):
 			return "" // nothing to measure, or what a class allows: a finer one is the way
 		default:
 			words = append(words, j.lengthDown(d.Runout*share)+" for "+g.name)

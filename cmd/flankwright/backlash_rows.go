@@ -35,7 +35,7 @@ func rowName(m *mesh, c inspect.Cause) string {
 	if c != inspect.OfClimate || m.plan.Climate.Swell == [2]inspect.Limits{} {
 		return causeName(c)
 	}
-	if m.plan.Climate.Temperature == (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+	if m.plan.Climate.Steady() {
 		return "swelling"
 	}
 	return "temperature and swelling"
@@ -90,7 +90,7 @@ func (j *job) causeText(m *mesh, r inspect.Contribution) string {
 // climateText words what a mesh runs in.
 func climateText(c *inspect.Climate) string {
 	text := ""
-	if t := c.Temperature; t != (inspect.Limits{Min: inspect.ReferenceTemperature, Max: inspect.ReferenceTemperature}) {
+	if t := c.Temperature; !c.Steady() {
 		text = fmt.Sprintf("Temperature, %s to %s °C", celsius(t.Min), celsius(t.Max))
 		if t.Width() == 0 {
 			text = fmt.Sprintf("Temperature, %s °C", celsius(t.Min))

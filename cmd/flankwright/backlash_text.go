@@ -65,8 +65,7 @@ func (b *backlash) limitsGrid(u inspect.Unit, digits int) grid {
 	for _, x := range b.list {
 		g.heads = append(g.heads, x.name)
 		s := u.FormatLimits(x.thickness.Limits, digits)
-		nominal := x.g.NominalThickness()
-		t := u.FormatLimits(inspect.Limits{Min: nominal - x.thickness.Limits.Max, Max: nominal - x.thickness.Limits.Min}, digits)
+		t := u.FormatLimits(x.planned().Thickness(x.thickness.Limits), digits) // what is left to nominal
 		low, high, thinLow, thinHigh = append(low, s.Low), append(high, s.High), append(thinLow, t.Low), append(thinHigh, t.High)
 		width := u.FormatLimits(inspect.Limits{Max: x.thickness.Limits.Width()}, s.Decimals) // rounded down, as the limits are inward
 		left, by = append(left, width.High), append(by, thicknessWords(x))

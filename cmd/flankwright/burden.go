@@ -49,18 +49,11 @@ func (g *gear) deviations() inspect.Deviations {
 }
 
 // burden tells a mesh's plan what takes backlash.
-func (j *job) burden(m *mesh) {
+func (m *mesh) burden() {
 	m.plan.Deviations = [2]inspect.Deviations{m.first.deviations(), m.second.deviations()}
 	m.plan.Climate = m.climate()
-	m.plan.LeastOnly = m.leastOnly
 	if c, err := m.plan.Mesh.Contact(m.plan.ServiceCenter(), m.first.nominal, m.second.nominal); err == nil {
 		m.plan.ContactRatio = c.TransverseRatio + m.plan.Mesh.OverlapRatio(m.face())
-	}
-	if m.statistical {
-		m.plan.Method = inspect.Statistical
-	}
-	if m.byStrength {
-		m.plan.Share = inspect.ShareByTeeth
 	}
 }
 
@@ -74,8 +67,7 @@ func (m *mesh) climate() *inspect.Climate {
 	if m.temperature != nil {
 		c.Temperature = *m.temperature
 	}
-	steady := c.Temperature.Min == inspect.ReferenceTemperature && c.Temperature.Width() == 0
-	if steady && c.Swell == [2]inspect.Limits{} {
+	if c.Steady() && c.Swell == [2]inspect.Limits{} {
 		return nil
 	}
 	for i, g := range []*gear{m.first, m.second} {
@@ -120,7 +112,7 @@ func (j *job) wishText(m *mesh) string {
 	switch {
 	case want == nil:
 		return ""
-	case m.leastOnly:
+	case m.plan.LeastOnly:
 		return j.length(want.Min) + " or more"
 	}
 	return j.length(want.Min) + " to " + j.length(want.Max)

@@ -177,7 +177,9 @@ func (j *job) readService(m *mesh, s settings) error {
 	if err != nil {
 		return err
 	}
-	m.statistical = budget == "statistical"
+	if budget == "statistical" {
+		m.plan.Method = inspect.Statistical
+	}
 	if m.housing, err = s.material("housing"); err != nil {
 		return err
 	}
@@ -268,7 +270,7 @@ func inWords(names []string) string {
 func (j *job) checkTolerances() error {
 	used := map[*gear]bool{}
 	for _, m := range j.meshes {
-		if !m.leastOnly {
+		if !m.plan.LeastOnly {
 			continue
 		}
 		var lack []*gear

@@ -121,13 +121,13 @@ temperature = 20
 		t.Errorf("accuracy %q and %q", steel.accuracyText, own.accuracyText)
 	}
 	m := j.meshes[0]
-	if !m.leastOnly || !m.byStrength || !m.statistical || m.plan.Backlash.Min != m.plan.Backlash.Max || math.Abs(m.plan.Backlash.Min-0.127) > 1e-15 {
+	if !m.plan.LeastOnly || m.plan.Share != inspect.ShareByTeeth || m.plan.Method != inspect.Statistical || m.plan.Backlash.Min != m.plan.Backlash.Max || math.Abs(m.plan.Backlash.Min-0.127) > 1e-15 {
 		t.Errorf("%+v, backlash %v", m, m.plan.Backlash)
 	}
 	if m.temperature == nil || *m.temperature != (inspect.Limits{Min: 20, Max: 60}) || m.housing.name != "6061" || m.housing.expansion != 23.6e-6 {
 		t.Errorf("%v in %v", m.temperature, m.housing)
 	}
-	if m := j.meshes[1]; m.temperature == nil || m.temperature.Max != 20 || m.housing != nil || m.leastOnly || m.statistical || m.byStrength {
+	if m := j.meshes[1]; m.temperature == nil || m.temperature.Max != 20 || m.housing != nil || m.plan.LeastOnly || m.plan.Method == inspect.Statistical || m.plan.Share == inspect.ShareByTeeth {
 		t.Errorf("the other mesh: %+v", m)
 	}
 }
@@ -135,7 +135,7 @@ temperature = 20
 // A range of one value is a range, and what stands at 20 °C needs no materials.
 func TestBacklashOfARange(t *testing.T) {
 	j := resolved(t, onePair+"center = 50.3\nbacklash = \"0.3..0.3\"\ntemperature = \"68F\"\n")
-	if j.meshes[0].leastOnly {
+	if j.meshes[0].plan.LeastOnly {
 		t.Error("0.3..0.3 is taken for the least alone")
 	}
 }

@@ -47,7 +47,7 @@ func (m *mesh) customary() []custom {
 	if want := m.plan.Backlash; want != nil {
 		asked := m.wished(want.Min)
 		asked.Name, asked.Source = "As asked for", "the job"
-		if !m.leastOnly {
+		if !m.plan.LeastOnly {
 			normal := want.Max * m.normalShare()
 			asked.Circumferential.Max, asked.Normal.Max = &want.Max, &normal
 		}
@@ -87,11 +87,7 @@ func din3967Shown() []string {
 
 // byNormal is a custom that gives the least normal backlash: j_wt = j_bn/(cos α_wt cos β_b).
 func (m *mesh) byNormal(name string, l refdata.LeastBacklash) custom {
-	alpha, err := m.plan.Mesh.WorkingPressureAngle(m.plan.Nominal())
-	if err != nil {
-		return custom{}
-	}
-	out := m.wished(l.Normal / (math.Cos(alpha) * math.Cos(m.first.g.BaseHelix())))
+	out := m.wished(l.Normal / m.normalShare())
 	out.Name, out.Source = name, l.Source.String()
 	var notes []string
 	if len(l.Outside) > 0 {
@@ -125,8 +121,8 @@ func (m *mesh) wished(least float64) custom {
 	plan.First, plan.Second = 0, 1
 	free := []inspect.PlanGear{{Gear: m.first.g}, {Gear: m.second.g}}
 	if found, err := inspect.Plan(free, []inspect.PlanMesh{plan}); err == nil {
-		out.Thinning.First.Min = m.first.g.NominalThickness() - found[0].Limits.Max
-		out.Thinning.Second.Min = m.second.g.NominalThickness() - found[1].Limits.Max
+		out.Thinning.First.Min = free[0].Thickness(found[0].Limits).Min
+		out.Thinning.Second.Min = free[1].Thickness(found[1].Limits).Min
 	} // else nominal teeth at this center have more backlash than that already
 	return out
 }
@@ -147,8 +143,7 @@ func (m *mesh) byCallOut(callOut string) (custom, bool) {
 
 // byThinning is a custom that gives thinnings: backlash follows, center tolerance included.
 func (m *mesh) byThinning(name string, src refdata.Source, thin [2]inspect.Limits) custom {
-	n1, n2 := m.first.g.NominalThickness(), m.second.g.NominalThickness()
-	least, most, err := m.plan.BacklashRange(inspect.Limits{Min: n1 - thin[0].Max, Max: n1 - thin[0].Min}, inspect.Limits{Min: n2 - thin[1].Max, Max: n2 - thin[1].Min})
+	least, most, err := m.plan.BacklashRange(m.first.planned().Thickness(thin[0]), m.second.planned().Thickness(thin[1]))
 	if err != nil {
 		return custom{}
 	}
@@ -164,7 +159,7 @@ func (m *mesh) byThinning(name string, src refdata.Source, thin [2]inspect.Limit
 func (m *mesh) normalShare() float64 {
 	alpha, err := m.plan.Mesh.WorkingPressureAngle(m.plan.Nominal())
 	if err != nil {
-		return 0 // the center was found possible when it was read
+		return 1 // the center was found possible when it was read
 	}
 	return math.Cos(alpha) * math.Cos(m.first.g.BaseHelix())
 }

@@ -102,10 +102,12 @@ func explainContact(e *explainer, m *mesh, a, aw, db1, db2 quantity) {
 }
 
 // explainThinning explains what both gears together must be thinner for the
-// backlash asked for, and where they share it alone, the limits that follow.
+// backlash asked for, and where they share it alone, the limits that follow. With more
+// than geometry in the budget that is for the command backlash to explain.
 func explainThinning(e *explainer, m *mesh) {
 	want := m.plan.Backlash
-	if want == nil || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
+	geometric := !m.burdened() && m.plan.Method == inspect.WorstCase && !m.plan.LeastOnly
+	if want == nil || !geometric || (m.first.ownThin() != nil && m.second.ownThin() != nil) {
 		return
 	}
 	g := m.first.g

@@ -80,7 +80,7 @@ func (j *job) addMesh(i int) error {
 	if err := j.readService(m, s); err != nil {
 		return err
 	}
-	j.burden(m)
+	m.burden()
 	j.meshes = append(j.meshes, m)
 	return nil
 }
@@ -143,7 +143,7 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 		return bad("backlash", s.vals["backlash"], "must be 0 or more, not %s", j.length(l.Min))
 	}
 	if ok {
-		m.plan.Backlash, m.leastOnly = &l, single
+		m.plan.Backlash, m.plan.LeastOnly = &l, single
 	}
 	share, ok, err := s.word("thin_share")
 	if err != nil || !ok {
@@ -152,7 +152,7 @@ func (j *job) readBacklash(m *mesh, s settings) error {
 	switch share {
 	case "equal":
 	case "by strength":
-		m.byStrength = true
+		m.plan.Share = inspect.ShareByTeeth
 	case m.first.name:
 		m.plan.Share = inspect.ShareFirst
 	case m.second.name:

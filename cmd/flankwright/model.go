@@ -102,9 +102,6 @@ type mesh struct {
 	first, second *gear
 	plan          inspect.PlanMesh
 	at            place // of the center distance, or of the mesh
-	leastOnly     bool  // the backlash is one value, the least
-	byStrength    bool  // the thinning is shared out by the teeth's strength
-	statistical   bool  // the limits are those of the statistical budget, not of the worst case
 	temperature   *inspect.Limits
 	housing       *material
 }

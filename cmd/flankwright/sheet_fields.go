@@ -167,7 +167,7 @@ func (j *job) backlashFields(m *mesh, mate string) []export.Field {
 	var fields []export.Field
 	if want := m.plan.Backlash; want != nil {
 		allowed := export.Field{Label: "Backlash allowed, " + mate, Value: "over " + j.length(want.Min)}
-		if !m.leastOnly {
+		if !m.plan.LeastOnly {
 			allowed = j.rangeField(allowed.Label, want.Min, want.Max)
 		}
 		fields = append(fields, allowed)

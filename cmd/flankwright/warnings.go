@@ -249,11 +249,11 @@ func (j *job) warnBacklash(m *mesh, pair string) {
 		j.addMeshWarning("may-bind", m, "%s may bind: with runout, deviations and climate the least backlash is %s, held %s; the command backlash shows what takes it", pair, j.length(got.Min), methodWord(m.plan.Method))
 	}
 	want := m.plan.Backlash
-	if want == nil || m.first.ownThin() == nil || m.second.ownThin() == nil || held(got, *want, m.leastOnly) {
+	if want == nil || m.first.ownThin() == nil || m.second.ownThin() == nil || held(got, *want, m.plan.LeastOnly) {
 		return
 	}
 	what := j.length(got.Min) + " to " + j.length(got.Max)
-	if m.leastOnly {
+	if m.plan.LeastOnly {
 		what = j.length(got.Min)
 	}
 	j.addMeshWarning("backlash-out", m, "%s: the thicknesses given make %s of backlash, not the %s asked for; the thicknesses rule", pair, what, j.wishText(m))
