@@ -254,13 +254,22 @@ func (r *run) lineChain(places []float64, b band) (chain, bool) {
 	return ch, true
 }
 
-// linesNeeded returns how many straight lines the whole path takes, 0 where they
-// cannot keep the band.
-func (p *pitch) linesNeeded(sections []section, b band) int {
-	chains, err := p.chains(sections, func(_ section, r *run) (chain, error) { return r.lines(b) })
-	if err != nil {
-		return 0
+// linesNeeded returns how many straight lines the whole path takes, within less of the
+// tolerance where they cannot keep the whole, as in closedPath; 0 where they cannot at all.
+func (p *pitch) linesNeeded(sections []section, o FitOptions) int {
+	for _, share := range append([]float64{1}, closerShares()...) {
+		closer := o
+		closer.Tolerance *= share
+		chains, err := p.chains(sections, func(_ section, r *run) (chain, error) { return r.lines(closer.band()) })
+		if err == nil {
+			return p.countLines(sections, chains)
+		}
 	}
+	return 0
+}
+
+// countLines returns how many lines chains of lines make of the whole path.
+func (p *pitch) countLines(sections []section, chains []chain) int {
 	sum := 0
 	for _, ch := range chains {
 		sum += len(ch.Pieces)

@@ -95,6 +95,35 @@ func TestLinesAreAsManyAsReported(t *testing.T) {
 	})
 }
 
+// A gear whose arcs keep a wide band that straight lines do not: how many lines it
+// would take is told all the same, of the closer band that lines do keep.
+func TestLinesNeededWhereArcsAloneKeepTheBand(t *testing.T) {
+	m := math.Pow(10, 1.7)
+	rack := involute.Rack{PressureAngle: 27 * math.Pi / 180, Addendum: 1, Dedendum: 1.25}
+	rack.TipRadius = rack.LargestTipRadius()
+	g, err := involute.NewGear(involute.Spec{Teeth: 11, Module: m, Shift: 0.0009765625, Rack: rack})
+	if err != nil {
+		t.Fatal(err)
+	}
+	tooth, err := g.Tooth(g.NominalThickness() - 0.0166015625*m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var pitch []involute.Curve
+	for _, p := range tooth.Outline().Pieces {
+		pitch = append(pitch, p)
+	}
+	o := FitOptions{Tolerance: m / 100, Side: Outside}
+	_, arcs, err := closedPath(pitch, 11, o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	o.Lines = true
+	if _, lines, err := closedPath(pitch, 11, o); err != nil || arcs.LinesNeeded != lines.Segments {
+		t.Errorf("with arcs %d lines are said to be needed, with lines %d are (%v)", arcs.LinesNeeded, lines.Segments, err)
+	}
+}
+
 // Chords on the curve leave it by κh²/8: the lines may not need more than those,
 // which a separate program has minimized for these flanks.
 func TestLinesBeatChordsOnTheCurve(t *testing.T) {

@@ -43,7 +43,7 @@ func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitRepo
 	if err == nil && sound(path, report) {
 		return path, report, nil
 	}
-	for _, share := range []float64{0.97, 0.9, 0.8, 0.6, 0.4, 0.25, 0.1, 0.03} {
+	for _, share := range closerShares() {
 		closer := o
 		closer.Tolerance *= share
 		if again, other, failed := fitPath(curves, count, closer); failed == nil && sound(again, other) {
@@ -55,6 +55,9 @@ func closedPath(curves []involute.Curve, count int, o FitOptions) (Path, FitRepo
 	}
 	return path, report, nil
 }
+
+// closerShares are the shares of a tolerance that are tried where the whole finds no way.
+func closerShares() []float64 { return []float64{0.97, 0.9, 0.8, 0.6, 0.4, 0.25, 0.1, 0.03} }
 
 // sound reports whether a path can go into a file, crosses itself nowhere and keeps
 // no kink that was none of the outline's corners.
@@ -97,7 +100,7 @@ func fitPath(curves []involute.Curve, count int, o FitOptions) (Path, FitReport,
 		path = startInMiddle(path, len(chains[0].Pieces))
 	}
 	report := p.report(sections, chains, gap, path)
-	report.LinesNeeded = p.linesNeeded(sections, o.band())
+	report.LinesNeeded = p.linesNeeded(sections, o)
 	return path, report, nil
 }
 
